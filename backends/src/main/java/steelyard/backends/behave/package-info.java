@@ -1,0 +1,4 @@
+@NullMarked
+package steelyard.backends.behave;
+
+import org.jspecify.annotations.NullMarked;

@@ -1,0 +1,4 @@
+@NullMarked
+package steelyard.balancer.core.decide;
+
+import org.jspecify.annotations.NullMarked;

@@ -1,0 +1,4 @@
+@NullMarked
+package steelyard.drills.model;
+
+import org.jspecify.annotations.NullMarked;

@@ -1,0 +1,4 @@
+@NullMarked
+package steelyard.harness.record;
+
+import org.jspecify.annotations.NullMarked;
