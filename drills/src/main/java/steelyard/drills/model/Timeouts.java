@@ -1,0 +1,16 @@
+package steelyard.drills.model;
+
+/**
+ * Time limits of the balancer towards a pool's backends.
+ *
+ * @param connectNanos for a connection to stand; beyond it the backend counts as refused
+ * @param firstByteNanos from the head sent to the first byte of the answer; beyond it the client gets 504
+ * @param idleNanos a kept connection without work is closed after that
+ */
+public record Timeouts(long connectNanos, long firstByteNanos, long idleNanos) {
+    public Timeouts {
+        Check.positive(connectNanos, "connect");
+        Check.positive(firstByteNanos, "first-byte");
+        Check.positive(idleNanos, "idle");
+    }
+}
