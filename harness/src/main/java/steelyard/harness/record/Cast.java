@@ -1,0 +1,90 @@
+package steelyard.harness.record;
+
+import java.util.List;
+import steelyard.drills.model.Backend;
+import steelyard.drills.model.Drill;
+import steelyard.drills.model.Host;
+import steelyard.drills.model.Pool;
+import steelyard.drills.model.Target;
+
+/** Who is on the stage, by number: pools, hosts and backends in list order, backends pool after pool. */
+public final class Cast {
+    private final List<Pool> pools;
+    private final List<Host> hosts;
+    private final List<Backend> backends;
+    private final int[] poolOf;
+    private final int[] hostOf;
+
+    public Cast(Drill drill) {
+        pools = drill.stage().pools();
+        hosts = drill.stage().hosts();
+        backends = drill.stage().backends();
+        poolOf = new int[backends.size()];
+        hostOf = new int[backends.size()];
+        int backend = 0;
+        for (int pool = 0; pool < pools.size(); pool++) {
+            for (Backend each : pools.get(pool).backends()) {
+                poolOf[backend] = pool;
+                hostOf[backend] = hostNumber(each.host());
+                backend++;
+            }
+        }
+    }
+
+    public List<Pool> pools() {
+        return pools;
+    }
+
+    public List<Host> hosts() {
+        return hosts;
+    }
+
+    public List<Backend> backends() {
+        return backends;
+    }
+
+    /** The number of the pool that carries a backend. */
+    public int poolOf(int backend) {
+        return poolOf[backend];
+    }
+
+    /** The number of the host that a backend stands on. */
+    public int hostOf(int backend) {
+        return hostOf[backend];
+    }
+
+    /** The number of a pool. Throws {@link IllegalArgumentException} for an unknown name. */
+    public int poolNumber(String name) {
+        for (int pool = 0; pool < pools.size(); pool++) {
+            if (pools.get(pool).name().equals(name)) {
+                return pool;
+            }
+        }
+        throw new IllegalArgumentException("no pool " + name);
+    }
+
+    /** The number of a host. Throws {@link IllegalArgumentException} for an unknown name. */
+    public int hostNumber(String name) {
+        for (int host = 0; host < hosts.size(); host++) {
+            if (hosts.get(host).name().equals(name)) {
+                return host;
+            }
+        }
+        throw new IllegalArgumentException("no host " + name);
+    }
+
+    /** The number of a backend. Throws {@link IllegalArgumentException} for an unknown name. */
+    public int backendNumber(String name) {
+        for (int backend = 0; backend < backends.size(); backend++) {
+            if (backends.get(backend).name().equals(name)) {
+                return backend;
+            }
+        }
+        throw new IllegalArgumentException("no backend " + name);
+    }
+
+    /** The numbers of a target's backends, in stage order. */
+    public int[] numbers(Target target) {
+        return target.backends().stream().mapToInt(this::backendNumber).toArray();
+    }
+}

@@ -1,0 +1,42 @@
+package steelyard.harness.record;
+
+import java.util.Arrays;
+import steelyard.balancer.core.standing.Standing;
+
+/** State of every backend at one instant; index: backend number. One mutable object a stage, refilled each slice. */
+public final class Sample {
+    /** In flight as the balancer counts it. */
+    public final int[] inFlight;
+
+    public final Standing[] standing;
+
+    /** The weight that was set. */
+    public final int[] setWeight;
+
+    /** Set weight times ramp (and, under host weights, the backend's part of its host's weight). */
+    public final double[] effectiveWeight;
+
+    /** From 0 to 1 within the pool. */
+    public final double[] entitledShare;
+
+    /** Requests waiting in the backend's own queue. */
+    public final int[] waiting;
+
+    /** Requests in service in the backend. */
+    public final int[] inService;
+
+    /** Worker-time spent busy since the start of the play, in nanoseconds. */
+    public final long[] busyNanos;
+
+    public Sample(int backends) {
+        inFlight = new int[backends];
+        standing = new Standing[backends];
+        Arrays.fill(standing, Standing.UP);
+        setWeight = new int[backends];
+        effectiveWeight = new double[backends];
+        entitledShare = new double[backends];
+        waiting = new int[backends];
+        inService = new int[backends];
+        busyNanos = new long[backends];
+    }
+}
