@@ -1,0 +1,63 @@
+package steelyard.backends.behave;
+
+import java.util.Objects;
+
+/**
+ * How a healthy backend serves. Immutable.
+ *
+ * @param workers requests in service at once, 1 or above
+ * @param queue requests that may wait for a worker, 0 or above; {@link Integer#MAX_VALUE} stands for no limit
+ * @param time the work that a request asks for
+ * @param probeWork whether a probe costs a worker
+ * @param status the status of a good answer, 200..599
+ * @param bodyBytes the size of its body, 0..16 MiB
+ */
+public record BehaviourSettings(
+        int workers, int queue, ServiceTime time, ProbeWork probeWork, int status, int bodyBytes) {
+
+    private static final int MOST_BODY_BYTES = 16 << 20;
+    private static final int USUAL_BODY_BYTES = 32;
+
+    /** What answering a probe costs. */
+    public enum ProbeWork {
+        /** Nothing: probes are answered at once, past the queue. */
+        FREE,
+        /** As much as a request: a probe waits its turn and holds a worker. */
+        QUEUED
+    }
+
+    public BehaviourSettings {
+        Objects.requireNonNull(time);
+        Objects.requireNonNull(probeWork);
+        require(workers >= 1, "workers must be 1 or more", workers);
+        require(queue >= 0, "queue must be 0 or more", queue);
+        requireStatus(status);
+        require(
+                bodyBytes >= 0 && bodyBytes <= MOST_BODY_BYTES,
+                "body must be 0 to " + MOST_BODY_BYTES + " bytes",
+                bodyBytes);
+    }
+
+    /** Free probes, and a short answer with status 200. */
+    public static BehaviourSettings of(int workers, int queue, ServiceTime time) {
+        return new BehaviourSettings(workers, queue, time, ProbeWork.FREE, 200, USUAL_BODY_BYTES);
+    }
+
+    public BehaviourSettings withProbeWork(ProbeWork set) {
+        return new BehaviourSettings(workers, queue, time, set, status, bodyBytes);
+    }
+
+    public BehaviourSettings withAnswer(int setStatus, int setBodyBytes) {
+        return new BehaviourSettings(workers, queue, time, probeWork, setStatus, setBodyBytes);
+    }
+
+    static void requireStatus(int status) {
+        require(status >= 200 && status <= 599, "status must be 200 to 599", status);
+    }
+
+    private static void require(boolean holds, String rule, int value) {
+        if (!holds) {
+            throw new IllegalArgumentException(rule + ", but is " + value);
+        }
+    }
+}
