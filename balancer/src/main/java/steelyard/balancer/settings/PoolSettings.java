@@ -30,6 +30,11 @@ public record PoolSettings(
     public PoolSettings {
         backends = List.copyOf(backends);
         Check.that(!backends.isEmpty(), "pool %s has no backend", name);
+        Check.that(
+                weights == Weights.BACKEND || method == Method.WEIGHTED_ROUND_ROBIN,
+                "pool %s: turns of hosts are those of weighted round robin, not of %s",
+                name,
+                method);
         Check.that(drainLimitNanos > 0, "drain limit of pool %s: %d ns", name, drainLimitNanos);
     }
 

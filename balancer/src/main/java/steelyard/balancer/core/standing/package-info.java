@@ -1,5 +1,13 @@
 /**
- * The state machines behind a standing: probes, drain, warm-up.
+ * What the balancer thinks of a backend: small state machines over independent facts.
+ *
+ * <p>{@code ProbeTracker} turns answers and silences into up or down; {@code Hand} is what people ordered; {@code WarmUp}
+ * is the ramp after a return. {@code BackendStanding} holds the three of one backend and says the word that shows: the
+ * first that holds of withdrawn, draining, down, warming, up.
+ *
+ * <p>Allowed dependencies: the JDK, balancer.settings. Thread rule: none is thread-safe; the Decider owns them. Time is
+ * an argument; instants are compared by subtraction, so any origin will do. First class to read: {@link
+ * steelyard.balancer.core.standing.BackendStanding}.
  */
 @NullMarked
 package steelyard.balancer.core.standing;

@@ -1,0 +1,127 @@
+package steelyard.balancer.core.standing;
+
+import steelyard.balancer.settings.ProbeSettings;
+
+/**
+ * Probes of one backend: when the next one starts, and what runs of answers say.
+ *
+ * <p>A probe starts {@code every} after the last one started, or when that one ended if that is later; never two at once.
+ * It passes when a good answer comes earlier than {@code within} after its start; an answer at exactly that instant is a
+ * miss, so that it does not matter whether the answer or the deadline is handled first.
+ *
+ * <pre>
+ *             misses in a row reach the limit
+ *        up  -------------------------------->  down        one pass clears the run of misses,
+ *            <--------------------------------              one miss the run of passes
+ *             passes in a row reach the limit
+ * </pre>
+ */
+public final class ProbeTracker {
+
+    /** What a call asks of whoever drives it. */
+    public enum Step {
+        NOTHING,
+        /** Start probe {@link #number()}. */
+        START,
+        /** Probe {@link #number()} ran out of time, which counted as a miss; stop waiting for it. */
+        DROP
+    }
+
+    private ProbeSettings settings;
+    private boolean up;
+    private boolean running;
+    private long number = -1;
+    private long startedNanos;
+    private long nextNanos;
+    private int missesInARow;
+    private int passesInARow;
+
+    /**
+     * @param up what is believed at first
+     * @param firstStartNanos when the first probe starts
+     */
+    public ProbeTracker(ProbeSettings settings, boolean up, long firstStartNanos) {
+        this.settings = settings;
+        this.up = up;
+        nextNanos = firstStartNanos;
+    }
+
+    public boolean up() {
+        return up;
+    }
+
+    /** The number of the probe that runs or ran last, from 0; -1 before the first. */
+    public long number() {
+        return number;
+    }
+
+    /** When {@link #poll} has something to do next. */
+    public long deadlineNanos() {
+        return running ? startedNanos + settings.withinNanos() : nextNanos;
+    }
+
+    /** Does one thing that is due; call again until it says {@link Step#NOTHING}. */
+    public Step poll(long nowNanos) {
+        if (nowNanos - deadlineNanos() < 0) {
+            return Step.NOTHING;
+        }
+        if (running) {
+            count(false);
+            end(nowNanos);
+            return Step.DROP;
+        }
+        running = true;
+        number++;
+        startedNanos = nowNanos;
+        return Step.START;
+    }
+
+    /**
+     * An answer came. One to a probe that is over is ignored.
+     *
+     * @param good whether it was good
+     * @return whether it counted
+     */
+    public boolean answered(long probe, boolean good, long nowNanos) {
+        if (!running || probe != number) {
+            return false;
+        }
+        count(good && passesAt(nowNanos));
+        end(nowNanos);
+        return true;
+    }
+
+    /** Whether an answer to the running probe would come early enough. */
+    public boolean passesAt(long nowNanos) {
+        return nowNanos - (startedNanos + settings.withinNanos()) < 0;
+    }
+
+    /** Takes new settings; the runs so far and a probe under way go on under them. */
+    public void retune(ProbeSettings newSettings, long nowNanos) {
+        if (!running && number >= 0) {
+            nextNanos = later(startedNanos + newSettings.everyNanos(), nowNanos);
+        }
+        settings = newSettings;
+    }
+
+    private void end(long nowNanos) {
+        running = false;
+        nextNanos = later(startedNanos + settings.everyNanos(), nowNanos);
+    }
+
+    private void count(boolean pass) {
+        if (pass) {
+            missesInARow = 0;
+            passesInARow = Math.min(passesInARow + 1, settings.passes());
+            up |= passesInARow >= settings.passes();
+        } else {
+            passesInARow = 0;
+            missesInARow = Math.min(missesInARow + 1, settings.misses());
+            up &= missesInARow < settings.misses();
+        }
+    }
+
+    private static long later(long a, long b) {
+        return a - b >= 0 ? a : b;
+    }
+}
