@@ -1,0 +1,123 @@
+package steelyard.harness.conduct;
+
+import java.util.stream.IntStream;
+import steelyard.backends.behave.Change;
+import steelyard.drills.model.Cue;
+import steelyard.drills.model.Drill;
+import steelyard.drills.model.Pool;
+import steelyard.drills.model.Target;
+import steelyard.harness.record.Cast;
+import steelyard.harness.stage.Hands;
+import steelyard.harness.traffic.ArrivalPlan;
+
+/** Turns cues, and the ends of their {@code for:}, into calls of hands. */
+final class CueActions {
+    private final Cast cast;
+    private final String[] poolOfTraffic;
+    private final ArrivalPlan arrivals;
+    private final Terms faults;
+    private final Terms surges;
+
+    CueActions(Drill drill, ArrivalPlan arrivals) {
+        this.cast = new Cast(drill);
+        this.poolOfTraffic = drill.traffic().stream().map(each -> each.pool()).toArray(String[]::new);
+        this.arrivals = arrivals;
+        this.faults = new Terms(cast.backends().size());
+        this.surges = new Terms(poolOfTraffic.length);
+    }
+
+    /**
+     * Checks that a cue can be carried out on this stage.
+     *
+     * @throws IllegalArgumentException for an unknown backend or settings that mean nothing
+     */
+    void check(Cue cue) {
+        cast.numbers(cue.target());
+        if (cue.kind().side() == Cue.Side.BACKEND) {
+            Changes.of(cue);
+        }
+    }
+
+    /** Carries a cue out; {@code number} tells it from all others of the play. */
+    void carryOut(Cue cue, int number, long atNanos, Hands hands) {
+        switch (cue.kind()) {
+            case SLOW, FAIL, HANG, REFUSE, KILL, REVIVE, FAIL_PROBE, FLAP_PROBE, HEAL ->
+                change(cue, number, Changes.of(cue), hands);
+            case REWEIGH -> reweigh(cue.target(), cue.settings().weight(), hands);
+            case DRAIN ->
+                backends(cue).forEach(each -> hands.drain(each, cue.settings().limitNanos()));
+            case ADMIT -> backends(cue).forEach(hands::admit);
+            case WITHDRAW -> backends(cue).forEach(hands::withdraw);
+            case SURGE -> surge(cue, number, atNanos);
+        }
+    }
+
+    /** Ends what a cue set, where it still stands. Returns whether anything was left to end. */
+    boolean end(Cue cue, int number, long atNanos, Hands hands) {
+        return cue.kind() == Cue.Kind.SURGE ? endSurge(cue, number, atNanos) : endFault(cue, number, hands);
+    }
+
+    private void change(Cue cue, int number, Change change, Hands hands) {
+        backends(cue).forEach(backend -> {
+            faults.carriedOut(cue.kind(), number, backend);
+            hands.change(backend, change);
+        });
+    }
+
+    private boolean endFault(Cue cue, int number, Hands hands) {
+        int[] left = backends(cue)
+                .filter(each -> faults.holds(cue.kind(), number, each))
+                .toArray();
+        Change end = Changes.end(cue.kind());
+        for (int backend : left) {
+            faults.ended(cue.kind(), backend);
+            hands.change(backend, end);
+        }
+        return left.length > 0;
+    }
+
+    private void surge(Cue cue, int number, long atNanos) {
+        streams(cue.target()).forEach(stream -> {
+            surges.carriedOut(cue.kind(), number, stream);
+            arrivals.surge(stream, cue.settings().factor(), atNanos);
+        });
+    }
+
+    private boolean endSurge(Cue cue, int number, long atNanos) {
+        int[] left = streams(cue.target())
+                .filter(each -> surges.holds(cue.kind(), number, each))
+                .toArray();
+        for (int stream : left) {
+            surges.ended(cue.kind(), stream);
+            arrivals.surge(stream, 1, atNanos);
+        }
+        return left.length > 0;
+    }
+
+    /** A host is reweighed itself where a pool on it counts weights by host; all else is reweighed backend by backend. */
+    private void reweigh(Target target, int weight, Hands hands) {
+        if (target.kind() == Target.Kind.HOST && countsByHost(target)) {
+            hands.reweighHost(cast.hostNumber(target.name()), weight);
+        } else {
+            for (int backend : cast.numbers(target)) {
+                hands.reweigh(backend, weight);
+            }
+        }
+    }
+
+    private boolean countsByHost(Target host) {
+        return IntStream.of(cast.numbers(host))
+                .anyMatch(each -> cast.pools().get(cast.poolOf(each)).weights() == Pool.Weights.HOST);
+    }
+
+    private IntStream backends(Cue cue) {
+        return IntStream.of(cast.numbers(cue.target()));
+    }
+
+    /** The streams that go to a pool of the target's backends. */
+    private IntStream streams(Target target) {
+        return IntStream.range(0, poolOfTraffic.length)
+                .filter(stream -> IntStream.of(cast.numbers(target))
+                        .anyMatch(each -> cast.poolOf(each) == cast.poolNumber(poolOfTraffic[stream])));
+    }
+}
