@@ -1,5 +1,6 @@
 package steelyard.drills.model;
 
+import java.util.Collections;
 import java.util.EnumSet;
 import java.util.Objects;
 import java.util.Set;
@@ -52,7 +53,7 @@ public record Expectation(
         public static final Options DEFAULT = new Options(0.99, EnumSet.allOf(Cause.class), 0, null, false, 0.5);
 
         public Options {
-            causes = Set.copyOf(causes);
+            causes = causes.isEmpty() ? Set.of() : Collections.unmodifiableSet(EnumSet.copyOf(causes));
             Check.that(quantile == -1 || (quantile > 0 && quantile < 1), "quantile %s", quantile);
             Check.notNegative(worstNanos, "worst");
             Check.share(outageShare, "share");

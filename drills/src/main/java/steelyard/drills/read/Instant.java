@@ -1,0 +1,48 @@
+package steelyard.drills.read;
+
+import org.jspecify.annotations.Nullable;
+
+/**
+ * A time of the play as the file says it.
+ *
+ * @param base the name of a cue, or null for the start of the play
+ * @param offsetNanos from there on, perhaps negative
+ */
+record Instant(Place place, @Nullable String base, long offsetNanos) {
+
+    /** Reads {@code 15s}, {@code fulmar dies}, {@code fulmar dies + 2s} or {@code fulmar dies - 100ms}; null when noted. */
+    static @Nullable Instant read(Fields fields, String key) {
+        Node node = fields.node(key);
+        String text = fields.read(key, TEXT);
+        return node == null || text == null ? null : parse(new Placed<>(node.place(), text), key, fields.problems());
+    }
+
+    private static final Quantity<String> TEXT = Quantity.of(
+            "an instant", "15s, or the name of a cue and perhaps + 2s", text -> text.isEmpty() ? null : text);
+
+    private static @Nullable Instant parse(Placed<String> text, String key, Problems problems) {
+        String written = text.value();
+        int sign = Math.max(written.lastIndexOf('+'), written.lastIndexOf('-'));
+        if (sign < 0) {
+            return looksLikeNumber(written)
+                    ? at(text, null, 1, Durations.DURATION.parse(text, key, problems))
+                    : new Instant(text.place(), written, 0);
+        }
+        String base = written.substring(0, sign).strip();
+        Placed<String> rest =
+                new Placed<>(text.place(), written.substring(sign + 1).strip());
+        int direction = written.charAt(sign) == '-' ? -1 : 1;
+        return at(text, base.isEmpty() ? null : base, direction, Durations.DURATION.parse(rest, key, problems));
+    }
+
+    private static @Nullable Instant at(
+            Placed<String> text, @Nullable String base, int direction, @Nullable Long offset) {
+        return offset == null ? null : new Instant(text.place(), base, direction * offset);
+    }
+
+    /** A text that begins like a number is meant as a duration, so that {@code 15} is told its unit. */
+    static boolean looksLikeNumber(String text) {
+        char c = text.charAt(0);
+        return c == '.' || (c >= '0' && c <= '9');
+    }
+}

@@ -1,0 +1,126 @@
+package steelyard.drills.read;
+
+import java.util.Set;
+import org.jspecify.annotations.Nullable;
+import steelyard.drills.model.Pool;
+import steelyard.drills.model.Probe;
+import steelyard.drills.model.Retry;
+import steelyard.drills.model.Timeouts;
+import steelyard.drills.model.WarmUp;
+
+/** Reads one pool. */
+final class PoolReader {
+    private static final long SECOND = Durations.SECOND;
+    private static final Quantity<Pool.Method> METHOD = Words.of("a method", Pool.Method.values());
+    private static final Quantity<Pool.Count> COUNT = Words.of("a unit to count", Pool.Count.values());
+    private static final Quantity<Pool.Weights> WEIGHTS = Words.of("an owner of weights", Pool.Weights.values());
+    private static final Quantity<Probe.Kind> PROBE_KIND = Words.of("a kind of probe", Probe.Kind.values());
+    private static final Quantity<Integer> IN_A_ROW = Numbers.from(1, 1_000);
+    private static final Quantity<Integer> PORT = Numbers.from(1, 65_535);
+    private static final Quantity<Integer> RETRIES = Numbers.from(1, 100);
+    private static final Quantity<Integer> BUCKET = Numbers.from(1, 1_000_000);
+
+    static final Quantity<String> PATH = Quantity.of("a path", "/sailings/today", text -> text)
+            .that(PoolReader::fitsRequestLine, "is not a path", "begin with a slash, and write no space");
+
+    private final Problems problems;
+    private final BackendsReader backends;
+
+    PoolReader(Problems problems, BackendsReader backends) {
+        this.problems = problems;
+        this.backends = backends;
+    }
+
+    /** The pool, or null when it has no backend. */
+    @Nullable
+    Pool read(Node.Entry entry) {
+        Fields fields = Fields.open(entry.value(), Keys.POOL, problems);
+        Pool.Method method = fields.need("method", METHOD, Pool.Method.WEIGHTED_ROUND_ROBIN);
+        Pool.Weights weights = fields.read("weights", WEIGHTS, Pool.Weights.BACKEND);
+        Probe probe = fields.has("probe") ? probe(fields.map("probe", Keys.PROBE)) : null;
+        BackendsReader.OfPool ofPool = backends.read(fields, entry.key());
+        checkWeights(fields, method, weights, ofPool);
+        if (ofPool.backends().isEmpty()) {
+            return null;
+        }
+        return new Pool(
+                entry.key(),
+                method,
+                fields.read("count", COUNT, Pool.Count.REQUESTS),
+                weights,
+                probe,
+                fields.has("warm-up") ? warmUp(fields) : null,
+                fields.map("drain", Keys.DRAIN).read("limit", Durations.POSITIVE, 30 * SECOND),
+                fields.has("retry") ? retry(fields.map("retry", Keys.RETRY)) : null,
+                timeouts(fields.map("timeouts", Keys.TIMEOUTS)),
+                fields.read("forwarded", Numbers.YES_OR_NO, false),
+                fields.map("front", Keys.FRONT).read("port", PORT, 0),
+                ofPool.backends());
+    }
+
+    private Probe probe(Fields fields) {
+        Probe.Kind kind = fields.read("kind", PROBE_KIND, Probe.Kind.HTTP);
+        String path = null;
+        if (kind == Probe.Kind.HTTP) {
+            path = fields.need("path", PATH, "/");
+        } else if (fields.has("path")) {
+            problems.add(
+                    fields.keyPlace("path"), "a tcp probe asks for no path", "leave out path, or write kind: http");
+        }
+        return new Probe(
+                kind,
+                path,
+                fields.read("every", Durations.POSITIVE, 2 * SECOND),
+                fields.read("within", Durations.POSITIVE, SECOND),
+                fields.read("misses", IN_A_ROW, 3),
+                fields.read("passes", IN_A_ROW, 2));
+    }
+
+    private WarmUp warmUp(Fields pool) {
+        if (pool.node("warm-up") instanceof Node.Scalar) {
+            return new WarmUp(pool.read("warm-up", Durations.POSITIVE, SECOND), 0.1);
+        }
+        Fields fields = pool.map("warm-up", Keys.WARM_UP);
+        return new WarmUp(
+                fields.need("ramp", Durations.POSITIVE, SECOND), fields.read("floor", Shares.ABOVE_ZERO, 0.1));
+    }
+
+    private static Retry retry(Fields fields) {
+        return new Retry(
+                fields.read("at-most", RETRIES, 1),
+                fields.read("budget", Shares.SHARE, 0.2),
+                fields.read("bucket", BUCKET, 10),
+                Set.copyOf(fields.values("also", Numbers.STATUS)));
+    }
+
+    private static Timeouts timeouts(Fields fields) {
+        return new Timeouts(
+                fields.read("connect", Durations.POSITIVE, SECOND),
+                fields.read("first-byte", Durations.POSITIVE, 10 * SECOND),
+                fields.read("idle", Durations.POSITIVE, 60 * SECOND));
+    }
+
+    private void checkWeights(Fields fields, Pool.Method method, Pool.Weights weights, BackendsReader.OfPool ofPool) {
+        Place written = ofPool.firstWeight();
+        if (method == Pool.Method.ROUND_ROBIN) {
+            if (weights == Pool.Weights.HOST) {
+                problems.notice(
+                        fields.keyPlace("weights"),
+                        "under round-robin weights play no part",
+                        "write method: weighted-round-robin to use them");
+            } else if (written != null && ofPool.weightsDiffer()) {
+                problems.notice(
+                        written,
+                        "under round-robin weights play no part",
+                        "write method: weighted-round-robin to use them");
+            }
+        } else if (written != null && ofPool.noneWeighs()) {
+            problems.add(written, "every backend of the pool has weight 0", "give one a weight of at least 1");
+        }
+    }
+
+    /** Whether a text can stand in a request line as it is: printable ASCII that begins with a slash. */
+    private static boolean fitsRequestLine(String path) {
+        return path.startsWith("/") && path.chars().allMatch(c -> c > ' ' && c < 0x7f && c != '#');
+    }
+}

@@ -1,0 +1,45 @@
+package steelyard.drills.read;
+
+import java.util.ArrayList;
+import java.util.Comparator;
+import java.util.List;
+
+/** Collects what is found while one text is read. */
+final class Problems {
+    /** More lines than that help nobody. */
+    private static final int MOST = 200;
+
+    private final String file;
+    private final List<Problem> found = new ArrayList<>();
+    private boolean refused;
+
+    Problems(String file) {
+        this.file = file;
+    }
+
+    void add(Place place, String message, String remedy) {
+        refused = true;
+        keep(Problem.Severity.PROBLEM, place, message, remedy);
+    }
+
+    void notice(Place place, String message, String remedy) {
+        keep(Problem.Severity.NOTICE, place, message, remedy);
+    }
+
+    private void keep(Problem.Severity severity, Place place, String message, String remedy) {
+        if (found.size() < MOST) {
+            found.add(new Problem(severity, file, place.line(), place.column(), message, remedy));
+        }
+    }
+
+    /** Whether the text cannot become a value. */
+    boolean any() {
+        return refused;
+    }
+
+    List<Problem> inOrder() {
+        List<Problem> sorted = new ArrayList<>(found);
+        sorted.sort(Comparator.comparingInt(Problem::line).thenComparingInt(Problem::column));
+        return sorted;
+    }
+}

@@ -1,0 +1,41 @@
+package steelyard.drills.read;
+
+import static org.assertj.core.api.Assertions.assertThat;
+
+import java.io.IOException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.MethodSource;
+import steelyard.drills.model.Drill;
+
+class DrillLibraryTest {
+    static java.util.List<String> names() {
+        return DrillLibrary.names();
+    }
+
+    @ParameterizedTest
+    @MethodSource("names")
+    void text_ofABundledDrill_isPlayable(String name) {
+        Parsed<Drill> parsed =
+                DrillReader.read(name + ".yaml", DrillLibrary.text(name).orElseThrow());
+        assertThat(parsed.problems())
+                .allSatisfy(problem -> assertThat(problem.severity()).isEqualTo(Problem.Severity.NOTICE));
+        assertThat(parsed.value()).isPresent();
+        assertThat(parsed.value().orElseThrow().expectations()).hasSizeGreaterThanOrEqualTo(4);
+    }
+
+    @Test
+    void names_areTheFilesOfTheFolder() throws IOException {
+        try (var files = Files.list(Path.of("library"))) {
+            assertThat(files.map(file -> file.getFileName().toString().replace(".yaml", "")))
+                    .containsExactlyInAnyOrderElementsOf(DrillLibrary.names());
+        }
+    }
+
+    @Test
+    void text_ofAnUnknownName_isEmpty() {
+        assertThat(DrillLibrary.text("../drill.schema")).isEmpty();
+    }
+}
