@@ -1,0 +1,110 @@
+package steelyard.harness.record;
+
+import com.fasterxml.jackson.databind.JsonNode;
+import java.util.List;
+import java.util.Map;
+import org.jspecify.annotations.Nullable;
+
+/**
+ * A run as its folder tells it; also that of a play that was killed, whose verdict is null and whose tables end early.
+ * Times are seconds of play time. Immutable but for the arrays, which a reader leaves alone.
+ *
+ * @param drill title of the drill
+ * @param ended {@code complete}, {@code interrupted}, or {@code playing} for a play that was killed
+ * @param machine what {@code machine.json} says, in its order; empty when it is not there
+ */
+public record RunData(
+        String drill,
+        String about,
+        String stage,
+        String backendsRun,
+        long seed,
+        double lasts,
+        String ended,
+        String version,
+        List<HostRow> hosts,
+        List<PoolRow> pools,
+        List<BackendRow> backends,
+        @Nullable VerdictRow verdict,
+        List<FindingRow> expectations,
+        List<FindingRow> measures,
+        List<SelfCheck> checks,
+        String source,
+        Map<String, String> machine,
+        Slices slices,
+        List<StandingRow> standings,
+        List<CueRow> cues) {
+
+    /** The columns of {@code slices.csv} that each backend has, behind its name and a colon. */
+    public static final List<String> BACKEND_COLUMNS =
+            List.of("picked", "in-flight", "standing", "weight", "entitled", "utilisation", "waiting");
+
+    /**
+     * Reads a run.
+     *
+     * @throws FolderRefused when there is no run, or one that cannot be understood
+     */
+    public static RunData read(RunFolder folder) throws FolderRefused {
+        return new RunReader(folder).read();
+    }
+
+    /** A host of the cast. */
+    public record HostRow(String name, int weight, @Nullable String zone) {}
+
+    /** A pool of the cast; settings in words, in order. */
+    public record PoolRow(String name, String method, String count, String weights, Map<String, String> settings) {}
+
+    /** A backend of the cast, in stage order. */
+    public record BackendRow(String name, String pool, String host, int weight) {}
+
+    /** The verdict in one line. */
+    public record VerdictRow(boolean met, boolean fit, String text) {}
+
+    /**
+     * An expectation or a measure. Durations in seconds, shares as fractions.
+     *
+     * @param value NaN where it has none
+     * @param least NaN without a lower bound
+     * @param most NaN without an upper bound
+     */
+    public record FindingRow(
+            String measure,
+            @Nullable String of,
+            String text,
+            @Nullable String bound,
+            String measured,
+            double value,
+            double least,
+            double most,
+            String unit,
+            @Nullable String margin,
+            boolean met,
+            @Nullable String why) {
+
+        static FindingRow of(JsonNode node) {
+            return new FindingRow(
+                    node.path("measure").asText(),
+                    text(node, "of"),
+                    node.path("text").asText(),
+                    text(node, "bound"),
+                    node.path("measured").asText(),
+                    node.path("value").asDouble(Double.NaN),
+                    node.path("least").asDouble(Double.NaN),
+                    node.path("most").asDouble(Double.NaN),
+                    node.path("unit").asText(),
+                    text(node, "margin"),
+                    node.path("met").asBoolean(true),
+                    text(node, "why"));
+        }
+
+        private static @Nullable String text(JsonNode node, String key) {
+            return node.path(key).isTextual() ? node.path(key).asText() : null;
+        }
+    }
+
+    /** A change of standing. */
+    public record StandingRow(double at, String backend, String from, String to, String cause, boolean pickable) {}
+
+    /** A cue that was applied; {@code by} is {@code drill}, {@code hand} or {@code end}. */
+    public record CueRow(double due, double at, String cue, String action, String by) {}
+}

@@ -1,0 +1,75 @@
+package steelyard.harness.record;
+
+import java.io.IOException;
+import java.nio.file.DirectoryStream;
+import java.nio.file.Files;
+import java.nio.file.Path;
+
+/** The folder that a play leaves behind, and the names of its files. */
+public final class RunFolder {
+    public static final String RUN = "run.json";
+    public static final String SLICES = "slices.csv";
+    public static final String STANDING = "standing.csv";
+    public static final String CUES = "cues.csv";
+    public static final String LATENCY = "latency.hlog";
+    public static final String MACHINE = "machine.json";
+    public static final String VERDICT = "verdict.json";
+    public static final String JUNIT = "junit.xml";
+    public static final String REPORT = "report.html";
+
+    private final Path path;
+
+    private RunFolder(Path path) {
+        this.path = path;
+    }
+
+    /**
+     * Makes the folder, its parents too, or takes an empty one that is there.
+     *
+     * @throws FolderRefused when it cannot be made or written to, or holds something already
+     */
+    public static RunFolder create(Path path) throws FolderRefused {
+        if (Files.exists(path) && !Files.isDirectory(path)) {
+            throw new FolderRefused(path + " is a file; name a folder that does not exist yet");
+        }
+        if (Files.isDirectory(path) && !empty(path)) {
+            throw new FolderRefused(path + " is already there and not empty; name another folder or remove it");
+        }
+        try {
+            Files.createDirectories(path);
+            Files.delete(Files.createTempFile(path, "check", null));
+        } catch (IOException e) {
+            throw new FolderRefused(path + " cannot be written to; name a folder that can", e);
+        }
+        return new RunFolder(path);
+    }
+
+    /**
+     * Takes a folder that a play left behind.
+     *
+     * @throws FolderRefused when it holds no run
+     */
+    public static RunFolder existing(Path path) throws FolderRefused {
+        if (!Files.isRegularFile(path.resolve(RUN))) {
+            throw new FolderRefused(path + " holds no run: there is no " + RUN + " in it");
+        }
+        return new RunFolder(path);
+    }
+
+    public Path path() {
+        return path;
+    }
+
+    /** The path of one of its files. */
+    public Path file(String name) {
+        return path.resolve(name);
+    }
+
+    private static boolean empty(Path path) throws FolderRefused {
+        try (DirectoryStream<Path> entries = Files.newDirectoryStream(path)) {
+            return !entries.iterator().hasNext();
+        } catch (IOException e) {
+            throw new FolderRefused(path + " cannot be read; name another folder", e);
+        }
+    }
+}

@@ -1,0 +1,9 @@
+package steelyard.harness.record;
+
+/**
+ * One of the checks that a play makes of itself.
+ *
+ * @param check what was checked
+ * @param text what was found, in words
+ */
+public record SelfCheck(String check, boolean ok, String text) {}
