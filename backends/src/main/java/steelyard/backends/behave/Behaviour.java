@@ -159,6 +159,11 @@ public final class Behaviour {
         return faults.listening();
     }
 
+    /** Whether requests and probes are met with silence. */
+    public boolean hanging() {
+        return faults.hanging();
+    }
+
     /** The accounts, after all that was planned up to now. Costs a walk over the requests held. */
     public Figures figures(long nowNanos, ReplySink sink) {
         long now = poll(nowNanos, sink);

@@ -1,0 +1,54 @@
+package steelyard.backends.stub;
+
+import io.netty.handler.codec.http.HttpRequest;
+import org.jspecify.annotations.Nullable;
+import steelyard.backends.behave.Behaviour;
+
+/** One request on one connection, from its head to the last byte of its answer. */
+final class Exchange {
+
+    final Connection connection;
+    final long token;
+    final boolean probe;
+    /** Number of the request, or of the probe. */
+    final long request;
+
+    final int attempt;
+    /** Whether the answer has no body because the request is a HEAD. */
+    final boolean headOnly;
+
+    final boolean keepAlive;
+    /** Kept only while the mappings may still have to see it. */
+    @Nullable
+    HttpRequest head;
+
+    /** What the mappings answer, found when the request had been read. */
+    Answers.@Nullable Answer answer;
+
+    /** Where the behaviour holds it. */
+    int place = Behaviour.NOWHERE;
+
+    /** What to send, once that is known; answers leave in the order of their requests. */
+    @Nullable
+    Object reply;
+
+    int status;
+    boolean over;
+
+    Exchange(
+            Connection connection,
+            long token,
+            boolean probe,
+            long request,
+            int attempt,
+            boolean headOnly,
+            boolean keepAlive) {
+        this.connection = connection;
+        this.token = token;
+        this.probe = probe;
+        this.request = request;
+        this.attempt = attempt;
+        this.headOnly = headOnly;
+        this.keepAlive = keepAlive;
+    }
+}

@@ -1,0 +1,277 @@
+package steelyard.backends.stub;
+
+import io.netty.channel.EventLoop;
+import io.netty.handler.codec.http.FullHttpResponse;
+import io.netty.handler.codec.http.HttpMethod;
+import io.netty.handler.codec.http.HttpRequest;
+import io.netty.handler.codec.http.HttpUtil;
+import io.netty.util.collection.LongObjectHashMap;
+import io.netty.util.collection.LongObjectMap;
+import io.netty.util.concurrent.Future;
+import java.util.ArrayList;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Map;
+import java.util.Set;
+import java.util.concurrent.TimeUnit;
+import java.util.function.LongSupplier;
+import org.jspecify.annotations.Nullable;
+import steelyard.backends.behave.Behaviour;
+import steelyard.backends.behave.Chance;
+import steelyard.backends.behave.Change;
+import steelyard.backends.behave.Figures;
+import steelyard.backends.behave.Reply;
+import steelyard.backends.behave.ReplySink;
+
+/**
+ * Drives a behaviour from one event loop and carries out its plans: requests in, replies out, one timer for the next
+ * deadline. Decides nothing itself. On the stub's event loop only.
+ */
+final class PlanRunner implements ReplySink {
+
+    private final StubSettings settings;
+    private final EventLoop loop;
+    private final LongSupplier clock;
+    private final BackendListener listener;
+    private final Chance chance;
+    private final Behaviour behaviour;
+    private final Replies replies;
+    private final Door door;
+    private final Set<Connection> connections = new LinkedHashSet<>();
+    private final LongObjectMap<Exchange> held = new LongObjectHashMap<>();
+
+    private long tokens;
+    private long probes;
+    private long unnumbered;
+    private long bodyBytes;
+    private @Nullable Future<?> timer;
+    private long timerNanos;
+
+    PlanRunner(StubSettings settings, EventLoop loop, LongSupplier clock, BackendListener listener, DoorMaker doors) {
+        this.settings = settings;
+        this.loop = loop;
+        this.clock = clock;
+        this.listener = listener;
+        this.chance = new Chance(settings.seed());
+        this.behaviour = new Behaviour(settings.backend(), settings.behaviour(), chance, clock.getAsLong());
+        this.replies = new Replies(settings.behaviour().bodyBytes());
+        this.door = doors.make(this);
+    }
+
+    /** Makes the door through which connections of this runner come. */
+    interface DoorMaker {
+        Door make(PlanRunner runner);
+    }
+
+    Door door() {
+        return door;
+    }
+
+    Replies replies() {
+        return replies;
+    }
+
+    boolean hanging() {
+        return behaviour.hanging();
+    }
+
+    boolean listening() {
+        return behaviour.listening();
+    }
+
+    long now() {
+        return clock.getAsLong();
+    }
+
+    void opened(Connection connection) {
+        connections.add(connection);
+    }
+
+    void closed(Connection connection) {
+        connections.remove(connection);
+    }
+
+    /** The head of a request was read. */
+    Exchange begin(Connection connection, HttpRequest head) {
+        boolean probe = RequestHeads.path(head.uri()).equals(settings.probePath());
+        long number = RequestHeads.number(head, StubHeaders.REQUEST);
+        if (number < 0) {
+            number = probe ? probes : --unnumbered;
+        }
+        if (probe) {
+            probes++;
+        }
+        int attempt = (int) Math.max(0, Math.min(Integer.MAX_VALUE, RequestHeads.number(head, StubHeaders.ATTEMPT)));
+        boolean headOnly = HttpMethod.HEAD.equals(head.method());
+        Exchange exchange =
+                new Exchange(connection, tokens++, probe, number, attempt, headOnly, HttpUtil.isKeepAlive(head));
+        if (!probe) {
+            exchange.head = settings.answers() == null ? null : head;
+            listener.received(settings.backend(), number, attempt, clock.getAsLong());
+        }
+        return exchange;
+    }
+
+    /** A message that is no HTTP request: it is answered, but is neither traffic nor a probe. */
+    Exchange malformed(Connection connection) {
+        Exchange exchange = new Exchange(connection, tokens++, false, --unnumbered, 0, false, false);
+        exchange.over = true;
+        return exchange;
+    }
+
+    /** A request was read to its end. */
+    void arrive(Exchange exchange, byte[] body) {
+        held.put(exchange.token, exchange);
+        if (exchange.probe) {
+            behaviour.probe(exchange.token, exchange.request, clock.getAsLong(), this);
+        } else {
+            long extraNanos = findAnswer(exchange, body);
+            exchange.place = behaviour.arrive(
+                    exchange.token, exchange.request, exchange.attempt, extraNanos, clock.getAsLong(), this);
+        }
+        arm();
+    }
+
+    void countBody(int bytes) {
+        bodyBytes += bytes;
+    }
+
+    long bodyBytes() {
+        return bodyBytes;
+    }
+
+    /** The connection of an exchange closed before its reply had gone. */
+    void abandon(Exchange exchange) {
+        long now = clock.getAsLong();
+        behaviour.abandon(exchange.place, exchange.token, now, this);
+        held.remove(exchange.token);
+        end(exchange, false, 0, now);
+        arm();
+    }
+
+    /** The reply of an exchange was handed to the socket, or could not be. */
+    void sent(Exchange exchange, boolean inFull) {
+        end(exchange, inFull, exchange.status, clock.getAsLong());
+    }
+
+    /** Tells the listener once that a request is over. */
+    void end(Exchange exchange, boolean inFull, int status, long atNanos) {
+        if (!exchange.over) {
+            exchange.over = true;
+            if (!exchange.probe) {
+                listener.ended(settings.backend(), exchange.request, exchange.attempt, inFull, status, atNanos);
+            }
+        }
+    }
+
+    /** @return when it was applied */
+    long apply(Change change) {
+        long now = clock.getAsLong();
+        behaviour.apply(change, now, this);
+        arm();
+        return now;
+    }
+
+    Figures figures() {
+        Figures figures = behaviour.figures(clock.getAsLong(), this);
+        arm();
+        return figures;
+    }
+
+    /** Stops everything; what is open ends as abandoned. Returns the connections, to be waited for. */
+    List<Connection> stop() {
+        door.shut();
+        if (timer != null) {
+            timer.cancel(false);
+        }
+        return new ArrayList<>(connections);
+    }
+
+    @Override
+    public void reply(long token, long request, int attempt, Reply reply, int status, int plannedBytes, long atNanos) {
+        finish(token, reply, status);
+    }
+
+    @Override
+    public void probeReply(long token, long probe, Reply reply, int status, long atNanos) {
+        finish(token, reply, status);
+    }
+
+    @Override
+    public void listening(boolean open, long atNanos) {
+        if (open) {
+            door.open();
+        } else {
+            door.shut();
+        }
+    }
+
+    @Override
+    public void connectionsReset(long atNanos) {
+        List<Connection> all = new ArrayList<>(connections);
+        connections.clear();
+        all.forEach(connection -> connection.reset(atNanos));
+        held.clear();
+    }
+
+    private void finish(long token, Reply reply, int status) {
+        Exchange exchange = held.remove(token);
+        if (exchange == null) {
+            // Abandoned before.
+            return;
+        }
+        switch (reply) {
+            case ANSWER -> exchange.connection.reply(exchange, answer(exchange, status));
+            case TURNED_AWAY, FAULT ->
+                exchange.connection.reply(exchange, replies.shortText(status, exchange.headOnly));
+            case SILENCE, LOST, DROPPED -> {
+                // Nothing is sent. A lost one ends with the reset of its connection, which follows.
+            }
+        }
+    }
+
+    private FullHttpResponse answer(Exchange exchange, int status) {
+        if (exchange.probe) {
+            return replies.shortText(status, exchange.headOnly);
+        }
+        return exchange.answer == null
+                ? replies.plain(status, exchange.headOnly)
+                : replies.mapped(exchange.answer, exchange.headOnly);
+    }
+
+    private long findAnswer(Exchange exchange, byte[] body) {
+        Answers answers = settings.answers();
+        HttpRequest head = exchange.head;
+        if (answers == null || head == null) {
+            return 0;
+        }
+        List<Map.Entry<String, String>> fields = head.headers().entries();
+        String target = RequestHeads.target(head.uri());
+        Answers.Answer answer = answers.find(new Answers.Asked(head.method().name(), target, fields, body));
+        exchange.head = null;
+        exchange.answer = answer;
+        return answer.delay().nanos(chance, exchange.request, exchange.attempt);
+    }
+
+    private void arm() {
+        if (!behaviour.hasDeadline()) {
+            return;
+        }
+        long deadlineNanos = behaviour.nextDeadlineNanos();
+        if (timer != null) {
+            if (timerNanos - deadlineNanos <= 0) {
+                return;
+            }
+            timer.cancel(false);
+        }
+        timerNanos = deadlineNanos;
+        long delayNanos = Math.max(0, deadlineNanos - clock.getAsLong());
+        timer = loop.schedule(this::onTimer, delayNanos, TimeUnit.NANOSECONDS);
+    }
+
+    private void onTimer() {
+        timer = null;
+        behaviour.poll(clock.getAsLong(), this);
+        arm();
+    }
+}

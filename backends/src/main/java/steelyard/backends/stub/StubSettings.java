@@ -1,0 +1,35 @@
+package steelyard.backends.stub;
+
+import java.net.InetSocketAddress;
+import java.util.Objects;
+import org.jspecify.annotations.Nullable;
+import steelyard.backends.behave.BehaviourSettings;
+
+/**
+ * What one stub is made of.
+ *
+ * @param backend its number in the play, 0 or above: handed to the listener, and the key of its probes' draws
+ * @param address where it listens, with a port of its own
+ * @param behaviour how it serves
+ * @param seed of its draws
+ * @param probePath path that is a probe and not traffic, or null for none
+ * @param answers where its answers come from, or null for the plain answer of the behaviour
+ */
+public record StubSettings(
+        int backend,
+        InetSocketAddress address,
+        BehaviourSettings behaviour,
+        long seed,
+        @Nullable String probePath,
+        @Nullable Answers answers) {
+    public StubSettings {
+        Objects.requireNonNull(address);
+        Objects.requireNonNull(behaviour);
+        if (backend < 0) {
+            throw new IllegalArgumentException("backend number must be 0 or more, but is " + backend);
+        }
+        if (address.isUnresolved() || address.getPort() == 0) {
+            throw new IllegalArgumentException("a stub needs an address with a port, but got " + address);
+        }
+    }
+}
