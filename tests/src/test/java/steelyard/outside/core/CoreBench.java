@@ -1,0 +1,100 @@
+package steelyard.outside.core;
+
+import java.util.ArrayDeque;
+import java.util.ArrayList;
+import java.util.Deque;
+import java.util.List;
+import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Chance;
+import steelyard.balancer.core.decide.Decider;
+import steelyard.balancer.core.decide.DecisionSink;
+import steelyard.balancer.core.decide.Orders;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.core.standing.Transition;
+import steelyard.balancer.settings.BackendSettings;
+import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.PoolSettings.Method;
+import steelyard.balancer.settings.ProbeSettings;
+import steelyard.balancer.settings.TimeoutSettings;
+
+/** A Decider on a bench: one pool, its orders queued, its changes of standing kept. */
+final class CoreBench implements DecisionSink, Orders {
+    static final long SECOND = 1_000_000_000L;
+
+    final Deque<Long> probesToAnswer = new ArrayDeque<>();
+    final List<Transition> transitions = new ArrayList<>();
+    final Decider decider;
+
+    CoreBench(Method method, int[] weights, @Nullable ProbeSettings probe, Chance chance, long nowNanos) {
+        List<BackendSettings> backends = IntStream.range(0, weights.length)
+                .mapToObj(i -> new BackendSettings("backend-" + i, weights[i], 0, false))
+                .toList();
+        PoolSettings pool = new PoolSettings(
+                "seats",
+                method,
+                PoolSettings.Count.REQUESTS,
+                PoolSettings.Weights.BACKEND,
+                probe,
+                null,
+                30 * SECOND,
+                null,
+                new TimeoutSettings(SECOND, SECOND, SECOND),
+                false,
+                0,
+                backends);
+        BalancerSettings settings =
+                new BalancerSettings("bench", 1, List.of(new HostSettings("quay", 1)), List.of(pool));
+        decider = new Decider(settings, chance, this, this, nowNanos);
+    }
+
+    /** Who is served in so many picks, as letters in list order. */
+    String order(int picks) {
+        StringBuilder order = new StringBuilder();
+        for (int request = 0; request < picks; request++) {
+            int backend = decider.pick(0, request, 1, Decider.NOBODY, new int[0], 0, request);
+            order.append((char) ('A' + backend));
+            decider.ended(backend, request, 1, Outcome.ANSWERED, 200, request);
+        }
+        return order.toString();
+    }
+
+    @Override
+    public void startProbe(int backend, long probe) {
+        probesToAnswer.add(probe);
+    }
+
+    @Override
+    public void dropProbe(int backend, long probe) {
+        probesToAnswer.remove(probe);
+    }
+
+    @Override
+    public void cut(int backend) {}
+
+    @Override
+    public void stood(Transition transition) {
+        transitions.add(transition);
+    }
+
+    @Override
+    public void picked(long nowNanos, int pool, int backend, long request, int attempt, int inFlight) {}
+
+    @Override
+    public void nobody(long nowNanos, int pool, long request, int attempt) {}
+
+    @Override
+    public void ended(
+            long nowNanos, int backend, long request, int attempt, Outcome outcome, int status, int inFlight) {}
+
+    @Override
+    public void retryAsked(long nowNanos, int pool, long request, int attempt, boolean granted) {}
+
+    @Override
+    public void probed(long nowNanos, int backend, long probe, boolean passed) {}
+
+    @Override
+    public void reweighed(long nowNanos, boolean host, int number, int weight) {}
+}
