@@ -1,0 +1,230 @@
+package steelyard.balancer.live;
+
+import java.io.IOException;
+import java.net.InetSocketAddress;
+import java.security.SecureRandom;
+import java.util.ArrayList;
+import java.util.HexFormat;
+import java.util.List;
+import java.util.function.LongSupplier;
+import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Chance;
+import steelyard.balancer.core.decide.DecisionSink;
+import steelyard.balancer.core.decide.Orders;
+import steelyard.balancer.live.control.ControlPage;
+import steelyard.balancer.live.control.Counts;
+import steelyard.balancer.live.guard.BackendReadings;
+import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.live.http.Forwarding;
+import steelyard.balancer.live.probe.Probes;
+import steelyard.balancer.live.tcp.Transport;
+import steelyard.balancer.settings.BalancerSettings;
+
+/**
+ * A running balancer: one front a pool on 127.0.0.1.
+ *
+ * <p>Methods may be called from any thread but the balancer's own event loops. Hand commands take effect before they
+ * return; what follows from them on the wire (cutting, closing) comes a moment later.
+ */
+public final class Balancer implements AutoCloseable {
+    private static final int TOKEN_BYTES = 24;
+
+    private final BalancerSettings settings;
+    private final Transport transport;
+    private final GuardedDecider decider;
+    private final Counts counts;
+    private final Forwarding forwarding;
+    private final Probes probes;
+    private final List<InetSocketAddress> fronts = new ArrayList<>();
+    private @Nullable ControlPage control;
+    private boolean closed;
+
+    private Balancer(
+            BalancerSettings settings,
+            List<InetSocketAddress> addresses,
+            LongSupplier nanoClock,
+            Chance chance,
+            DecisionSink listener) {
+        this.settings = settings;
+        this.transport = Transport.open(settings.loops());
+        this.counts = new Counts(settings, listener);
+        this.decider = new GuardedDecider(settings, nanoClock, chance, counts, transport.home(), new CarryOut());
+        this.forwarding = new Forwarding(settings, decider, transport, addresses);
+        this.probes = new Probes(settings, decider, transport, addresses);
+    }
+
+    /**
+     * Binds the fronts. They answer after {@link #begin}; connections that come earlier wait.
+     *
+     * @param nanoClock monotonic, in nanoseconds; read from several threads
+     * @param listener is told every decision, in order, inside the balancer's lock: it must be quick and must not call
+     *     back
+     * @throws CannotStart when a port cannot be had; nothing is left open then
+     */
+    public static Balancer start(
+            BalancerSettings settings,
+            BackendAddresses backends,
+            FrontPorts ports,
+            LongSupplier nanoClock,
+            Chance chance,
+            DecisionSink listener)
+            throws CannotStart {
+        List<InetSocketAddress> addresses = new ArrayList<>();
+        for (int backend = 0; backend < settings.backends().size(); backend++) {
+            addresses.add(backends.of(backend));
+        }
+        Balancer balancer = new Balancer(settings, addresses, nanoClock, chance, listener);
+        try {
+            for (int pool = 0; pool < settings.pools().size(); pool++) {
+                balancer.bind(pool, ports.of(pool));
+            }
+        } catch (CannotStart e) {
+            balancer.close();
+            throw e;
+        }
+        return balancer;
+    }
+
+    private void bind(int pool, int port) throws CannotStart {
+        try {
+            fronts.add(forwarding.bind(pool, port));
+        } catch (IOException e) {
+            String name = settings.pools().get(pool).name();
+            throw new CannotStart(
+                    "the front of pool " + name + " cannot listen on port " + port + " (" + e.getMessage()
+                            + "): choose another port, or end what holds it",
+                    e);
+        }
+    }
+
+    /**
+     * Starts to decide: probes are counted from {@code nowNanos}, the fronts answer. Once.
+     *
+     * @param nowNanos on the balancer's clock
+     */
+    public void begin(long nowNanos) {
+        decider.begin(nowNanos);
+        forwarding.begin();
+    }
+
+    /** Where the front of a pool listens. */
+    public InetSocketAddress frontAddress(int pool) {
+        return fronts.get(pool);
+    }
+
+    /**
+     * Opens the control page, {@code GET /metrics} as OpenMetrics text. At most once, after {@link #begin}.
+     *
+     * @param port of 127.0.0.1, or 0 for any that is free
+     * @throws CannotStart when the port cannot be had
+     */
+    public synchronized ControlAddress openControl(int port) throws CannotStart {
+        if (control != null || closed) {
+            throw new IllegalStateException("the control page opens once");
+        }
+        byte[] random = new byte[TOKEN_BYTES];
+        new SecureRandom().nextBytes(random);
+        String token = HexFormat.of().formatHex(random);
+        ControlPage page = new ControlPage(settings, decider, counts, token);
+        try {
+            InetSocketAddress address = page.bind(transport, port);
+            control = page;
+            return new ControlAddress(address, token);
+        } catch (IOException e) {
+            page.close();
+            throw new CannotStart(
+                    "the control page cannot listen on port " + port + " (" + e.getMessage()
+                            + "): choose another port, or end what holds it",
+                    e);
+        }
+    }
+
+    /**
+     * Gives a backend no new work, lets what is in flight end, and cuts what is left at the limit.
+     *
+     * @param limitNanos above zero, or 0 for the limit of its pool
+     */
+    public void drain(int backend, long limitNanos) {
+        decider.change((core, now) -> core.drain(backend, limitNanos, now));
+    }
+
+    /** Takes a drained or withdrawn backend back. */
+    public void admit(int backend) {
+        decider.change((core, now) -> core.admit(backend, now));
+    }
+
+    /** Takes a backend out at once; what is in flight goes on. */
+    public void withdraw(int backend) {
+        decider.change((core, now) -> core.withdraw(backend, now));
+    }
+
+    /** Sets the weight of a backend. */
+    public void reweigh(int backend, int weight) {
+        decider.change((core, now) -> core.reweigh(backend, weight, now));
+    }
+
+    /** Sets the weight of a host. */
+    public void reweighHost(int host, int weight) {
+        decider.change((core, now) -> core.reweighHost(host, weight, now));
+    }
+
+    /** Fills {@code readings}, made for as many backends as there are, with the figures of this instant. */
+    public void sample(BackendReadings readings) {
+        decider.read(readings);
+    }
+
+    /**
+     * Closes fronts, connections, probes, the control page and the event loops, in this order. Attempts in flight end
+     * as abandoned. A second call does nothing.
+     *
+     * @throws IllegalStateException with every failure of a step as its suppressed exceptions; later steps are made all
+     *     the same
+     */
+    @Override
+    public synchronized void close() {
+        if (closed) {
+            return;
+        }
+        closed = true;
+        List<RuntimeException> failures = new ArrayList<>();
+        step(failures, forwarding::close);
+        step(failures, decider::end);
+        step(failures, () -> transport.home().submit(probes::close).awaitUninterruptibly());
+        ControlPage page = control;
+        if (page != null) {
+            step(failures, page::close);
+        }
+        step(failures, transport::close);
+        if (!failures.isEmpty()) {
+            IllegalStateException all = new IllegalStateException("the balancer did not close cleanly");
+            failures.forEach(all::addSuppressed);
+            throw all;
+        }
+    }
+
+    private static void step(List<RuntimeException> failures, Runnable step) {
+        try {
+            step.run();
+        } catch (RuntimeException e) {
+            failures.add(e);
+        }
+    }
+
+    /** The core's orders, on the home loop. */
+    private final class CarryOut implements Orders {
+        @Override
+        public void startProbe(int backend, long probe) {
+            probes.start(backend, probe);
+        }
+
+        @Override
+        public void dropProbe(int backend, long probe) {
+            probes.drop(backend, probe);
+        }
+
+        @Override
+        public void cut(int backend) {
+            forwarding.cut(backend);
+        }
+    }
+}

@@ -1,0 +1,10 @@
+package steelyard.balancer.live;
+
+/** A balancer cannot start here. The message is one line that says what is in the way and what to do. */
+public final class CannotStart extends Exception {
+    private static final long serialVersionUID = 1L;
+
+    CannotStart(String message, Throwable cause) {
+        super(message, cause);
+    }
+}

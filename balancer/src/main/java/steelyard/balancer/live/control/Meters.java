@@ -1,0 +1,101 @@
+package steelyard.balancer.live.control;
+
+import io.micrometer.core.instrument.FunctionCounter;
+import io.micrometer.core.instrument.Gauge;
+import io.micrometer.core.instrument.Tags;
+import io.micrometer.prometheusmetrics.PrometheusConfig;
+import io.micrometer.prometheusmetrics.PrometheusMeterRegistry;
+import java.util.List;
+import java.util.Locale;
+import java.util.function.DoubleSupplier;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.core.standing.Standing;
+import steelyard.balancer.live.guard.BackendReadings;
+import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PoolSettings;
+
+/** The meters over {@link Counts} and over the present state of every backend. Used by one thread. */
+final class Meters {
+    static final String OPEN_METRICS = "application/openmetrics-text; version=1.0.0; charset=utf-8";
+
+    private final GuardedDecider decider;
+    private final Counts counts;
+    private final Figures figures;
+    private final BackendReadings readings;
+    private final PrometheusMeterRegistry registry = new PrometheusMeterRegistry(PrometheusConfig.DEFAULT);
+
+    Meters(BalancerSettings settings, GuardedDecider decider, Counts counts) {
+        this.decider = decider;
+        this.counts = counts;
+        this.figures = new Figures(settings);
+        this.readings = new BackendReadings(settings.backends().size());
+        int backend = 0;
+        for (int pool = 0; pool < settings.pools().size(); pool++) {
+            PoolSettings of = settings.pools().get(pool);
+            pool(Tags.of("pool", of.name()), pool);
+            for (var one : of.backends()) {
+                backend(Tags.of("pool", of.name(), "backend", one.name()), backend);
+                backend++;
+            }
+        }
+        List<HostSettings> hosts = settings.hosts();
+        for (int host = 0; host < hosts.size(); host++) {
+            int number = host;
+            counter(
+                    "steelyard.host.reweighs",
+                    Tags.of("host", hosts.get(host).name()),
+                    () -> figures.hostReweighs[number]);
+        }
+    }
+
+    /** The page: counts of one instant, readings of one a moment later. The lock is held only to copy them. */
+    String page() {
+        decider.change((unchanged, now) -> counts.copyTo(figures));
+        decider.read(readings);
+        return registry.scrape(OPEN_METRICS);
+    }
+
+    private void pool(Tags tags, int pool) {
+        counter("steelyard.nobody", tags, () -> figures.nobody[pool]);
+        counter("steelyard.retries", tags.and("answer", "granted"), () -> figures.retriesGranted[pool]);
+        counter("steelyard.retries", tags.and("answer", "denied"), () -> figures.retriesDenied[pool]);
+    }
+
+    private void backend(Tags tags, int backend) {
+        counter("steelyard.picks", tags, () -> figures.picks[backend]);
+        for (Outcome outcome : Outcome.values()) {
+            int ordinal = outcome.ordinal();
+            counter("steelyard.attempts", tags.and("outcome", word(outcome)), () -> figures.outcomes[backend][ordinal]);
+        }
+        counter("steelyard.probes", tags.and("answer", "passed"), () -> figures.probesPassed[backend]);
+        counter("steelyard.probes", tags.and("answer", "missed"), () -> figures.probesMissed[backend]);
+        counter("steelyard.reweighs", tags, () -> figures.reweighs[backend]);
+        for (Standing standing : Standing.values()) {
+            int ordinal = standing.ordinal();
+            Tags stood = tags.and("standing", word(standing));
+            counter("steelyard.transitions", stood, () -> figures.transitions[backend][ordinal]);
+            gauge("steelyard.standing", stood, () -> readings.standing(backend) == standing ? 1 : 0);
+        }
+        gauge("steelyard.in.flight", tags, () -> readings.inFlight(backend));
+        gauge("steelyard.weight", tags, () -> readings.weight(backend));
+        gauge("steelyard.effective.weight", tags, () -> readings.effectiveWeight(backend));
+        gauge("steelyard.entitled.share", tags, () -> readings.entitledShare(backend));
+    }
+
+    /** The registry holds weakly what it reads from; {@code this} is held by the page. */
+    private void counter(String name, Tags tags, DoubleSupplier value) {
+        FunctionCounter.builder(name, this, held -> value.getAsDouble())
+                .tags(tags)
+                .register(registry);
+    }
+
+    private void gauge(String name, Tags tags, DoubleSupplier value) {
+        Gauge.builder(name, this, held -> value.getAsDouble()).tags(tags).register(registry);
+    }
+
+    private static String word(Enum<?> constant) {
+        return constant.name().toLowerCase(Locale.ROOT);
+    }
+}

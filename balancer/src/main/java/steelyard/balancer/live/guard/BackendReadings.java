@@ -1,0 +1,73 @@
+package steelyard.balancer.live.guard;
+
+import java.util.Arrays;
+import steelyard.balancer.core.decide.Decider;
+import steelyard.balancer.core.standing.Standing;
+
+/**
+ * Figures of every backend at one instant, in arrays that are filled again and again.
+ *
+ * <p>Not thread-safe: whoever made it fills and reads it.
+ */
+public final class BackendReadings {
+    private final int[] inFlight;
+    private final Standing[] standing;
+    private final double[] effectiveWeight;
+    private final double[] entitledShare;
+    private final int[] weight;
+    private long atNanos;
+
+    /** @param backends how many the balancer has */
+    public BackendReadings(int backends) {
+        inFlight = new int[backends];
+        standing = new Standing[backends];
+        Arrays.fill(standing, Standing.UP);
+        effectiveWeight = new double[backends];
+        entitledShare = new double[backends];
+        weight = new int[backends];
+    }
+
+    void take(Decider decider, long nowNanos) {
+        atNanos = nowNanos;
+        for (int backend = 0; backend < inFlight.length; backend++) {
+            inFlight[backend] = decider.inFlight(backend);
+            standing[backend] = decider.standing(backend);
+            effectiveWeight[backend] = decider.effectiveWeight(backend, nowNanos);
+            entitledShare[backend] = decider.entitledShare(backend, nowNanos);
+            weight[backend] = decider.weight(backend);
+        }
+    }
+
+    /** The instant of the last filling, on the balancer's clock. */
+    public long atNanos() {
+        return atNanos;
+    }
+
+    public int backends() {
+        return inFlight.length;
+    }
+
+    /** Attempts in flight. */
+    public int inFlight(int backend) {
+        return inFlight[backend];
+    }
+
+    public Standing standing(int backend) {
+        return standing[backend];
+    }
+
+    /** Its weight after warm-up, 0 where it may not be picked. */
+    public double effectiveWeight(int backend) {
+        return effectiveWeight[backend];
+    }
+
+    /** From 0 to 1: its part of the effective weights of its pool. */
+    public double entitledShare(int backend) {
+        return entitledShare[backend];
+    }
+
+    /** The set weight. */
+    public int weight(int backend) {
+        return weight[backend];
+    }
+}

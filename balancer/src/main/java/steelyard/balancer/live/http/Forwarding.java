@@ -1,0 +1,109 @@
+package steelyard.balancer.live.http;
+
+import io.netty.channel.Channel;
+import io.netty.channel.ChannelInitializer;
+import io.netty.channel.ChannelOption;
+import io.netty.channel.EventLoop;
+import io.netty.channel.group.ChannelGroup;
+import io.netty.channel.group.DefaultChannelGroup;
+import io.netty.util.concurrent.GlobalEventExecutor;
+import java.io.IOException;
+import java.net.InetAddress;
+import java.net.InetSocketAddress;
+import java.util.ArrayList;
+import java.util.HashMap;
+import java.util.List;
+import java.util.Map;
+import java.util.function.Consumer;
+import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.live.tcp.Transport;
+import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.TimeoutSettings;
+
+/** The fronts of all pools and the connections behind them. Methods may be called from any thread but a loop's own. */
+public final class Forwarding {
+    private final BalancerSettings settings;
+    private final GuardedDecider decider;
+    private final Transport transport;
+    private final RequestNumbers numbers = new RequestNumbers();
+    private final List<Channel> fronts = new ArrayList<>();
+    private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE);
+    private final Map<EventLoop, LoopConnections> connections = new HashMap<>();
+
+    /** @param addresses by backend number */
+    public Forwarding(
+            BalancerSettings settings, GuardedDecider decider, Transport transport, List<InetSocketAddress> addresses) {
+        this.settings = settings;
+        this.decider = decider;
+        this.transport = transport;
+        List<TimeoutSettings> timeouts = new ArrayList<>();
+        for (PoolSettings pool : settings.pools()) {
+            pool.backends().forEach(backend -> timeouts.add(pool.timeouts()));
+        }
+        for (EventLoop loop : transport.loops()) {
+            connections.put(loop, new LoopConnections(transport.client(loop), addresses, timeouts));
+        }
+    }
+
+    /**
+     * Binds the front of a pool to a loopback port. Connections wait there until {@link #begin}.
+     *
+     * @param port 0 for any that is free
+     * @throws IOException when the port cannot be had
+     */
+    public InetSocketAddress bind(int pool, int port) throws IOException {
+        PoolFront front = PoolFront.of(pool, settings.pools().get(pool), decider, numbers, settings.name());
+        var binding = transport
+                .server()
+                .option(ChannelOption.AUTO_READ, false)
+                .childHandler(new ClientInitializer(front))
+                .bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), port))
+                .awaitUninterruptibly();
+        if (!binding.isSuccess()) {
+            throw new IOException(String.valueOf(binding.cause().getMessage()), binding.cause());
+        }
+        fronts.add(binding.channel());
+        return (InetSocketAddress) binding.channel().localAddress();
+    }
+
+    /** From now on the fronts answer. */
+    public void begin() {
+        fronts.forEach(front -> front.config().setAutoRead(true));
+    }
+
+    /** Ends every attempt in flight on a backend; returns before it is done. */
+    public void cut(int backend) {
+        onEveryLoop(there -> there.cut(backend));
+    }
+
+    /** Closes the fronts, then the client connections, then those to backends, and waits for each. */
+    public void close() {
+        fronts.forEach(front -> front.close().awaitUninterruptibly());
+        clients.close().awaitUninterruptibly();
+        onEveryLoop(LoopConnections::closeAll);
+    }
+
+    private void onEveryLoop(Consumer<LoopConnections> what) {
+        connections.forEach((loop, there) -> loop.execute(() -> what.accept(there)));
+    }
+
+    private final class ClientInitializer extends ChannelInitializer<Channel> {
+        private final PoolFront front;
+
+        ClientInitializer(PoolFront front) {
+            this.front = front;
+        }
+
+        @Override
+        protected void initChannel(Channel channel) {
+            LoopConnections there = connections.get(channel.eventLoop());
+            if (there == null) {
+                throw new IllegalStateException("a loop of another balancer");
+            }
+            clients.add(channel);
+            ClientEncoder encoder = new ClientEncoder();
+            channel.pipeline().addLast(Codecs.requests(), encoder, new ClientHandler(front, there, encoder, channel));
+        }
+    }
+}

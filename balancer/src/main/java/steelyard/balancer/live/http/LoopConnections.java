@@ -1,0 +1,93 @@
+package steelyard.balancer.live.http;
+
+import io.netty.bootstrap.Bootstrap;
+import io.netty.channel.ChannelOption;
+import java.net.InetSocketAddress;
+import java.util.ArrayDeque;
+import java.util.ArrayList;
+import java.util.HashSet;
+import java.util.List;
+import java.util.Set;
+import java.util.concurrent.TimeUnit;
+import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.settings.TimeoutSettings;
+
+/** The connections of one event loop to all backends; idle ones are taken again last used first. Used on its loop only. */
+final class LoopConnections {
+    private final List<Lane> lanes = new ArrayList<>();
+
+    /**
+     * @param client makes channels on this loop
+     * @param addresses by backend number
+     * @param timeouts by backend number
+     */
+    LoopConnections(Bootstrap client, List<InetSocketAddress> addresses, List<TimeoutSettings> timeouts) {
+        for (int backend = 0; backend < addresses.size(); backend++) {
+            lanes.add(new Lane(client, addresses.get(backend), timeouts.get(backend)));
+        }
+    }
+
+    /** An idle connection that is still open, or null. */
+    @Nullable
+    BackendConnection take(int backend) {
+        ArrayDeque<BackendConnection> idle = lanes.get(backend).idle;
+        BackendConnection connection = idle.pollLast();
+        while (connection != null && !connection.open()) {
+            connection = idle.pollLast();
+        }
+        return connection;
+    }
+
+    /** Starts a new connection, which tells the exchange when it stands or does not come to stand. */
+    void connect(int backend, Exchange exchange) {
+        Lane lane = lanes.get(backend);
+        BackendConnection connection = new BackendConnection(this, backend, lane.timeouts, exchange);
+        lane.all.add(connection);
+        connection.opening(
+                lane.bootstrap.clone().handler(connection.initializer()).connect());
+    }
+
+    void idle(BackendConnection connection) {
+        lanes.get(connection.backend()).idle.addLast(connection);
+    }
+
+    void closed(BackendConnection connection) {
+        Lane lane = lanes.get(connection.backend());
+        lane.all.remove(connection);
+        lane.idle.remove(connection);
+    }
+
+    /** Ends every attempt in flight on a backend. */
+    void cut(int backend) {
+        for (BackendConnection connection : List.copyOf(lanes.get(backend).all)) {
+            connection.fail(Outcome.CUT, OwnAnswer.CUT);
+        }
+    }
+
+    void closeAll() {
+        for (Lane lane : lanes) {
+            List.copyOf(lane.all).forEach(BackendConnection::close);
+        }
+    }
+
+    /** Connections that are open or being opened. */
+    int open() {
+        return lanes.stream().mapToInt(lane -> lane.all.size()).sum();
+    }
+
+    /** One backend's connections. */
+    private static final class Lane {
+        private final Bootstrap bootstrap;
+        private final TimeoutSettings timeouts;
+        private final ArrayDeque<BackendConnection> idle = new ArrayDeque<>();
+        private final Set<BackendConnection> all = new HashSet<>();
+
+        Lane(Bootstrap client, InetSocketAddress address, TimeoutSettings timeouts) {
+            long millis = TimeUnit.NANOSECONDS.toMillis(timeouts.connectNanos());
+            this.bootstrap = client.clone().remoteAddress(address).option(ChannelOption.CONNECT_TIMEOUT_MILLIS, (int)
+                    Math.max(1, Math.min(millis, Integer.MAX_VALUE)));
+            this.timeouts = timeouts;
+        }
+    }
+}

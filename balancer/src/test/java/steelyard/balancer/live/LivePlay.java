@@ -1,0 +1,94 @@
+package steelyard.balancer.live;
+
+import io.netty.util.LeakPresenceDetector;
+import java.io.IOException;
+import java.net.InetSocketAddress;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.function.UnaryOperator;
+import steelyard.balancer.live.guard.BackendReadings;
+import steelyard.balancer.settings.BackendSettings;
+import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.TimeoutSettings;
+
+/**
+ * A balancer of one pool of terns, in front of given addresses.
+ *
+ * <p>Closing it says that nothing is in flight and no buffer was left: every buffer of these tests is counted, not a
+ * sample of them.
+ */
+final class LivePlay implements AutoCloseable {
+    static final long SECOND = 1_000_000_000L;
+    static final TimeoutSettings PATIENT = new TimeoutSettings(10 * SECOND, 30 * SECOND, 30 * SECOND);
+
+    static {
+        // read once, when the first buffer class is loaded; no other test of this module loads one
+        System.setProperty("io.netty.customResourceLeakDetector", LeakPresenceDetector.class.getName());
+    }
+
+    final Decisions decisions = new Decisions();
+    final Balancer balancer;
+    private final BalancerSettings settings;
+
+    private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses) throws CannotStart {
+        this.settings = settings;
+        balancer = Balancer.start(settings, addresses::get, pool -> 0, System::nanoTime, backend -> 0.0, decisions);
+        balancer.begin(System.nanoTime());
+    }
+
+    static LivePlay of(InetSocketAddress... addresses) throws CannotStart {
+        return of(UnaryOperator.identity(), addresses);
+    }
+
+    static LivePlay of(UnaryOperator<Pool> with, InetSocketAddress... addresses) throws CannotStart {
+        List<BackendSettings> backends = new ArrayList<>();
+        List<HostSettings> hosts = new ArrayList<>();
+        for (int i = 0; i < addresses.length; i++) {
+            backends.add(new BackendSettings("tern-" + (i + 1), 1, i, false));
+            hosts.add(new HostSettings("quay-" + (i + 1), 1));
+        }
+        PoolSettings pool = with.apply(new Pool()).settings(backends);
+        return new LivePlay(new BalancerSettings("steelyard", 1, hosts, List.of(pool)), List.of(addresses));
+    }
+
+    InetSocketAddress front() {
+        return balancer.frontAddress(0);
+    }
+
+    Wire client() throws IOException {
+        return Wire.to(front());
+    }
+
+    /** Sends one request on a connection of its own and gives back the answer with its content. */
+    String ask(String request) throws IOException {
+        try (Wire wire = client()) {
+            wire.send(request);
+            return wire.readAnswer();
+        }
+    }
+
+    int inFlight() {
+        BackendReadings readings = new BackendReadings(settings.backends().size());
+        balancer.sample(readings);
+        int sum = 0;
+        for (int backend = 0; backend < readings.backends(); backend++) {
+            sum += readings.inFlight(backend);
+        }
+        return sum;
+    }
+
+    @Override
+    public void close() {
+        balancer.close();
+        int left = inFlight();
+        if (left != 0) {
+            throw new AssertionError(left + " attempts are still in flight");
+        }
+        if (decisions.picks().size() != decisions.ends().size()) {
+            throw new AssertionError(decisions.picks() + " picked, but ended " + decisions.ends());
+        }
+        LeakPresenceDetector.check();
+    }
+}
