@@ -24,6 +24,11 @@ public final class DrillLibrary {
         return NAMES.contains(name) ? Optional.of(resource("library/" + name + ".yaml")) : Optional.empty();
     }
 
+    /** The bundled name that was probably meant, if one is close. */
+    public static Optional<String> nearest(String name) {
+        return Optional.ofNullable(NearWord.nearest(name, NAMES));
+    }
+
     /** The text of a resource of this module, which is there or the module was packed wrongly. */
     static String resource(String name) {
         try (InputStream in = DrillLibrary.class.getResourceAsStream("/steelyard/drills/" + name)) {

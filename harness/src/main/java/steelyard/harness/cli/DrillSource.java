@@ -1,0 +1,88 @@
+package steelyard.harness.cli;
+
+import java.io.IOException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.List;
+import java.util.Locale;
+import java.util.Optional;
+import steelyard.drills.model.Drill;
+import steelyard.drills.read.DrillLibrary;
+import steelyard.drills.read.DrillReader;
+import steelyard.drills.read.Parsed;
+
+/**
+ * A drill as it was named on the command line: a file, or else the name of a bundled drill.
+ *
+ * @param name as it is shown
+ * @param stem the file name without its ending, in letters, digits and dashes: for names of folders
+ * @param text what was read
+ * @param parsed what that came to
+ */
+record DrillSource(String name, String stem, String text, Parsed<Drill> parsed) {
+    private static final String ENDING = "\\.ya?ml$";
+
+    /**
+     * Reads what was named. Problems of the drill are left in {@code parsed}.
+     *
+     * @throws CommandFailure when there is neither such a file nor such a bundled drill
+     */
+    static DrillSource named(Path path) throws CommandFailure {
+        String name = path.toString();
+        String bare = name.replaceFirst(ENDING, "");
+        Optional<String> bundled = DrillLibrary.text(bare);
+        if (!Files.exists(path) && bundled.isPresent()) {
+            return new DrillSource(bare, bare, bundled.get(), DrillReader.read(bare, bundled.get()));
+        }
+        boolean looksBare = path.getNameCount() == 1 && bare.equals(name);
+        if (!Files.exists(path) && looksBare) {
+            throw CommandFailure.wrong(
+                    List.of("steelyard: no file and no bundled drill '" + name + "'; " + remedy(name)));
+        }
+        Parsed<Drill> parsed = DrillReader.read(path);
+        return new DrillSource(name, stem(path), parsed.ok() ? text(path) : "", parsed);
+    }
+
+    private static String remedy(String name) {
+        return DrillLibrary.nearest(name)
+                .map(near -> "did you mean '" + near + "'?")
+                .orElse("`steelyard drills` lists the bundled ones");
+    }
+
+    /** Lines about the problems and notices, in the order of the file. */
+    List<String> lines() {
+        return parsed.problems().stream().map(Object::toString).toList();
+    }
+
+    /**
+     * The drill.
+     *
+     * @throws CommandFailure with every problem, when there is none
+     */
+    Drill drill() throws CommandFailure {
+        Optional<Drill> drill = parsed.value();
+        if (drill.isEmpty()) {
+            throw CommandFailure.wrong(lines());
+        }
+        return drill.get();
+    }
+
+    private static String stem(Path path) {
+        Path file = path.toAbsolutePath().normalize().getFileName();
+        String stem = String.valueOf(file)
+                .replaceFirst(ENDING, "")
+                .toLowerCase(Locale.ROOT)
+                .replaceAll("[^a-z0-9]+", "-")
+                .replaceAll("^-+|-+$", "");
+        return stem.isEmpty() ? "drill" : stem;
+    }
+
+    private static String text(Path path) throws CommandFailure {
+        try {
+            return Files.readString(path);
+        } catch (IOException changed) {
+            throw CommandFailure.cannot(
+                    "steelyard: " + path + " could be read once but not twice; run it again", changed);
+        }
+    }
+}

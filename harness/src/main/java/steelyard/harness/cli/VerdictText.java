@@ -1,0 +1,101 @@
+package steelyard.harness.cli;
+
+import java.util.ArrayList;
+import java.util.List;
+import org.jspecify.annotations.Nullable;
+import steelyard.harness.record.Finding;
+import steelyard.harness.record.SelfCheck;
+import steelyard.harness.record.Verdict;
+
+/** A verdict as a person reads it, from the top: in a sentence, each expectation beside its bound, why it is unfit. */
+final class VerdictText {
+    private static final String[] HEAD = {"expectation", "bound", "measured", "margin", ""};
+    private static final String GAP = "  ";
+
+    private VerdictText() {}
+
+    /**
+     * Lines of a verdict.
+     *
+     * @param width a table wider than that is written one expectation after the other
+     */
+    static List<String> lines(Verdict verdict, int width) {
+        List<String> lines = new ArrayList<>();
+        lines.add(verdict.text());
+        if (!verdict.expectations().isEmpty()) {
+            lines.add("");
+            List<String> table = table(verdict.expectations());
+            boolean fits = table.stream().allMatch(line -> line.length() <= width);
+            lines.addAll(fits ? table : stacked(verdict.expectations()));
+        }
+        List<SelfCheck> failed =
+                verdict.checks().stream().filter(check -> !check.ok()).toList();
+        if (!failed.isEmpty()) {
+            lines.add("");
+            lines.add("Unfit to judge, because of:");
+            failed.forEach(check -> lines.add(GAP + check.check() + ": " + check.text()));
+        }
+        return lines;
+    }
+
+    private static List<String> table(List<Finding> findings) {
+        List<String[]> rows = new ArrayList<>();
+        rows.add(HEAD);
+        findings.forEach(finding -> rows.add(cells(finding)));
+        int[] widths = new int[HEAD.length];
+        for (String[] row : rows) {
+            for (int column = 0; column < row.length; column++) {
+                widths[column] = Math.max(widths[column], row[column].length());
+            }
+        }
+        List<String> lines = new ArrayList<>();
+        for (String[] row : rows) {
+            StringBuilder line = new StringBuilder();
+            for (int column = 0; column < row.length; column++) {
+                boolean number = column >= 1 && column <= 3;
+                line.append(pad(row[column], widths[column], number)).append(GAP);
+            }
+            lines.add(line.toString().stripTrailing());
+        }
+        findings.stream()
+                .filter(finding -> finding.note() != null)
+                .forEach(finding -> lines.add("note on " + finding.text() + ": " + finding.note()));
+        return lines;
+    }
+
+    private static List<String> stacked(List<Finding> findings) {
+        List<String> lines = new ArrayList<>();
+        for (Finding finding : findings) {
+            String[] cells = cells(finding);
+            lines.add(cells[4] + ": " + cells[0]);
+            for (int column = 1; column <= 3; column++) {
+                if (!cells[column].isEmpty()) {
+                    lines.add(GAP + pad(HEAD[column], 8, false) + GAP + cells[column]);
+                }
+            }
+            if (finding.note() != null) {
+                lines.add(GAP + pad("note", 8, false) + GAP + finding.note());
+            }
+        }
+        return lines;
+    }
+
+    private static String[] cells(Finding finding) {
+        return new String[] {
+            finding.text(),
+            orEmpty(finding.boundText()),
+            finding.measured(),
+            orEmpty(finding.marginText()),
+            finding.met() ? "met" : "not met"
+        };
+    }
+
+    private static String orEmpty(@Nullable String text) {
+        return text == null ? "" : text;
+    }
+
+    private static String pad(String text, int width, boolean right) {
+        String blanks = " ".repeat(Math.max(0, width - text.length()));
+        return right ? blanks + text : text + blanks;
+    }
+}

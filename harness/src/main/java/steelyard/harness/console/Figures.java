@@ -1,0 +1,42 @@
+package steelyard.harness.console;
+
+import java.util.Comparator;
+import java.util.Locale;
+import java.util.Map;
+import java.util.stream.Collectors;
+import steelyard.drills.model.Cause;
+
+/** Numbers as they are shown while a play runs: of a steady width, the same in every locale. */
+final class Figures {
+    private Figures() {}
+
+    /** {@code 15.0 s}. */
+    static String seconds(long nanos) {
+        return String.format(Locale.ROOT, "%.1f s", nanos / 1e9);
+    }
+
+    /** {@code 15,412}. */
+    static String count(long count) {
+        return String.format(Locale.ROOT, "%,d", count);
+    }
+
+    /** {@code 0.2 %} below ten percent, {@code 33 %} from there. */
+    static String share(double share) {
+        double percent = share * 100;
+        return String.format(Locale.ROOT, percent > 0 && percent < 9.95 ? "%.1f %%" : "%.0f %%", percent);
+    }
+
+    /** {@code 12}, or {@code 3.4} for what is no whole number. */
+    static String weight(double weight) {
+        return String.format(Locale.ROOT, Math.abs(weight - Math.rint(weight)) < 0.05 ? "%.0f" : "%.1f", weight);
+    }
+
+    /** {@code reset 23, refused 8}, the most first. */
+    static String causes(Map<Cause, Long> failures) {
+        return failures.entrySet().stream()
+                .sorted(Map.Entry.<Cause, Long>comparingByValue(Comparator.reverseOrder())
+                        .thenComparing(Map.Entry.comparingByKey()))
+                .map(each -> each.getKey().word() + " " + count(each.getValue()))
+                .collect(Collectors.joining(", "));
+    }
+}
