@@ -4,6 +4,7 @@ import com.fasterxml.jackson.core.JsonProcessingException;
 import com.fasterxml.jackson.databind.JsonNode;
 import com.fasterxml.jackson.databind.ObjectMapper;
 import com.fasterxml.jackson.databind.node.ObjectNode;
+import com.github.tomakehurst.wiremock.common.ClientError;
 import com.github.tomakehurst.wiremock.stubbing.StubMapping;
 import java.io.IOException;
 import java.nio.charset.StandardCharsets;
@@ -13,7 +14,6 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.UUID;
 import java.util.stream.Stream;
-import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.RouteDelay;
 
 /**
@@ -28,7 +28,6 @@ final class MappingFolder {
     /** One mapping, without its delays, and the work that they come to. */
     record Route(StubMapping mapping, RouteDelay delay) {}
 
-    private static final double MILLI = 1e6;
     private static final ObjectMapper JSON = new ObjectMapper();
 
     private final Path folder;
@@ -126,56 +125,11 @@ final class MappingFolder {
     }
 
     private static RouteDelay takeDelay(Path file, ObjectNode response) throws BadAnswers {
-        double fixedMillis = millis(response.remove("fixedDelayMilliseconds"));
-        JsonNode dribble = response.remove("chunkedDribbleDelay");
-        if (dribble != null) {
-            fixedMillis += millis(dribble.get("totalDuration"));
-        }
-        JsonNode spread = response.remove("delayDistribution");
         try {
-            return delay(fixedMillis, spread);
+            return MappingDelay.takeFrom(response);
         } catch (IllegalArgumentException failure) {
             throw new BadAnswers(file + ": delay cannot be used: " + failure.getMessage(), failure);
         }
-    }
-
-    private static RouteDelay delay(double fixedMillis, @Nullable JsonNode spread) {
-        long fixedNanos = Math.round(fixedMillis * MILLI);
-        if (spread == null || spread.isNull()) {
-            return new RouteDelay(fixedNanos, RouteDelay.Law.NONE, 0, 0);
-        }
-        String type = spread.path("type").asText();
-        return switch (type) {
-            case "fixed" ->
-                new RouteDelay(
-                        Math.round((fixedMillis + millis(spread.get("milliseconds"))) * MILLI),
-                        RouteDelay.Law.NONE,
-                        0,
-                        0);
-            case "uniform" ->
-                new RouteDelay(
-                        fixedNanos,
-                        RouteDelay.Law.UNIFORM,
-                        millis(spread.get("lower")) * MILLI,
-                        millis(spread.get("upper")) * MILLI);
-            case "lognormal" ->
-                new RouteDelay(
-                        fixedNanos,
-                        RouteDelay.Law.LOGNORMAL,
-                        millis(spread.get("median")) * MILLI,
-                        millis(spread.get("sigma")));
-            default -> throw new IllegalArgumentException("unknown distribution '" + type + "'");
-        };
-    }
-
-    private static double millis(@Nullable JsonNode number) {
-        if (number == null || number.isNull()) {
-            return 0;
-        }
-        if (!number.isNumber()) {
-            throw new IllegalArgumentException("expected a number, but got " + number);
-        }
-        return number.doubleValue();
     }
 
     private StubMapping build(Path file, ObjectNode mapping) throws BadAnswers {
@@ -187,8 +141,9 @@ final class MappingFolder {
         mapping.remove("uuid");
         try {
             return StubMapping.buildFrom(mapping.toString());
-        } catch (RuntimeException failure) {
-            throw new BadAnswers(file + ": not a mapping: " + firstLine(String.valueOf(failure.getMessage())), failure);
+        } catch (ClientError failure) {
+            String detail = String.valueOf(failure.getErrors().first().getDetail());
+            throw new BadAnswers(file + ": not a mapping: " + firstLine(detail), failure);
         }
     }
 
