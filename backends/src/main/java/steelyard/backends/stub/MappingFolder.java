@@ -141,10 +141,15 @@ final class MappingFolder {
         mapping.remove("uuid");
         try {
             return StubMapping.buildFrom(mapping.toString());
-        } catch (ClientError failure) {
-            String detail = String.valueOf(failure.getErrors().first().getDetail());
-            throw new BadAnswers(file + ": not a mapping: " + firstLine(detail), failure);
+        } catch (RuntimeException failure) {
+            // Whatever the engine trips over in a file is the file's fault.
+            throw new BadAnswers(file + ": not a mapping: " + reason(failure), failure);
         }
+    }
+
+    private static String reason(RuntimeException failure) {
+        return firstLine(String.valueOf(
+                failure instanceof ClientError told ? told.getErrors().first().getDetail() : failure.getMessage()));
     }
 
     private static String firstLine(String text) {
