@@ -93,11 +93,26 @@ public final class Tournament {
         return best;
     }
 
+    /** Plays a place's matches from its leaf up, as far as they can change anything. */
     private void replay(int place) {
-        for (int node = (leaves + place) >> 1; node >= 1; node >>= 1) {
-            int left = winner[2 * node];
-            int right = winner[2 * node + 1];
-            winner[node] = left == NOBODY || (right != NOBODY && order.beats(right, left)) ? right : left;
+        int node = leaves + place;
+        int ours = winner[node];
+        while (node > 1) {
+            int rival = winner[node ^ 1];
+            boolean weAreLeft = (node & 1) == 0;
+            if (rival != NOBODY && (ours == NOBODY || beaten(ours, rival, weAreLeft))) {
+                ours = rival;
+            }
+            node >>= 1;
+            if (winner[node] == ours && ours != place) {
+                return;
+            }
+            winner[node] = ours;
         }
+    }
+
+    /** The left one of a match needs only a draw. */
+    private boolean beaten(int ours, int rival, boolean weAreLeft) {
+        return weAreLeft ? order.beats(rival, ours) : !order.beats(ours, rival);
     }
 }

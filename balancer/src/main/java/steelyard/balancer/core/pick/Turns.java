@@ -18,13 +18,16 @@ import java.util.Arrays;
  * </pre>
  */
 final class Turns {
-    private final long[] cycle;
-    private final int[] turn;
+    /** A place is cycle x 2^20 + turn: one number to compare, and a turn below the greatest weight fits. */
+    private static final int TURN_BITS = 20;
+
+    private static final long TURN = (1L << TURN_BITS) - 1;
+
+    private final long[] place;
     private final int[] weight;
 
     Turns(int holders) {
-        cycle = new long[holders];
-        turn = new int[holders];
+        place = new long[holders];
         weight = new int[holders];
         Arrays.fill(weight, 1);
     }
@@ -34,7 +37,7 @@ final class Turns {
     }
 
     boolean before(int holder, int other) {
-        return cycle[holder] != cycle[other] ? cycle[holder] < cycle[other] : turn[holder] < turn[other];
+        return place[holder] < place[other];
     }
 
     int weight(int holder) {
@@ -42,7 +45,7 @@ final class Turns {
     }
 
     void take(int holder) {
-        turn[holder]++;
+        place[holder]++;
         wrap(holder);
     }
 
@@ -58,16 +61,14 @@ final class Turns {
      */
     void join(int holder, int first) {
         if (before(holder, first)) {
-            cycle[holder] = cycle[first];
-            turn[holder] = turn[first];
+            place[holder] = place[first];
             wrap(holder);
         }
     }
 
     private void wrap(int holder) {
-        if (turn[holder] >= weight[holder]) {
-            cycle[holder]++;
-            turn[holder] = 0;
+        if ((place[holder] & TURN) >= weight[holder]) {
+            place[holder] = (place[holder] | TURN) + 1;
         }
     }
 }
