@@ -34,8 +34,8 @@ final class PoolWords {
     private static String probe(Probe probe) {
         String what = probe.path() == null ? probe.kind().word() : probe.kind().word() + " " + probe.path();
         return what + " every " + Wording.duration(probe.everyNanos()) + " within "
-                + Wording.duration(probe.withinNanos()) + ", " + count(probe.misses(), "miss", "misses") + ", "
-                + count(probe.passes(), "pass", "passes");
+                + Wording.duration(probe.withinNanos()) + ", " + Wording.count(probe.misses(), "miss", "misses") + ", "
+                + Wording.count(probe.passes(), "pass", "passes");
     }
 
     private static String warmUp(WarmUp warmUp) {
@@ -59,11 +59,7 @@ final class PoolWords {
         Serves.Time time = serves.time();
         String law = time.law().word() + " " + Wording.duration(time.firstNanos());
         String tail = time.law() == Serves.Law.LOGNORMAL ? " median, 99 % " + Wording.duration(time.p99Nanos()) : "";
-        return count(serves.workers(), "worker", "workers") + ", queue " + serves.queue() + ", " + law + tail
+        return Wording.count(serves.workers(), "worker", "workers") + ", queue " + serves.queue() + ", " + law + tail
                 + (serves.probesQueue() ? ", probes queue" : "");
-    }
-
-    private static String count(int number, String one, String many) {
-        return number + " " + (number == 1 ? one : many);
     }
 }

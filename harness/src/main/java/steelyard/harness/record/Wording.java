@@ -54,6 +54,11 @@ public final class Wording {
         return duration(nanos, false);
     }
 
+    /** A count with its noun: {@code 1 worker}, {@code 8 workers}. */
+    public static String count(long number, String one, String many) {
+        return number + " " + (number == 1 ? one : many);
+    }
+
     private static String duration(double nanos, boolean round) {
         if (nanos == 0) {
             return "0 s";

@@ -1,0 +1,143 @@
+package steelyard.harness.judge;
+
+import java.util.List;
+import org.HdrHistogram.Histogram;
+import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.drills.model.Cause;
+import steelyard.drills.model.Measure.Unit;
+import steelyard.harness.record.Cast;
+import steelyard.harness.record.PlayListener;
+import steelyard.harness.record.SelfCheck;
+import steelyard.harness.record.Wording;
+
+/** Whether a play is fit to judge: what it says of itself must add up, and its generator must have kept time. */
+final class SelfChecks implements PlayListener {
+    private static final long LATE_NANOS = 5_000_000L;
+    private static final int ONE_LATE_IN = 100;
+
+    private final Cast cast;
+    private final RequestLedger requests = new RequestLedger();
+    private final AttemptLedger attempts;
+    private final Histogram lateness = new Histogram(1_000, 1_000_000_000L, 3);
+    private final int[] inFlight;
+    private final long[] movedNanos;
+    private final long[] integralNanos;
+    private long sent;
+    private long late;
+    private long capHits;
+    private boolean complete;
+
+    SelfChecks(Cast cast) {
+        this.cast = cast;
+        int backends = cast.backends().size();
+        attempts = new AttemptLedger(backends);
+        inFlight = new int[backends];
+        movedNanos = new long[backends];
+        integralNanos = new long[backends];
+        lateness.setAutoResize(true);
+    }
+
+    @Override
+    public void requestDue(long atNanos, long request, int traffic, int kind, int client) {
+        requests.due(request);
+    }
+
+    @Override
+    public void requestSent(long atNanos, long request, long dueNanos) {
+        long lateNanos = Math.max(0, atNanos - dueNanos);
+        lateness.recordValue(lateNanos);
+        sent++;
+        if (lateNanos > LATE_NANOS) {
+            late++;
+        }
+    }
+
+    @Override
+    public void requestEnded(
+            long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
+        requests.ended(request, cause);
+    }
+
+    @Override
+    public void connectionCapHit(long atNanos) {
+        capHits++;
+    }
+
+    @Override
+    public void attemptPicked(long atNanos, int pool, int backend, long request, int attempt, int inFlight) {
+        attempts.picked(atNanos, backend, request, attempt);
+        moved(atNanos, backend, inFlight);
+    }
+
+    @Override
+    public void attemptEnded(
+            long atNanos, int backend, long request, int attempt, Outcome outcome, int status, int inFlight) {
+        attempts.ended(atNanos, backend, request, attempt, outcome, status);
+        moved(atNanos, backend, inFlight);
+    }
+
+    @Override
+    public void backendReceived(long atNanos, int backend, long request, int attempt) {
+        attempts.received(backend, request, attempt);
+    }
+
+    @Override
+    public void backendEnded(long atNanos, int backend, long request, int attempt, boolean inFull, int status) {
+        attempts.left(backend, request, attempt, inFull, status);
+    }
+
+    @Override
+    public void ended(long atNanos, boolean complete) {
+        this.complete = complete;
+        attempts.close(atNanos);
+        for (int backend = 0; backend < inFlight.length; backend++) {
+            moved(atNanos, backend, inFlight[backend]);
+        }
+    }
+
+    /** What was found, once the play has ended. */
+    List<SelfCheck> read() {
+        return List.of(
+                new SelfCheck("played to its end", complete, complete ? "complete" : "the play was interrupted"),
+                latenessCheck(),
+                new SelfCheck(
+                        "connection cap",
+                        capHits == 0,
+                        capHits == 0 ? "never hit" : "hit " + Wording.count(capHits, "time", "times")),
+                new SelfCheck("requests add up", !complete || requests.balanced(), requests.text()),
+                new SelfCheck(
+                        "attempts as balancer and backends count them", attempts.agrees(complete), attempts.text()),
+                littleCheck());
+    }
+
+    private SelfCheck latenessCheck() {
+        String text = sent == 0
+                ? "nothing was sent"
+                : "99 % within " + Wording.value(Unit.DURATION, lateness.getValueAtPercentile(99)) + " (limit "
+                        + Wording.duration(LATE_NANOS) + ")";
+        return new SelfCheck("lateness of the generator", late * ONE_LATE_IN <= sent, text);
+    }
+
+    /** Little's law on a path: two sums that are kept apart, one over time and one over attempts, are the same. */
+    private SelfCheck littleCheck() {
+        for (int backend = 0; backend < inFlight.length; backend++) {
+            if (integralNanos[backend] != attempts.timeNanos(backend)) {
+                return new SelfCheck(
+                        "time in flight",
+                        false,
+                        cast.backends().get(backend).name() + ": in flight over time adds up to "
+                                + Wording.duration(integralNanos[backend]) + ", its attempts to "
+                                + Wording.duration(attempts.timeNanos(backend)));
+            }
+        }
+        return new SelfCheck(
+                "time in flight", true, "in flight over time equals the attempts' times, exactly, on every backend");
+    }
+
+    private void moved(long atNanos, int backend, int level) {
+        integralNanos[backend] += inFlight[backend] * (atNanos - movedNanos[backend]);
+        movedNanos[backend] = atNanos;
+        inFlight[backend] = level;
+    }
+}
