@@ -62,7 +62,7 @@ final class BackendsReader {
         Placed<String> host = hostName == null ? null : new Placed<>(fields.valuePlace("host"), hostName);
         boolean down = fields.read("starts", STARTS, "up").equals("down");
         for (String name : names(entry, fields)) {
-            if (free(name, entry.place())) {
+            if (enter(name, entry.place())) {
                 String stand = hosts.hostOf(host, name, entry.place());
                 backends.add(new Backend(name, entry.key(), weight, stand, down, backendServes));
             }
@@ -75,14 +75,15 @@ final class BackendsReader {
         }
         int times = fields.read("times", TIMES, 1);
         List<String> names = new ArrayList<>();
-        free(entry.key(), entry.place());
+        enter(entry.key(), entry.place());
         for (int i = 1; i <= times; i++) {
             names.add(entry.key() + "-" + i);
         }
         return names;
     }
 
-    private boolean free(String name, Place place) {
+    /** Notes a name that is taken; answers whether the stage has room for one more backend. */
+    private boolean enter(String name, Place place) {
         count++;
         if (count == MOST + 1) {
             problems.add(place, "more than " + MOST + " backends", "a stage holds at most " + MOST);
@@ -92,7 +93,7 @@ final class BackendsReader {
             problems.add(
                     place, "backend '" + name + "' is there twice", "rename one; the first is on line " + first.line());
         }
-        return first == null && count <= MOST;
+        return count <= MOST;
     }
 
     /**

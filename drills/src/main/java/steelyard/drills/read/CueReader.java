@@ -15,8 +15,7 @@ final class CueReader {
     private static final Quantity<Double> FACTOR =
             Numbers.NUMBER.that(n -> n >= 0 && n <= 1_000_000, "is out of range", "write a number from 0 to 1000000");
     private static final Quantity<String> WHEN = Words.of("a moment to fail", "at-once", "after-work");
-    private static final Quantity<String> NAME = Quantity.of(
-                    "a name", "fulmar dies", text -> text.isEmpty() ? null : text)
+    private static final Quantity<String> NAME = Names.some("a name", "fulmar dies")
             .that(CueReader::fits, "cannot name a cue", "use no + and no -, and begin with a letter");
 
     private final Problems problems;

@@ -25,8 +25,6 @@ public final class DrillReader {
     /** A larger file is refused before it is parsed. */
     public static final int MOST_BYTES = 1 << 20;
 
-    private static final String COMPARE = "compare it with a bundled drill";
-
     private DrillReader() {}
 
     /** Reads a file; {@code answers:} folders are looked up from the folder it is in, and have to be there. */
@@ -79,11 +77,12 @@ public final class DrillReader {
     }
 
     private static @Nullable Drill drill(Fields fields, Problems problems, @Nullable Path folder) {
-        String name = fields.need("drill", Names.TEXT, "");
-        String about = fields.need("about", Names.TEXT, "");
+        String name = fields.need("drill", Names.TITLE, "");
+        String about = fields.need("about", Names.ABOUT, "");
         long lasts = fields.need("lasts", Durations.POSITIVE, Durations.DAY);
-        Stage stage = new StageReader(problems, folder).read(fields);
-        List<Traffic> traffic = new TrafficReader(problems, stage, lasts).read(fields);
+        StageReader stageReader = new StageReader(problems, folder);
+        Stage stage = stageReader.read(fields);
+        List<Traffic> traffic = new TrafficReader(problems, stageReader.poolNames(), lasts).read(fields);
         Roster roster = new Roster(stage);
         CueSchedule schedule = new CueSchedule(problems, roster, List.of(), lasts);
         CueReader cueReader = new CueReader(problems);

@@ -14,7 +14,7 @@ final class Durations {
     private static final long[] NANOS = {3600 * SECOND, 60 * SECOND, SECOND, 1_000_000, 1_000};
 
     /** From zero to a day. */
-    static final Quantity<Long> DURATION = Quantity.of("a duration", "250ms, 1.5s, 2m or 1m30s", Durations::nanos)
+    static final Quantity<Long> DURATION = Quantity.of("a duration", "15s, 250ms, 1.5s or 1m30s", Durations::nanos)
             .withUnits(List.of("ms", "s", "m"))
             .that(n -> n <= DAY, "is longer than a day", "write at most 24h");
 

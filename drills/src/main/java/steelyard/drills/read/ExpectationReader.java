@@ -1,5 +1,6 @@
 package steelyard.drills.read;
 
+import java.math.BigDecimal;
 import java.util.ArrayList;
 import java.util.EnumSet;
 import java.util.List;
@@ -15,8 +16,7 @@ final class ExpectationReader {
     private static final Quantity<Measure> MEASURE = Words.of("a measure", Measure.values());
     private static final Quantity<Cause> CAUSE = Words.of("a cause", Cause.values());
     private static final Quantity<Standing> STANDING = Words.of("a standing", Standing.values());
-    private static final Quantity<String> CUE_NAME =
-            Quantity.of("the name of a cue", "fulmar dies", text -> text.isEmpty() ? null : text);
+    private static final Quantity<String> CUE_NAME = Names.some("the name of a cue", "fulmar dies");
     private static final Quantity<Double> QUANTILE = Quantity.of(
                     "a quantile", "99%, or mean", ExpectationReader::quantile)
             .that(
@@ -26,7 +26,7 @@ final class ExpectationReader {
     private static final Quantity<Double> COUNT = Quantity.of("a count", "3", ExpectationReader::count)
             .that(n -> n >= 0, "is negative", "write a whole number of at least 0");
     private static final Quantity<Double> TIME = Quantity.of(
-                    "a duration", "250ms, 1.5s, 2m or 1m30s", ExpectationReader::time)
+                    "a duration", "15s, 250ms, 1.5s or 1m30s", ExpectationReader::time)
             .withUnits(List.of("ms", "s", "m"));
 
     private static final List<String> BOUNDS = List.of("at-most", "at-least", "between");
@@ -170,7 +170,7 @@ final class ExpectationReader {
     }
 
     private static @Nullable Double count(String text) {
-        java.math.BigDecimal value = Numbers.decimal(text);
+        BigDecimal value = Numbers.decimal(text);
         return value == null || value.scale() != 0 ? null : Double.valueOf(value.doubleValue());
     }
 
@@ -178,7 +178,7 @@ final class ExpectationReader {
         if (text.equals("mean")) {
             return -1.0;
         }
-        java.math.BigDecimal number = text.endsWith("%")
+        BigDecimal number = text.endsWith("%")
                 ? Numbers.decimal(text.substring(0, text.length() - 1).strip())
                 : null;
         return number == null || number.signum() < 0

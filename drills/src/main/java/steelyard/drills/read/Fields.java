@@ -110,8 +110,7 @@ final class Fields {
     /** The value of a key that has to be there; a harmless one when a problem was noted. */
     <T> T need(String key, Quantity<T> quantity, T harmless) {
         if (!has(key)) {
-            String remedy = quantity.words().isEmpty() ? quantity.example() : Sentence.or(quantity.words());
-            missing(key, "write " + key + ": " + remedy);
+            missing(key, "write " + key + ": " + quantity.instance());
         }
         return read(key, quantity, harmless);
     }

@@ -3,7 +3,6 @@ package steelyard.drills.read;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
-import java.util.TreeSet;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Host;
 
@@ -15,11 +14,12 @@ final class HostsReader {
     private final boolean listed;
     private final Map<String, Host> hosts = new LinkedHashMap<>();
     private final Map<String, Place> unused = new LinkedHashMap<>();
+    private final boolean weightsDiffer;
     private @Nullable Place firstWeight;
 
     HostsReader(Fields stage) {
         this.problems = stage.problems();
-        this.listed = stage.has("hosts");
+        this.listed = stage.node("hosts") instanceof Node.Entries;
         for (Node.Entry entry : stage.named("hosts", "host")) {
             Fields fields = Fields.open(entry.value(), Keys.HOST, problems);
             if (fields.has("weight") && firstWeight == null) {
@@ -29,6 +29,8 @@ final class HostsReader {
             hosts.put(entry.key(), new Host(entry.key(), fields.read("weight", WEIGHT, 1), zone));
             unused.put(entry.key(), entry.place());
         }
+        weightsDiffer =
+                hosts.values().stream().mapToInt(Host::weight).distinct().count() > 1;
     }
 
     /** The host of a backend: the one that it names, else one of its own. */
@@ -74,8 +76,8 @@ final class HostsReader {
         return firstWeight;
     }
 
-    /** Whether two hosts carry different weights. */
+    /** Whether two hosts of the list carry different weights. */
     boolean weightsDiffer() {
-        return new TreeSet<>(hosts.values().stream().map(Host::weight).toList()).size() > 1;
+        return weightsDiffer;
     }
 }

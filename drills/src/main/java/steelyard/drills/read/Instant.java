@@ -17,8 +17,7 @@ record Instant(Place place, @Nullable String base, long offsetNanos) {
         return node == null || text == null ? null : parse(new Placed<>(node.place(), text), key, fields.problems());
     }
 
-    private static final Quantity<String> TEXT = Quantity.of(
-            "an instant", "15s, or the name of a cue and perhaps + 2s", text -> text.isEmpty() ? null : text);
+    private static final Quantity<String> TEXT = Names.some("an instant", "15s, or the name of a cue and perhaps + 2s");
 
     private static @Nullable Instant parse(Placed<String> text, String key, Problems problems) {
         String written = text.value();

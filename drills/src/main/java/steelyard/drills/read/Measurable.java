@@ -2,6 +2,7 @@ package steelyard.drills.read;
 
 import java.util.List;
 import java.util.Set;
+import java.util.function.Predicate;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Cue;
@@ -112,7 +113,7 @@ final class Measurable {
                 .allMatch(pool -> pool.backends().stream().map(Backend::name).allMatch(target.backends()::contains));
     }
 
-    private @Nullable Pool first(Target target, java.util.function.Predicate<Pool> odd) {
+    private @Nullable Pool first(Target target, Predicate<Pool> odd) {
         return pools(target).stream().filter(odd).findFirst().orElse(null);
     }
 

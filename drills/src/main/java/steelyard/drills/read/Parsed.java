@@ -7,7 +7,7 @@ import java.util.Optional;
  * What reading a text came to: a value and perhaps notices, or no value and at least one problem.
  *
  * @param value present exactly when none of the problems is of severity {@code PROBLEM}
- * @param problems problems and notices in the order of the file
+ * @param problems problems or, beside a value, notices, in the order of the file
  */
 public record Parsed<T>(Optional<T> value, List<Problem> problems) {
     public Parsed {

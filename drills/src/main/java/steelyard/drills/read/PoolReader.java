@@ -1,7 +1,10 @@
 package steelyard.drills.read;
 
+import java.util.List;
 import java.util.Set;
+import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
+import steelyard.drills.model.Backend;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
 import steelyard.drills.model.Retry;
@@ -23,6 +26,10 @@ final class PoolReader {
     static final Quantity<String> PATH = Quantity.of("a path", "/sailings/today", text -> text)
             .that(PoolReader::fitsRequestLine, "is not a path", "begin with a slash, and write no space");
 
+    private static final Probe PROBE = new Probe(Probe.Kind.TCP, null, SECOND, SECOND, 1, 1);
+    private static final WarmUp WARM_UP = new WarmUp(SECOND, 1);
+    private static final Retry RETRY = new Retry(1, 1, 1, Set.of());
+
     private final Problems problems;
     private final BackendsReader backends;
 
@@ -37,25 +44,40 @@ final class PoolReader {
         Fields fields = Fields.open(entry.value(), Keys.POOL, problems);
         Pool.Method method = fields.need("method", METHOD, Pool.Method.WEIGHTED_ROUND_ROBIN);
         Pool.Weights weights = fields.read("weights", WEIGHTS, Pool.Weights.BACKEND);
-        Probe probe = fields.has("probe") ? probe(fields.map("probe", Keys.PROBE)) : null;
+        Pool.Count count = fields.read("count", COUNT, Pool.Count.REQUESTS);
+        Probe probe = read(fields, "probe", PROBE, () -> probe(fields.map("probe", Keys.PROBE)));
+        WarmUp warmUp = read(fields, "warm-up", WARM_UP, () -> warmUp(fields));
+        Retry retry = read(fields, "retry", RETRY, () -> retry(fields.map("retry", Keys.RETRY)));
+        long drain = fields.map("drain", Keys.DRAIN).read("limit", Durations.POSITIVE, 30 * SECOND);
+        Timeouts timeouts = timeouts(fields.map("timeouts", Keys.TIMEOUTS));
+        boolean forwarded = fields.read("forwarded", Numbers.YES_OR_NO, false);
+        int port = fields.map("front", Keys.FRONT).read("port", PORT, 0);
         BackendsReader.OfPool ofPool = backends.read(fields, entry.key());
         checkWeights(fields, method, weights, ofPool);
-        if (ofPool.backends().isEmpty()) {
-            return null;
-        }
-        return new Pool(
-                entry.key(),
-                method,
-                fields.read("count", COUNT, Pool.Count.REQUESTS),
-                weights,
-                probe,
-                fields.has("warm-up") ? warmUp(fields) : null,
-                fields.map("drain", Keys.DRAIN).read("limit", Durations.POSITIVE, 30 * SECOND),
-                fields.has("retry") ? retry(fields.map("retry", Keys.RETRY)) : null,
-                timeouts(fields.map("timeouts", Keys.TIMEOUTS)),
-                fields.read("forwarded", Numbers.YES_OR_NO, false),
-                fields.map("front", Keys.FRONT).read("port", PORT, 0),
-                ofPool.backends());
+        List<Backend> list = ofPool.backends();
+        return list.isEmpty()
+                ? null
+                : new Pool(
+                        entry.key(),
+                        method,
+                        count,
+                        weights,
+                        probe,
+                        warmUp,
+                        drain,
+                        retry,
+                        timeouts,
+                        forwarded,
+                        port,
+                        list);
+    }
+
+    /**
+     * What is behind a key that may be left out. Where a key of the pool could not be read it may be this one,
+     * misspelt; something harmless then stands in, so that nobody is told that the pool lacks it.
+     */
+    private static <T> @Nullable T read(Fields pool, String key, T harmless, Supplier<T> reader) {
+        return pool.has(key) ? reader.get() : pool.odd() ? harmless : null;
     }
 
     private Probe probe(Fields fields) {

@@ -37,8 +37,13 @@ final class Problems {
         return refused;
     }
 
+    /** The problems in the order of the file; the notices only where there is no problem. */
     List<Problem> inOrder() {
         List<Problem> sorted = new ArrayList<>(found);
+        if (refused) {
+            // A notice on a file with problems is often their mere consequence.
+            sorted.removeIf(problem -> problem.severity() == Problem.Severity.NOTICE);
+        }
         sorted.sort(Comparator.comparingInt(Problem::line).thenComparingInt(Problem::column));
         return sorted;
     }

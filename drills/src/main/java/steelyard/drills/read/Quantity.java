@@ -88,6 +88,12 @@ record Quantity<T>(
         return words.isEmpty() ? written() : NearWord.remedy(text, words, "write " + Sentence.or(words));
     }
 
+    /** One way to write it, or each of its words. */
+    String instance() {
+        int end = example.indexOf(',');
+        return !words.isEmpty() ? Sentence.or(words) : end < 0 ? example : example.substring(0, end);
+    }
+
     private String written() {
         return words.isEmpty() ? "write it like " + example : "write " + Sentence.or(words);
     }

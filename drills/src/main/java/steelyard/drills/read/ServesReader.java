@@ -76,7 +76,7 @@ final class ServesReader {
     }
 
     private @Nullable String answers(Fields fields) {
-        String name = fields.read("answers", Names.TEXT);
+        String name = fields.read("answers", Names.FOLDER);
         if (name == null || folder == null) {
             return name;
         }

@@ -14,6 +14,7 @@ final class StageReader {
 
     private final Problems problems;
     private final @Nullable Path folder;
+    private final List<String> poolNames = new ArrayList<>();
 
     StageReader(Problems problems, @Nullable Path folder) {
         this.problems = problems;
@@ -34,6 +35,7 @@ final class StageReader {
         List<Pool> pools = new ArrayList<>();
         List<Node.Entry> entries = fields.named("pools", "pool");
         for (Node.Entry entry : entries) {
+            poolNames.add(entry.key());
             Pool pool = reader.read(entry);
             if (pool != null) {
                 pools.add(pool);
@@ -45,6 +47,11 @@ final class StageReader {
         List<Host> all = hosts.finish();
         checkHostWeights(hosts, pools);
         return pools.isEmpty() ? null : new Stage(fields.read("loops", LOOPS, 1), all, pools);
+    }
+
+    /** The names of all pools in the file, of those too that have no backend. */
+    List<String> poolNames() {
+        return poolNames;
     }
 
     private void checkHostWeights(HostsReader hosts, List<Pool> pools) {

@@ -11,7 +11,7 @@ import steelyard.drills.model.Target;
  * @param names at least one; more than one only for backends
  */
 record TargetDraft(Place place, Target.Kind kind, List<Placed<String>> names) {
-    private static final Quantity<String> NAME = Quantity.of("a name", "fulmar", text -> text.isEmpty() ? null : text);
+    private static final Quantity<String> NAME = Names.some("a name", "fulmar");
 
     /** Reads the target behind a key; null when a problem was noted or the key is absent. */
     static @Nullable TargetDraft read(Fields fields, String key) {

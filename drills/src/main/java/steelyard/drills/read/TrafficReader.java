@@ -1,13 +1,12 @@
 package steelyard.drills.read;
 
+import java.math.BigDecimal;
+import java.math.RoundingMode;
 import java.util.ArrayList;
 import java.util.HashSet;
 import java.util.List;
 import java.util.Locale;
 import java.util.Set;
-import org.jspecify.annotations.Nullable;
-import steelyard.drills.model.Pool;
-import steelyard.drills.model.Stage;
 import steelyard.drills.model.Traffic;
 
 /** Reads {@code traffic:}. */
@@ -16,16 +15,18 @@ final class TrafficReader {
     private static final Quantity<Integer> CLIENTS = Numbers.from(1, 1_000_000);
     private static final Quantity<Double> SKEW =
             Numbers.NUMBER.that(s -> s >= 0 && s <= 10, "is out of range", "write a number from 0 to 10");
+    private static final Quantity<String> POOL = Names.name("the name of a pool", "seats");
     private static final List<String> METHODS = List.of("get", "head", "post", "put", "delete", "patch", "options");
     private static final Traffic.Request GET = new Traffic.Request("GET", "/", 1, 0, Set.of());
 
     private final Problems problems;
-    private final @Nullable Stage stage;
+    private final List<String> pools;
     private final long lastsNanos;
 
-    TrafficReader(Problems problems, @Nullable Stage stage, long lastsNanos) {
+    /** With the names of the pools, none when they are not known. */
+    TrafficReader(Problems problems, List<String> pools, long lastsNanos) {
         this.problems = problems;
-        this.stage = stage;
+        this.pools = pools;
         this.lastsNanos = lastsNanos;
     }
 
@@ -58,15 +59,12 @@ final class TrafficReader {
     }
 
     private String to(Fields fields) {
-        String to = fields.need("to", Names.NAME, "");
-        if (stage != null && !to.isEmpty()) {
-            List<String> pools = stage.pools().stream().map(Pool::name).toList();
-            if (!pools.contains(to)) {
-                problems.add(
-                        fields.valuePlace("to"),
-                        "there is no pool " + Quantity.quoted(to),
-                        NearWord.remedy(to, pools, "the stage has " + Sentence.and(pools)));
-            }
+        String to = fields.need("to", POOL, "");
+        if (!pools.isEmpty() && !to.isEmpty() && !pools.contains(to)) {
+            problems.add(
+                    fields.valuePlace("to"),
+                    "there is no pool " + Quantity.quoted(to),
+                    NearWord.remedy(to, pools, "the stage has " + Sentence.and(pools)));
         }
         return to;
     }
@@ -145,8 +143,8 @@ final class TrafficReader {
     }
 
     private static String percent(double share) {
-        return java.math.BigDecimal.valueOf(share * 100)
-                        .setScale(4, java.math.RoundingMode.HALF_UP)
+        return BigDecimal.valueOf(share * 100)
+                        .setScale(4, RoundingMode.HALF_UP)
                         .stripTrailingZeros()
                         .toPlainString()
                 + "%";

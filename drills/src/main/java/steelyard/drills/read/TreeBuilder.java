@@ -138,18 +138,20 @@ final class TreeBuilder {
             throw refusal(e);
         } catch (RuntimeException e) {
             // The library's own slips on broken text (numbers out of range in an escape, say) are no slips of ours.
-            throw new Refused(Place.START, "not YAML: " + e.getMessage(), "compare it with a bundled drill");
+            throw new Refused(Place.START, "not YAML: " + e.getMessage(), "compare the file with a bundled drill");
         }
     }
 
     private Refused refusal(MarkedYamlEngineException e) {
-        Place place =
-                e.getProblemMark().or(e::getContextMark).map(TreeBuilder::place).orElse(Place.START);
+        boolean breaksOff = said(e).contains("end of");
+        Optional<Mark> mark = breaksOff
+                ? e.getContextMark().or(e::getProblemMark)
+                : e.getProblemMark().or(e::getContextMark);
+        Place place = mark.map(TreeBuilder::place).orElse(Place.START);
         Place tab = tabInIndentation(place.line());
-        if (tab != null) {
-            return new Refused(tab, "a tab in the indentation", "indent with spaces");
-        }
-        return new Refused(place, "not YAML: " + said(e), "compare it with a bundled drill");
+        return tab == null
+                ? new Refused(place, "not YAML: " + said(e), "look here and at the line above")
+                : new Refused(tab, "a tab in the indentation", "indent with spaces");
     }
 
     private static String said(MarkedYamlEngineException e) {

@@ -1,0 +1,295 @@
+package steelyard.drills.read;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.tuple;
+
+import java.io.IOException;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.EnumSet;
+import java.util.List;
+import java.util.Set;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
+import steelyard.drills.model.Backend;
+import steelyard.drills.model.Cause;
+import steelyard.drills.model.Cue;
+import steelyard.drills.model.Drill;
+import steelyard.drills.model.Expectation;
+import steelyard.drills.model.Host;
+import steelyard.drills.model.Measure;
+import steelyard.drills.model.Pool;
+import steelyard.drills.model.Probe;
+import steelyard.drills.model.Retry;
+import steelyard.drills.model.Serves;
+import steelyard.drills.model.Stage;
+import steelyard.drills.model.Standing;
+import steelyard.drills.model.Target;
+import steelyard.drills.model.Timeouts;
+import steelyard.drills.model.Traffic;
+import steelyard.drills.model.WarmUp;
+
+class DrillReaderTest {
+    private static final long MS = 1_000_000;
+    private static final long S = 1_000 * MS;
+
+    /** The least that makes a drill. */
+    private static final String LEAST = """
+            drill: Least
+            about: The least.
+            stage: {pools: {seats: {method: round-robin, serves: {workers: 2, time: 9ms}, backends: {fulmar: , gannet: }}}}
+            traffic: [{to: seats, rate: 10/s}]
+            lasts: 10s
+            """;
+
+    private static Drill read(String text) {
+        Parsed<Drill> parsed = DrillReader.read("drill.yaml", text);
+        assertThat(parsed.value()).as("%s", parsed.problems()).isPresent();
+        return parsed.value().orElseThrow();
+    }
+
+    private static List<String> shown(String text) {
+        return DrillReader.read("d", text).problems().stream()
+                .map(Problem::toString)
+                .toList();
+    }
+
+    @Test
+    void read_ofTheLeastDrill_fillsInTheDefaults() {
+        Drill drill = read(LEAST);
+        Serves serves = new Serves(2, 64, Serves.Time.fixed(9 * MS), 512, false, null);
+        assertThat(drill.stage().loops()).isEqualTo(1);
+        assertThat(drill.stage().hosts()).containsExactly(new Host("fulmar", 1, null), new Host("gannet", 1, null));
+        assertThat(drill.stage().pools())
+                .containsExactly(new Pool(
+                        "seats",
+                        Pool.Method.ROUND_ROBIN,
+                        Pool.Count.REQUESTS,
+                        Pool.Weights.BACKEND,
+                        null,
+                        null,
+                        30 * S,
+                        null,
+                        new Timeouts(S, 10 * S, 60 * S),
+                        false,
+                        0,
+                        List.of(
+                                new Backend("fulmar", "fulmar", 1, "fulmar", false, serves),
+                                new Backend("gannet", "gannet", 1, "gannet", false, serves))));
+        assertThat(drill.traffic())
+                .containsExactly(new Traffic(
+                        "seats",
+                        Traffic.Arrivals.POISSON,
+                        List.of(new Traffic.Step(10 * S, 10)),
+                        64,
+                        0,
+                        10 * S,
+                        List.of(new Traffic.Request("GET", "/", 1, 0, Set.of()))));
+        assertThat(drill.cues()).isEmpty();
+        assertThat(drill.lastsNanos()).isEqualTo(10 * S);
+    }
+
+    @Test
+    void read_ofADrillWithoutExpectations_givesANotice() {
+        assertThat(shown(LEAST))
+                .containsExactly("d:1:1: notice: the drill expects nothing, so it cannot fail; add expect:");
+    }
+
+    @Test
+    void read_ofPools_takesEverySetting() {
+        Stage stage = read(EveryKeyTest.TEXT).stage();
+        Pool seats = stage.pool("seats");
+        assertThat(seats.probe()).isEqualTo(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 4, 1));
+        assertThat(seats.warmUp()).isEqualTo(new WarmUp(90 * S, 0.05));
+        assertThat(seats.drainLimitNanos()).isEqualTo(10 * S);
+        assertThat(seats.retry()).isEqualTo(new Retry(2, 0.25, 7, Set.of(502, 503)));
+        assertThat(seats.timeouts()).isEqualTo(new Timeouts(2 * S, 3 * S, 30 * S));
+        assertThat(seats.count()).isEqualTo(Pool.Count.CONNECTIONS);
+        assertThat(seats.forwarded()).isTrue();
+        assertThat(seats.frontPort()).isEqualTo(18080);
+        assertThat(stage.pool("cargo").probe()).isEqualTo(new Probe(Probe.Kind.TCP, null, 2 * S, S, 3, 2));
+        assertThat(stage.pool("cargo").warmUp()).isEqualTo(new WarmUp(5 * S, 0.1));
+    }
+
+    @Test
+    void read_ofBackends_laysTheirOwnServesOverThePools() {
+        List<Backend> backends = read(EveryKeyTest.TEXT).stage().pool("seats").backends();
+        Serves pool = new Serves(8, 16, Serves.Time.lognormal(12 * MS, 60 * MS), 4096, true, "pages");
+        Serves fulmar = new Serves(8, 16, Serves.Time.fixed(9 * MS), 4096, true, "pages");
+        Serves gannet = new Serves(8, 0, Serves.Time.exponential(20 * MS), 4096, true, "pages");
+        assertThat(backends)
+                .containsExactly(
+                        new Backend("fulmar", "fulmar", 3, "north-quay", true, fulmar),
+                        new Backend("gannet-1", "gannet", 1, "south-quay", false, gannet),
+                        new Backend("gannet-2", "gannet", 1, "south-quay", false, gannet),
+                        new Backend("gannet-3", "gannet", 1, "south-quay", false, gannet),
+                        new Backend("petrel", "petrel", 1, "petrel", false, pool));
+    }
+
+    @Test
+    void read_ofCues_placesNamesRepeatsAndSorts() {
+        List<Cue> cues = read(EveryKeyTest.TEXT).cues();
+        assertThat(cues)
+                .extracting(Cue::name, Cue::atNanos)
+                .startsWith(
+                        tuple("fulmar dies", 15 * S),
+                        tuple("slow gannet-1, skua", 20_500 * MS),
+                        tuple("fulmar returns", 21 * S),
+                        tuple("gannet errs", 30 * S),
+                        tuple("gannet errs 2", 40 * S),
+                        tuple("refuse zone north", 40 * S),
+                        tuple("hang host north-quay", 41 * S),
+                        tuple("fail-probe pool cargo", 41 * S))
+                .endsWith(tuple("surge pool seats", 48 * S), tuple("gannet errs 3", 50 * S));
+    }
+
+    @Test
+    void read_ofCues_resolvesTargetsInStageOrder() {
+        Drill drill = read(EveryKeyTest.TEXT);
+        assertThat(cue(drill, "gannet errs").target())
+                .isEqualTo(new Target(Target.Kind.BACKENDS, "gannet", List.of("gannet-1", "gannet-2", "gannet-3")));
+        assertThat(cue(drill, "refuse zone north").target())
+                .isEqualTo(new Target(Target.Kind.ZONE, "north", List.of("fulmar")));
+        assertThat(cue(drill, "surge pool seats").target().backends())
+                .containsExactly("fulmar", "gannet-1", "gannet-2", "gannet-3", "petrel");
+        assertThat(cue(drill, "slow gannet-1, skua").target().backends()).containsExactly("gannet-1", "skua");
+    }
+
+    @Test
+    void read_ofCues_takesTheirSettings() {
+        Drill drill = read(EveryKeyTest.TEXT);
+        assertThat(cue(drill, "slow gannet-1, skua").settings())
+                .isEqualTo(new Cue.Settings(8, 5 * MS, 1, 500, false, true, 0, 0, 0));
+        assertThat(cue(drill, "gannet errs").settings())
+                .isEqualTo(new Cue.Settings(1, 0, 0.2, 503, true, true, 0, 0, 0));
+        assertThat(cue(drill, "gannet errs").forNanos()).isEqualTo(2 * S);
+        assertThat(cue(drill, "reweigh petrel").settings().weight()).isEqualTo(9);
+        assertThat(cue(drill, "skua drains").settings().limitNanos()).isEqualTo(3 * S);
+        assertThat(cue(drill, "flap-probe petrel").settings().periodNanos()).isEqualTo(4 * S);
+        assertThat(cue(drill, "fulmar returns").settings()).isEqualTo(Cue.Settings.NONE);
+    }
+
+    @Test
+    void read_ofTraffic_takesStepsAndTheMix() {
+        Traffic traffic = read(EveryKeyTest.TEXT).traffic().get(0);
+        assertThat(traffic.steps()).containsExactly(new Traffic.Step(20 * S, 300), new Traffic.Step(10 * S, 20));
+        assertThat(traffic.arrivals()).isEqualTo(Traffic.Arrivals.EVEN);
+        assertThat(traffic.skew()).isEqualTo(1.1);
+        assertThat(traffic.requests())
+                .hasSize(7)
+                .startsWith(
+                        new Traffic.Request("GET", "/sailings/today", 0.4, 0, Set.of(200, 404)),
+                        new Traffic.Request("HEAD", "/sailings", 0.1, 0, Set.of()),
+                        new Traffic.Request("POST", "/holds", 0.1, 512, Set.of()));
+    }
+
+    @Test
+    void read_ofExpectations_resolvesWindowsOptionsAndBounds() {
+        List<Expectation> all = read(EveryKeyTest.TEXT).expectations();
+        Expectation failed = all.get(0);
+        assertThat(failed.of()).isNull();
+        assertThat(failed.pool()).isEqualTo("seats");
+        assertThat(failed.fromNanos()).isEqualTo(S);
+        assertThat(failed.toNanos()).isEqualTo(15 * S);
+        assertThat(failed.options().causes()).isEqualTo(EnumSet.of(Cause.REFUSED, Cause.RESET));
+        assertThat(failed.options().worstNanos()).isEqualTo(S);
+        assertThat(failed.bound()).isEqualTo(new Expectation.Bound(Double.NEGATIVE_INFINITY, 0.005));
+        assertThat(all.get(1).options().outageShare()).isEqualTo(0.4);
+        assertThat(all.get(2).options().quantile()).isEqualTo(0.999);
+        assertThat(all.get(3).options().quantile()).isEqualTo(-1);
+        assertThat(all.get(3).bound()).isEqualTo(new Expectation.Bound(1 * MS, 50 * MS));
+        assertThat(all.get(6).options().shown()).isTrue();
+        assertThat(all.get(6).bound().most()).isEqualTo(4);
+    }
+
+    @Test
+    void read_ofAMeasureFromACue_takesTheTargetAndInstantOfTheCue() {
+        Expectation detected = read(EveryKeyTest.TEXT).expectations().get(5);
+        assertThat(detected.measure()).isEqualTo(Measure.DETECTED_IN);
+        assertThat(detected.of()).isEqualTo(new Target(Target.Kind.BACKENDS, "fulmar", List.of("fulmar")));
+        assertThat(detected.after()).isEqualTo("fulmar dies");
+        assertThat(detected.fromNanos()).isEqualTo(15 * S);
+        assertThat(detected.toNanos()).isEqualTo(120 * S);
+        assertThat(detected.options().until()).isEqualTo(Standing.DOWN);
+    }
+
+    @Test
+    void read_ofAFile_findsAnswersBesideIt(@TempDir Path folder) throws IOException {
+        String text = LEAST.replace("workers: 2", "workers: 2, answers: pages");
+        Path file = Files.writeString(folder.resolve("drill.yaml"), text);
+        assertThat(DrillReader.read(file).problems())
+                .singleElement()
+                .hasToString(
+                        file + ":3:76: there is no folder 'pages'; name a folder of mapping files, beginning at the"
+                                + " folder of the drill");
+        Path pages = Files.createDirectory(folder.resolve("pages"));
+        Drill drill = DrillReader.read(file).value().orElseThrow();
+        assertThat(drill.stage().backends().get(0).serves().answers()).isEqualTo(pages.toString());
+    }
+
+    @Test
+    void read_ofSettingsWithoutEffect_givesNotices() {
+        String text = LEAST.replace("fulmar: ,", "fulmar: {weight: 2},")
+                + "expect: [{measure: cut, at-most: 0}, {measure: share, of: {pool: seats}, at-least: 1%}]\n";
+        assertThat(shown(text))
+                .containsExactly(
+                        "d:3:99: notice: under round-robin weights play no part; write method: weighted-round-robin to use them",
+                        "d:6:38: notice: share is always 100 %, since it names the whole pool; name some of its backends");
+    }
+
+    @Test
+    void readCue_typedInAnyStyle_takesThePathOfACueOfTheFile() {
+        Drill drill = read(EveryKeyTest.TEXT);
+        Cue braces = DrillReader.readCue("{slow: gannet-2, factor: 3, for: 2s}", drill)
+                .value()
+                .orElseThrow();
+        Cue bare =
+                DrillReader.readCue("kill: {host: north-quay}", drill).value().orElseThrow();
+        assertThat(braces)
+                .isEqualTo(new Cue(
+                        "slow gannet-2",
+                        0,
+                        Cue.Kind.SLOW,
+                        new Target(Target.Kind.BACKENDS, "gannet-2", List.of("gannet-2")),
+                        new Cue.Settings(3, 0, 1, 500, false, false, 0, 0, 0),
+                        2 * S));
+        assertThat(bare.target().backends()).containsExactly("fulmar");
+    }
+
+    @Test
+    void readCue_withTheNameOfAnother_isNamedApart() {
+        Drill drill = read(EveryKeyTest.TEXT);
+        assertThat(DrillReader.readCue("admit: skua", drill)
+                        .value()
+                        .orElseThrow()
+                        .name())
+                .isEqualTo("admit skua 2");
+        assertThat(DrillReader.readCue("{admit: skua, as: fulmar dies}", drill).problems())
+                .singleElement()
+                .hasToString("cue:1:19: a cue named 'fulmar dies' is there twice; rename one; the drill has it");
+    }
+
+    @Test
+    void readCue_countingFromACueOfTheDrill_isPlacedInThePlay() {
+        Cue cue = DrillReader.readCue("{at: fulmar dies + 1s, heal: petrel}", read(EveryKeyTest.TEXT))
+                .value()
+                .orElseThrow();
+        assertThat(cue.atNanos()).isEqualTo(16 * S);
+    }
+
+    @Test
+    void readCue_thatCannotBePlayed_saysEveryProblem() {
+        assertThat(DrillReader.readCue("{slow: gannet-9, times: 3, every: 1s}", read(EveryKeyTest.TEXT))
+                        .problems())
+                .extracting(Problem::toString)
+                .containsExactly(
+                        "cue:1:1: a cue needs 'factor'; write factor: 5, or plus: 100ms",
+                        "cue:1:8: there is no backend 'gannet-9'; did you mean 'gannet-1'?",
+                        "cue:1:18: a cue sent by hand is played once; leave out times",
+                        "cue:1:28: a cue sent by hand is played once; leave out every");
+    }
+
+    private static Cue cue(Drill drill, String name) {
+        return drill.cue(name).orElseThrow();
+    }
+}
