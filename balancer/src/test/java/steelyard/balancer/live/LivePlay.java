@@ -1,6 +1,7 @@
 package steelyard.balancer.live;
 
-import io.netty.util.LeakPresenceDetector;
+import static org.junit.jupiter.api.Assertions.assertThrows;
+
 import java.io.IOException;
 import java.net.InetSocketAddress;
 import java.util.ArrayList;
@@ -24,8 +25,7 @@ final class LivePlay implements AutoCloseable {
     static final TimeoutSettings PATIENT = new TimeoutSettings(10 * SECOND, 30 * SECOND, 30 * SECOND);
 
     static {
-        // read once, when the first buffer class is loaded; no other test of this module loads one
-        System.setProperty("io.netty.customResourceLeakDetector", LeakPresenceDetector.class.getName());
+        Leaks.watch();
     }
 
     final Decisions decisions = new Decisions();
@@ -43,6 +43,23 @@ final class LivePlay implements AutoCloseable {
     }
 
     static LivePlay of(UnaryOperator<Pool> with, InetSocketAddress... addresses) throws CannotStart {
+        return new LivePlay(settings(with, addresses), List.of(addresses));
+    }
+
+    /** The exception of a balancer whose front is to listen on a port that is taken. */
+    static CannotStart startOn(int port, InetSocketAddress address) {
+        return assertThrows(
+                CannotStart.class,
+                () -> Balancer.start(
+                        settings(UnaryOperator.identity(), address),
+                        backend -> address,
+                        pool -> port,
+                        System::nanoTime,
+                        backend -> 0.0,
+                        new Decisions()));
+    }
+
+    private static BalancerSettings settings(UnaryOperator<Pool> with, InetSocketAddress... addresses) {
         List<BackendSettings> backends = new ArrayList<>();
         List<HostSettings> hosts = new ArrayList<>();
         for (int i = 0; i < addresses.length; i++) {
@@ -50,7 +67,7 @@ final class LivePlay implements AutoCloseable {
             hosts.add(new HostSettings("quay-" + (i + 1), 1));
         }
         PoolSettings pool = with.apply(new Pool()).settings(backends);
-        return new LivePlay(new BalancerSettings("steelyard", 1, hosts, List.of(pool)), List.of(addresses));
+        return new BalancerSettings("steelyard", 1, hosts, List.of(pool));
     }
 
     InetSocketAddress front() {
@@ -89,6 +106,6 @@ final class LivePlay implements AutoCloseable {
         if (decisions.picks().size() != decisions.ends().size()) {
             throw new AssertionError(decisions.picks() + " picked, but ended " + decisions.ends());
         }
-        LeakPresenceDetector.check();
+        Leaks.check();
     }
 }

@@ -25,7 +25,7 @@ enum OwnAnswer {
     TOO_LARGE_FIELDS(HttpResponseStatus.REQUEST_HEADER_FIELDS_TOO_LARGE, null, "The header section is too large."),
     SLOW_CLIENT(HttpResponseStatus.REQUEST_TIMEOUT, null, "The request's content did not come in time."),
     NO_TUNNEL(HttpResponseStatus.NOT_IMPLEMENTED, null, "CONNECT is not served here."),
-    OTHER_VERSION(HttpResponseStatus.HTTP_VERSION_NOT_SUPPORTED, null, "HTTP/1.1 is served here."),
+    OTHER_VERSION(HttpResponseStatus.HTTP_VERSION_NOT_SUPPORTED, null, "Only version 1.1 is served here."),
     NO_ECHO(HttpResponseStatus.METHOD_NOT_ALLOWED, null, "TRACE is not served here."),
     OPTIONS_HERE(HttpResponseStatus.OK, null, "The balancer itself.");
 
