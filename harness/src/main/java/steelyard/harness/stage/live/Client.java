@@ -1,0 +1,41 @@
+package steelyard.harness.stage.live;
+
+import java.util.ArrayDeque;
+import java.util.Iterator;
+import org.jspecify.annotations.Nullable;
+
+/** One client of a stream: the connections that it holds idle, the last used first. Lives on the generator's loop. */
+final class Client {
+    private final ArrayDeque<ClientConnection> idle = new ArrayDeque<>();
+
+    /** The idle connection that was used last, or null. It is no longer idle then. */
+    @Nullable
+    ClientConnection takeIdle() {
+        ClientConnection connection = idle.pollLast();
+        while (connection != null && !connection.usable()) {
+            connection = idle.pollLast();
+        }
+        return connection;
+    }
+
+    void keep(ClientConnection connection, long nowNanos) {
+        connection.idleSince(nowNanos);
+        idle.addLast(connection);
+    }
+
+    void forget(ClientConnection connection) {
+        idle.remove(connection);
+    }
+
+    /** Closes what has been idle since {@code sinceNanos} or longer. */
+    void closeIdle(long sinceNanos) {
+        for (Iterator<ClientConnection> each = idle.iterator(); each.hasNext(); ) {
+            ClientConnection connection = each.next();
+            if (connection.idleSinceNanos() > sinceNanos) {
+                return;
+            }
+            each.remove();
+            connection.close();
+        }
+    }
+}

@@ -1,0 +1,256 @@
+package steelyard.harness.stage.live;
+
+import io.netty.bootstrap.Bootstrap;
+import io.netty.channel.Channel;
+import io.netty.channel.ChannelFuture;
+import io.netty.channel.ChannelInitializer;
+import io.netty.channel.ChannelOption;
+import io.netty.channel.EventLoop;
+import io.netty.channel.epoll.EpollSocketChannel;
+import io.netty.channel.group.ChannelGroup;
+import io.netty.channel.group.DefaultChannelGroup;
+import io.netty.channel.socket.SocketChannel;
+import io.netty.channel.socket.nio.NioSocketChannel;
+import io.netty.handler.codec.http.HttpClientCodec;
+import io.netty.util.concurrent.Future;
+import java.net.InetSocketAddress;
+import java.util.List;
+import java.util.concurrent.TimeUnit;
+import java.util.function.LongFunction;
+import org.jspecify.annotations.Nullable;
+import steelyard.backends.stub.Transport;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.drills.model.Cause;
+import steelyard.drills.model.Traffic;
+
+/**
+ * The open-loop side of a play: sends each request when it is told to, whatever is still open, and tells what becomes of
+ * it.
+ *
+ * <p>A client keeps as many connections as it needs at once, takes the one used last, and closes what was idle for a set
+ * time: half of the balancer's own idle limit at most, so that the balancer never closes a connection just as it is
+ * taken up again, and whatever breaks off is a true failure.
+ *
+ * <p>Lives on one event loop; everything but the constructor is called there.
+ */
+final class Generator implements ClientConnection.Owner {
+    /** Connections of all clients together. */
+    static final int MOST_CONNECTIONS = 4_096;
+
+    private static final long LONGEST_IDLE_NANOS = TimeUnit.SECONDS.toNanos(30);
+    private static final long SWEEP_NANOS = TimeUnit.MILLISECONDS.toNanos(250);
+
+    private final EventLoop loop;
+    private final PlayClock clock;
+    private final Account account;
+    private final LongFunction<@Nullable Outcome> brokenOff;
+    private final Bootstrap bootstrap;
+    private final Line[] lines;
+    private final GiveUps giveUps;
+    private final ChannelGroup channels;
+    private int connections;
+    private int open;
+    private boolean closing;
+
+    /**
+     * One traffic stream at work.
+     *
+     * @param idleNanos how long its clients keep a connection that they do not use
+     */
+    private record Line(
+            Traffic traffic, InetSocketAddress front, RequestMaker maker, @Nullable Client[] clients, long idleNanos) {
+
+        Client client(int number) {
+            Client client = clients[number];
+            if (client == null) {
+                client = new Client();
+                clients[number] = client;
+            }
+            return client;
+        }
+    }
+
+    /**
+     * @param fronts where each traffic stream goes, by its number
+     * @param idleLimitNanos after how long the balancer closes an idle connection of each stream
+     * @param brokenOff asked, and told to forget, how the balancer broke off a request that has ended
+     */
+    Generator(
+            EventLoop loop,
+            Transport transport,
+            PlayClock clock,
+            Account account,
+            List<Traffic> traffic,
+            List<InetSocketAddress> fronts,
+            List<Long> idleLimitNanos,
+            LongFunction<@Nullable Outcome> brokenOff) {
+        this.loop = loop;
+        this.clock = clock;
+        this.account = account;
+        this.brokenOff = brokenOff;
+        this.giveUps = new GiveUps(traffic.size());
+        this.channels = new DefaultChannelGroup(loop);
+        this.lines = new Line[traffic.size()];
+        for (int i = 0; i < lines.length; i++) {
+            lines[i] = line(traffic.get(i), fronts.get(i), idleLimitNanos.get(i));
+        }
+        this.bootstrap = new Bootstrap()
+                .group(loop)
+                .channel(transport == Transport.EPOLL ? EpollSocketChannel.class : NioSocketChannel.class)
+                .option(ChannelOption.TCP_NODELAY, true);
+        loop.schedule(this::sweep, SWEEP_NANOS, TimeUnit.NANOSECONDS);
+    }
+
+    private static Line line(Traffic traffic, InetSocketAddress front, long idleLimitNanos) {
+        String authority = front.getAddress().getHostAddress() + ":" + front.getPort();
+        return new Line(
+                traffic,
+                front,
+                new RequestMaker(traffic, authority),
+                new Client[traffic.clients()],
+                Math.min(LONGEST_IDLE_NANOS, idleLimitNanos / 2));
+    }
+
+    /** Requests that have no end yet. */
+    int open() {
+        return open;
+    }
+
+    /** When the next client gives up; {@link Long#MAX_VALUE} when none waits. */
+    long nextGiveUpNanos() {
+        return giveUps.nextNanos();
+    }
+
+    /** Lets every client give up that has waited long enough by {@code nowNanos}; all of them for the greatest value. */
+    void giveUp(long nowNanos) {
+        giveUps.expire(nowNanos, this::giveUp);
+    }
+
+    /** Sends a request; parameters as of {@link steelyard.harness.stage.Hands#send}. */
+    void send(long request, long dueNanos, int traffic, int kind, int client) {
+        account.tell(
+                Account.Source.TRAFFIC, dueNanos, (to, at) -> to.requestDue(at, request, traffic, kind, client));
+        Line line = lines[traffic];
+        Exchange exchange = new Exchange(
+                request,
+                dueNanos,
+                traffic,
+                kind,
+                line.traffic().requests().get(kind),
+                line.traffic().giveUpNanos());
+        open++;
+        giveUps.add(exchange);
+        Client sender = line.client(client);
+        ClientConnection idle = sender.takeIdle();
+        if (idle != null) {
+            send(exchange, idle);
+        } else if (connections < MOST_CONNECTIONS) {
+            connect(exchange, sender, line);
+        } else {
+            account.tell(Account.Source.TRAFFIC, clock.playNow(), (to, at) -> to.connectionCapHit(at));
+            end(exchange, Cause.GAVE_UP, 0);
+        }
+    }
+
+    private void connect(Exchange exchange, Client sender, Line line) {
+        connections++;
+        ChannelFuture connecting = bootstrap
+                .clone()
+                .handler(new ChannelInitializer<SocketChannel>() {
+                    @Override
+                    protected void initChannel(SocketChannel channel) {
+                        channels.add(channel);
+                        channel.pipeline().addLast(new HttpClientCodec());
+                        channel.pipeline().addLast(new ClientConnection(Generator.this, sender, channel));
+                    }
+                })
+                .connect(line.front());
+        Channel channel = connecting.channel();
+        channel.closeFuture().addListener(closed -> connections--);
+        connecting.addListener(done -> {
+            if (done.isSuccess()) {
+                send(exchange, channel.pipeline().get(ClientConnection.class));
+            } else {
+                end(exchange, Cause.REFUSED, 0);
+            }
+        });
+    }
+
+    private void send(Exchange exchange, ClientConnection connection) {
+        if (exchange.hasEnded()) {
+            kept(connection);
+            return;
+        }
+        exchange.sentOn(connection);
+        account.tell(
+                Account.Source.TRAFFIC,
+                clock.playNow(),
+                (to, at) -> to.requestSent(at, exchange.request, exchange.dueNanos));
+        connection.send(exchange, lines[exchange.traffic].maker().make(exchange.request, exchange.kind));
+    }
+
+    private void giveUp(Exchange exchange) {
+        end(exchange, Cause.GAVE_UP, 0);
+        ClientConnection connection = exchange.connection();
+        if (connection != null) {
+            connection.abandon();
+        }
+    }
+
+    @Override
+    public void answered(ClientConnection connection, Exchange exchange, int status, @Nullable String proxyStatus) {
+        kept(connection);
+        boolean late = clock.playNow() >= exchange.deadlineNanos;
+        end(exchange, late ? Cause.GAVE_UP : Answer.cause(status, exchange.asks.good(), proxyStatus), status);
+    }
+
+    @Override
+    public void brokeOff(ClientConnection connection, Exchange exchange, int status) {
+        end(exchange, Answer.cutShort(brokenOff.apply(exchange.request)), status);
+    }
+
+    @Override
+    public void closed(ClientConnection connection) {
+        connection.client().forget(connection);
+    }
+
+    private void kept(ClientConnection connection) {
+        if (connection.usable()) {
+            connection.client().keep(connection, clock.nanos());
+        }
+    }
+
+    private void end(Exchange exchange, @Nullable Cause cause, int status) {
+        if (!exchange.end()) {
+            return;
+        }
+        open--;
+        brokenOff.apply(exchange.request);
+        account.tell(
+                Account.Source.TRAFFIC,
+                clock.playNow(),
+                (to, at) -> to.requestEnded(
+                        at, exchange.request, exchange.dueNanos, exchange.traffic, exchange.kind, cause, status));
+    }
+
+    private void sweep() {
+        if (closing) {
+            return;
+        }
+        long now = clock.nanos();
+        for (Line line : lines) {
+            for (Client client : line.clients()) {
+                if (client != null) {
+                    client.closeIdle(now - line.idleNanos());
+                }
+            }
+        }
+        loop.schedule(this::sweep, SWEEP_NANOS, TimeUnit.NANOSECONDS);
+    }
+
+    /** Closes every connection. Nothing may be sent after it. */
+    Future<Void> close() {
+        closing = true;
+        return channels.close();
+    }
+}
