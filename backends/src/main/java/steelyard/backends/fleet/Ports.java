@@ -10,9 +10,9 @@ import java.util.concurrent.atomic.AtomicInteger;
 /**
  * Hands out loopback ports below the system's ephemeral range, each at most once in the life of this process. No outgoing
  * connection gets its own port there, so a connection to a backend that is down cannot meet itself, and a
- * backend that comes back finds its port free.
+ * backend that comes back finds its port free. Any thread.
  */
-final class Ports {
+public final class Ports {
 
     private static final Path RANGE = Path.of("/proc/sys/net/ipv4/ip_local_port_range");
     private static final int LOWEST = 10_000;
@@ -34,7 +34,8 @@ final class Ports {
         this.start = start;
     }
 
-    static Ports ofThisProcess() {
+    /** Those that everything in this process shares. */
+    public static Ports ofThisProcess() {
         return OF_THIS_PROCESS;
     }
 
@@ -59,7 +60,7 @@ final class Ports {
      *
      * @throws CannotStart if none is left
      */
-    int next() throws CannotStart {
+    public int next() throws CannotStart {
         for (int turn = taken.getAndIncrement(); turn < end - first; turn = taken.getAndIncrement()) {
             int port = first + (start + turn) % (end - first);
             if (isFree(port)) {

@@ -7,19 +7,19 @@ import steelyard.drills.model.Traffic.Step;
 final class RateSteps {
     private static final double NANOS_A_SECOND = 1e9;
 
-    private final double[] perNano;
+    private final double[] perSecond;
     private final double[] endNanos;
 
     RateSteps(List<Step> steps) {
-        perNano = new double[steps.size()];
+        perSecond = new double[steps.size()];
         endNanos = new double[steps.size()];
         double end = 0;
-        for (int i = 0; i < perNano.length; i++) {
+        for (int i = 0; i < perSecond.length; i++) {
             end += steps.get(i).forNanos();
             endNanos[i] = end;
-            perNano[i] = steps.get(i).perSecond() / NANOS_A_SECOND;
+            perSecond[i] = steps.get(i).perSecond();
         }
-        endNanos[perNano.length - 1] = Double.POSITIVE_INFINITY;
+        endNanos[perSecond.length - 1] = Double.POSITIVE_INFINITY;
     }
 
     /** The step that holds at an instant. */
@@ -37,7 +37,7 @@ final class RateSteps {
         double at = fromNanos;
         for (int step = stepAt(fromNanos); at < toNanos; step++) {
             double end = Math.min(endNanos[step], toNanos);
-            expected += perNano[step] * (end - at);
+            expected += perSecond[step] * ((end - at) / NANOS_A_SECOND);
             at = end;
         }
         return expected;
@@ -51,14 +51,14 @@ final class RateSteps {
     double after(double fromNanos, double requests, double factor) {
         double at = fromNanos;
         double left = requests;
-        for (int step = stepAt(fromNanos); step < perNano.length; step++) {
-            double rate = perNano[step] * factor;
-            double due = rate > 0 ? at + left / rate : Double.POSITIVE_INFINITY;
+        for (int step = stepAt(fromNanos); step < perSecond.length; step++) {
+            double rate = perSecond[step] * factor;
+            double due = rate > 0 ? at + left * NANOS_A_SECOND / rate : Double.POSITIVE_INFINITY;
             if (due < endNanos[step]) {
                 return due;
             }
             if (endNanos[step] != Double.POSITIVE_INFINITY) {
-                left -= rate * (endNanos[step] - at);
+                left -= rate * ((endNanos[step] - at) / NANOS_A_SECOND);
                 at = endNanos[step];
             }
         }

@@ -90,6 +90,7 @@ final class StreamPlan {
 
     private void aim() {
         exactDueNanos = steps.after(atNanos, left, factor);
-        dueNanos = exactDueNanos < lastsNanos ? (long) exactDueNanos : NEVER;
+        double rounded = StrictMath.rint(exactDueNanos);
+        dueNanos = rounded < lastsNanos ? (long) rounded : NEVER;
     }
 }

@@ -1,5 +1,6 @@
 package steelyard.harness.stage.live;
 
+import java.util.Arrays;
 import java.util.PriorityQueue;
 import java.util.Queue;
 import java.util.concurrent.ConcurrentLinkedQueue;
@@ -23,6 +24,7 @@ import steelyard.harness.record.PlayListener;
 final class Account {
     /** Where an entry comes from; the order of entries of one instant. */
     enum Source {
+        CUES,
         TRAFFIC,
         BALANCER,
         BACKENDS,
@@ -60,7 +62,7 @@ final class Account {
     }
 
     void start() {
-        java.util.Arrays.fill(readings, Long.MIN_VALUE);
+        Arrays.fill(readings, Long.MIN_VALUE);
         teller.start();
     }
 

@@ -64,8 +64,7 @@ final class BalancerAccount implements DecisionSink {
     public void stood(Transition change) {
         tell(
                 change.atNanos(),
-                (to, at) -> to.stood(
-                        new Transition(change.backend(), change.from(), change.to(), change.cause(), at)));
+                (to, at) -> to.stood(new Transition(change.backend(), change.from(), change.to(), change.cause(), at)));
     }
 
     @Override

@@ -16,7 +16,6 @@ import io.netty.util.concurrent.Future;
 import java.net.InetSocketAddress;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
-import java.util.function.LongFunction;
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.stub.Transport;
 import steelyard.balancer.core.decide.Outcome;
@@ -37,43 +36,31 @@ final class Generator implements ClientConnection.Owner {
     /** Connections of all clients together. */
     static final int MOST_CONNECTIONS = 4_096;
 
-    private static final long LONGEST_IDLE_NANOS = TimeUnit.SECONDS.toNanos(30);
     private static final long SWEEP_NANOS = TimeUnit.MILLISECONDS.toNanos(250);
 
     private final EventLoop loop;
     private final PlayClock clock;
     private final Account account;
-    private final LongFunction<@Nullable Outcome> brokenOff;
+    private final BrokenOff brokenOff;
     private final Bootstrap bootstrap;
-    private final Line[] lines;
+    private final Clients[] streams;
     private final GiveUps giveUps;
     private final ChannelGroup channels;
     private int connections;
     private int open;
     private boolean closing;
 
-    /**
-     * One traffic stream at work.
-     *
-     * @param idleNanos how long its clients keep a connection that they do not use
-     */
-    private record Line(
-            Traffic traffic, InetSocketAddress front, RequestMaker maker, @Nullable Client[] clients, long idleNanos) {
-
-        Client client(int number) {
-            Client client = clients[number];
-            if (client == null) {
-                client = new Client();
-                clients[number] = client;
-            }
-            return client;
-        }
+    /** How the balancer broke off a request, if it did. Asking makes it forget. */
+    @FunctionalInterface
+    interface BrokenOff {
+        @Nullable
+        Outcome take(long request);
     }
 
     /**
      * @param fronts where each traffic stream goes, by its number
      * @param idleLimitNanos after how long the balancer closes an idle connection of each stream
-     * @param brokenOff asked, and told to forget, how the balancer broke off a request that has ended
+     * @param brokenOff asked about every request that has ended
      */
     Generator(
             EventLoop loop,
@@ -83,32 +70,22 @@ final class Generator implements ClientConnection.Owner {
             List<Traffic> traffic,
             List<InetSocketAddress> fronts,
             List<Long> idleLimitNanos,
-            LongFunction<@Nullable Outcome> brokenOff) {
+            BrokenOff brokenOff) {
         this.loop = loop;
         this.clock = clock;
         this.account = account;
         this.brokenOff = brokenOff;
         this.giveUps = new GiveUps(traffic.size());
         this.channels = new DefaultChannelGroup(loop);
-        this.lines = new Line[traffic.size()];
-        for (int i = 0; i < lines.length; i++) {
-            lines[i] = line(traffic.get(i), fronts.get(i), idleLimitNanos.get(i));
+        this.streams = new Clients[traffic.size()];
+        for (int i = 0; i < streams.length; i++) {
+            streams[i] = new Clients(traffic.get(i), fronts.get(i), idleLimitNanos.get(i));
         }
         this.bootstrap = new Bootstrap()
                 .group(loop)
                 .channel(transport == Transport.EPOLL ? EpollSocketChannel.class : NioSocketChannel.class)
                 .option(ChannelOption.TCP_NODELAY, true);
         loop.schedule(this::sweep, SWEEP_NANOS, TimeUnit.NANOSECONDS);
-    }
-
-    private static Line line(Traffic traffic, InetSocketAddress front, long idleLimitNanos) {
-        String authority = front.getAddress().getHostAddress() + ":" + front.getPort();
-        return new Line(
-                traffic,
-                front,
-                new RequestMaker(traffic, authority),
-                new Client[traffic.clients()],
-                Math.min(LONGEST_IDLE_NANOS, idleLimitNanos / 2));
     }
 
     /** Requests that have no end yet. */
@@ -128,31 +105,24 @@ final class Generator implements ClientConnection.Owner {
 
     /** Sends a request; parameters as of {@link steelyard.harness.stage.Hands#send}. */
     void send(long request, long dueNanos, int traffic, int kind, int client) {
-        account.tell(
-                Account.Source.TRAFFIC, dueNanos, (to, at) -> to.requestDue(at, request, traffic, kind, client));
-        Line line = lines[traffic];
-        Exchange exchange = new Exchange(
-                request,
-                dueNanos,
-                traffic,
-                kind,
-                line.traffic().requests().get(kind),
-                line.traffic().giveUpNanos());
+        account.tell(Account.Source.TRAFFIC, dueNanos, (to, at) -> to.requestDue(at, request, traffic, kind, client));
+        Clients stream = streams[traffic];
+        Exchange exchange = stream.exchange(request, dueNanos, traffic, kind);
         open++;
         giveUps.add(exchange);
-        Client sender = line.client(client);
+        Client sender = stream.client(client);
         ClientConnection idle = sender.takeIdle();
         if (idle != null) {
             send(exchange, idle);
         } else if (connections < MOST_CONNECTIONS) {
-            connect(exchange, sender, line);
+            connect(exchange, sender, stream.front());
         } else {
             account.tell(Account.Source.TRAFFIC, clock.playNow(), (to, at) -> to.connectionCapHit(at));
             end(exchange, Cause.GAVE_UP, 0);
         }
     }
 
-    private void connect(Exchange exchange, Client sender, Line line) {
+    private void connect(Exchange exchange, Client sender, InetSocketAddress front) {
         connections++;
         ChannelFuture connecting = bootstrap
                 .clone()
@@ -164,7 +134,7 @@ final class Generator implements ClientConnection.Owner {
                         channel.pipeline().addLast(new ClientConnection(Generator.this, sender, channel));
                     }
                 })
-                .connect(line.front());
+                .connect(front);
         Channel channel = connecting.channel();
         channel.closeFuture().addListener(closed -> connections--);
         connecting.addListener(done -> {
@@ -186,7 +156,7 @@ final class Generator implements ClientConnection.Owner {
                 Account.Source.TRAFFIC,
                 clock.playNow(),
                 (to, at) -> to.requestSent(at, exchange.request, exchange.dueNanos));
-        connection.send(exchange, lines[exchange.traffic].maker().make(exchange.request, exchange.kind));
+        connection.send(exchange, streams[exchange.traffic].message(exchange));
     }
 
     private void giveUp(Exchange exchange) {
@@ -206,7 +176,7 @@ final class Generator implements ClientConnection.Owner {
 
     @Override
     public void brokeOff(ClientConnection connection, Exchange exchange, int status) {
-        end(exchange, Answer.cutShort(brokenOff.apply(exchange.request)), status);
+        end(exchange, Answer.cutShort(brokenOff.take(exchange.request)), status);
     }
 
     @Override
@@ -225,7 +195,7 @@ final class Generator implements ClientConnection.Owner {
             return;
         }
         open--;
-        brokenOff.apply(exchange.request);
+        brokenOff.take(exchange.request);
         account.tell(
                 Account.Source.TRAFFIC,
                 clock.playNow(),
@@ -238,12 +208,8 @@ final class Generator implements ClientConnection.Owner {
             return;
         }
         long now = clock.nanos();
-        for (Line line : lines) {
-            for (Client client : line.clients()) {
-                if (client != null) {
-                    client.closeIdle(now - line.idleNanos());
-                }
-            }
+        for (Clients stream : streams) {
+            stream.closeIdle(now);
         }
         loop.schedule(this::sweep, SWEEP_NANOS, TimeUnit.NANOSECONDS);
     }

@@ -28,8 +28,8 @@ final class RequestMaker {
                 .toArray(HttpMethod[]::new);
         this.paths = traffic.requests().stream().map(Traffic.Request::path).toArray(String[]::new);
         this.bodies = traffic.requests().stream()
-                .map(each -> Unpooled.unreleasableBuffer(Unpooled.wrappedBuffer(new byte[each.bodyBytes()])
-                        .asReadOnly()))
+                .map(each -> Unpooled.unreleasableBuffer(
+                        Unpooled.wrappedBuffer(new byte[each.bodyBytes()]).asReadOnly()))
                 .toArray(ByteBuf[]::new);
     }
 

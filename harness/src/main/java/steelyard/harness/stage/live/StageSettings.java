@@ -134,9 +134,7 @@ final class StageSettings {
     }
 
     private static @Nullable RetrySettings retry(@Nullable Retry retry) {
-        return retry == null
-                ? null
-                : new RetrySettings(retry.atMost(), retry.budget(), retry.bucket(), retry.also());
+        return retry == null ? null : new RetrySettings(retry.atMost(), retry.budget(), retry.bucket(), retry.also());
     }
 
     private static TimeoutSettings timeouts(Timeouts timeouts) {

@@ -1,0 +1,255 @@
+package steelyard.harness.stage.live;
+
+import io.netty.channel.EventLoop;
+import io.netty.channel.EventLoopGroup;
+import java.net.InetSocketAddress;
+import java.util.ArrayList;
+import java.util.List;
+import java.util.concurrent.CompletableFuture;
+import java.util.concurrent.ExecutionException;
+import java.util.concurrent.TimeUnit;
+import java.util.concurrent.locks.LockSupport;
+import org.jspecify.annotations.Nullable;
+import steelyard.backends.behave.Chance;
+import steelyard.backends.behave.Stream;
+import steelyard.backends.fleet.CannotStart;
+import steelyard.backends.fleet.EmbeddedFleet;
+import steelyard.backends.fleet.Fleet;
+import steelyard.backends.fleet.Ports;
+import steelyard.backends.stub.Transport;
+import steelyard.balancer.live.Balancer;
+import steelyard.balancer.live.guard.BackendReadings;
+import steelyard.balancer.settings.BalancerSettings;
+import steelyard.drills.model.Drill;
+import steelyard.drills.model.Traffic;
+import steelyard.harness.record.Cast;
+import steelyard.harness.record.PlayListener;
+import steelyard.harness.stage.Agenda;
+import steelyard.harness.stage.CannotPlay;
+import steelyard.harness.stage.Stage;
+import steelyard.harness.traffic.OfferedRate;
+
+/**
+ * A drill's stage on real sockets of the loopback interface: an open-loop generator, the balancer and embedded backends.
+ *
+ * <p>{@link #open}, {@link #play} and {@link #close} are for one thread; {@link #interrupt} for any.
+ */
+public final class LiveStage implements Stage {
+    /** What the generator is asked to send at most; it has to stay punctual. */
+    public static final int MOST_REQUESTS_A_SECOND = 20_000;
+
+    private static final long LEAD_NANOS = TimeUnit.MILLISECONDS.toNanos(20);
+    private static final long LONGEST_SETTLING_NANOS = TimeUnit.SECONDS.toNanos(2);
+    private static final long SETTLING_STEP_NANOS = TimeUnit.MILLISECONDS.toNanos(20);
+    private static final long LONGEST_CLOSE_SECONDS = 5;
+
+    private final Drill drill;
+    private final Cast cast;
+    private final long seed;
+    private final PlayClock clock = new PlayClock();
+    private final Transport transport = Transport.best();
+    private final Fleet fleet = new EmbeddedFleet();
+    private volatile boolean interrupted;
+    private volatile @Nullable Play play;
+    private @Nullable Account account;
+    private @Nullable BalancerAccount decisions;
+    private @Nullable Balancer balancer;
+    private @Nullable EventLoopGroup loops;
+    private @Nullable Generator generator;
+
+    /** @param seed of every draw of balancer and backends; the agenda should be of the same */
+    public LiveStage(Drill drill, long seed) {
+        this.drill = drill;
+        this.cast = new Cast(drill);
+        this.seed = seed;
+    }
+
+    @Override
+    public void open(PlayListener listener) throws CannotPlay {
+        if (account != null) {
+            throw new IllegalStateException("a stage is opened once");
+        }
+        refuseTooMuch();
+        Account told = new Account(listener, clock::playNow, this::failed);
+        account = told;
+        decisions = new BalancerAccount(told, clock);
+        try {
+            fleet.start(StageSettings.backends(drill), seed, clock::nanos, new BackendAccount(told, clock));
+            balancer = startBalancer(decisions);
+        } catch (CannotStart | steelyard.balancer.live.CannotStart failure) {
+            throw new CannotPlay(String.valueOf(failure.getMessage()), failure);
+        }
+        loops = transport.loops(1, "generator");
+    }
+
+    private void refuseTooMuch() throws CannotPlay {
+        double peak = OfferedRate.peakPerSecond(drill);
+        if (peak > MOST_REQUESTS_A_SECOND) {
+            throw new CannotPlay(
+                    "the drill offers " + Math.round(peak) + " requests a second at its peak, more than the "
+                            + MOST_REQUESTS_A_SECOND + " that the generator sends: lower its rates or its surge");
+        }
+    }
+
+    private Balancer startBalancer(BalancerAccount sink) throws CannotStart, steelyard.balancer.live.CannotStart {
+        BalancerSettings settings = StageSettings.balancer(drill);
+        int[] ports = new int[settings.pools().size()];
+        for (int pool = 0; pool < ports.length; pool++) {
+            int asked = settings.pools().get(pool).frontPort();
+            ports[pool] = asked == 0 ? Ports.ofThisProcess().next() : asked;
+        }
+        Chance chance = new Chance(seed);
+        return Balancer.start(
+                settings,
+                fleet::address,
+                pool -> ports[pool],
+                clock::nanos,
+                backend -> chance.unit(Stream.PROBE_PHASE, backend, 0),
+                sink);
+    }
+
+    /** Where the front of a pool listens, by the pool's number. Only while the stage is open. */
+    public InetSocketAddress frontAddress(int pool) {
+        return opened(balancer).frontAddress(pool);
+    }
+
+    @Override
+    public void play(Agenda agenda) throws CannotPlay {
+        Account told = opened(account);
+        Balancer balancing = opened(balancer);
+        EventLoop loop = opened(loops).next();
+        Generator sending = generator(loop);
+        Play playing = new Play(loop, clock, told, sending, balancing, fleet, agenda);
+        Sampler sampler =
+                new Sampler(loop, clock, told, balancing, fleet, cast.backends().size(), drill.lastsNanos());
+        generator = sending;
+        play = playing;
+        if (interrupted) {
+            playing.interrupt();
+        }
+        told.start();
+        boolean complete = false;
+        try {
+            balancing.begin(clock.begin(LEAD_NANOS));
+            sampler.start();
+            complete = await(playing.start());
+            settle(balancing);
+        } finally {
+            sampler.stop();
+            told.finish(complete);
+        }
+    }
+
+    private Generator generator(EventLoop loop) {
+        Balancer balancing = opened(balancer);
+        List<InetSocketAddress> fronts = new ArrayList<>();
+        List<Long> idleLimits = new ArrayList<>();
+        for (Traffic each : drill.traffic()) {
+            fronts.add(balancing.frontAddress(cast.poolNumber(each.pool())));
+            idleLimits.add(drill.stage().pool(each.pool()).timeouts().idleNanos());
+        }
+        return new Generator(
+                loop,
+                transport,
+                clock,
+                opened(account),
+                drill.traffic(),
+                fronts,
+                idleLimits,
+                opened(decisions)::takeBrokenOff);
+    }
+
+    private static boolean await(CompletableFuture<Boolean> over) throws CannotPlay {
+        try {
+            return over.get();
+        } catch (ExecutionException failure) {
+            if (failure.getCause() instanceof CannotPlay cannot) {
+                throw cannot;
+            }
+            throw new IllegalStateException("the play broke off", failure.getCause());
+        } catch (InterruptedException stop) {
+            Thread.currentThread().interrupt();
+            throw new CannotPlay("the play was stopped from outside: start it again", stop);
+        }
+    }
+
+    /** Attempts whose clients have gone end a moment later; the account should have them. */
+    private void settle(Balancer balancing) {
+        BackendReadings readings = new BackendReadings(cast.backends().size());
+        long deadline = clock.nanos() + LONGEST_SETTLING_NANOS;
+        boolean busy = true;
+        while (busy && clock.nanos() - deadline < 0) {
+            LockSupport.parkNanos(SETTLING_STEP_NANOS);
+            balancing.sample(readings);
+            busy = false;
+            for (int backend = 0; backend < readings.backends(); backend++) {
+                busy |= readings.inFlight(backend) > 0;
+            }
+        }
+        LockSupport.parkNanos(SETTLING_STEP_NANOS);
+    }
+
+    /** The listener failed: there is no use in going on. */
+    private void failed(RuntimeException failure) {
+        Play playing = play;
+        if (playing != null) {
+            playing.fail(failure);
+        }
+    }
+
+    @Override
+    public void interrupt() {
+        interrupted = true;
+        Play playing = play;
+        if (playing != null) {
+            playing.interrupt();
+        }
+    }
+
+    @Override
+    public void close() {
+        List<Throwable> failures = new ArrayList<>();
+        step(failures, this::closeTraffic);
+        Balancer balancing = balancer;
+        if (balancing != null) {
+            step(failures, balancing::close);
+        }
+        step(failures, fleet::close);
+        if (!failures.isEmpty()) {
+            IllegalStateException all =
+                    new IllegalStateException(failures.size() + " parts of the stage did not close cleanly");
+            failures.forEach(all::addSuppressed);
+            throw all;
+        }
+    }
+
+    private void closeTraffic() {
+        EventLoopGroup running = loops;
+        if (running == null) {
+            return;
+        }
+        Generator sending = generator;
+        if (sending != null) {
+            running.submit(sending::close).awaitUninterruptibly();
+        }
+        running.shutdownGracefully(0, LONGEST_CLOSE_SECONDS, TimeUnit.SECONDS);
+        if (!running.terminationFuture().awaitUninterruptibly(2 * LONGEST_CLOSE_SECONDS, TimeUnit.SECONDS)) {
+            throw new IllegalStateException("the generator's loop did not end");
+        }
+    }
+
+    private static void step(List<Throwable> failures, Runnable step) {
+        try {
+            step.run();
+        } catch (RuntimeException failure) {
+            failures.add(failure);
+        }
+    }
+
+    private static <T> T opened(@Nullable T part) {
+        if (part == null) {
+            throw new IllegalStateException("the stage is not open");
+        }
+        return part;
+    }
+}
