@@ -14,6 +14,7 @@ final class CueReader {
     private static final Quantity<Integer> TIMES = Numbers.from(1, 1_000);
     private static final Quantity<Double> FACTOR =
             Numbers.NUMBER.that(n -> n >= 0 && n <= 1_000_000, "is out of range", "write a number from 0 to 1000000");
+    private static final Quantity<Integer> FAILURE = Numbers.from(400, 599);
     private static final Quantity<String> WHEN = Words.of("a moment to fail", "at-once", "after-work");
     private static final Quantity<String> NAME = Names.some("a name", "fulmar dies")
             .that(CueReader::fits, "cannot name a cue", "use no + and no -, and begin with a letter");
@@ -135,10 +136,10 @@ final class CueReader {
                 fields.read("factor", FACTOR, 1.0),
                 fields.read("plus", Durations.DURATION, 0L),
                 fields.read("share", Shares.ABOVE_ZERO, 1.0),
-                fields.read("status", Numbers.STATUS, 500),
+                fields.read("status", FAILURE, 500),
                 fields.read("when", WHEN, "at-once").equals("after-work"),
                 fields.read("probes", Numbers.YES_OR_NO, false),
-                fields.read("period", Durations.POSITIVE, 0L),
+                fields.read("period", Durations.PERIOD, 0L),
                 fields.read("weight", HostsReader.WEIGHT, 0),
                 fields.read("limit", Durations.POSITIVE, 0L));
     }

@@ -48,6 +48,10 @@ public final class DrillReader {
      */
     public static Parsed<Cue> readCue(String yamlFlow, Drill drill) {
         Problems problems = new Problems("cue");
+        if (yamlFlow.isBlank()) {
+            problems.add(Place.START, "there is no cue", "write one, such as kill: fulmar");
+            return refused(problems);
+        }
         Node node = tree(yamlFlow, problems);
         if (node == null) {
             return refused(problems);

@@ -22,6 +22,10 @@ final class Durations {
     static final Quantity<Long> POSITIVE = DURATION.that(
             n -> n > 0 && n <= DAY, "is not between zero and a day", "write a duration above zero, at most 24h");
 
+    /** Of what comes again and again: a millisecond or more, to a day. */
+    static final Quantity<Long> PERIOD = DURATION.that(
+            n -> n >= 1_000_000 && n <= DAY, "is not between 1ms and a day", "write at least 1ms, at most 24h");
+
     private Durations() {}
 
     /** Nanoseconds, or null for a text that is no duration; a negative one is none. */

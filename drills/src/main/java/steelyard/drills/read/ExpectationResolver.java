@@ -33,7 +33,7 @@ final class ExpectationResolver {
         this.roster = roster;
         this.schedule = schedule;
         this.cues = cues;
-        this.measurable = new Measurable(problems, roster, cues);
+        this.measurable = new Measurable(problems, roster, cues, lastsNanos);
         this.busyPools = traffic.stream().map(Traffic::pool).collect(Collectors.toSet());
         this.lastsNanos = lastsNanos;
     }

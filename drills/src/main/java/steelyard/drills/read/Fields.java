@@ -30,7 +30,7 @@ final class Fields {
             problems.add(
                     node.place(),
                     keys.noun() + " is written here as " + node.noun(),
-                    "write a map of " + Sentence.and(keys.words()));
+                    "write it like " + keys.example());
         }
         return fields;
     }

@@ -16,11 +16,14 @@ final class Measurable {
     private final Problems problems;
     private final Roster roster;
     private final List<Cue> cues;
+    private final long lastsNanos;
 
-    Measurable(Problems problems, Roster roster, List<Cue> cues) {
+    /** With the cues in order of their instant. */
+    Measurable(Problems problems, Roster roster, List<Cue> cues, long lastsNanos) {
         this.problems = problems;
         this.roster = roster;
         this.cues = cues;
+        this.lastsNanos = lastsNanos;
     }
 
     /** Checks an expectation that counts from a cue. */
@@ -32,16 +35,8 @@ final class Measurable {
                     never(draft, "'" + cue.name() + "' is no drain", "name a drain cue");
                 }
             }
-            case SETTLED_IN -> {
-                if (pools(target).stream().anyMatch(pool -> pool.weights() == Pool.Weights.HOST)) {
-                    never(draft, "under weights: host the shares of a pool have no set value", "use share instead");
-                }
-            }
-            case SHIFTED_IN -> {
-                if (wholePool(target)) {
-                    never(draft, "all attempts of the pool go to its own backends", "name some of its backends");
-                }
-            }
+            case SETTLED_IN -> settled(draft, target, cue);
+            case SHIFTED_IN -> shifted(draft, target, cue);
             case FAILED,
                     LONGEST_OUTAGE,
                     LATENCY,
@@ -62,7 +57,7 @@ final class Measurable {
                 && target.kind() == Target.Kind.BACKENDS
                 && pools(target).size() > 1) {
             never(draft, "the backends are of several pools", "name backends of one pool, or a host or a zone");
-        } else if (measure == Measure.SHARE && target.kind() != Target.Kind.HOST && wholePool(target)) {
+        } else if (measure == Measure.SHARE && wholePool(target)) {
             always(draft, "100 %, since it names the whole pool", "name some of its backends");
         } else if (measure == Measure.FAIRNESS && target.backends().size() == 1) {
             always(draft, "1 for a single backend", "name several, or leave out of");
@@ -70,6 +65,42 @@ final class Measurable {
             always(draft, "1 in a pool without retry", "write retry: {at-most: 1} for the pool");
         } else if (measure == Measure.CUT && cues.stream().noneMatch(cue -> cue.kind() == Cue.Kind.DRAIN)) {
             always(draft, "0 without a drain cue", "add one, or drop the expectation");
+        }
+    }
+
+    private void settled(ExpectationDraft draft, Target target, Cue cue) {
+        Set<Pool> pools = pools(target);
+        if (pools.stream().anyMatch(pool -> pool.weights() == Pool.Weights.HOST)) {
+            never(draft, "under weights: host the shares of a pool have no set value", "use share instead");
+        }
+        room(
+                draft,
+                cue,
+                other -> other.target().backends().stream().map(roster::poolOf).anyMatch(pools::contains));
+    }
+
+    private void shifted(ExpectationDraft draft, Target target, Cue cue) {
+        if (wholePool(target)) {
+            never(draft, "all attempts of the pool go to its own backends", "name some of its backends");
+        }
+        room(draft, cue, other -> other.target().backends().stream().anyMatch(target.backends()::contains));
+    }
+
+    /** Shares are looked at second by second, up to the next cue that acts on them; there has to be one second. */
+    private void room(ExpectationDraft draft, Cue cue, Predicate<Cue> actsOnThem) {
+        long since = cue.atNanos();
+        Cue next = cues.stream()
+                .filter(other -> other.atNanos() > since && other.kind().side() != Cue.Side.TRAFFIC)
+                .filter(actsOnThem)
+                .findFirst()
+                .orElse(null);
+        long room = (next == null ? lastsNanos : next.atNanos()) - since;
+        if (room < Durations.SECOND) {
+            String end = next == null ? "the end of the play" : "'" + next.name() + "'";
+            never(
+                    draft,
+                    end + " comes only " + Durations.text(room) + " after the cue",
+                    "leave 1s between them at least");
         }
     }
 

@@ -19,6 +19,8 @@ final class PoolReader {
     private static final Quantity<Pool.Weights> WEIGHTS = Words.of("an owner of weights", Pool.Weights.values());
     private static final Quantity<Probe.Kind> PROBE_KIND = Words.of("a kind of probe", Probe.Kind.values());
     private static final Quantity<Integer> IN_A_ROW = Numbers.from(1, 1_000);
+    private static final Quantity<Double> FLOOR =
+            Shares.SHARE.that(s -> s >= 0.001 && s <= 1, "is out of range", "write a share from 0.1% to 100%");
     private static final Quantity<Integer> PORT = Numbers.from(1, 65_535);
     private static final Quantity<Integer> RETRIES = Numbers.from(1, 100);
     private static final Quantity<Integer> BUCKET = Numbers.from(1, 1_000_000);
@@ -92,7 +94,7 @@ final class PoolReader {
         return new Probe(
                 kind,
                 path,
-                fields.read("every", Durations.POSITIVE, 2 * SECOND),
+                fields.read("every", Durations.PERIOD, 2 * SECOND),
                 fields.read("within", Durations.POSITIVE, SECOND),
                 fields.read("misses", IN_A_ROW, 3),
                 fields.read("passes", IN_A_ROW, 2));
@@ -103,8 +105,7 @@ final class PoolReader {
             return new WarmUp(pool.read("warm-up", Durations.POSITIVE, SECOND), 0.1);
         }
         Fields fields = pool.map("warm-up", Keys.WARM_UP);
-        return new WarmUp(
-                fields.need("ramp", Durations.POSITIVE, SECOND), fields.read("floor", Shares.ABOVE_ZERO, 0.1));
+        return new WarmUp(fields.need("ramp", Durations.POSITIVE, SECOND), fields.read("floor", FLOOR, 0.1));
     }
 
     private static Retry retry(Fields fields) {
@@ -124,13 +125,14 @@ final class PoolReader {
 
     private void checkWeights(Fields fields, Pool.Method method, Pool.Weights weights, BackendsReader.OfPool ofPool) {
         Place written = ofPool.firstWeight();
+        if (weights == Pool.Weights.HOST && method != Pool.Method.WEIGHTED_ROUND_ROBIN) {
+            problems.add(
+                    fields.valuePlace("weights"),
+                    "weights: host goes by turns, which " + method.word() + " does not take",
+                    "write method: weighted-round-robin, or weights: backend");
+        }
         if (method == Pool.Method.ROUND_ROBIN) {
-            if (weights == Pool.Weights.HOST) {
-                problems.notice(
-                        fields.keyPlace("weights"),
-                        "under round-robin weights play no part",
-                        "write method: weighted-round-robin to use them");
-            } else if (written != null && ofPool.weightsDiffer()) {
+            if (written != null && ofPool.weightsDiffer()) {
                 problems.notice(
                         written,
                         "under round-robin weights play no part",

@@ -6,13 +6,13 @@ import org.jspecify.annotations.Nullable;
 
 /** Sizes of bodies, in bytes. */
 final class Sizes {
-    private static final int MOST = 256 << 20;
+    private static final int MOST = 16 << 20;
     private static final List<String> UNITS = List.of("MiB", "KiB", "B");
     private static final int[] BYTES = {1 << 20, 1 << 10, 1};
 
     static final Quantity<Integer> SIZE = Quantity.of("a size", "512B, 4KiB or 1MiB", Sizes::bytes)
             .withUnits(List.of("B", "KiB", "MiB"))
-            .that(n -> n >= 0, "is out of range", "write a size from 0B to 256MiB");
+            .that(n -> n >= 0, "is out of range", "write a size from 0B to 16MiB");
 
     private Sizes() {}
 

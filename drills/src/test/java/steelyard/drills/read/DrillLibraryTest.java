@@ -5,13 +5,15 @@ import static org.assertj.core.api.Assertions.assertThat;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.time.Duration;
+import java.util.List;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.MethodSource;
 import steelyard.drills.model.Drill;
 
 class DrillLibraryTest {
-    static java.util.List<String> names() {
+    static List<String> names() {
         return DrillLibrary.names();
     }
 
@@ -24,6 +26,20 @@ class DrillLibraryTest {
                 .allSatisfy(problem -> assertThat(problem.severity()).isEqualTo(Problem.Severity.NOTICE));
         assertThat(parsed.value()).isPresent();
         assertThat(parsed.value().orElseThrow().expectations()).hasSizeGreaterThanOrEqualTo(4);
+    }
+
+    @ParameterizedTest
+    @MethodSource("names")
+    void text_ofABundledDrill_suitsASmallMachine(String name) {
+        Drill drill = DrillReader.read(name, DrillLibrary.text(name).orElseThrow())
+                .value()
+                .orElseThrow();
+        double rate = drill.traffic().stream()
+                .mapToDouble(stream -> stream.steps().get(0).perSecond())
+                .sum();
+        assertThat(Duration.ofNanos(drill.lastsNanos())).isBetween(Duration.ofSeconds(30), Duration.ofSeconds(60));
+        assertThat(rate).isBetween(300.0, 900.0);
+        assertThat(drill.about()).contains("Watch");
     }
 
     @Test
