@@ -59,7 +59,7 @@ public final class EmbeddedFleet implements Fleet {
             for (int backend = 0; backend < backends.size(); backend++) {
                 startOne(backend, backends.get(backend), folders.get(backend), seed, clock, listener, group);
             }
-        } catch (CannotStart failure) {
+        } catch (CannotStart | RuntimeException failure) {
             closeAfter(failure);
             throw failure;
         }
@@ -144,7 +144,7 @@ public final class EmbeddedFleet implements Fleet {
         addresses.add(address);
     }
 
-    private void closeAfter(CannotStart failure) {
+    private void closeAfter(Exception failure) {
         try {
             close();
         } catch (IllegalStateException closing) {

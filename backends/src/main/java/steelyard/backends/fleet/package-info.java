@@ -1,8 +1,8 @@
 /**
  * All backends of a play, started, driven and stopped together.
  *
- * <p>Purpose: the port through which a stage gets its backends, wherever they run. {@code EmbeddedFleet} runs them in
- * this process.
+ * <p>Purpose: the port through which a stage gets its backends, wherever they run. {@link
+ * steelyard.backends.fleet.EmbeddedFleet} runs them in this process.
  *
  * <p>Allowed dependencies: {@code steelyard.backends.behave}, {@code steelyard.backends.stub}, Netty's event loops.
  *

@@ -3,7 +3,10 @@ package steelyard.backends.stub;
 /** Header fields by which a request tells a backend who it is, so that both draw the same chance. */
 public final class StubHeaders {
 
-    /** Number of the request over the whole play, a decimal number of 0 or above. */
+    /**
+     * Number of the request over the whole play, a decimal number of 0 or above. On a probe it is the number of the probe
+     * at this backend; a probe that carries none is numbered by the stub.
+     */
     public static final String REQUEST = "Steelyard-Request";
 
     /** Number of the attempt at this request, a decimal number; the first try is 0. */
