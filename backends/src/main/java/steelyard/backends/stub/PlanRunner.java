@@ -7,15 +7,12 @@ import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpUtil;
 import io.netty.util.collection.LongObjectHashMap;
 import io.netty.util.collection.LongObjectMap;
-import io.netty.util.concurrent.Future;
 import java.util.ArrayList;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
-import java.util.concurrent.TimeUnit;
 import java.util.function.LongSupplier;
-import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Behaviour;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Change;
@@ -30,13 +27,13 @@ import steelyard.backends.behave.ReplySink;
 final class PlanRunner implements ReplySink {
 
     private final StubSettings settings;
-    private final EventLoop loop;
     private final LongSupplier clock;
     private final BackendListener listener;
     private final Chance chance;
     private final Behaviour behaviour;
     private final Replies replies;
     private final Door door;
+    private final DeadlineTimer timer;
     private final Set<Connection> connections = new LinkedHashSet<>();
     private final LongObjectMap<Exchange> held = new LongObjectHashMap<>();
 
@@ -44,18 +41,16 @@ final class PlanRunner implements ReplySink {
     private long probes;
     private long unnumbered;
     private long bodyBytes;
-    private @Nullable Future<?> timer;
-    private long timerNanos;
 
     PlanRunner(StubSettings settings, EventLoop loop, LongSupplier clock, BackendListener listener, DoorMaker doors) {
         this.settings = settings;
-        this.loop = loop;
         this.clock = clock;
         this.listener = listener;
         this.chance = new Chance(settings.seed());
         this.behaviour = new Behaviour(settings.backend(), settings.behaviour(), chance, clock.getAsLong());
         this.replies = new Replies(settings.behaviour().bodyBytes());
         this.door = doors.make(this);
+        this.timer = new DeadlineTimer(loop, clock, this::onDeadline);
     }
 
     /** Makes the door through which connections of this runner come. */
@@ -181,9 +176,7 @@ final class PlanRunner implements ReplySink {
     /** Stops everything; what is open ends as abandoned. Returns the connections, to be waited for. */
     List<Connection> stop() {
         door.shut();
-        if (timer != null) {
-            timer.cancel(false);
-        }
+        timer.cancel();
         return new ArrayList<>(connections);
     }
 
@@ -254,23 +247,12 @@ final class PlanRunner implements ReplySink {
     }
 
     private void arm() {
-        if (!behaviour.hasDeadline()) {
-            return;
+        if (behaviour.hasDeadline()) {
+            timer.arm(behaviour.nextDeadlineNanos());
         }
-        long deadlineNanos = behaviour.nextDeadlineNanos();
-        if (timer != null) {
-            if (timerNanos - deadlineNanos <= 0) {
-                return;
-            }
-            timer.cancel(false);
-        }
-        timerNanos = deadlineNanos;
-        long delayNanos = Math.max(0, deadlineNanos - clock.getAsLong());
-        timer = loop.schedule(this::onTimer, delayNanos, TimeUnit.NANOSECONDS);
     }
 
-    private void onTimer() {
-        timer = null;
+    private void onDeadline() {
         behaviour.poll(clock.getAsLong(), this);
         arm();
     }
