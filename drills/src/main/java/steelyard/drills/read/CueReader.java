@@ -127,7 +127,7 @@ final class CueReader {
 
     private Cue.Settings settings(Fields fields, Cue.@Nullable Kind kind) {
         if (kind == Cue.Kind.SLOW && !fields.has("factor") && !fields.has("plus")) {
-            fields.missing("factor", "write factor: 5, or plus: 100ms");
+            problems.add(fields.place(), "slow needs 'factor' or 'plus'", "write factor: 5, or plus: 100ms");
         }
         needs(fields, kind, Cue.Kind.SURGE, "factor", "write factor: 2");
         needs(fields, kind, Cue.Kind.FLAP_PROBE, "period", "write period: 4s");

@@ -74,11 +74,22 @@ final class CueSchedule {
         if (start == null || !inside(draft, start) || target == null || kind == null) {
             return;
         }
+        noticeUnseen(draft, kind, target);
         Placed<String> name = draft.name();
         for (int i = 0; i < draft.times(); i++) {
             String called = name == null ? free(kind.word() + " " + target.text()) : CueDraft.repeat(name.value(), i);
             long at = start + i * draft.everyNanos();
             cues.add(new Cue(called, at, kind, target, draft.settings(), draft.forNanos()));
+        }
+    }
+
+    private void noticeUnseen(CueDraft draft, Cue.Kind kind, Target target) {
+        boolean ofProbes = kind == Cue.Kind.FAIL_PROBE || kind == Cue.Kind.FLAP_PROBE;
+        if (ofProbes && roster.poolsOf(target).stream().allMatch(pool -> pool.probe() == null)) {
+            problems.notice(
+                    draft.place(),
+                    kind.word() + " does nothing in a pool without probes",
+                    "write probe: {path: /afloat} for the pool");
         }
     }
 

@@ -10,14 +10,14 @@ import org.jspecify.annotations.Nullable;
  */
 record Instant(Place place, @Nullable String base, long offsetNanos) {
 
+    private static final Quantity<String> TEXT = Names.some("an instant", "15s, or the name of a cue and perhaps + 2s");
+
     /** Reads {@code 15s}, {@code fulmar dies}, {@code fulmar dies + 2s} or {@code fulmar dies - 100ms}; null when noted. */
     static @Nullable Instant read(Fields fields, String key) {
         Node node = fields.node(key);
         String text = fields.read(key, TEXT);
         return node == null || text == null ? null : parse(new Placed<>(node.place(), text), key, fields.problems());
     }
-
-    private static final Quantity<String> TEXT = Names.some("an instant", "15s, or the name of a cue and perhaps + 2s");
 
     private static @Nullable Instant parse(Placed<String> text, String key, Problems problems) {
         String written = text.value();

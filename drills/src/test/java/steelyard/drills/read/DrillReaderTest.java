@@ -238,6 +238,24 @@ class DrillReaderTest {
     }
 
     @Test
+    void read_ofAProbeFaultWithoutProbes_givesANotice() {
+        String text = LEAST + "cues: [{at: 1s, fail-probe: fulmar}]\nexpect: [{measure: failed, at-most: 1%}]\n";
+        assertThat(shown(text))
+                .containsExactly(
+                        "d:6:8: notice: fail-probe does nothing in a pool without probes; write probe: {path: /afloat} for the pool");
+    }
+
+    @Test
+    void readCue_ofNothing_saysHowToWriteOne() {
+        assertThat(DrillReader.readCue(" ", read(LEAST)).problems())
+                .singleElement()
+                .hasToString("cue:1:1: there is no cue; write one, such as kill: fulmar");
+        assertThat(DrillReader.readCue("kill fulmar", read(LEAST)).problems())
+                .singleElement()
+                .hasToString("cue:1:1: a cue is written here as a single value; write it like {at: 15s, kill: fulmar}");
+    }
+
+    @Test
     void readCue_typedInAnyStyle_takesThePathOfACueOfTheFile() {
         Drill drill = read(EveryKeyTest.TEXT);
         Cue braces = DrillReader.readCue("{slow: gannet-2, factor: 3, for: 2s}", drill)
@@ -283,7 +301,7 @@ class DrillReaderTest {
                         .problems())
                 .extracting(Problem::toString)
                 .containsExactly(
-                        "cue:1:1: a cue needs 'factor'; write factor: 5, or plus: 100ms",
+                        "cue:1:1: slow needs 'factor' or 'plus'; write factor: 5, or plus: 100ms",
                         "cue:1:8: there is no backend 'gannet-9'; did you mean 'gannet-1'?",
                         "cue:1:18: a cue sent by hand is played once; leave out times",
                         "cue:1:28: a cue sent by hand is played once; leave out every");
