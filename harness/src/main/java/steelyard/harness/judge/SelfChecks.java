@@ -19,7 +19,7 @@ final class SelfChecks implements PlayListener {
     private final Cast cast;
     private final RequestLedger requests = new RequestLedger();
     private final AttemptLedger attempts;
-    private final Histogram lateness = new Histogram(1_000, 1_000_000_000L, 3);
+    private final Histogram lateness = new Histogram(3);
     private final int[] inFlight;
     private final long[] movedNanos;
     private final long[] integralNanos;
