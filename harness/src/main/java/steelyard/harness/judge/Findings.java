@@ -67,7 +67,8 @@ final class Findings {
 
     /**
      * The margin as a part of the bound's own size, so that margins of different measures compare: the width of a bound
-     * with two ends, the size of a single one. Least is worst; one without a value is worse than all.
+     * with two ends, the size of a single one. Least is worst; one without a value is worse than all. A bound without
+     * size (at most 0) is never tight while it holds, and by far missed when it does not.
      */
     private static double slack(Finding finding) {
         Bound bound = finding.bound();
@@ -78,6 +79,9 @@ final class Findings {
         double width = bound.most() - bound.least();
         double end = Double.isInfinite(bound.most()) ? bound.least() : bound.most();
         double size = Double.isInfinite(width) ? Math.abs(end) : width;
-        return size == 0 ? margin : margin / size;
+        if (size == 0) {
+            return margin < 0 ? -Double.MAX_VALUE : Double.MAX_VALUE;
+        }
+        return margin / size;
     }
 }

@@ -105,12 +105,15 @@ final class Settling extends SlidingSecond {
 
     private void integrate(long atNanos) {
         long spanNanos = atNanos - integratedNanos;
+        if (spanNanos <= 0) {
+            return;
+        }
         integratedNanos = atNanos;
         long sum = 0;
         for (int backend : backends) {
             sum += truth.weight(backend);
         }
-        if (spanNanos > 0 && sum > 0) {
+        if (sum > 0) {
             for (int column = 0; column < backends.length; column++) {
                 dueNanos[tenth][column] += (double) truth.weight(backends[column]) / sum * spanNanos;
             }

@@ -16,7 +16,12 @@ import steelyard.drills.model.Cue;
  */
 public interface PlayListener {
 
-    /** A request is due. {@code request} numbers follow the due times from 0; {@code kind} is its place in the mix. */
+    /**
+     * A request is due; told at its due time, or a little later by a stage that lags.
+     *
+     * @param request numbers follow the due times from 0, none left out
+     * @param kind its place in the mix
+     */
     default void requestDue(long atNanos, long request, int traffic, int kind, int client) {}
 
     /** The generator has sent it; {@code atNanos - dueNanos} is the generator's own lateness. */
@@ -56,7 +61,7 @@ public interface PlayListener {
     /** A set weight changed: of a backend, or of a host. */
     default void reweighed(long atNanos, boolean host, int number, int weight) {}
 
-    /** A backend read a whole request head. */
+    /** A backend read a whole request head; a request below 0 or an attempt of 0 is not of this play. */
     default void backendReceived(long atNanos, int backend, long request, int attempt) {}
 
     /** A backend is done with a request; not {@code inFull} when its answer was lost, dropped or cut short. */
