@@ -27,6 +27,7 @@ import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.Agenda;
 import steelyard.harness.stage.CannotPlay;
 import steelyard.harness.stage.Stage;
+import steelyard.harness.stage.StageSettings;
 import steelyard.harness.traffic.OfferedRate;
 
 /**

@@ -1,0 +1,112 @@
+package steelyard.harness.stage.virtual;
+
+import java.util.Arrays;
+import java.util.List;
+import steelyard.balancer.core.decide.Decider;
+import steelyard.drills.model.Traffic;
+
+/**
+ * The clients' connections to the front: each client keeps as many as it needs at once, takes up the one used last, and
+ * has closed whatever was idle for longer than its limit.
+ */
+final class Connections {
+    /** Connections of all clients together. */
+    static final int CAP = 4_096;
+
+    private static final int NONE = -1;
+
+    private final int[] firstClient;
+    private final long idleLimitNanos;
+    private final int[] idleTop;
+    private int[] below = new int[64];
+    private int[] client = new int[64];
+    private int[] pinned = new int[64];
+    private long[] idleSinceNanos = new long[64];
+    private int used;
+    private int freeTop = NONE;
+    private int open;
+    private boolean fresh;
+
+    Connections(List<Traffic> traffic, long idleLimitNanos) {
+        this.idleLimitNanos = idleLimitNanos;
+        firstClient = new int[traffic.size()];
+        int clients = 0;
+        for (int stream = 0; stream < firstClient.length; stream++) {
+            firstClient[stream] = clients;
+            clients += traffic.get(stream).clients();
+        }
+        idleTop = new int[clients];
+        Arrays.fill(idleTop, NONE);
+    }
+
+    /** A connection of a client of a stream for one request, or -1 when the cap on all connections is hit. */
+    int take(int traffic, int clientOfStream, long nowNanos) {
+        int owner = firstClient[traffic] + clientOfStream;
+        int top = idleTop[owner];
+        if (top != NONE && nowNanos - idleSinceNanos[top] < idleLimitNanos) {
+            idleTop[owner] = below[top];
+            fresh = false;
+            return top;
+        }
+        // The last used has been idle too long, so those below it have too.
+        while (top != NONE) {
+            int next = below[top];
+            close(top);
+            top = next;
+        }
+        idleTop[owner] = NONE;
+        fresh = true;
+        return open < CAP ? connect(owner) : NONE;
+    }
+
+    /** Whether the connection just taken had to be made. */
+    boolean fresh() {
+        return fresh;
+    }
+
+    /** A request on it is over and it stays open. */
+    void idle(int connection, long nowNanos) {
+        int owner = client[connection];
+        idleSinceNanos[connection] = nowNanos;
+        below[connection] = idleTop[owner];
+        idleTop[owner] = connection;
+    }
+
+    void close(int connection) {
+        below[connection] = freeTop;
+        freeTop = connection;
+        open--;
+    }
+
+    int pinned(int connection) {
+        return pinned[connection];
+    }
+
+    void pin(int connection, int backend) {
+        pinned[connection] = backend;
+    }
+
+    private int connect(int owner) {
+        int connection = freeTop;
+        if (connection != NONE) {
+            freeTop = below[connection];
+        } else {
+            connection = used++;
+            if (used > below.length) {
+                grow();
+            }
+        }
+        open++;
+        client[connection] = owner;
+        pinned[connection] = Decider.NOBODY;
+        return connection;
+    }
+
+    private void grow() {
+        int capacity = 2 * below.length;
+        below = Arrays.copyOf(below, capacity);
+        client = Arrays.copyOf(client, capacity);
+        pinned = Arrays.copyOf(pinned, capacity);
+        idleSinceNanos = Arrays.copyOf(idleSinceNanos, capacity);
+    }
+}

@@ -1,0 +1,180 @@
+package steelyard.harness.stage.virtual;
+
+import java.util.Arrays;
+
+/**
+ * Requests on their way, in columns: a flight is an index into all of them, reused when its request is over for client and
+ * balancer alike. A message names a flight together with the leg it was sent on ({@link #token}); the leg goes up with
+ * every step that makes older messages stale, and never comes back.
+ */
+final class Flights {
+    private static final int FIRST_CAPACITY = 64;
+    private static final int LEG_BITS = 31;
+
+    /** Where a request is, as the balancer would say. */
+    enum State {
+        FREE,
+        TO_BALANCER,
+        /** An attempt is under way. */
+        ATTEMPTED,
+        TO_CLIENT
+    }
+
+    State[] state = newStates(FIRST_CAPACITY);
+    long[] request = new long[FIRST_CAPACITY];
+    long[] dueNanos = new long[FIRST_CAPACITY];
+    int[] traffic = new int[FIRST_CAPACITY];
+    int[] kind = new int[FIRST_CAPACITY];
+    int[] connection = new int[FIRST_CAPACITY];
+    int[] attempt = new int[FIRST_CAPACITY];
+    int[] backend = new int[FIRST_CAPACITY];
+    /** Where the behaviour holds it, or -1. */
+    int[] place = new int[FIRST_CAPACITY];
+    /** Whether the backend read it and fell silent about it. */
+    boolean[] silent = new boolean[FIRST_CAPACITY];
+    /** Status of the answer, and ordinal of the cause of its failure or -1. */
+    int[] status = new int[FIRST_CAPACITY];
+
+    int[] cause = new int[FIRST_CAPACITY];
+    boolean[] closes = new boolean[FIRST_CAPACITY];
+    /** The client has its end, good or bad. */
+    boolean[] told = new boolean[FIRST_CAPACITY];
+
+    int[] triedCount = new int[FIRST_CAPACITY];
+    int[][] tried = new int[FIRST_CAPACITY][];
+
+    private int[] leg = new int[FIRST_CAPACITY];
+    private int[] freed = new int[FIRST_CAPACITY];
+    private int freedCount;
+    private int used;
+    private final int mostTried;
+
+    /** @param mostTried attempts a request */
+    Flights(int mostTried) {
+        this.mostTried = mostTried;
+    }
+
+    /** Whether the client of a request still waits for its end. */
+    boolean waits(int flight, long requestNumber) {
+        return state[flight] != State.FREE && request[flight] == requestNumber && !told[flight];
+    }
+
+    int open() {
+        return used - freedCount;
+    }
+
+    /** Upper end of the flights ever used. */
+    int used() {
+        return used;
+    }
+
+    int take(long requestNumber, long due, int trafficNumber, int kindNumber, int connectionNumber) {
+        int flight = freedCount > 0 ? freed[--freedCount] : fresh();
+        state[flight] = State.TO_BALANCER;
+        request[flight] = requestNumber;
+        dueNanos[flight] = due;
+        traffic[flight] = trafficNumber;
+        kind[flight] = kindNumber;
+        connection[flight] = connectionNumber;
+        attempt[flight] = 0;
+        backend[flight] = -1;
+        place[flight] = -1;
+        silent[flight] = false;
+        status[flight] = 0;
+        cause[flight] = -1;
+        closes[flight] = false;
+        told[flight] = false;
+        triedCount[flight] = 0;
+        return flight;
+    }
+
+    /** An attempt begins. */
+    void attempted(int flight, int number, int onBackend) {
+        state[flight] = State.ATTEMPTED;
+        attempt[flight] = number;
+        backend[flight] = onBackend;
+        place[flight] = -1;
+        silent[flight] = false;
+        nextLeg(flight);
+    }
+
+    /** The attempt under way is over. */
+    void ended(int flight) {
+        if (triedCount[flight] < mostTried) {
+            tried[flight][triedCount[flight]++] = backend[flight];
+        }
+        nextLeg(flight);
+    }
+
+    /** The answer to the client is on its way; {@code causeOrdinal} is -1 for what the backend answered. */
+    void replied(int flight, int withStatus, int causeOrdinal) {
+        state[flight] = State.TO_CLIENT;
+        status[flight] = withStatus;
+        cause[flight] = causeOrdinal;
+    }
+
+    boolean attemptOn(int flight, int onBackend) {
+        return state[flight] == State.ATTEMPTED && backend[flight] == onBackend;
+    }
+
+    void free(int flight) {
+        state[flight] = State.FREE;
+        nextLeg(flight);
+        freed[freedCount++] = flight;
+    }
+
+    void nextLeg(int flight) {
+        leg[flight] = (leg[flight] + 1) & ((1 << LEG_BITS) - 1);
+    }
+
+    /** The flight and its leg in one number, at least 0. */
+    long token(int flight) {
+        return (long) leg[flight] << 32 | flight;
+    }
+
+    static int flightOf(long token) {
+        return (int) token;
+    }
+
+    /** Whether the flight is still on the leg of the token. */
+    boolean current(long token) {
+        return leg[(int) token] == (int) (token >>> 32);
+    }
+
+    private int fresh() {
+        if (used == request.length) {
+            grow(2 * used);
+        }
+        tried[used] = new int[mostTried];
+        return used++;
+    }
+
+    private static State[] newStates(int capacity) {
+        State[] states = new State[capacity];
+        Arrays.fill(states, State.FREE);
+        return states;
+    }
+
+    private void grow(int capacity) {
+        int old = state.length;
+        state = Arrays.copyOf(state, capacity);
+        Arrays.fill(state, old, capacity, State.FREE);
+        request = Arrays.copyOf(request, capacity);
+        dueNanos = Arrays.copyOf(dueNanos, capacity);
+        traffic = Arrays.copyOf(traffic, capacity);
+        kind = Arrays.copyOf(kind, capacity);
+        connection = Arrays.copyOf(connection, capacity);
+        attempt = Arrays.copyOf(attempt, capacity);
+        backend = Arrays.copyOf(backend, capacity);
+        place = Arrays.copyOf(place, capacity);
+        silent = Arrays.copyOf(silent, capacity);
+        status = Arrays.copyOf(status, capacity);
+        cause = Arrays.copyOf(cause, capacity);
+        closes = Arrays.copyOf(closes, capacity);
+        told = Arrays.copyOf(told, capacity);
+        triedCount = Arrays.copyOf(triedCount, capacity);
+        tried = Arrays.copyOf(tried, capacity);
+        leg = Arrays.copyOf(leg, capacity);
+        freed = Arrays.copyOf(freed, capacity);
+    }
+}

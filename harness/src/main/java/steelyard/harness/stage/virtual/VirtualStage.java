@@ -1,0 +1,173 @@
+package steelyard.harness.stage.virtual;
+
+import org.jspecify.annotations.Nullable;
+import steelyard.backends.behave.Chance;
+import steelyard.backends.behave.Change;
+import steelyard.backends.behave.Figures;
+import steelyard.backends.fleet.BackendSpec;
+import steelyard.drills.model.Cue;
+import steelyard.drills.model.Drill;
+import steelyard.harness.record.PlayListener;
+import steelyard.harness.record.Sample;
+import steelyard.harness.stage.Agenda;
+import steelyard.harness.stage.CannotPlay;
+import steelyard.harness.stage.Hands;
+import steelyard.harness.stage.Stage;
+import steelyard.harness.stage.StageSettings;
+
+/**
+ * A drill's stage in virtual time: {@link #play} jumps from event to event and returns when nothing is left to happen.
+ *
+ * <p>The same drill, seed and transport give the same account, to the last number, on any machine. One thread; {@link
+ * #interrupt} from any.
+ */
+public final class VirtualStage implements Stage, Hands {
+    private static final long SLICE_NANOS = 100_000_000;
+    private static final int MOST_AT_ONCE = 1_000;
+
+    private final Drill drill;
+    private final long seed;
+    private final Transport transport;
+    private final Sample sample;
+    private volatile boolean interrupted;
+    private @Nullable Listening opened;
+    private long nowNanos;
+    private long nextSliceNanos = SLICE_NANOS;
+
+    /** What there is once a listener is known. */
+    private record Listening(PlayListener listener, Post post, VirtualBackends backends, VirtualBalancer balancer) {}
+
+    /** @param seed of every draw of balancer and backends; the agenda should be of the same */
+    public VirtualStage(Drill drill, long seed, Transport transport) {
+        this.drill = drill;
+        this.seed = seed;
+        this.transport = transport;
+        this.sample = new Sample(drill.stage().backends().size());
+    }
+
+    @Override
+    public void open(PlayListener listener) throws CannotPlay {
+        for (BackendSpec spec : StageSettings.backends(drill)) {
+            if (spec.answers() != null) {
+                throw new CannotPlay("backend " + spec.name() + " answers from mapping files, which cannot be foreseen:"
+                        + " rehearse the drill, or give it a service time instead of answers");
+            }
+        }
+        Chance chance = new Chance(seed);
+        Post post = new Post(transport);
+        VirtualBalancer balancer = new VirtualBalancer(drill, chance, listener, post);
+        VirtualBackends backends = new VirtualBackends(
+                StageSettings.backends(drill).stream()
+                        .map(BackendSpec::behaviour)
+                        .toList(),
+                chance,
+                balancer);
+        opened = new Listening(listener, post, backends, balancer);
+    }
+
+    @Override
+    public void play(Agenda agenda) {
+        Listening stage = opened();
+        while (!interrupted && (agenda.hasNext() || stage.balancer.busy())) {
+            step(agenda, stage);
+        }
+        boolean complete = !interrupted;
+        if (interrupted) {
+            stage.balancer.abandonAll(nowNanos);
+        }
+        stage.listener.ended(nowNanos, complete);
+    }
+
+    /** Does the one thing that comes next; at one instant the agenda first, then messages, backends, balancer, samples. */
+    private void step(Agenda agenda, Listening stage) {
+        long agendaNanos = agenda.hasNext() ? agenda.nextNanos() : Lane.NEVER;
+        long postNanos = stage.post.nextNanos();
+        long backendNanos = stage.backends.nextNanos();
+        long balancerNanos = stage.balancer.nextNanos();
+        nowNanos = Math.min(
+                Math.min(Math.min(agendaNanos, postNanos), Math.min(backendNanos, balancerNanos)), nextSliceNanos);
+        if (agendaNanos == nowNanos) {
+            agenda.poll(nowNanos, this, MOST_AT_ONCE);
+        } else if (postNanos == nowNanos) {
+            stage.balancer.deliver(stage.backends, nowNanos);
+        } else if (backendNanos == nowNanos) {
+            stage.backends.poll(nowNanos);
+        } else if (balancerNanos == nowNanos) {
+            stage.balancer.poll(nowNanos);
+        } else {
+            sample(stage);
+        }
+    }
+
+    private void sample(Listening stage) {
+        for (int backend = 0; backend < sample.inFlight.length; backend++) {
+            stage.balancer.read(backend, sample, nowNanos);
+            Figures figures = stage.backends.figures(backend, nowNanos);
+            sample.waiting[backend] = figures.waiting();
+            sample.inService[backend] = figures.inService();
+            sample.busyNanos[backend] = figures.busyWorkerNanos();
+        }
+        stage.listener.sampled(nowNanos, sample);
+        nextSliceNanos = nowNanos + SLICE_NANOS > drill.lastsNanos() ? Lane.NEVER : nowNanos + SLICE_NANOS;
+    }
+
+    @Override
+    public void interrupt() {
+        interrupted = true;
+    }
+
+    @Override
+    public void close() {
+        opened = null;
+    }
+
+    private Listening opened() {
+        Listening stage = opened;
+        if (stage == null) {
+            throw new IllegalStateException("the stage is not open");
+        }
+        return stage;
+    }
+
+    // --- hands of the agenda ----------------------------------------------------------------------------------------
+
+    @Override
+    public void send(long request, long dueNanos, int traffic, int kind, int client) {
+        opened().balancer.send(request, dueNanos, traffic, kind, client, nowNanos);
+    }
+
+    @Override
+    public void change(int backend, Change change) {
+        opened().backends.apply(backend, change, nowNanos);
+    }
+
+    @Override
+    public void drain(int backend, long limitNanos) {
+        opened().balancer.drain(backend, limitNanos, nowNanos);
+    }
+
+    @Override
+    public void admit(int backend) {
+        opened().balancer.admit(backend, nowNanos);
+    }
+
+    @Override
+    public void withdraw(int backend) {
+        opened().balancer.withdraw(backend, nowNanos);
+    }
+
+    @Override
+    public void reweigh(int backend, int weight) {
+        opened().balancer.reweigh(backend, weight, nowNanos);
+    }
+
+    @Override
+    public void reweighHost(int host, int weight) {
+        opened().balancer.reweighHost(host, weight, nowNanos);
+    }
+
+    @Override
+    public void applied(long dueNanos, Cue cue, PlayListener.By by) {
+        opened().listener.cueApplied(nowNanos, dueNanos, cue, by);
+    }
+}
