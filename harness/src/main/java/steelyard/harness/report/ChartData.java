@@ -1,0 +1,133 @@
+package steelyard.harness.report;
+
+import com.fasterxml.jackson.core.JsonProcessingException;
+import com.fasterxml.jackson.databind.JsonNode;
+import com.fasterxml.jackson.databind.ObjectMapper;
+import com.fasterxml.jackson.databind.node.ArrayNode;
+import com.fasterxml.jackson.databind.node.JsonNodeFactory;
+import com.fasterxml.jackson.databind.node.ObjectNode;
+import com.fasterxml.jackson.databind.node.ValueNode;
+import java.math.BigDecimal;
+import java.math.RoundingMode;
+import java.util.List;
+import steelyard.harness.report.RunFiles.Backend;
+import steelyard.harness.report.RunFiles.Change;
+import steelyard.harness.report.RunFiles.CueRow;
+import steelyard.harness.report.Slices.PerBackend;
+
+/**
+ * The figures that the page's charts are drawn from, as JSON that is safe inside a script element.
+ *
+ * <p>A column is a list, or, where that is shorter, {@code {"runs": [value, count, value, count, ...]}}. Numbers are
+ * rounded to what a chart can show; the run folder's CSV files hold them in full.
+ */
+final class ChartData {
+    private static final JsonNodeFactory JSON = JsonNodeFactory.instance;
+
+    private ChartData() {}
+
+    static String json(RunFiles run) throws JsonProcessingException {
+        ObjectNode data = JSON.objectNode();
+        data.put("lasts", run.lasts());
+        data.put("played", run.played());
+        data.put("ended", run.run().path("ended").asText());
+        data.put("slice", Slices.SECONDS);
+        data.put("slices", run.slices().size());
+        data.set("pools", words(run.pools()));
+        data.set("cues", cues(run.cues()));
+        data.set("requests", requests(run.slices()));
+        data.set("backends", backends(run));
+        return new ObjectMapper().writeValueAsString(data).replace("<", "\\u003c");
+    }
+
+    private static ArrayNode words(List<String> words) {
+        ArrayNode array = JSON.arrayNode();
+        words.forEach(array::add);
+        return array;
+    }
+
+    private static ArrayNode cues(List<CueRow> cues) {
+        ArrayNode array = JSON.arrayNode();
+        for (CueRow cue : cues) {
+            array.addObject()
+                    .put("at", cue.at())
+                    .put("cue", cue.cue())
+                    .put("action", cue.action())
+                    .put("by", cue.by());
+        }
+        return array;
+    }
+
+    private static ObjectNode requests(Slices slices) {
+        ObjectNode requests = JSON.objectNode();
+        requests.set("offered", column(slices.offered(), 0));
+        requests.set("ok", column(slices.ok(), 0));
+        requests.set("p50", column(slices.p50(), 2));
+        requests.set("p95", column(slices.p95(), 2));
+        requests.set("p99", column(slices.p99(), 2));
+        requests.set("worst", column(slices.worst(), 2));
+        requests.set("retries", column(slices.retries(), 0));
+        ObjectNode failed = requests.putObject("failed");
+        slices.failed().forEach((cause, counts) -> failed.set(cause, column(counts, 0)));
+        return requests;
+    }
+
+    private static ArrayNode backends(RunFiles run) {
+        ArrayNode array = JSON.arrayNode();
+        for (int at = 0; at < run.backends().size(); at++) {
+            Backend backend = run.backends().get(at);
+            PerBackend slices = run.slices().perBackend().get(at);
+            ObjectNode node = array.addObject();
+            node.put("name", backend.name()).put("pool", backend.pool());
+            node.set("picked", column(slices.picked(), 0));
+            node.set("inFlight", column(slices.inFlight(), 0));
+            node.set("waiting", column(slices.waiting(), 0));
+            node.set("weight", column(slices.weight(), 3));
+            node.set("entitled", column(slices.entitled(), 4));
+            node.set("utilisation", column(slices.utilisation(), 3));
+            node.set("standing", standing(run, backend.name(), slices.standing()));
+        }
+        return array;
+    }
+
+    /** The words in turn, each with the second from which it holds. */
+    private static ArrayNode standing(RunFiles run, String backend, List<String> sampled) {
+        List<Change> changes = run.changes().stream()
+                .filter(change -> change.backend().equals(backend))
+                .toList();
+        ArrayNode array = JSON.arrayNode();
+        if (!changes.isEmpty()) {
+            array.addArray().add(0).add(changes.get(0).from());
+        } else if (!sampled.isEmpty()) {
+            array.addArray().add(0).add(sampled.get(0));
+        }
+        changes.forEach(change -> array.addArray().add(change.at()).add(change.to()));
+        return array;
+    }
+
+    private static JsonNode column(double[] values, int decimals) {
+        ArrayNode plain = JSON.arrayNode();
+        ArrayNode runs = JSON.arrayNode();
+        int start = 0;
+        for (int at = 0; at < values.length; at++) {
+            plain.add(rounded(values[at], decimals));
+            boolean last = at + 1 == values.length;
+            if (last || Double.compare(values[at], values[at + 1]) != 0) {
+                runs.add(rounded(values[at], decimals)).add(at + 1 - start);
+                start = at + 1;
+            }
+        }
+        return runs.size() < plain.size() ? JSON.objectNode().set("runs", runs) : plain;
+    }
+
+    /** Null, which charts leave open, for what is not a number. */
+    private static ValueNode rounded(double value, int decimals) {
+        if (!Double.isFinite(value)) {
+            return JSON.nullNode();
+        }
+        BigDecimal rounded = BigDecimal.valueOf(value)
+                .setScale(decimals, RoundingMode.HALF_UP)
+                .stripTrailingZeros();
+        return JSON.numberNode(rounded.scale() < 0 ? rounded.setScale(0) : rounded);
+    }
+}
