@@ -58,7 +58,7 @@ record RunFiles(JsonNode run, JsonNode machine, Slices slices, List<CueRow> cues
 
     private static JsonNode json(Path path) throws IOException {
         try {
-            return new ObjectMapper().readTree(path.toFile());
+            return new ObjectMapper().readTree(Files.readString(path));
         } catch (JsonProcessingException e) {
             throw new IOException(path.getFileName() + ": not JSON: " + e.getOriginalMessage(), e);
         }

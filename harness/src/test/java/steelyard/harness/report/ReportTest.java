@@ -13,7 +13,8 @@ import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
 class ReportTest {
-    private static final String VERDICT = "{\"met\": false, \"fit\": true, \"text\": \"Not met: 1 of 1; worst: failed\"}";
+    private static final String VERDICT =
+            "{\"met\": false, \"fit\": true, \"text\": \"Not met: 1 of 1; worst: failed\"}";
 
     @TempDir
     Path folder;
@@ -35,7 +36,10 @@ class ReportTest {
     void write_twice_givesTheSameBytesWithoutTheWallClock() throws IOException {
         String first = page(TinyRun.RUN);
 
-        assertThat(page(TinyRun.RUN)).isEqualTo(first).doesNotContain("2020-02-02").contains("processors");
+        assertThat(page(TinyRun.RUN))
+                .isEqualTo(first)
+                .doesNotContain("2020-02-02")
+                .contains("processors");
     }
 
     @Test
@@ -49,7 +53,9 @@ class ReportTest {
     void write_markupInTheDrill_staysText() throws IOException {
         String page = page(TinyRun.RUN.replace("\"Tiny\"", "\"<i>Tiny</i> {{data}}\""));
 
-        assertThat(page).doesNotContain("<script>alert", "<i>Tiny").contains("<h1>&lt;i&gt;Tiny&lt;/i&gt; {{data}}</h1>");
+        assertThat(page)
+                .doesNotContain("<script>alert", "<i>Tiny")
+                .contains("<h1>&lt;i&gt;Tiny&lt;/i&gt; {{data}}</h1>");
     }
 
     @Test
@@ -57,7 +63,8 @@ class ReportTest {
         assertThat(page(TinyRun.RUN)).contains("not met: above the bound");
         assertThat(page(TinyRun.RUN.replace("\"value\": 0.05, \"least\": null", "\"value\": 0.005, \"least\": 0.007")))
                 .contains("not met: below the bound");
-        assertThat(page(TinyRun.RUN.replaceFirst("\"met\": false, \"why\": null", "\"met\": false, \"why\": \"never detected\"")))
+        assertThat(page(TinyRun.RUN.replaceFirst(
+                        "\"met\": false, \"why\": null", "\"met\": false, \"why\": \"never detected\"")))
                 .contains("not met: never detected");
     }
 
@@ -94,9 +101,10 @@ class ReportTest {
         assertThatThrownBy(() -> Report.write(folder))
                 .isInstanceOf(NoSuchFileException.class)
                 .hasMessageContaining("run.json");
-        assertThatThrownBy(() -> page("{")).isInstanceOf(IOException.class).hasMessageStartingWith("run.json: not JSON");
-        assertThatThrownBy(() -> page("{\"format\": 2}"))
-                .hasMessage("run.json: format 2, this version reads format 1");
+        assertThatThrownBy(() -> page("{"))
+                .isInstanceOf(IOException.class)
+                .hasMessageStartingWith("run.json: not JSON");
+        assertThatThrownBy(() -> page("{\"format\": 2}")).hasMessage("run.json: format 2, this version reads format 1");
     }
 
     @Test
@@ -108,7 +116,8 @@ class ReportTest {
         String figures = ChartData.json(RunFiles.read(folder));
 
         assertThat(figures).doesNotContain("<");
-        assertThat(new ObjectMapper().readTree(figures).at("/cues/0/cue").asText()).endsWith("first, </script>");
+        assertThat(new ObjectMapper().readTree(figures).at("/cues/0/cue").asText())
+                .endsWith("first, </script>");
     }
 
     @Test

@@ -52,8 +52,7 @@ class StretchesTest {
     @Test
     void of_cuesOfOneSlice_splitOnce(@TempDir Path folder) throws IOException {
         TinyRun.write(folder);
-        Files.writeString(
-                folder.resolve("cues.csv"), HEAD + "0.51,0.51,a,kill a,drill\n0.52,0.52,b,kill b,drill\n");
+        Files.writeString(folder.resolve("cues.csv"), HEAD + "0.51,0.51,a,kill a,drill\n0.52,0.52,b,kill b,drill\n");
 
         List<Stretch> stretches = Stretches.of(RunFiles.read(folder));
 
@@ -64,8 +63,7 @@ class StretchesTest {
     @Test
     void of_cuesAtTheEdges_openNoEmptyStretch(@TempDir Path folder) throws IOException {
         TinyRun.write(folder);
-        Files.writeString(
-                folder.resolve("cues.csv"), HEAD + "0,0,first,kill a,drill\n1.0,1.0001,last,kill b,drill\n");
+        Files.writeString(folder.resolve("cues.csv"), HEAD + "0,0,first,kill a,drill\n1.0,1.0001,last,kill b,drill\n");
 
         List<Stretch> stretches = Stretches.of(RunFiles.read(folder));
 

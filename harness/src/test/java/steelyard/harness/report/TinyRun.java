@@ -6,8 +6,7 @@ import java.nio.file.Path;
 
 /** A run folder small enough to check by hand: two backends, ten slices, a cue at 0.4 s. */
 final class TinyRun {
-    static final String RUN =
-            """
+    static final String RUN = """
             {"format": 1, "drill": "Tiny", "about": "Two backends.", "stage": "live", "backends": "embedded", "seed": 7,
              "lasts": 1.0, "ended": "complete", "versions": {"steelyard": "0.1.0"},
              "cast": {"hosts": [{"name": "quay", "weight": 3, "zone": null}],
@@ -32,8 +31,7 @@ final class TinyRun {
 
     static Path write(Path folder, String run) throws IOException {
         Files.writeString(folder.resolve("run.json"), run);
-        Files.writeString(
-                folder.resolve("machine.json"), "{\"started\": \"2020-02-02T02:02:02Z\", \"processors\": 2}");
+        Files.writeString(folder.resolve("machine.json"), "{\"started\": \"2020-02-02T02:02:02Z\", \"processors\": 2}");
         Files.writeString(folder.resolve("slices.csv"), slices());
         Files.writeString(
                 folder.resolve("standing.csv"),
