@@ -154,6 +154,7 @@ final class Exchange {
         attempt();
         if (connected) {
             flushRequest();
+            client.updateReading();
         }
         return true;
     }
