@@ -27,6 +27,7 @@ import picocli.CommandLine.Spec;
         },
         versionProvider = Versions.class,
         subcommands = {
+            RehearseCommand.class,
             CheckCommand.class,
             DrillsCommand.class,
             CompletionCommand.class,

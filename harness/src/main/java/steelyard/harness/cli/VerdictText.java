@@ -21,19 +21,22 @@ final class VerdictText {
      */
     static List<String> lines(Verdict verdict, int width) {
         List<String> lines = new ArrayList<>();
-        lines.add(verdict.text());
+        lines.addAll(wrapped("", verdict.text(), width));
         if (!verdict.expectations().isEmpty()) {
             lines.add("");
             List<String> table = table(verdict.expectations());
             boolean fits = table.stream().allMatch(line -> line.length() <= width);
-            lines.addAll(fits ? table : stacked(verdict.expectations()));
+            lines.addAll(fits ? table : stacked(verdict.expectations(), width));
+            if (fits) {
+                lines.addAll(notes(verdict.expectations(), width));
+            }
         }
         List<SelfCheck> failed =
                 verdict.checks().stream().filter(check -> !check.ok()).toList();
         if (!failed.isEmpty()) {
             lines.add("");
             lines.add("Unfit to judge, because of:");
-            failed.forEach(check -> lines.add(GAP + check.check() + ": " + check.text()));
+            failed.forEach(check -> lines.addAll(wrapped(GAP, check.check() + ": " + check.text(), width)));
         }
         return lines;
     }
@@ -57,26 +60,46 @@ final class VerdictText {
             }
             lines.add(line.toString().stripTrailing());
         }
-        findings.stream()
-                .filter(finding -> finding.note() != null)
-                .forEach(finding -> lines.add("note on " + finding.text() + ": " + finding.note()));
         return lines;
     }
 
-    private static List<String> stacked(List<Finding> findings) {
+    private static List<String> notes(List<Finding> findings, int width) {
+        return findings.stream()
+                .filter(finding -> finding.note() != null)
+                .flatMap(finding -> wrapped("", "note on " + finding.text() + ": " + finding.note(), width).stream())
+                .toList();
+    }
+
+    private static List<String> stacked(List<Finding> findings, int width) {
         List<String> lines = new ArrayList<>();
         for (Finding finding : findings) {
             String[] cells = cells(finding);
-            lines.add(cells[4] + ": " + cells[0]);
+            lines.addAll(wrapped("", cells[4] + ": " + cells[0], width));
             for (int column = 1; column <= 3; column++) {
                 if (!cells[column].isEmpty()) {
                     lines.add(GAP + pad(HEAD[column], 8, false) + GAP + cells[column]);
                 }
             }
             if (finding.note() != null) {
-                lines.add(GAP + pad("note", 8, false) + GAP + finding.note());
+                lines.addAll(wrapped(GAP, pad("note", 8, false) + GAP + finding.note(), width));
             }
         }
+        return lines;
+    }
+
+    /** Breaks a line between words; lines after the first are set in. */
+    private static List<String> wrapped(String gap, String text, int width) {
+        List<String> lines = new ArrayList<>();
+        String rest = gap + text;
+        while (rest.length() > width) {
+            int blank = rest.lastIndexOf(' ', width);
+            if (blank <= gap.length() + GAP.length()) {
+                break; // one word too long for a line is left to the terminal
+            }
+            lines.add(rest.substring(0, blank).stripTrailing());
+            rest = gap + GAP + rest.substring(blank + 1).stripLeading();
+        }
+        lines.add(rest);
         return lines;
     }
 

@@ -70,7 +70,8 @@ final class PlainView implements View {
             out.println(event);
         }
         PlayBoard.Figures figures = board.now();
-        long due = figures.ended() ? Long.MAX_VALUE : figures.atNanos() / EVERY_NANOS;
+        long before = Math.min(figures.atNanos(), drill.lastsNanos() - 1); // the end has a line of its own
+        long due = figures.ended() ? Long.MAX_VALUE : before / EVERY_NANOS;
         if (due > shown) {
             shown = due;
             out.println(line(figures.atNanos(), status(figures)));

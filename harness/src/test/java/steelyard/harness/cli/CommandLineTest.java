@@ -1,0 +1,135 @@
+package steelyard.harness.cli;
+
+import static org.assertj.core.api.Assertions.assertThat;
+
+import java.io.IOException;
+import java.io.PrintWriter;
+import java.io.StringWriter;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.List;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.io.TempDir;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
+import steelyard.drills.read.DrillLibrary;
+
+class CommandLineTest {
+    private final StringWriter out = new StringWriter();
+    private final StringWriter err = new StringWriter();
+
+    @TempDir
+    private Path folder;
+
+    private int run(String... arguments) {
+        return Main.run(new PrintWriter(out), new PrintWriter(err), arguments);
+    }
+
+    @ParameterizedTest
+    @CsvSource(delimiter = '|', textBlock = """
+                    rehears                               | unknown command 'rehears'; did you mean 'rehearse'?
+                    chekc some.yaml                       | unknown command 'chekc'; did you mean 'check'?
+                    check --debgu lose-one-of-three       | unknown option '--debgu'; did you mean '--debug'?
+                    rehearse --plan lose-one-of-three     | unknown option '--plan'; did you mean '--plain'?
+                    rehearse --sed                        | unknown option '--sed'; did you mean '--seed'?
+                    rehearse                              | missing required parameter: 'DRILL'; `steelyard help rehearse`
+                    rehearse lose-one-of-three slow-one   | one argument too many, 'slow-one'; `steelyard help rehearse`
+                    rehearse --seed five slow-one         | '--seed': 'five' is not a whole number; `steelyard help rehearse`
+                    rehearse --backends elsewhere slow-one| --backends can only be embedded, not 'elsewhere'
+                    rehearse loose-one-of-three           | no bundled drill 'loose-one-of-three'; did you mean 'lose-one-of-three'?
+                    check nothing-like-it                 | no bundled drill 'nothing-like-it'; `steelyard drills` lists
+                    check nowhere/slow-one.yaml           | nowhere/slow-one.yaml:1:1: there is no such file
+                    drills --show slow-on                 | no bundled drill 'slow-on'; did you mean 'slow-one'?
+                    help rehears                          | unknown command 'rehears'
+                    """)
+    void commandLine_thatIsWrong_saysSoInOneLineWithARemedy(String line, String message) {
+        assertThat(run(line.strip().split(" +"))).isEqualTo(2);
+        assertThat(err.toString().strip()).contains(message).doesNotContain("\n", "\tat ");
+        assertThat(out.toString()).isEmpty();
+    }
+
+    @Test
+    void commandLine_withoutACommand_saysSo() {
+        assertThat(run()).isEqualTo(2);
+        assertThat(err.toString())
+                .isEqualToIgnoringNewLines("steelyard: a command is missing; `steelyard help` shows what there is");
+    }
+
+    @Test
+    void check_ofEveryBundledDrill_isOk() {
+        assertThat(DrillLibrary.names()).hasSize(5);
+        List<String> line = new ArrayList<>(DrillLibrary.names());
+        line.add(0, "check");
+        assertThat(run(line.toArray(String[]::new))).isZero();
+        assertThat(out.toString().lines()).hasSize(5).allMatch(each -> each.contains(": ok: "));
+    }
+
+    @Test
+    void check_ofABrokenFileBesideAGoodOne_reportsEveryProblemAndGoesOn() throws IOException {
+        Path broken = folder.resolve("broken.yaml");
+        String text = DrillLibrary.text("lose-one-of-three").orElseThrow();
+        Files.writeString(broken, text.replace("warm-up: 5s", "warmup: 5s").replace("lasts: 60s", "lasts: 60"));
+        assertThat(run("check", broken.toString(), "slow-one")).isEqualTo(2);
+        List<String> lines =
+                err.toString().lines().filter(line -> !line.contains("notice:")).toList();
+        assertThat(lines).hasSize(2);
+        assertThat(lines.get(0))
+                .matches(".*broken\\.yaml:\\d+:\\d+: unknown key 'warmup'.*; did you mean 'warm-up'\\?");
+        assertThat(lines.get(1)).matches(".*broken\\.yaml:\\d+:\\d+: .*60.*; .*");
+        assertThat(out.toString()).contains("slow-one: ok: ");
+    }
+
+    @Test
+    void check_ofABundledNameWithItsEnding_findsIt() {
+        assertThat(run("check", "slow-one.yaml")).isZero();
+    }
+
+    @Test
+    void drills_always_listsEveryBundledDrillAndHowToCopyOne() {
+        assertThat(run("drills")).isZero();
+        assertThat(out.toString()).contains(DrillLibrary.names()).contains("drills --show NAME > my-drill.yaml");
+    }
+
+    @Test
+    void drillsShow_ofAName_printsTheFileAsItIs() {
+        assertThat(run("drills", "--show", "slow-one")).isZero();
+        assertThat(out.toString()).isEqualTo(DrillLibrary.text("slow-one").orElseThrow());
+    }
+
+    @ParameterizedTest
+    @ValueSource(strings = {"version", "--version", "-V"})
+    void version_always_isTheBuilds(String word) {
+        assertThat(run(word)).isZero();
+        assertThat(out.toString()).matches("(?s)steelyard \\d+\\.\\d+\\.\\d+\\R.*");
+    }
+
+    @ParameterizedTest
+    @ValueSource(strings = {"help", "--help", "help rehearse", "rehearse --help", "help check", "help drills"})
+    void help_always_goesToStandardOutput(String line) {
+        assertThat(run(line.split(" "))).isZero();
+        assertThat(out.toString()).startsWith("Usage: steelyard");
+        assertThat(err.toString()).isEmpty();
+    }
+
+    @Test
+    void helpOfRehearse_always_carriesTheCaution() {
+        run("help", "rehearse");
+        assertThat(out.toString().replaceAll("\\s+", " "))
+                .contains("Rehearse only on systems of your own, or with the authority to do so")
+                .contains("never replaces that procedure");
+    }
+
+    @Test
+    void help_always_listsEveryExitStatus() {
+        run("help");
+        assertThat(out.toString()).containsSubsequence("\n  0 ", "\n  1 ", "\n  2 ", "\n  3 ", "\n  130 ");
+    }
+
+    @Test
+    void completion_always_namesEveryCommandAndTheBundledDrills() {
+        assertThat(run("completion")).isZero();
+        assertThat(out.toString()).contains("rehearse check drills completion version help", "lose-one-of-three");
+    }
+}
