@@ -38,7 +38,8 @@ class ModuleRulesTest {
                     "steelyard.harness.conduct",
                     "steelyard.harness.judge",
                     "steelyard.harness.report",
-                    "steelyard.harness.stage.live",
+                    "steelyard.harness.stage.virtual..",
+                    "steelyard.harness.stage.live..",
                     "steelyard.harness.console",
                     "steelyard.harness.cli"));
 

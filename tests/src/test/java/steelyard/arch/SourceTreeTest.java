@@ -28,7 +28,7 @@ class SourceTreeTest {
 
     /** Purpose stands in the first sentence; the class to read first is a link. */
     private static final List<String> PACKAGE_INFO =
-            List.of("@NullMarked", "llowed dependencies: ", "hread rule: ", "first", "{@link ");
+            List.of("@NullMarked", "llowed dependencies: ", "hread rule: ", "irst", "{@link ");
 
     @Test
     void topLevel_always_holdsTheAllowedNamesAndDotFiles() {
