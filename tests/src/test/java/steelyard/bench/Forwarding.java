@@ -1,0 +1,127 @@
+package steelyard.bench;
+
+import java.net.InetSocketAddress;
+import java.util.Arrays;
+import java.util.EnumMap;
+import java.util.List;
+import java.util.Locale;
+import java.util.Map;
+import java.util.Set;
+import java.util.function.ToDoubleFunction;
+import steelyard.balancer.live.Balancer;
+import steelyard.balancer.settings.BackendSettings;
+import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.RetrySettings;
+import steelyard.balancer.settings.TimeoutSettings;
+
+/**
+ * Requests a second, p99 and CPU time a request: straight to a backend, through a bare byte relay, and through the
+ * balancer.
+ *
+ * <p>32 clients in a closed loop over kept connections, answers of 512 bytes; client, middle and backend have one event
+ * loop each. Five rounds, the three ways in turn in each, so that a slow spell of the machine touches all of them; the
+ * table shows medians.
+ */
+public final class Forwarding {
+    private static final int ROUNDS = 5;
+    private static final double WARM_SECONDS = 4;
+    private static final double SECONDS = 3;
+    private static final long SECOND = 1_000_000_000L;
+
+    private enum Way {
+        DIRECT("direct", "bench-backend"),
+        RELAY("relay", "bench-relay"),
+        BALANCER("balancer", "steelyard-balancer");
+
+        private final String word;
+        private final String middleThreads;
+
+        Way(String word, String middleThreads) {
+            this.word = word;
+            this.middleThreads = middleThreads;
+        }
+    }
+
+    private Forwarding() {}
+
+    /** The benchmark's entry; takes no arguments. */
+    public static void main(String[] args) throws Exception {
+        try (QuickBackend backend = new QuickBackend();
+                ByteRelay relay = new ByteRelay(backend.address());
+                Balancer balancer = balancer(backend.address());
+                ClosedLoop clients = new ClosedLoop()) {
+            Map<Way, InetSocketAddress> targets = Map.of(
+                    Way.DIRECT, backend.address(),
+                    Way.RELAY, relay.address(),
+                    Way.BALANCER, balancer.frontAddress(0));
+            Map<Way, Stretch[]> rounds = new EnumMap<>(Way.class);
+            for (Way way : Way.values()) {
+                clients.play(targets.get(way), way.middleThreads, WARM_SECONDS);
+                rounds.put(way, new Stretch[ROUNDS]);
+            }
+            for (int round = 0; round < ROUNDS; round++) {
+                for (Way way : Way.values()) {
+                    rounds.get(way)[round] = clients.play(targets.get(way), way.middleThreads, SECONDS);
+                }
+            }
+            print(rounds);
+        }
+    }
+
+    /** As a drill would have it: a pool with a retry budget and the decisions listened to. */
+    private static Balancer balancer(InetSocketAddress backend) throws Exception {
+        PoolSettings pool = new PoolSettings(
+                "seats",
+                PoolSettings.Method.WEIGHTED_ROUND_ROBIN,
+                PoolSettings.Count.REQUESTS,
+                PoolSettings.Weights.BACKEND,
+                null,
+                null,
+                30 * SECOND,
+                new RetrySettings(1, 0.4, 10, Set.of()),
+                new TimeoutSettings(5 * SECOND, 30 * SECOND, 60 * SECOND),
+                false,
+                0,
+                List.of(
+                        new BackendSettings("fulmar", 1, 0, false),
+                        new BackendSettings("gannet", 2, 0, false),
+                        new BackendSettings("petrel", 3, 0, false)));
+        Balancer balancer = Balancer.start(
+                new BalancerSettings("steelyard", 1, List.of(new HostSettings("north-quay", 1)), List.of(pool)),
+                number -> backend,
+                number -> 0,
+                System::nanoTime,
+                number -> 0.0,
+                new DeafSink());
+        balancer.begin(System.nanoTime());
+        return balancer;
+    }
+
+    private static void print(Map<Way, Stretch[]> rounds) {
+        say("%-10s %12s %10s %18s %18s", "way", "requests/s", "p99 ms", "CPU us/request", "of it in middle");
+        rounds.forEach((way, stretches) -> say(
+                "%-10s %12.0f %10.2f %18.1f %18s",
+                way.word,
+                median(stretches, Stretch::perSecond),
+                median(stretches, Stretch::p99Millis),
+                median(stretches, Stretch::cpuMicros),
+                way == Way.DIRECT
+                        ? "-"
+                        : String.format(Locale.ROOT, "%.1f", median(stretches, Stretch::middleMicros))));
+        double balancer = median(rounds.get(Way.BALANCER), Stretch::perSecond);
+        say("");
+        say("ratio-to-direct: %.2f", balancer / median(rounds.get(Way.DIRECT), Stretch::perSecond));
+        say("ratio-to-relay: %.2f", balancer / median(rounds.get(Way.RELAY), Stretch::perSecond));
+    }
+
+    private static double median(Stretch[] stretches, ToDoubleFunction<Stretch> figure) {
+        double[] sorted = Arrays.stream(stretches).mapToDouble(figure).sorted().toArray();
+        return sorted[sorted.length / 2];
+    }
+
+    private static void say(String format, Object... values) {
+        System.out.println(String.format(Locale.ROOT, format, values));
+    }
+}
