@@ -1,5 +1,6 @@
 package steelyard.balancer.live.http;
 
+import io.netty.buffer.ByteBuf;
 import io.netty.buffer.Unpooled;
 import io.netty.channel.Channel;
 import io.netty.channel.ChannelFutureListener;
@@ -7,6 +8,8 @@ import io.netty.channel.ChannelHandlerContext;
 import io.netty.channel.ChannelInboundHandlerAdapter;
 import io.netty.channel.ChannelOption;
 import io.netty.channel.socket.DuplexChannel;
+import io.netty.handler.codec.http.DefaultFullHttpResponse;
+import io.netty.handler.codec.http.EmptyHttpHeaders;
 import io.netty.handler.codec.http.HttpContent;
 import io.netty.handler.codec.http.HttpHeaderNames;
 import io.netty.handler.codec.http.HttpHeaderValues;
@@ -15,6 +18,7 @@ import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.HttpUtil;
+import io.netty.handler.codec.http.LastHttpContent;
 import io.netty.util.ReferenceCountUtil;
 import java.util.ArrayDeque;
 import java.util.concurrent.TimeUnit;
@@ -40,6 +44,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     private final ArrayDeque<HttpObject> ahead = new ArrayDeque<>();
     private @Nullable Exchange exchange;
     private int pinned = Decider.NOBODY;
+    private @Nullable HttpResponse heldHead;
     private boolean closing;
     private boolean catchingUp;
 
@@ -182,18 +187,40 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         return channel.isWritable();
     }
 
+    /** The head of an answer; it is written with what comes next, at the latest at the next flush. */
     void passHead(HttpResponse response, boolean close) {
         if (close) {
             response.headers().set(HttpHeaderNames.CONNECTION, HttpHeaderValues.CLOSE);
         }
-        write(response);
+        heldHead = response;
     }
 
     void write(HttpObject message) {
-        channel.write(message, channel.voidPromise());
+        HttpResponse head = heldHead;
+        if (head != null && message instanceof LastHttpContent last) {
+            heldHead = null;
+            channel.write(whole(head, last.content()), channel.voidPromise());
+        } else {
+            writeHeldHead();
+            channel.write(message, channel.voidPromise());
+        }
+    }
+
+    private static HttpResponse whole(HttpResponse head, ByteBuf content) {
+        return new DefaultFullHttpResponse(
+                head.protocolVersion(), head.status(), content, head.headers(), EmptyHttpHeaders.INSTANCE);
+    }
+
+    private void writeHeldHead() {
+        HttpResponse head = heldHead;
+        if (head != null) {
+            heldHead = null;
+            channel.write(head, channel.voidPromise());
+        }
     }
 
     void flush() {
+        writeHeldHead();
         channel.flush();
     }
 
@@ -273,6 +300,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     private void closeAfterFlush() {
         deadline.in(pool.settings().timeouts().idleNanos());
+        writeHeldHead();
         channel.writeAndFlush(Unpooled.EMPTY_BUFFER).addListener(ChannelFutureListener.CLOSE);
     }
 

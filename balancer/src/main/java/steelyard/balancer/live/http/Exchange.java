@@ -1,6 +1,9 @@
 package steelyard.balancer.live.http;
 
+import io.netty.buffer.Unpooled;
+import io.netty.handler.codec.http.DefaultFullHttpRequest;
 import io.netty.handler.codec.http.DefaultLastHttpContent;
+import io.netty.handler.codec.http.EmptyHttpHeaders;
 import io.netty.handler.codec.http.HttpContent;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
@@ -107,11 +110,22 @@ final class Exchange {
         connected = true;
         headSent = true;
         to.moved();
-        to.serve(this, head);
+        to.serve(this, body.empty() ? whole() : head);
         body.sendAll(to);
         if (body.complete()) {
             to.awaitFirstByte();
         }
+    }
+
+    /** Head and empty content in one, which is encoded into one buffer. */
+    private HttpRequest whole() {
+        return new DefaultFullHttpRequest(
+                head.protocolVersion(),
+                head.method(),
+                head.uri(),
+                Unpooled.EMPTY_BUFFER,
+                head.headers(),
+                EmptyHttpHeaders.INSTANCE);
     }
 
     /** The attempt failed; its connection is already gone. */

@@ -34,6 +34,11 @@ final class RequestBody {
         return complete;
     }
 
+    /** Whether the request has no content, or none that was not sent. */
+    boolean empty() {
+        return complete && pieces == null;
+    }
+
     /** Whether all of it that came so far can be sent again. */
     boolean replayable() {
         return !dropped;
@@ -60,9 +65,6 @@ final class RequestBody {
     /** Writes all that waited, and keeps it where it may be needed again. */
     void sendAll(BackendConnection connection) {
         if (pieces == null) {
-            if (complete && !dropped) {
-                connection.write(LastHttpContent.EMPTY_LAST_CONTENT);
-            }
             return;
         }
         boolean keep = keeps && bytes <= MOST_KEPT;
