@@ -35,7 +35,11 @@ final class LivePlay implements AutoCloseable {
     private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses) throws CannotStart {
         this.settings = settings;
         balancer = Balancer.start(settings, addresses::get, pool -> 0, System::nanoTime, backend -> 0.0, decisions);
+    }
+
+    private LivePlay begun() {
         balancer.begin(System.nanoTime());
+        return this;
     }
 
     static LivePlay of(InetSocketAddress... addresses) throws CannotStart {
@@ -43,7 +47,16 @@ final class LivePlay implements AutoCloseable {
     }
 
     static LivePlay of(UnaryOperator<Pool> with, InetSocketAddress... addresses) throws CannotStart {
-        return new LivePlay(settings(with, addresses), List.of(addresses));
+        return new LivePlay(settings(1, with, addresses), List.of(addresses)).begun();
+    }
+
+    static LivePlay onLoops(int loops, InetSocketAddress... addresses) throws CannotStart {
+        return new LivePlay(settings(loops, UnaryOperator.identity(), addresses), List.of(addresses)).begun();
+    }
+
+    /** A balancer that has not begun. */
+    static LivePlay waiting(InetSocketAddress... addresses) throws CannotStart {
+        return new LivePlay(settings(1, UnaryOperator.identity(), addresses), List.of(addresses));
     }
 
     /** The exception of a balancer whose front is to listen on a port that is taken. */
@@ -51,7 +64,7 @@ final class LivePlay implements AutoCloseable {
         return assertThrows(
                 CannotStart.class,
                 () -> Balancer.start(
-                        settings(UnaryOperator.identity(), address),
+                        settings(1, UnaryOperator.identity(), address),
                         backend -> address,
                         pool -> port,
                         System::nanoTime,
@@ -59,7 +72,7 @@ final class LivePlay implements AutoCloseable {
                         new Decisions()));
     }
 
-    private static BalancerSettings settings(UnaryOperator<Pool> with, InetSocketAddress... addresses) {
+    private static BalancerSettings settings(int loops, UnaryOperator<Pool> with, InetSocketAddress... addresses) {
         List<BackendSettings> backends = new ArrayList<>();
         List<HostSettings> hosts = new ArrayList<>();
         for (int i = 0; i < addresses.length; i++) {
@@ -67,7 +80,7 @@ final class LivePlay implements AutoCloseable {
             hosts.add(new HostSettings("quay-" + (i + 1), 1));
         }
         PoolSettings pool = with.apply(new Pool()).settings(backends);
-        return new BalancerSettings("steelyard", 1, hosts, List.of(pool));
+        return new BalancerSettings("steelyard", loops, hosts, List.of(pool));
     }
 
     InetSocketAddress front() {

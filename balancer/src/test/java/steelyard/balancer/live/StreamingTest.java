@@ -3,6 +3,10 @@ package steelyard.balancer.live;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.awaitility.Awaitility.await;
 
+import java.io.IOException;
+import java.io.UncheckedIOException;
+import java.nio.charset.StandardCharsets;
+import java.util.Arrays;
 import java.util.concurrent.CompletableFuture;
 import java.util.concurrent.CountDownLatch;
 import java.util.concurrent.TimeUnit;
@@ -24,15 +28,14 @@ class StreamingTest {
 
     private static byte[] piece(int number) {
         byte[] piece = new byte[PIECE];
-        java.util.Arrays.fill(piece, (byte) number);
+        Arrays.fill(piece, (byte) number);
         return piece;
     }
 
-    private static void readAll(Wire wire) throws java.io.IOException {
+    private static void readAll(Wire wire) throws IOException {
         for (int i = 0; i < PIECES; i++) {
-            if (!java.util.Arrays.equals(
-                    wire.read(PIECE).getBytes(java.nio.charset.StandardCharsets.ISO_8859_1), piece(i))) {
-                throw new java.io.IOException("piece " + i + " is not what was sent");
+            if (!Arrays.equals(wire.read(PIECE).getBytes(StandardCharsets.ISO_8859_1), piece(i))) {
+                throw new IOException("piece " + i + " is not what was sent");
             }
         }
     }
@@ -84,8 +87,8 @@ class StreamingTest {
                         client.send(piece(i));
                         sent.addAndGet(PIECE);
                     }
-                } catch (java.io.IOException e) {
-                    throw new java.io.UncheckedIOException(e);
+                } catch (IOException e) {
+                    throw new UncheckedIOException(e);
                 }
             });
             awaitRest(sent);

@@ -93,6 +93,11 @@ final class Wire implements AutoCloseable {
         return 0;
     }
 
+    /** Says that nothing more comes, and can still be read from. */
+    void finish() throws IOException {
+        socket.shutdownOutput();
+    }
+
     /** Closes so that the other end sees a reset. */
     void reset() throws IOException {
         socket.setSoLinger(true, 0);
