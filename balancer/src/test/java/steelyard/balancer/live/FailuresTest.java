@@ -218,6 +218,27 @@ class FailuresTest {
     }
 
     @Test
+    void retry_refusedBeforeItsContentCame_readsTheContentOnAKeptConnection() throws Exception {
+        try (FakeBackend good = FakeBackend.playing(wire -> {
+                    for (String head = wire.readHead(); head != null; head = wire.readHead()) {
+                        wire.read(Wire.contentLength(head));
+                        wire.send(OK);
+                    }
+                });
+                LivePlay play = LivePlay.of(Pool::retrying, FakeBackend.deadAddress(), good.address());
+                Wire client = play.client()) {
+            for (int i = 0; i < 2; i++) {
+                assertThat(play.ask(GET)).startsWith("HTTP/1.1 200 ");
+            }
+            client.send(POST.substring(0, POST.length() - "hold".length()));
+            await().until(() -> play.decisions.picks().size() == 5);
+            client.send("hold");
+            assertThat(client.readAnswer()).startsWith("HTTP/1.1 200 ");
+            assertThat(good.connections()).isEqualTo(1);
+        }
+    }
+
+    @Test
     void retry_getResetBeforeAnyByte_isMadeOnce() throws Exception {
         try (FakeBackend bad = resetting();
                 FakeBackend good = FakeBackend.answering(OK);
