@@ -29,6 +29,9 @@ public final class Behaviour {
     /** What {@link #arrive} returns for a request that is over already. */
     public static final int NOWHERE = Places.NOWHERE;
 
+    /** Sets the draws for lost probes apart from those for faults, whose second key is the bare number below 0. */
+    private static final long OF_LOSS = 1L << 32;
+
     private static final int OK = 200;
     private static final int UNAVAILABLE = 503;
 
@@ -77,7 +80,8 @@ public final class Behaviour {
     }
 
     /**
-     * A probe was read. Free probes are answered past the queue, queued ones wait their turn and hold a worker.
+     * A probe was read. Free probes are answered past the queue, queued ones wait their turn and hold a worker; a lost
+     * one is never heard of again, and costs nothing.
      *
      * @param token handed back with the reply
      * @param probe number of the probe at this backend
@@ -86,7 +90,9 @@ public final class Behaviour {
         long now = poll(nowNanos, sink);
         tally.probes++;
         int place = places.take(token, probe, 0, true, 0, now);
-        if (settings.probeWork() == ProbeWork.QUEUED || faults.killed() || faults.hanging()) {
+        if (!faults.killed() && loses(probe)) {
+            end(place, Reply.SILENCE, 0, now, sink);
+        } else if (settings.probeWork() == ProbeWork.QUEUED || faults.killed() || faults.hanging()) {
             admit(place, now, sink);
         } else {
             startFreeProbe(place, now);
@@ -181,6 +187,11 @@ public final class Behaviour {
             }
         }
         return tally.figures(now, waitSoFarNanos, serviceSoFarNanos, settings.workers());
+    }
+
+    /** Whether chance loses a probe: by the backend's number and the probe's. */
+    private boolean loses(long probe) {
+        return settings.probeLoss() > 0 && chance.unit(Stream.FAULT, probe, OF_LOSS - probeKey) < settings.probeLoss();
     }
 
     private void admit(int place, long now, ReplySink sink) {

@@ -9,11 +9,12 @@ import java.util.Objects;
  * @param queue requests that may wait for a worker, 0 or above; {@link Integer#MAX_VALUE} stands for no limit
  * @param time the work that a request asks for
  * @param probeWork whether a probe costs a worker
+ * @param probeLoss chance of each probe to be read and never answered, 0..1
  * @param status the status of a good answer, 200..599
  * @param bodyBytes the size of its body, 0..16 MiB
  */
 public record BehaviourSettings(
-        int workers, int queue, ServiceTime time, ProbeWork probeWork, int status, int bodyBytes) {
+        int workers, int queue, ServiceTime time, ProbeWork probeWork, double probeLoss, int status, int bodyBytes) {
 
     private static final int MOST_BODY_BYTES = 16 << 20;
     private static final int USUAL_BODY_BYTES = 32;
@@ -31,6 +32,9 @@ public record BehaviourSettings(
         Objects.requireNonNull(probeWork);
         require(workers >= 1, "workers must be 1 or more", workers);
         require(queue >= 0, "queue must be 0 or more", queue);
+        if (!(probeLoss >= 0 && probeLoss <= 1)) {
+            throw new IllegalArgumentException("probe loss must be 0 to 1, but is " + probeLoss);
+        }
         requireStatus(status);
         require(
                 bodyBytes >= 0 && bodyBytes <= MOST_BODY_BYTES,
@@ -40,15 +44,19 @@ public record BehaviourSettings(
 
     /** Free probes, and a short answer with status 200. */
     public static BehaviourSettings of(int workers, int queue, ServiceTime time) {
-        return new BehaviourSettings(workers, queue, time, ProbeWork.FREE, 200, USUAL_BODY_BYTES);
+        return new BehaviourSettings(workers, queue, time, ProbeWork.FREE, 0, 200, USUAL_BODY_BYTES);
     }
 
     public BehaviourSettings withProbeWork(ProbeWork set) {
-        return new BehaviourSettings(workers, queue, time, set, status, bodyBytes);
+        return new BehaviourSettings(workers, queue, time, set, probeLoss, status, bodyBytes);
+    }
+
+    public BehaviourSettings withProbeLoss(double set) {
+        return new BehaviourSettings(workers, queue, time, probeWork, set, status, bodyBytes);
     }
 
     public BehaviourSettings withAnswer(int setStatus, int setBodyBytes) {
-        return new BehaviourSettings(workers, queue, time, probeWork, setStatus, setBodyBytes);
+        return new BehaviourSettings(workers, queue, time, probeWork, probeLoss, setStatus, setBodyBytes);
     }
 
     static void requireStatus(int status) {

@@ -341,6 +341,29 @@ class BehaviourTest {
         play.planned("1 probe 0 FAULT 503", "3 probe 1 ANSWER 200", "10 #0.0 ANSWER 200");
     }
 
+    @Test
+    void probe_lost_isDrawnByBackendAndProbeAndCostsNoWorker() {
+        BehaviourSettings lossy = ONE_WORKER_ONE_WAITS.withProbeLoss(0.25);
+        Play play = new Play(lossy, 0);
+        play.arrive(0, 0);
+        for (int probe = 0; probe < 10_000; probe++) {
+            play.probe(probe, 1);
+        }
+        long lost = play.trace.lines.stream()
+                .filter(line -> line.endsWith("SILENCE 0"))
+                .count();
+        // Binomial: 4 standard deviations of 10,000 draws with chance 0.25 are 174.
+        assertThat(lost).isBetween(2_326L, 2_674L);
+        assertThat(play.trace.lines).hasSize(10_000);
+        assertThat(play.figures(2).probesFailed()).isEqualTo(lost);
+
+        Play queued = new Play(lossy.withProbeWork(ProbeWork.QUEUED).withProbeLoss(1), 0);
+        queued.probe(0, 1);
+        queued.arrive(0, 2);
+        queued.poll(12);
+        queued.planned("1 probe 0 SILENCE 0", "12 #0.0 ANSWER 200");
+    }
+
     // From the cue at 2 with period 10: bad in [2,7), good in [7,12), bad in [12,17).
     @Test
     void flapProbe_firstHalfBadSecondHalfGood() {

@@ -81,6 +81,19 @@ class StubFaultsTest {
     }
 
     @Test
+    void lostProbe_meetsSilenceWhileRequestsAreAnswered() throws Exception {
+        try (OneStub stub = OneStub.of(OneStub.NO_TIME.withProbeLoss(1));
+                RawClient client = stub.client();
+                RawClient prober = stub.client()) {
+            prober.send(PROBE);
+            stub.until(figures -> figures.probes() == 1 && figures.probesFailed() == 1);
+            assertThat(client.get("/", 1).receive().status()).isEqualTo(200);
+            prober.longestRead(SILENCE_MILLIS);
+            assertThatExceptionOfType(SocketTimeoutException.class).isThrownBy(prober::readByte);
+        }
+    }
+
+    @Test
     void hang_requestsAndProbesMeetSilenceForGood() throws Exception {
         try (OneStub stub = OneStub.of(OneStub.NO_TIME)) {
             try (RawClient client = stub.client();

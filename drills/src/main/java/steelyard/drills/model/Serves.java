@@ -10,6 +10,7 @@ import org.jspecify.annotations.Nullable;
  * @param time the service time
  * @param bodyBytes size of an ordinary answer
  * @param probesQueue whether a probe takes a worker like any request
+ * @param probeLoss chance of each http probe to be lost: read, and never answered; from 0 to 1
  * @param answers folder of mapping files that make the answers, as the reader resolved it, or null
  */
 public record Serves(
@@ -18,11 +19,13 @@ public record Serves(
         Time time,
         int bodyBytes,
         boolean probesQueue,
+        double probeLoss,
         @Nullable String answers) {
     public Serves {
         Check.positive(workers, "workers");
         Check.notNegative(queue, "queue");
         Check.notNegative(bodyBytes, "body");
+        Check.share(probeLoss, "probe-loss");
     }
 
     /**

@@ -8,15 +8,19 @@ import java.util.Optional;
  * What a drill is played on.
  *
  * @param loops event loops of the balancer, at least 1
+ * @param connections most that clients may have open at once, all together, at least 1
  * @param hosts every host, in list order; a backend that names none stands on a host of its own name
  * @param pools at least one, in list order
  */
-public record Stage(int loops, List<Host> hosts, List<Pool> pools) {
+public record Stage(int loops, int connections, List<Host> hosts, List<Pool> pools) {
+    /** The most connections of clients unless a drill says otherwise. */
+    public static final int USUAL_CONNECTIONS = 4_096;
 
     public Stage {
         hosts = List.copyOf(hosts);
         pools = List.copyOf(pools);
         Check.positive(loops, "loops");
+        Check.positive(connections, "connections");
         Check.that(!pools.isEmpty(), "a stage needs a pool");
     }
 

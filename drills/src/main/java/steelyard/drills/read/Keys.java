@@ -8,7 +8,7 @@ import steelyard.drills.model.Cue;
 /** Every map that a drill may hold, with every key that it knows; the JSON Schema lists the same ones. */
 enum Keys {
     DRILL("a drill", "drill: Lose one of three", "drill", "about", "stage", "traffic", "lasts", "cues", "expect"),
-    STAGE("a stage", "{pools: {seats: ...}}", "loops", "hosts", "pools"),
+    STAGE("a stage", "{pools: {seats: ...}}", "loops", "connections", "hosts", "pools"),
     HOST("a host", "{weight: 10, zone: north}", "weight", "zone"),
     POOL(
             "a pool",
@@ -32,7 +32,16 @@ enum Keys {
     TIMEOUTS("timeouts", "{connect: 1s}", "connect", "first-byte", "idle"),
     FRONT("a front", "{port: 18080}", "port"),
     BACKEND("a backend", "{weight: 1}", "weight", "host", "starts", "times", "serves"),
-    SERVES("serves", "{workers: 8, time: 12ms}", "workers", "queue", "time", "body", "probe-work", "answers"),
+    SERVES(
+            "serves",
+            "{workers: 8, time: 12ms}",
+            "workers",
+            "queue",
+            "time",
+            "body",
+            "probe-work",
+            "probe-loss",
+            "answers"),
     TIME("a time", "{exponential: 20ms}", "fixed", "exponential", "lognormal"),
     LOGNORMAL("lognormal", "{median: 12ms, 99%: 60ms}", "median", "99%"),
     TRAFFIC(

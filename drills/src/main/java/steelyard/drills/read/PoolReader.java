@@ -56,6 +56,7 @@ final class PoolReader {
         int port = fields.map("front", Keys.FRONT).read("port", PORT, 0);
         BackendsReader.OfPool ofPool = backends.read(fields, entry.key());
         checkWeights(fields, method, weights, ofPool);
+        checkLoss(fields, probe, ofPool);
         List<Backend> list = ofPool.backends();
         return list.isEmpty()
                 ? null
@@ -140,6 +141,18 @@ final class PoolReader {
             }
         } else if (written != null && ofPool.noneWeighs()) {
             problems.add(written, "every backend of the pool has weight 0", "give one a weight of at least 1");
+        }
+    }
+
+    private void checkLoss(Fields fields, @Nullable Probe probe, BackendsReader.OfPool ofPool) {
+        boolean loses =
+                ofPool.backends().stream().anyMatch(each -> each.serves().probeLoss() > 0);
+        if (loses && (probe == null || probe.kind() == Probe.Kind.TCP)) {
+            problems.notice(
+                    probe == null ? fields.place() : fields.valuePlace("probe"),
+                    "probe-loss plays no part, since "
+                            + (probe == null ? "nothing probes" : "a tcp probe only connects"),
+                    "write probe: {path: /afloat} for the pool");
         }
     }
 

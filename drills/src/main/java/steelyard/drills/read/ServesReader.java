@@ -31,6 +31,7 @@ final class ServesReader {
                 time(fields),
                 fields.read("body", Sizes.SIZE),
                 probesQueue(fields),
+                fields.read("probe-loss", Shares.SHARE),
                 answers(fields));
     }
 
@@ -102,6 +103,7 @@ final class ServesReader {
             Serves.@Nullable Time time,
             @Nullable Integer bodyBytes,
             @Nullable Boolean probesQueue,
+            @Nullable Double probeLoss,
             @Nullable String answers) {
 
         /** What this says, and where it says nothing what the other one says. */
@@ -112,6 +114,7 @@ final class ServesReader {
                     first(time, other.time),
                     first(bodyBytes, other.bodyBytes),
                     first(probesQueue, other.probesQueue),
+                    first(probeLoss, other.probeLoss),
                     first(answers, other.answers));
         }
 
@@ -129,6 +132,7 @@ final class ServesReader {
                     or(time, HARMLESS_TIME),
                     or(bodyBytes, 512),
                     or(probesQueue, Boolean.FALSE),
+                    or(probeLoss, 0.0),
                     answers);
         }
 

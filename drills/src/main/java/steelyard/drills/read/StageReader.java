@@ -11,6 +11,7 @@ import steelyard.drills.model.Stage;
 /** Reads {@code stage:}. */
 final class StageReader {
     private static final Quantity<Integer> LOOPS = Numbers.from(1, 64);
+    private static final Quantity<Integer> CONNECTIONS = Numbers.from(1, 10_000_000);
 
     private final Problems problems;
     private final @Nullable Path folder;
@@ -46,7 +47,13 @@ final class StageReader {
         }
         List<Host> all = hosts.finish();
         checkHostWeights(hosts, pools);
-        return pools.isEmpty() ? null : new Stage(fields.read("loops", LOOPS, 1), all, pools);
+        return pools.isEmpty()
+                ? null
+                : new Stage(
+                        fields.read("loops", LOOPS, 1),
+                        fields.read("connections", CONNECTIONS, Stage.USUAL_CONNECTIONS),
+                        all,
+                        pools);
     }
 
     /** The names of all pools in the file, of those too that have no backend. */

@@ -57,8 +57,9 @@ class DrillReaderTest {
     @Test
     void read_ofTheLeastDrill_fillsInTheDefaults() {
         Drill drill = read(LEAST);
-        Serves serves = new Serves(2, 64, Serves.Time.fixed(9 * MS), 512, false, null);
+        Serves serves = new Serves(2, 64, Serves.Time.fixed(9 * MS), 512, false, 0, null);
         assertThat(drill.stage().loops()).isEqualTo(1);
+        assertThat(drill.stage().connections()).isEqualTo(4_096);
         assertThat(drill.stage().hosts()).containsExactly(new Host("fulmar", 1, null), new Host("gannet", 1, null));
         assertThat(drill.stage().pools())
                 .containsExactly(new Pool(
@@ -98,6 +99,8 @@ class DrillReaderTest {
     @Test
     void read_ofPools_takesEverySetting() {
         Stage stage = read(EveryKeyTest.TEXT).stage();
+        assertThat(stage.loops()).isEqualTo(2);
+        assertThat(stage.connections()).isEqualTo(9_000);
         Pool seats = stage.pool("seats");
         assertThat(seats.probe()).isEqualTo(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 4, 1));
         assertThat(seats.warmUp()).isEqualTo(new WarmUp(90 * S, 0.05));
@@ -114,9 +117,9 @@ class DrillReaderTest {
     @Test
     void read_ofBackends_laysTheirOwnServesOverThePools() {
         List<Backend> backends = read(EveryKeyTest.TEXT).stage().pool("seats").backends();
-        Serves pool = new Serves(8, 16, Serves.Time.lognormal(12 * MS, 60 * MS), 4096, true, "pages");
-        Serves fulmar = new Serves(8, 16, Serves.Time.fixed(9 * MS), 4096, true, "pages");
-        Serves gannet = new Serves(8, 0, Serves.Time.exponential(20 * MS), 4096, true, "pages");
+        Serves pool = new Serves(8, 16, Serves.Time.lognormal(12 * MS, 60 * MS), 4096, true, 0.01, "pages");
+        Serves fulmar = new Serves(8, 16, Serves.Time.fixed(9 * MS), 4096, true, 0.01, "pages");
+        Serves gannet = new Serves(8, 0, Serves.Time.exponential(20 * MS), 4096, true, 0.01, "pages");
         assertThat(backends)
                 .containsExactly(
                         new Backend("fulmar", "fulmar", 3, "north-quay", true, fulmar),
@@ -235,6 +238,19 @@ class DrillReaderTest {
                 .containsExactly(
                         "d:3:99: notice: under round-robin weights play no part; write method: weighted-round-robin to use them",
                         "d:6:38: notice: share is always 100 %, since it names the whole pool; name some of its backends");
+    }
+
+    @Test
+    void read_ofProbeLossThatNoProbeMeets_givesANotice() {
+        String text = LEAST.replace("fulmar: ,", "fulmar: {serves: {probe-loss: 1%}},")
+                + "expect: [{measure: failed, at-most: 1%}]\n";
+        assertThat(shown(text))
+                .singleElement()
+                .asString()
+                .endsWith("notice: probe-loss plays no part, since nothing probes; write probe: {path: /afloat} for the"
+                        + " pool");
+        String tcp = text.replace("method:", "probe: {kind: tcp}, method:");
+        assertThat(shown(tcp)).singleElement().asString().contains("since a tcp probe only connects");
     }
 
     @Test

@@ -60,6 +60,7 @@ final class PoolWords {
         String law = time.law().word() + " " + Wording.duration(time.firstNanos());
         String tail = time.law() == Serves.Law.LOGNORMAL ? " median, 99 % " + Wording.duration(time.p99Nanos()) : "";
         return Wording.count(serves.workers(), "worker", "workers") + ", queue " + serves.queue() + ", " + law + tail
-                + (serves.probesQueue() ? ", probes queue" : "");
+                + (serves.probesQueue() ? ", probes queue" : "")
+                + (serves.probeLoss() > 0 ? ", probes lost " + Wording.exact(Unit.SHARE, serves.probeLoss()) : "");
     }
 }

@@ -61,6 +61,7 @@ public final class StageSettings {
                 serves.queue(),
                 time(serves.time()),
                 serves.probesQueue() ? ProbeWork.QUEUED : ProbeWork.FREE,
+                serves.probeLoss(),
                 OK,
                 serves.bodyBytes());
         Probe probe = pool.probe();

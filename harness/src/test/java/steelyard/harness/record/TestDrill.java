@@ -57,7 +57,7 @@ public final class TestDrill {
     }
 
     public Drill build() {
-        Serves serves = new Serves(2, 8, Serves.Time.fixed(10 * MS), 512, false, null);
+        Serves serves = new Serves(2, 8, Serves.Time.fixed(10 * MS), 512, false, 0, null);
         Pool seats = pool(
                 "seats",
                 List.of(
@@ -72,6 +72,7 @@ public final class TestDrill {
                 "What a person should look for.",
                 new Stage(
                         1,
+                        Stage.USUAL_CONNECTIONS,
                         List.of(
                                 new Host("north-quay", 10, "north"),
                                 new Host("south-quay", 20, "south"),

@@ -33,9 +33,6 @@ import steelyard.drills.model.Traffic;
  * <p>Lives on one event loop; everything but the constructor is called there.
  */
 final class Generator implements ClientConnection.Owner {
-    /** Connections of all clients together. */
-    static final int MOST_CONNECTIONS = 4_096;
-
     private static final long SWEEP_NANOS = TimeUnit.MILLISECONDS.toNanos(250);
 
     private final EventLoop loop;
@@ -46,6 +43,7 @@ final class Generator implements ClientConnection.Owner {
     private final Clients[] streams;
     private final GiveUps giveUps;
     private final ChannelGroup channels;
+    private final int mostConnections;
     private int connections;
     private int open;
     private boolean closing;
@@ -59,6 +57,7 @@ final class Generator implements ClientConnection.Owner {
 
     /**
      * @param fronts where each traffic stream goes, by its number
+     * @param mostConnections of all clients together
      * @param idleLimitNanos after how long the balancer closes an idle connection of each stream
      * @param brokenOff asked about every request that has ended
      */
@@ -69,12 +68,14 @@ final class Generator implements ClientConnection.Owner {
             Account account,
             List<Traffic> traffic,
             List<InetSocketAddress> fronts,
+            int mostConnections,
             List<Long> idleLimitNanos,
             BrokenOff brokenOff) {
         this.loop = loop;
         this.clock = clock;
         this.account = account;
         this.brokenOff = brokenOff;
+        this.mostConnections = mostConnections;
         this.giveUps = new GiveUps(traffic.size());
         this.channels = new DefaultChannelGroup(loop);
         this.streams = new Clients[traffic.size()];
@@ -114,7 +115,7 @@ final class Generator implements ClientConnection.Owner {
         ClientConnection idle = sender.takeIdle();
         if (idle != null) {
             send(exchange, idle);
-        } else if (connections < MOST_CONNECTIONS) {
+        } else if (connections < mostConnections) {
             connect(exchange, sender, stream.front());
         } else {
             account.tell(Account.Source.TRAFFIC, clock.playNow(), (to, at) -> to.connectionCapHit(at));

@@ -156,6 +156,7 @@ public final class LiveStage implements Stage {
                 opened(account),
                 drill.traffic(),
                 fronts,
+                drill.stage().connections(),
                 idleLimits,
                 opened(decisions)::takeBrokenOff);
     }

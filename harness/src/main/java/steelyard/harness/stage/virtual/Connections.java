@@ -10,12 +10,10 @@ import steelyard.drills.model.Traffic;
  * has closed whatever was idle for longer than its limit.
  */
 final class Connections {
-    /** Connections of all clients together. */
-    static final int CAP = 4_096;
-
     private static final int NONE = -1;
 
     private final int[] firstClient;
+    private final int cap;
     private final long idleLimitNanos;
     private final int[] idleTop;
     private int[] below = new int[64];
@@ -27,7 +25,9 @@ final class Connections {
     private int open;
     private boolean fresh;
 
-    Connections(List<Traffic> traffic, long idleLimitNanos) {
+    /** @param cap on all connections together */
+    Connections(List<Traffic> traffic, int cap, long idleLimitNanos) {
+        this.cap = cap;
         this.idleLimitNanos = idleLimitNanos;
         firstClient = new int[traffic.size()];
         int clients = 0;
@@ -56,7 +56,7 @@ final class Connections {
         }
         idleTop[owner] = NONE;
         fresh = true;
-        return open < CAP ? connect(owner) : NONE;
+        return open < cap ? connect(owner) : NONE;
     }
 
     /** Whether the connection just taken had to be made. */

@@ -65,7 +65,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         flights = new Flights(mostAttempts(pools));
         firstBytes = new FirstBytes(pools, post.lane(Kind.CONNECT).delayNanos());
         idempotent = traffic.stream().map(VirtualBalancer::idempotent).toArray(boolean[][]::new);
-        clients = new VirtualClients(listener, post, flights, traffic, idleLimitNanos(pools));
+        clients = new VirtualClients(listener, post, flights, drill, idleLimitNanos(pools));
         probes = new VirtualProbes(settings, post);
         decider = new Decider(
                 settings, backend -> chance.unit(Stream.PROBE_PHASE, backend, 0), new ToListener(listener), this, 0);

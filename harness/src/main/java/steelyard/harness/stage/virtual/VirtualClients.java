@@ -4,6 +4,7 @@ import java.util.List;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Cause;
+import steelyard.drills.model.Drill;
 import steelyard.drills.model.Traffic;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.virtual.Post.Kind;
@@ -20,12 +21,12 @@ final class VirtualClients {
     private final Connections connections;
     private final Lane[] giveUps;
 
-    VirtualClients(PlayListener listener, Post post, Flights flights, List<Traffic> traffic, long idleLimitNanos) {
+    VirtualClients(PlayListener listener, Post post, Flights flights, Drill drill, long idleLimitNanos) {
         this.listener = listener;
         this.post = post;
         this.flights = flights;
-        this.traffic = traffic;
-        connections = new Connections(traffic, idleLimitNanos);
+        this.traffic = drill.traffic();
+        connections = new Connections(traffic, drill.stage().connections(), idleLimitNanos);
         giveUps = traffic.stream().map(each -> new Lane(each.giveUpNanos())).toArray(Lane[]::new);
     }
 
