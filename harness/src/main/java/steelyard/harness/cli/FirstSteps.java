@@ -55,7 +55,10 @@ final class FirstSteps {
         List<Pool> pools =
                 drill.stage().pools().stream().map(FirstSteps::onAnyPort).toList();
         steelyard.drills.model.Stage stage = new steelyard.drills.model.Stage(
-                drill.stage().loops(), drill.stage().hosts(), pools);
+                drill.stage().loops(),
+                drill.stage().connections(),
+                drill.stage().hosts(),
+                pools);
         return new Drill(drill.name(), drill.about(), stage, traffic, LAST_NANOS, List.of(), List.of());
     }
 
