@@ -90,7 +90,7 @@ final class SceneLines {
 
     private void backends(List<BackendFigures> backends, List<AttributedString> lines) {
         BackendColumns columns = BackendColumns.fitting(backends, width);
-        if (height - lines.size() >= 3) {
+        if (height - lines.size() >= backends.size() + 2) {
             lines.add(plain(""));
         }
         lines.add(plain(columns.head()));

@@ -72,8 +72,8 @@ class SceneLinesTest {
         List<String> names =
                 IntStream.range(1, 21).mapToObj(number -> "gull-" + number).toList();
         List<String> text = text(lines(Boards.drill("Many", names), Map.of(), 79, 12, Colours.SOME));
-        assertThat(text).hasSize(12).contains("gull-3   up              1    50 %      1,234");
-        assertThat(text.get(11)).isEqualTo("and 17 more: 17 up");
+        assertThat(text).hasSize(12).contains("gull-4   up              1    50 %      1,234");
+        assertThat(text.get(11)).isEqualTo("and 16 more: 16 up");
     }
 
     @Test
