@@ -87,7 +87,7 @@ final class InventedRun {
                 json.writerWithDefaultPrettyPrinter().writeValueAsString(run()));
         Files.writeString(
                 folder.resolve("machine.json"),
-                "{\"started\": \"2020-02-02T02:02:02Z\", \"processors\": 2, \"memory\": \"4.0 GiB\", \"os\": \"Linux 6.1\","
+                "{\"started\": \"2020-02-02T02:02:02Z\", \"processors\": 2, \"memory\": 4294967296, \"os\": \"Linux 6.1\","
                         + " \"java\": \"17.0.15\", \"transport\": \"epoll\", \"engine\": null}");
         Files.writeString(folder.resolve("slices.csv"), slices());
         Files.writeString(folder.resolve("standing.csv"), standing());

@@ -10,10 +10,10 @@ import com.fasterxml.jackson.databind.node.ValueNode;
 import java.math.BigDecimal;
 import java.math.RoundingMode;
 import java.util.List;
-import steelyard.harness.report.RunFiles.Backend;
-import steelyard.harness.report.RunFiles.Change;
-import steelyard.harness.report.RunFiles.CueRow;
-import steelyard.harness.report.Slices.PerBackend;
+import steelyard.harness.record.RunData.BackendRow;
+import steelyard.harness.record.RunData.CueRow;
+import steelyard.harness.record.RunData.StandingRow;
+import steelyard.harness.report.Columns.PerBackend;
 
 /**
  * The figures that the page's charts are drawn from, as JSON that is safe inside a script element.
@@ -28,14 +28,14 @@ final class ChartData {
 
     static String json(RunFiles run) throws JsonProcessingException {
         ObjectNode data = JSON.objectNode();
-        data.put("lasts", run.lasts());
+        data.put("lasts", run.run().lasts());
         data.put("played", run.played());
-        data.put("ended", run.run().path("ended").asText());
-        data.put("slice", Slices.SECONDS);
-        data.put("slices", run.slices().size());
+        data.put("ended", run.run().ended());
+        data.put("slice", Columns.SECONDS);
+        data.put("slices", run.columns().size());
         data.set("pools", words(run.pools()));
-        data.set("cues", cues(run.cues()));
-        data.set("requests", requests(run.slices()));
+        data.set("cues", cues(run.run().cues()));
+        data.set("requests", requests(run.columns()));
         data.set("backends", backends(run));
         return new ObjectMapper().writeValueAsString(data).replace("<", "\\u003c");
     }
@@ -58,7 +58,7 @@ final class ChartData {
         return array;
     }
 
-    private static ObjectNode requests(Slices slices) {
+    private static ObjectNode requests(Columns slices) {
         ObjectNode requests = JSON.objectNode();
         requests.set("offered", column(slices.offered(), 0));
         requests.set("ok", column(slices.ok(), 0));
@@ -75,8 +75,8 @@ final class ChartData {
     private static ArrayNode backends(RunFiles run) {
         ArrayNode array = JSON.arrayNode();
         for (int at = 0; at < run.backends().size(); at++) {
-            Backend backend = run.backends().get(at);
-            PerBackend slices = run.slices().perBackend().get(at);
+            BackendRow backend = run.backends().get(at);
+            PerBackend slices = run.columns().perBackend().get(at);
             ObjectNode node = array.addObject();
             node.put("name", backend.name()).put("pool", backend.pool());
             node.set("picked", column(slices.picked(), 0));
@@ -92,7 +92,7 @@ final class ChartData {
 
     /** The words in turn, each with the second from which it holds. */
     private static ArrayNode standing(RunFiles run, String backend, List<String> sampled) {
-        List<Change> changes = run.changes().stream()
+        List<StandingRow> changes = run.run().standings().stream()
                 .filter(change -> change.backend().equals(backend))
                 .toList();
         ArrayNode array = JSON.arrayNode();

@@ -1,16 +1,16 @@
 package steelyard.harness.report;
 
 import java.util.List;
+import steelyard.harness.record.RunData.CueRow;
+import steelyard.harness.record.RunData.StandingRow;
 import steelyard.harness.report.Html.Column;
-import steelyard.harness.report.RunFiles.Change;
-import steelyard.harness.report.RunFiles.CueRow;
 
 /** What happened when: the cues, and what the balancer came to think of its backends. */
 final class CueSection {
     private CueSection() {}
 
     static String cues(RunFiles run) {
-        if (run.cues().isEmpty()) {
+        if (run.run().cues().isEmpty()) {
             return "<p>No cue was played.</p>\n";
         }
         List<Column> columns = List.of(
@@ -22,7 +22,7 @@ final class CueSection {
                 Column.words("By"));
         Html table = new Html().table("cues", "Cues", columns);
         int number = 1;
-        for (CueRow cue : run.cues()) {
+        for (CueRow cue : run.run().cues()) {
             table.row(
                     columns,
                     List.of(
@@ -46,7 +46,7 @@ final class CueSection {
     }
 
     static String changes(RunFiles run) {
-        if (run.changes().isEmpty()) {
+        if (run.run().standings().isEmpty()) {
             return "<p>No standing changed.</p>\n";
         }
         List<Column> columns = List.of(
@@ -56,7 +56,7 @@ final class CueSection {
                 Column.words("To"),
                 Column.words("Cause"));
         Html table = new Html().table("changes", "Changes of standing", columns);
-        for (Change change : run.changes()) {
+        for (StandingRow change : run.run().standings()) {
             table.row(
                     columns,
                     List.of(

@@ -10,8 +10,8 @@ final class Page {
 
     static String of(RunFiles run) throws IOException {
         Map<String, String> slots = new HashMap<>();
-        slots.put("title", Html.text(run.run().path("drill").asText()));
-        slots.put("about", Html.text(run.run().path("about").asText()));
+        slots.put("title", Html.text(run.run().drill()));
+        slots.put("about", Html.text(run.run().about()));
         slots.put("styles", Assets.styles());
         slots.put("scripts", Assets.scripts());
         slots.put("data", ChartData.json(run));
@@ -25,7 +25,7 @@ final class Page {
         slots.put("settings", SettingsSection.settings(run));
         slots.put("checks", SettingsSection.checks(run));
         slots.put("machine", SettingsSection.machine(run));
-        slots.put("source", Html.text(run.run().path("source").asText()));
+        slots.put("source", Html.text(run.run().source()));
         return Assets.page(slots);
     }
 }

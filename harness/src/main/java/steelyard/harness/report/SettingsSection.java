@@ -1,49 +1,52 @@
 package steelyard.harness.report;
 
-import com.fasterxml.jackson.databind.JsonNode;
 import java.util.ArrayList;
 import java.util.LinkedHashSet;
 import java.util.List;
-import java.util.Map;
 import java.util.Set;
+import java.util.function.Function;
+import steelyard.harness.record.RunData;
+import steelyard.harness.record.RunData.BackendRow;
+import steelyard.harness.record.RunData.HostRow;
+import steelyard.harness.record.RunData.PoolRow;
+import steelyard.harness.record.SelfCheck;
 import steelyard.harness.report.Html.Column;
 
 /** The foot of the page: what stood on the stage, whether the run may be trusted, and on which machine it ran. */
 final class SettingsSection {
+    /** The wall clock stays in {@code machine.json}. */
+    private static final String STARTED = "started";
+
+    private static final double MEBIBYTE = 1024 * 1024;
+
     private SettingsSection() {}
 
-    static String settings(RunFiles run) {
-        return pools(run.run().at("/cast/pools")) + stage(run.run().path("cast"));
+    static String settings(RunFiles files) {
+        return pools(files.run().pools()) + stage(files.run());
     }
 
-    private static String pools(JsonNode pools) {
+    private static String pools(List<PoolRow> pools) {
         List<Column> columns = new ArrayList<>(List.of(Column.rowHead("Setting")));
-        Set<String> keys = new LinkedHashSet<>();
-        for (JsonNode pool : pools) {
-            columns.add(Column.words("Pool " + pool.path("name").asText()));
-            pool.path("settings").fieldNames().forEachRemaining(keys::add);
-        }
+        pools.forEach(pool -> columns.add(Column.words("Pool " + pool.name())));
         Html table = new Html().table("settings", "Pools", columns);
-        for (String key : List.of("method", "count", "weights")) {
-            table.row(columns, across(key, pools, "/" + key));
-        }
+        table.row(columns, across("method", pools, PoolRow::method));
+        table.row(columns, across("count", pools, PoolRow::count));
+        table.row(columns, across("weights", pools, PoolRow::weights));
+        Set<String> keys = new LinkedHashSet<>();
+        pools.forEach(pool -> keys.addAll(pool.settings().keySet()));
         for (String key : keys) {
-            if (!List.of("method", "count", "weights").contains(key)) {
-                List<String> cells = new ArrayList<>(List.of(key));
-                pools.forEach(pool -> cells.add(pool.path("settings").path(key).asText("")));
-                table.row(columns, cells);
-            }
+            table.row(columns, across(key, pools, pool -> pool.settings().getOrDefault(key, Figures.NONE)));
         }
         return table.endTable().toString();
     }
 
-    private static List<String> across(String key, JsonNode pools, String pointer) {
+    private static List<String> across(String key, List<PoolRow> pools, Function<PoolRow, String> setting) {
         List<String> cells = new ArrayList<>(List.of(key));
-        pools.forEach(pool -> cells.add(pool.at(pointer).asText("")));
+        pools.forEach(pool -> cells.add(setting.apply(pool)));
         return cells;
     }
 
-    private static String stage(JsonNode cast) {
+    private static String stage(RunData run) {
         List<Column> columns = List.of(
                 Column.rowHead("Backend"),
                 Column.number("Weight", ""),
@@ -52,62 +55,53 @@ final class SettingsSection {
                 Column.number("Host weight", ""),
                 Column.words("Zone"));
         Html table = new Html().table("stage", "Backends and hosts", columns);
-        for (JsonNode backend : cast.path("backends")) {
-            JsonNode host = named(cast.path("hosts"), backend.path("host").asText());
-            table.row(
-                    columns,
-                    List.of(
-                            backend.path("name").asText(),
-                            backend.path("weight").asText(),
-                            backend.path("pool").asText(),
-                            backend.path("host").asText(),
-                            host.path("weight").asText(Figures.NONE),
-                            host.hasNonNull("zone") ? host.path("zone").asText() : Figures.NONE));
+        for (BackendRow backend : run.backends()) {
+            List<String> cells = new ArrayList<>(
+                    List.of(backend.name(), Integer.toString(backend.weight()), backend.pool(), backend.host()));
+            cells.addAll(run.hosts().stream()
+                    .filter(host -> host.name().equals(backend.host()))
+                    .findFirst()
+                    .map(SettingsSection::host)
+                    .orElse(List.of(Figures.NONE, Figures.NONE)));
+            table.row(columns, cells);
         }
         return table.endTable().toString();
     }
 
-    private static JsonNode named(JsonNode list, String name) {
-        for (JsonNode each : list) {
-            if (each.path("name").asText().equals(name)) {
-                return each;
-            }
-        }
-        return list.path(name);
+    private static List<String> host(HostRow host) {
+        return List.of(Integer.toString(host.weight()), host.zone() == null ? Figures.NONE : host.zone());
     }
 
-    static String checks(RunFiles run) {
-        JsonNode checks = run.run().path("checks");
-        if (checks.isEmpty()) {
+    static String checks(RunFiles files) {
+        if (files.run().checks().isEmpty()) {
             return "<p>None were made: the play has no verdict.</p>\n";
         }
         List<Column> columns = List.of(Column.rowHead("Check"), Column.words("Outcome"), Column.words("Found"));
         Html table = new Html().table("checks", "Self-checks", columns);
-        for (JsonNode check : checks) {
-            table.row(
-                    columns,
-                    List.of(
-                            check.path("check").asText(),
-                            check.path("ok").asBoolean() ? "holds" : "does not hold",
-                            check.path("text").asText()));
+        for (SelfCheck check : files.run().checks()) {
+            table.row(columns, List.of(check.check(), check.ok() ? "holds" : "does not hold", check.text()));
         }
         return table.endTable().toString();
     }
 
-    /** Only a live run depends on its machine; when it ran is left to {@code machine.json}. */
-    static String machine(RunFiles run) {
-        if (!run.run().path("stage").asText().equals("live") || !run.machine().isObject()) {
+    /** Only a live run depends on its machine. */
+    static String machine(RunFiles files) {
+        if (!files.live()) {
             return "<p>A play in virtual time does not depend on its machine.</p>\n";
         }
         List<Column> columns = List.of(Column.rowHead("Part"), Column.words("Found"));
         Html table = new Html().table("machine", "Machine", columns);
-        for (Map.Entry<String, JsonNode> field : run.machine().properties()) {
-            if (!field.getKey().contains("start")) {
-                String found =
-                        field.getValue().isNull() ? "none" : field.getValue().asText();
-                table.row(columns, List.of(field.getKey(), found));
+        files.run().machine().forEach((part, found) -> {
+            if (part.equals("memory")) {
+                table.row(columns, List.of(part, mebibytes(found)));
+            } else if (!part.equals(STARTED)) {
+                table.row(columns, List.of(part, found));
             }
-        }
+        });
         return table.endTable().toString();
+    }
+
+    private static String mebibytes(String bytes) {
+        return Figures.count(Long.parseLong(bytes) / MEBIBYTE) + " MiB";
     }
 }

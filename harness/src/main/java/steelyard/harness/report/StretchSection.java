@@ -2,8 +2,8 @@ package steelyard.harness.report;
 
 import java.util.ArrayList;
 import java.util.List;
+import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.report.Html.Column;
-import steelyard.harness.report.RunFiles.Backend;
 import steelyard.harness.report.Stretches.Part;
 import steelyard.harness.report.Stretches.Stretch;
 
@@ -70,7 +70,7 @@ final class StretchSection {
                         .raw("</th></tr>\n");
             }
             for (int at = 0; at < run.backends().size(); at++) {
-                Backend backend = run.backends().get(at);
+                BackendRow backend = run.backends().get(at);
                 if (backend.pool().equals(pool)) {
                     row(html, backend, at, stretches);
                 }
@@ -79,7 +79,7 @@ final class StretchSection {
         return html.endTable().toString();
     }
 
-    private static void row(Html html, Backend backend, int at, List<Stretch> stretches) {
+    private static void row(Html html, BackendRow backend, int at, List<Stretch> stretches) {
         html.raw("<tr><th scope=\"row\">").raw(Html.text(backend.name())).raw("</th>");
         for (Stretch stretch : stretches) {
             Part part = stretch.parts().get(at);

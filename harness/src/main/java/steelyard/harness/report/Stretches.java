@@ -5,34 +5,37 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.TreeMap;
-import steelyard.harness.report.RunFiles.CueRow;
-import steelyard.harness.report.Slices.PerBackend;
+import steelyard.harness.record.RunData.BackendRow;
+import steelyard.harness.record.RunData.CueRow;
+import steelyard.harness.report.Columns.PerBackend;
 
 /**
  * The stretches between cues. A cue splits the play at the slice in which it was applied; cues of one slice split it
  * once.
  */
 final class Stretches {
-    private final Slices slices;
+    private final Columns slices;
+    private final List<BackendRow> backends;
 
-    private Stretches(Slices slices) {
-        this.slices = slices;
+    private Stretches(RunFiles run) {
+        slices = run.columns();
+        backends = run.backends();
     }
 
     static List<Stretch> of(RunFiles run) {
         TreeMap<Integer, List<String>> starts = new TreeMap<>();
         starts.put(0, new ArrayList<>());
-        for (CueRow cue : run.cues()) {
-            int slice = sliceOf(run.slices(), cue.at());
-            if (slice < run.slices().size()) {
+        for (CueRow cue : run.run().cues()) {
+            int slice = sliceOf(run.columns(), cue.at());
+            if (slice < run.columns().size()) {
                 starts.computeIfAbsent(slice, none -> new ArrayList<>()).add(cue.cue());
             }
         }
-        Stretches stretches = new Stretches(run.slices());
+        Stretches stretches = new Stretches(run);
         List<Stretch> all = new ArrayList<>();
         for (Map.Entry<Integer, List<String>> start : starts.entrySet()) {
             Integer next = starts.higherKey(start.getKey());
-            int end = next == null ? run.slices().size() : next;
+            int end = next == null ? run.columns().size() : next;
             if (end > start.getKey()) {
                 all.add(stretches.stretch(start.getKey(), end, start.getValue()));
             }
@@ -40,9 +43,9 @@ final class Stretches {
         return all;
     }
 
-    private static int sliceOf(Slices slices, double at) {
+    private static int sliceOf(Columns slices, double at) {
         int slice = 0;
-        while (slice < slices.size() && slices.from()[slice] + Slices.SECONDS <= at + 1e-9) {
+        while (slice < slices.size() && slices.from()[slice] + Columns.SECONDS <= at + 1e-9) {
             slice++;
         }
         return slice;
@@ -52,12 +55,12 @@ final class Stretches {
         Map<String, Double> failed = new LinkedHashMap<>();
         slices.failed().forEach((cause, counts) -> failed.put(cause, sum(counts, from, to)));
         List<Part> parts = new ArrayList<>();
-        for (int backend = 0; backend < slices.backends().size(); backend++) {
+        for (int backend = 0; backend < backends.size(); backend++) {
             parts.add(part(backend, from, to));
         }
         return new Stretch(
                 slices.from()[from],
-                slices.from()[to - 1] + Slices.SECONDS,
+                slices.from()[to - 1] + Columns.SECONDS,
                 List.copyOf(cues),
                 sum(slices.offered(), from, to),
                 sum(slices.ok(), from, to),
@@ -70,11 +73,8 @@ final class Stretches {
     private Part part(int backend, int from, int to) {
         PerBackend own = slices.perBackend().get(backend);
         double poolPicked = 0;
-        for (int other = 0; other < slices.backends().size(); other++) {
-            if (slices.backends()
-                    .get(other)
-                    .pool()
-                    .equals(slices.backends().get(backend).pool())) {
+        for (int other = 0; other < backends.size(); other++) {
+            if (backends.get(other).pool().equals(backends.get(backend).pool())) {
                 poolPicked += sum(slices.perBackend().get(other).picked(), from, to);
             }
         }

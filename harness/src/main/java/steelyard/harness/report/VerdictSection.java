@@ -1,7 +1,12 @@
 package steelyard.harness.report;
 
-import com.fasterxml.jackson.databind.JsonNode;
 import java.util.List;
+import java.util.stream.Collectors;
+import org.jspecify.annotations.Nullable;
+import steelyard.harness.record.RunData;
+import steelyard.harness.record.RunData.FindingRow;
+import steelyard.harness.record.RunData.VerdictRow;
+import steelyard.harness.record.SelfCheck;
 import steelyard.harness.report.Html.Column;
 
 /** The top of the page: was it met, may it be judged, and by how much. */
@@ -9,66 +14,52 @@ final class VerdictSection {
     private VerdictSection() {}
 
     /** What kind of play this page is about, in one line. */
-    static String kicker(RunFiles run) {
-        JsonNode json = run.run();
-        boolean live = json.path("stage").asText().equals("live");
-        StringBuilder line = new StringBuilder(live ? "Rehearsal on the live stage" : "Play on the virtual stage");
-        if (live) {
-            line.append(", ").append(json.path("backends").asText()).append(" backends");
+    static String kicker(RunFiles files) {
+        RunData run = files.run();
+        String stage = files.live()
+                ? "Rehearsal on the live stage, " + run.backendsRun() + " backends"
+                : "Play on the virtual stage";
+        return stage + " · " + length(files) + " · seed " + run.seed() + " · Steelyard " + run.version();
+    }
+
+    private static String length(RunFiles files) {
+        String lasts = Figures.seconds(files.run().lasts());
+        return files.complete() ? lasts : reached(files);
+    }
+
+    private static String reached(RunFiles files) {
+        return Figures.seconds(files.played()) + " of "
+                + Figures.seconds(files.run().lasts());
+    }
+
+    static String html(RunFiles files) {
+        VerdictRow verdict = files.run().verdict();
+        if (verdict == null) {
+            return line("open", "No verdict: " + why(files)) + note("Nothing below has been judged.");
         }
-        line.append(" · ").append(length(run));
-        line.append(" · seed ").append(json.path("seed").asText());
-        return line.append(" · Steelyard ")
-                .append(json.at("/versions/steelyard").asText())
-                .toString();
+        String ended = files.complete() ? "" : note("The play was interrupted at " + reached(files) + ".");
+        String kind = verdict.met() && verdict.fit() ? "met" : "not-met";
+        return line(kind, verdict.text()) + note(fitness(files.run().checks(), verdict.fit())) + ended;
     }
 
-    private static String length(RunFiles run) {
-        String lasts = Figures.seconds(run.lasts());
-        return complete(run) ? lasts : Figures.seconds(run.played()) + " of " + lasts;
-    }
-
-    private static boolean complete(RunFiles run) {
-        return run.run().path("ended").asText().equals("complete");
-    }
-
-    static String html(RunFiles run) {
-        JsonNode verdict = run.run().path("verdict");
-        if (!verdict.isObject()) {
-            return line("open", "No verdict: " + why(run)) + note("Nothing below has been judged.");
-        }
-        boolean met = verdict.path("met").asBoolean();
-        boolean fit = verdict.path("fit").asBoolean();
-        String ended = complete(run) ? "" : note("The play was interrupted at " + length(run) + ".");
-        return line(met && fit ? "met" : "not-met", verdict.path("text").asText()) + note(fitness(run, fit)) + ended;
-    }
-
-    private static String why(RunFiles run) {
-        String reached = Figures.seconds(run.played()) + " of " + Figures.seconds(run.lasts());
-        return switch (run.run().path("ended").asText()) {
-            case "interrupted" -> "the play was interrupted at " + reached + ".";
-            case "playing" -> "the play had reached " + reached + " when this page was written.";
+    private static String why(RunFiles files) {
+        return switch (files.run().ended()) {
+            case "interrupted" -> "the play was interrupted at " + reached(files) + ".";
+            case "playing" -> "the play had reached " + reached(files) + " when it was last heard of.";
             default -> "the run folder holds none.";
         };
     }
 
-    private static String fitness(RunFiles run, boolean fit) {
-        JsonNode checks = run.run().path("checks");
-        int held = 0;
-        StringBuilder broken = new StringBuilder();
-        for (JsonNode check : checks) {
-            if (check.path("ok").asBoolean()) {
-                held++;
-            } else {
-                broken.append(broken.length() == 0 ? "" : "; ")
-                        .append(check.path("check").asText())
-                        .append(" (")
-                        .append(check.path("text").asText())
-                        .append(')');
-            }
+    private static String fitness(List<SelfCheck> checks, boolean fit) {
+        List<SelfCheck> broken = checks.stream().filter(check -> !check.ok()).toList();
+        String count = (checks.size() - broken.size()) + " of " + checks.size() + " self-checks hold";
+        if (fit) {
+            return "Fit to judge: " + count + ".";
         }
-        String count = held + " of " + checks.size() + " self-checks hold";
-        return fit ? "Fit to judge: " + count + "." : "Unfit to judge: " + count + "; not: " + broken + ".";
+        String named = broken.stream()
+                .map(check -> check.check() + " (" + check.text() + ")")
+                .collect(Collectors.joining("; "));
+        return "Unfit to judge: " + count + "; not: " + named + ".";
     }
 
     private static String line(String kind, String text) {
@@ -88,10 +79,12 @@ final class VerdictSection {
         return "<p class=\"fitness\">" + Html.text(text) + "</p>\n";
     }
 
-    static String expectations(RunFiles run) {
-        JsonNode expectations = run.run().path("expectations");
+    static String expectations(RunFiles files) {
+        List<FindingRow> expectations = files.run().expectations();
         if (expectations.isEmpty()) {
-            return "<p>" + (complete(run) ? "This drill expects nothing." : "No expectation was judged.") + "</p>\n";
+            return files.run().verdict() == null
+                    ? "<p>No expectation was judged.</p>\n"
+                    : "<p>This drill expects nothing.</p>\n";
         }
         List<Column> columns = List.of(
                 Column.rowHead("Measure"),
@@ -101,54 +94,48 @@ final class VerdictSection {
                 Column.number("Margin", ""),
                 Column.outcome("Outcome"));
         Html table = new Html().table("expectations cards", "Expectations", columns);
-        for (JsonNode each : expectations) {
+        for (FindingRow each : expectations) {
             table.row(
                     columns,
                     List.of(
-                            words(each, "text"),
-                            words(each, "of"),
-                            words(each, "bound"),
-                            words(each, "measured"),
-                            words(each, "margin"),
+                            each.text(),
+                            orEmpty(each.of()),
+                            orEmpty(each.bound()),
+                            each.measured(),
+                            orEmpty(each.margin()),
                             outcome(each)));
         }
         return table.endTable().toString();
     }
 
-    private static String outcome(JsonNode each) {
-        if (each.path("met").asBoolean()) {
-            return "met";
+    private static String outcome(FindingRow each) {
+        if (each.met()) {
+            return each.why() == null ? "met" : "met: " + each.why();
         }
-        if (each.hasNonNull("why")) {
-            return "not met: " + each.path("why").asText();
+        if (each.why() != null) {
+            return "not met: " + each.why();
         }
-        double value = each.path("value").asDouble(Double.NaN);
-        if (each.hasNonNull("most") && value > each.path("most").asDouble()) {
+        if (each.value() > each.most()) {
             return "not met: above the bound";
         }
-        if (each.hasNonNull("least") && value < each.path("least").asDouble()) {
-            return "not met: below the bound";
-        }
-        return "not met";
+        return each.value() < each.least() ? "not met: below the bound" : "not met";
     }
 
-    static String measures(RunFiles run) {
-        JsonNode measures = run.run().path("measures");
+    static String measures(RunFiles files) {
+        List<FindingRow> measures = files.run().measures();
         if (measures.isEmpty()) {
             return "<p>None were taken.</p>\n";
         }
         List<Column> columns = List.of(
                 Column.rowHead("Measure"), Column.words("Of"), Column.number("Measured", ""), Column.words("Note"));
         Html table = new Html().table("measures", "Measures of the whole play", columns);
-        for (JsonNode each : measures) {
-            table.row(
-                    columns,
-                    List.of(words(each, "text"), words(each, "of"), words(each, "measured"), words(each, "why")));
+        for (FindingRow each : measures) {
+            table.row(columns, List.of(each.text(), orEmpty(each.of()), each.measured(), orEmpty(each.why())));
         }
         return table.endTable().toString();
     }
 
-    private static String words(JsonNode node, String field) {
-        return node.hasNonNull(field) ? node.path(field).asText() : "";
+    private static String orEmpty(@Nullable String words) {
+        return words == null ? "" : words;
     }
 }

@@ -7,7 +7,6 @@ import com.fasterxml.jackson.databind.JsonNode;
 import com.fasterxml.jackson.databind.ObjectMapper;
 import java.io.IOException;
 import java.nio.file.Files;
-import java.nio.file.NoSuchFileException;
 import java.nio.file.Path;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
@@ -39,7 +38,7 @@ class ReportTest {
         assertThat(page(TinyRun.RUN))
                 .isEqualTo(first)
                 .doesNotContain("2020-02-02")
-                .contains("processors");
+                .contains("processors", "4,096 MiB");
     }
 
     @Test
@@ -84,7 +83,7 @@ class ReportTest {
         assertThat(page(open.replace("\"complete\"", "\"interrupted\"").replace("\"lasts\": 1.0", "\"lasts\": 60.0")))
                 .contains("No verdict:</strong> the play was interrupted at 1\u00a0s of 60\u00a0s.");
         assertThat(page(open.replace("\"complete\"", "\"playing\"")))
-                .contains("the play had reached 1\u00a0s of 1\u00a0s when this page was written.");
+                .contains("the play had reached 1\u00a0s of 1\u00a0s when it was last heard of.");
     }
 
     @Test
@@ -97,14 +96,18 @@ class ReportTest {
     }
 
     @Test
-    void write_folderWithoutRun_namesTheFile() throws IOException {
+    void write_folderThatCannotBeRead_saysWhatIsWrong() throws IOException {
         assertThatThrownBy(() -> Report.write(folder))
-                .isInstanceOf(NoSuchFileException.class)
-                .hasMessageContaining("run.json");
-        assertThatThrownBy(() -> page("{"))
                 .isInstanceOf(IOException.class)
-                .hasMessageStartingWith("run.json: not JSON");
-        assertThatThrownBy(() -> page("{\"format\": 2}")).hasMessage("run.json: format 2, this version reads format 1");
+                .hasMessageContaining("there is no run.json in it");
+        assertThatThrownBy(() -> page("{")).isInstanceOf(IOException.class).hasMessageContaining("run.json");
+        assertThatThrownBy(() -> page("{\"format\": 2}")).hasMessageContaining("is of format 2");
+        TinyRun.write(folder);
+        Path slices = folder.resolve("slices.csv");
+        Files.writeString(slices, Files.readString(slices).replace("p99_ms", "p98_ms"));
+        assertThatThrownBy(() -> Report.write(folder))
+                .isInstanceOf(IOException.class)
+                .hasMessageEndingWith("no column of numbers p99_ms");
     }
 
     @Test

@@ -31,7 +31,9 @@ final class TinyRun {
 
     static Path write(Path folder, String run) throws IOException {
         Files.writeString(folder.resolve("run.json"), run);
-        Files.writeString(folder.resolve("machine.json"), "{\"started\": \"2020-02-02T02:02:02Z\", \"processors\": 2}");
+        Files.writeString(
+                folder.resolve("machine.json"),
+                "{\"started\": \"2020-02-02T02:02:02Z\", \"processors\": 2, \"memory\": 4294967296}");
         Files.writeString(folder.resolve("slices.csv"), slices());
         Files.writeString(
                 folder.resolve("standing.csv"),
