@@ -442,7 +442,7 @@ final class InventedRun {
             String[] parts = text.split(" of |, ");
             boolean targeted = text.contains(" of ");
             node.put("measure", parts[0]).put("of", targeted ? parts[1] : null).put("bound", bound);
-            node.put("text", targeted ? text.replace(" of " + parts[1], "") : text);
+            node.put("text", text);
             node.put("measured", measured).put("margin", margin).put("met", met);
             node.put("why", why.isEmpty() ? null : why);
             boolean above = !met && why.isEmpty();

@@ -5,6 +5,7 @@ final class PageScripts {
     /** Pairs of elements (one selector) whose boxes overlap by more than a pixel, as words. */
     static final String OVERLAPS = """
             const boxes = [...document.querySelectorAll(arguments[0])]
+                .filter(each => each.checkVisibility())
                 .map(each => ({each, box: each.getBoundingClientRect()}))
                 .filter(({box}) => box.width > 0 && box.height > 0);
             const found = [];
@@ -52,6 +53,10 @@ final class PageScripts {
               return painted;
             });
             """;
+
+    /** What the page has asked for besides itself. */
+    static final String REQUESTS = "return performance.getEntriesByType('resource').map(each => each.name)"
+            + ".filter(name => !name.startsWith('data:'))";
 
     static final String SECONDS = "return [...document.querySelectorAll('.second')].map(each => each.textContent)";
 

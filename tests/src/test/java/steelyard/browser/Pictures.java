@@ -7,7 +7,15 @@ import java.util.Map;
 import steelyard.harness.report.Report;
 
 /**
- * Takes pictures of reports; run by hand. Arguments: a report and a PNG file, with an optional width, scheme and height
+ * Takes pictures of reports; run by hand, from the project's folder:
+ *
+ * <pre>
+ * mvn -q -pl tests -am test-compile dependency:build-classpath -Dmdep.outputFile=target/classpath
+ * java -cp tests/target/test-classes:$(cat tests/target/classpath) steelyard.browser.Pictures RUN/report.html \
+ *     .readme/report.png 1400 light 1150
+ * </pre>
+ *
+ * <p>Arguments: a report and a PNG file, with an optional width, scheme and height
  * ({@code report.html report.png 1400 light 1100}); or one folder, which is filled with the invented runs and their
  * pictures at both widths in both schemes.
  */

@@ -95,8 +95,11 @@ final class Html {
             return kind.isEmpty() ? "" : " class=\"" + kind + "\"";
         }
 
-        /** Failures that did not happen are not shown as failures. */
+        /** Failures that did not happen are not shown as failures; a plain outcome finds room beside its measure. */
         String css(String cell) {
+            if (kind.equals("outcome")) {
+                return cell.equals("met") ? " class=\"outcome short\"" : " class=\"outcome\"";
+            }
             return cell.equals("0") && kind.contains("failure") ? " class=\"n\"" : css();
         }
 

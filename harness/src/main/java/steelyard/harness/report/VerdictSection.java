@@ -1,7 +1,6 @@
 package steelyard.harness.report;
 
 import java.util.List;
-import java.util.stream.Collectors;
 import org.jspecify.annotations.Nullable;
 import steelyard.harness.record.RunData;
 import steelyard.harness.record.RunData.FindingRow;
@@ -51,15 +50,9 @@ final class VerdictSection {
     }
 
     private static String fitness(List<SelfCheck> checks, boolean fit) {
-        List<SelfCheck> broken = checks.stream().filter(check -> !check.ok()).toList();
-        String count = (checks.size() - broken.size()) + " of " + checks.size() + " self-checks hold";
-        if (fit) {
-            return "Fit to judge: " + count + ".";
-        }
-        String named = broken.stream()
-                .map(check -> check.check() + " (" + check.text() + ")")
-                .collect(Collectors.joining("; "));
-        return "Unfit to judge: " + count + "; not: " + named + ".";
+        long held = checks.stream().filter(SelfCheck::ok).count();
+        String count = held + " of " + checks.size() + " self-checks hold.";
+        return fit ? "Fit to judge: " + count : "Only " + count + " Nothing below is a verdict.";
     }
 
     private static String line(String kind, String text) {
@@ -88,7 +81,6 @@ final class VerdictSection {
         }
         List<Column> columns = List.of(
                 Column.rowHead("Measure"),
-                Column.words("Of"),
                 Column.number("Bound", ""),
                 Column.number("Measured", ""),
                 Column.number("Margin", ""),
@@ -97,15 +89,15 @@ final class VerdictSection {
         for (FindingRow each : expectations) {
             table.row(
                     columns,
-                    List.of(
-                            each.text(),
-                            orEmpty(each.of()),
-                            orEmpty(each.bound()),
-                            each.measured(),
-                            orEmpty(each.margin()),
-                            outcome(each)));
+                    List.of(text(each), orEmpty(each.bound()), each.measured(), orEmpty(each.margin()), outcome(each)));
         }
         return table.endTable().toString();
+    }
+
+    /** What was measured, with its target where the words leave it out. */
+    private static String text(FindingRow each) {
+        String of = each.of();
+        return of == null || each.text().contains(of) ? each.text() : each.text() + " (" + of + ")";
     }
 
     private static String outcome(FindingRow each) {
@@ -126,11 +118,10 @@ final class VerdictSection {
         if (measures.isEmpty()) {
             return "<p>None were taken.</p>\n";
         }
-        List<Column> columns = List.of(
-                Column.rowHead("Measure"), Column.words("Of"), Column.number("Measured", ""), Column.words("Note"));
+        List<Column> columns = List.of(Column.rowHead("Measure"), Column.number("Measured", ""), Column.words("Note"));
         Html table = new Html().table("measures", "Measures of the whole play", columns);
         for (FindingRow each : measures) {
-            table.row(columns, List.of(each.text(), orEmpty(each.of()), each.measured(), orEmpty(each.why())));
+            table.row(columns, List.of(text(each), each.measured(), orEmpty(each.why())));
         }
         return table.endTable().toString();
     }

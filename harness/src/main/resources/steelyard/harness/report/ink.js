@@ -17,6 +17,7 @@ function mixInk() {
     ink[name] = style.getPropertyValue('--' + name).trim();
   }
   ink.font = '11px ' + style.getPropertyValue('--sans').trim();
+  ink.byDay = parseInt(ink.paper.slice(1, 3), 16) > 127;
   ink.patterns = new Map();
 }
 

@@ -87,7 +87,7 @@ function chartsOf(run, narrow) {
   return charts;
 }
 
-/** One line a backend; a light colour gets a darker edge. */
+/** One line a backend; a light colour on light paper gets a darker edge. */
 function lines(run, figure, dotted) {
   const told = run.backends.filter((each) => !dotted || each[figure].some((value) => value > 0));
   return told.flatMap((each) => {
@@ -97,7 +97,7 @@ function lines(run, figure, dotted) {
       dash: dotted ? [1.5, 2.5] : backendDash(each.index),
       figure: (bin) => bin.backends[each.index][figure],
     };
-    const light = line.colour === '#F0E442' && !dotted;
+    const light = line.colour === '#F0E442' && ink.byDay && !dotted;
     return light ? [{ ...line, colour: ink.soft, width: 3.2 }, line] : [line];
   });
 }
@@ -421,9 +421,9 @@ function layRail(stack) {
   stack.now.hidden = true;
   stack.ticks.replaceChildren();
   stack.rail.replaceChildren();
-  stack.step.textContent = `Each step of a line or a stack is ${seconds(stack.size * stack.run.slice)} s.`;
-  layUnplayed(stack);
+  stack.step.textContent = `Each step of a line or a stack is ${seconds(stack.size * stack.run.slice)}\u00a0s.`;
   layCues(stack);
+  layUnplayed(stack);
 }
 
 function layUnplayed(stack) {
@@ -433,7 +433,8 @@ function layUnplayed(stack) {
   const left = pageX(stack, Math.max(run.played, view.from));
   gap.style.left = left + 'px';
   gap.style.width = stack.gutter + stack.inner - left + 'px';
-  element('span', '', gap, 'not played');
+  const words = element('span', '', gap, 'not played');
+  words.style.top = stack.charts[0].root.getBoundingClientRect().top - stack.place.getBoundingClientRect().top + 12 + 'px';
 }
 
 function layCues(stack) {
