@@ -36,6 +36,7 @@ final class InventedRuns {
         runs.put("lose-one", loseOne());
         runs.put("two-pools", twoPools());
         runs.put("twelve", twelve());
+        runs.put("forty", forty());
         runs.put("five-minutes", fiveMinutes());
         runs.put("interrupted", interrupted());
         runs.put("failures", failures());
@@ -86,6 +87,19 @@ final class InventedRuns {
         return run.cue(12, "two die", "kill gannet, skua")
                 .cue(30, "two return", "revive gannet, skua")
                 .expect("failed, from 12 s to 20 s", "at most 0.3 %", "0 %", "0.3 %", true, "");
+    }
+
+    static InventedRun forty() {
+        InventedRun run = new InventedRun("A pool of forty and a pool of one", 60);
+        for (int number = 1; number <= 40; number++) {
+            InventedRun.Member member = run.backend("fulmar-" + number, "seats", 1 + number % 3, 4000);
+            if (number > 30) {
+                member.losesAndReturns(20, 30);
+            }
+        }
+        run.backend("gannet", "holds", 1, 100);
+        return run.cue(20, "a quarter dies", "kill fulmar-31 to fulmar-40")
+                .cue(30, "a quarter returns", "revive fulmar-31 to fulmar-40");
     }
 
     static InventedRun fiveMinutes() {

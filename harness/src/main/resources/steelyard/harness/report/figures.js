@@ -40,7 +40,12 @@ function unpacked(raw) {
     entitled: column(each.entitled),
     utilisation: column(each.utilisation),
   }));
-  const pools = raw.pools.map((name) => ({ name, members: backends.filter((each) => each.pool === name) }));
+  const pools = raw.pools.map((name) => {
+    const members = backends.filter((each) => each.pool === name);
+    const picked = new Float64Array(raw.slices);
+    for (const member of members) member.picked.forEach((count, at) => (picked[at] += count));
+    return { name, members, picked };
+  });
   return { ...raw, requests, backends, pools, causes: Object.keys(requests.failed) };
 }
 
@@ -118,17 +123,12 @@ function figuresOf(run, from, to) {
     pools: [],
   };
   for (const pool of run.pools) {
-    let picked = 0;
-    for (const member of pool.members) picked += figures.backends[member.index].picked;
+    const picked = total(pool.picked, from, to) / seconds;
     for (const member of pool.members) {
       const own = figures.backends[member.index];
       own.share = picked ? own.picked / picked : NAN;
       let due = 0;
-      for (let at = from; at < to; at++) {
-        let slice = 0;
-        for (const other of pool.members) slice += other.picked[at];
-        due += member.entitled[at] * slice;
-      }
+      for (let at = from; at < to; at++) due += member.entitled[at] * pool.picked[at];
       own.due = due / seconds;
     }
     figures.pools.push(picked);

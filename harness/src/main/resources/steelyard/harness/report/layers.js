@@ -64,7 +64,7 @@ function riverLayer(pool) {
       const tops = edges.map((edge) => stepTops(chart, bins, edge));
       pool.members.forEach((member, at) => fillBetween(ctx, tops[at], tops[at + 1], backendFill(member.index)));
       ctx.lineJoin = 'bevel';
-      const slim = pool.members.length > 6 ? 0.75 : 1;
+      const slim = pool.members.length > 16 ? 0.4 : pool.members.length > 6 ? 0.75 : 1;
       for (const edge of entitled) {
         const points = stepTops(chart, bins, edge);
         stroke(ctx, points, ink.paper, 3.2 * slim * dpr);

@@ -155,10 +155,10 @@ function roundDown(value) {
 
 /** What is said of a chart to those who do not see it; the page's tables hold the figures. */
 function backendsAbout(run, members, figure, decimals, unit) {
-  const bins = binned(run, 10);
+  run.bySecond = run.bySecond || binned(run, 10);
   return members
     .map((member) => {
-      const values = bins.map((bin) => bin.backends[member.index][figure]).filter(Number.isFinite);
+      const values = run.bySecond.map((bin) => bin.backends[member.index][figure]).filter(Number.isFinite);
       if (!values.length) return `${member.name} not recorded`;
       const low = plain(Math.min(...values), decimals);
       return `${member.name} ${low} to ${plain(Math.max(...values), decimals)} ${unit}`;
