@@ -32,7 +32,7 @@ public final class VirtualStage implements Stage, Hands {
     private volatile boolean interrupted;
     private @Nullable Listening opened;
     private long nowNanos;
-    private long nextSliceNanos = SLICE_NANOS;
+    private long nextSliceNanos;
 
     /** What there is once a listener is known. */
     private record Listening(PlayListener listener, Post post, VirtualBackends backends, VirtualBalancer balancer) {}
@@ -43,6 +43,7 @@ public final class VirtualStage implements Stage, Hands {
         this.seed = seed;
         this.transport = transport;
         this.sample = new Sample(drill.stage().backends().size());
+        this.nextSliceNanos = sliceAt(SLICE_NANOS);
     }
 
     @Override
@@ -68,7 +69,7 @@ public final class VirtualStage implements Stage, Hands {
     @Override
     public void play(Agenda agenda) {
         Listening stage = opened();
-        while (!interrupted && (agenda.hasNext() || stage.balancer.busy())) {
+        while (!interrupted && (agenda.hasNext() || stage.balancer.busy() || nextSliceNanos != Lane.NEVER)) {
             step(agenda, stage);
         }
         boolean complete = !interrupted;
@@ -80,7 +81,8 @@ public final class VirtualStage implements Stage, Hands {
 
     /** Does the one thing that comes next; at one instant the agenda first, then messages, backends, balancer, samples. */
     private void step(Agenda agenda, Listening stage) {
-        long agendaNanos = agenda.hasNext() ? agenda.nextNanos() : Lane.NEVER;
+        // A cue by hand is due at an instant that has passed: when it is found.
+        long agendaNanos = agenda.hasNext() ? Math.max(nowNanos, agenda.nextNanos()) : Lane.NEVER;
         long postNanos = stage.post.nextNanos();
         long backendNanos = stage.backends.nextNanos();
         long balancerNanos = stage.balancer.nextNanos();
@@ -108,7 +110,12 @@ public final class VirtualStage implements Stage, Hands {
             sample.busyNanos[backend] = figures.busyWorkerNanos();
         }
         stage.listener.sampled(nowNanos, sample);
-        nextSliceNanos = nowNanos + SLICE_NANOS > drill.lastsNanos() ? Lane.NEVER : nowNanos + SLICE_NANOS;
+        nextSliceNanos = sliceAt(nowNanos + SLICE_NANOS);
+    }
+
+    /** The end of a slice, or never where the play does not last that long. */
+    private long sliceAt(long endNanos) {
+        return endNanos > drill.lastsNanos() ? Lane.NEVER : endNanos;
     }
 
     @Override

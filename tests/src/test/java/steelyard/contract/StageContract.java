@@ -1,0 +1,280 @@
+package steelyard.contract;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.tuple;
+
+import java.util.Collections;
+import java.util.List;
+import java.util.concurrent.ConcurrentLinkedQueue;
+import java.util.stream.IntStream;
+import java.util.stream.LongStream;
+import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.Timeout;
+import steelyard.backends.behave.Chance;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.core.standing.Standing;
+import steelyard.balancer.core.standing.Transition;
+import steelyard.drills.model.Cause;
+import steelyard.drills.model.Cue;
+import steelyard.drills.model.Drill;
+import steelyard.drills.read.DrillReader;
+import steelyard.drills.read.Parsed;
+import steelyard.harness.conduct.Conductor;
+import steelyard.harness.judge.Judge;
+import steelyard.harness.record.Cast;
+import steelyard.harness.record.PlayListener;
+import steelyard.harness.record.SelfCheck;
+import steelyard.harness.record.Tee;
+import steelyard.harness.stage.CannotPlay;
+import steelyard.harness.stage.Stage;
+
+/**
+ * What every stage owes: small drills, and what must be decided in them, worked out by hand. Where real time has a say,
+ * the bounds leave room for a machine that stands still for a second.
+ */
+@Timeout(60)
+public abstract class StageContract {
+    private static final long SEED = 7;
+    private static final long MILLI = 1_000_000;
+    private static final long SLACK = 1_500 * MILLI;
+
+    /** The stage under test. */
+    protected abstract Stage stage(Drill drill, long seed);
+
+    @Test
+    void weights_3_6_12_areServedInTheInterleavedOrder() throws CannotPlay {
+        Heard heard = play(drill("""
+                method: weighted-round-robin
+                serves: {workers: 64, queue: 64, time: {fixed: 1ms}}
+                backends: {fulmar: {weight: 3}, gannet: {weight: 6}, petrel: {weight: 12}}
+                """, "rate: 105/s", "2s", ""));
+        // Round r of a cycle serves, in list order, each backend with a weight of r or more.
+        List<Integer> cycle = IntStream.rangeClosed(1, 12)
+                .boxed()
+                .flatMap(round -> IntStream.of(0, 1, 2)
+                        .filter(each -> new int[] {3, 6, 12}[each] >= round)
+                        .boxed())
+                .toList();
+        assertThat(heard.backendsPicked())
+                .isEqualTo(Collections.nCopies(10, cycle).stream()
+                        .flatMap(List::stream)
+                        .toList());
+        assertThat(heard.count(null)).isEqualTo(210);
+        assertThat(heard.received).containsEntry(0, 30).containsEntry(1, 60).containsEntry(2, 120);
+    }
+
+    @Test
+    void account_isWhole_orderedAndSampledAtEverySlice() throws CannotPlay {
+        Heard heard = play(drill(roundRobin("fixed: 3ms"), "rate: 100/s", "1s", ""));
+        assertThat(heard.monotone).isTrue();
+        assertThat(heard.endings).isEqualTo(1);
+        assertThat(heard.complete).isTrue();
+        assertThat(heard.dues)
+                .containsExactlyElementsOf(LongStream.range(0, 100)
+                        .mapToObj(i -> 5 * MILLI + i * 10 * MILLI)
+                        .toList());
+        assertThat(heard.ends)
+                .extracting(Heard.End::request)
+                .doesNotHaveDuplicates()
+                .hasSize(100);
+        assertThat(heard.sampledNanos)
+                .containsExactlyElementsOf(LongStream.rangeClosed(1, 10)
+                        .mapToObj(i -> i * 100 * MILLI)
+                        .toList());
+    }
+
+    @Test
+    void killedBackend_withRetries_failsNobody() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 3ms") + "retry: {at-most: 1, budget: 100%, bucket: 1000}\n",
+                "rate: 100/s",
+                "2s",
+                "  - {at: 500ms, kill: fulmar}\n  - {at: 1500ms, revive: fulmar}"));
+        assertThat(heard.count(null)).isEqualTo(200);
+        long lost = heard.overs.stream()
+                .filter(each -> each.outcome() == Outcome.REFUSED || each.outcome() == Outcome.RESET)
+                .count();
+        // Of the 100 requests while it was dead every other one met it; stalls blur both ends.
+        assertThat(lost).isBetween(20L, 70L);
+        assertThat(heard.picks.stream().filter(each -> each.attempt() == 2)).hasSize((int) lost);
+        assertThat(heard.picks.stream().filter(each -> each.attempt() == 2)).allMatch(each -> each.backend() == 1);
+    }
+
+    @Test
+    void killedBackend_withoutRetries_isRefused() throws CannotPlay {
+        Heard heard = play(drill(roundRobin("fixed: 3ms"), "rate: 100/s", "1s", "  - {at: 0s, kill: fulmar}"));
+        assertThat(heard.count(null) + heard.count(Cause.REFUSED) + heard.count(Cause.RESET))
+                .isEqualTo(100);
+        assertThat(heard.count(Cause.REFUSED)).isBetween(40L, 50L);
+    }
+
+    @Test
+    void hang_isFoundByProbes_inTheTimeThatTheirSettingsGive() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 3ms")
+                        + "probe: {path: /afloat, every: 300ms, within: 250ms, misses: 3, passes: 2}\n",
+                "rate: 20/s, give-up: 500ms",
+                "4s",
+                "  - {at: 1s, hang: gannet}"));
+        Transition found = heard.transitions.stream()
+                .filter(each -> each.backend() == 1 && each.to() == Standing.DOWN)
+                .findFirst()
+                .orElseThrow();
+        assertThat(found.cause()).isEqualTo(Transition.Cause.MISSES);
+        long after = found.atNanos() - heard.cues.get(0).atNanos();
+        // Three misses: at least two periods and the time limit, less the time a probe was under way already; at most
+        // three.
+        assertThat(after).isBetween((2 * 300 + 250 - 150) * MILLI, (3 * 300 + 250) * MILLI + SLACK);
+        assertThat(heard.count(Cause.GAVE_UP)).isGreaterThan(3);
+        assertThat(heard.dueBetween(1_000 + 1_150 + SLACK / MILLI, 4_000)).allMatch(each -> each.cause() == null);
+    }
+
+    @Test
+    void drain_stopsNewWorkAndCutsWhatIsLeftAtItsLimit() throws CannotPlay {
+        Heard heard =
+                play(drill(roundRobin("fixed: 3s"), "rate: 10/s", "2s", "  - {at: 1s, drain: gannet, limit: 300ms}"));
+        long drained = heard.cues.get(0).atNanos();
+        assertThat(heard.transitions)
+                .extracting(Transition::backend, Transition::to, Transition::cause)
+                .contains(tuple(1, Standing.DRAINING, Transition.Cause.DRAIN));
+        assertThat(heard.picks.stream().filter(each -> each.backend() == 1))
+                .allMatch(each -> each.atNanos() <= drained + MILLI);
+        // Ten requests came before the drain, every other one to gannet, and none of them is done by the limit.
+        List<Heard.Over> cut = heard.overs.stream()
+                .filter(each -> each.outcome() == Outcome.CUT)
+                .toList();
+        assertThat(cut).hasSize((int)
+                heard.picks.stream().filter(each -> each.backend() == 1).count());
+        assertThat(cut.size()).isBetween(4, 5);
+        assertThat(cut)
+                .allMatch(each ->
+                        each.atNanos() - drained >= 299 * MILLI && each.atNanos() - drained < 300 * MILLI + SLACK);
+        assertThat(heard.count(Cause.CUT)).isEqualTo(cut.size());
+        assertThat(heard.count(null)).isEqualTo(20 - cut.size());
+    }
+
+    @Test
+    void withdrawnPool_hasNobodyToPick_untilAdmitted() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms"),
+                "rate: 100/s",
+                "3s",
+                "  - {at: 500ms, withdraw: {pool: seats}}\n  - {at: 2500ms, admit: {pool: seats}}"));
+        assertThat(heard.dueBetween(500, 1_000))
+                .hasSize(50)
+                .allMatch(each -> each.cause() == Cause.NO_BACKEND && each.status() == 503);
+        assertThat(heard.count(null) + heard.count(Cause.NO_BACKEND)).isEqualTo(300);
+        assertThat(heard.count(Cause.NO_BACKEND)).isBetween(150L, 250L);
+    }
+
+    @Test
+    void failingBackend_isABackendError() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms"), "rate: 100/s", "1s", "  - {at: 0s, fail: fulmar, status: 500, for: 2s}"));
+        assertThat(heard.count(Cause.BACKEND_ERROR)).isBetween(45L, 50L);
+        assertThat(heard.count(null)).isEqualTo(100 - heard.count(Cause.BACKEND_ERROR));
+    }
+
+    @Test
+    void surge_raisesTheRateWhileItLasts() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms"),
+                "rate: 50/s",
+                "2s",
+                "  - {at: 500ms, surge: {pool: seats}, factor: 4, for: 1s}"));
+        assertThat(heard.dueBetween(0, 500)).hasSize(25);
+        assertThat(heard.dueBetween(500, 1_500)).hasSize(200);
+        assertThat(heard.dueBetween(1_500, 2_000)).hasSize(25);
+        assertThat(heard.cues)
+                .extracting(Heard.Applied::by)
+                .containsExactly(PlayListener.By.DRILL, PlayListener.By.END);
+    }
+
+    @Test
+    void countConnections_keepsAClientOnItsBackend() throws CannotPlay {
+        Heard heard =
+                play(drill(roundRobin("fixed: 1ms") + "count: connections\n", "clients: 1, rate: 10/s", "2s", ""));
+        List<Integer> picked = heard.backendsPicked();
+        long moves = IntStream.range(1, picked.size())
+                .filter(i -> !picked.get(i).equals(picked.get(i - 1)))
+                .count();
+        // By requests it would move 19 times; a client that meets a stall may need another connection.
+        assertThat(picked).hasSize(20);
+        assertThat(moves).isLessThanOrEqualTo(4);
+    }
+
+    @Test
+    void cueByHand_takesEffectLikeThoseOfTheDrill() throws CannotPlay {
+        Drill drill = drill(roundRobin("fixed: 1ms"), "rate: 50/s", "3s", "");
+        Conductor conductor = new Conductor(drill, new Chance(SEED), new ConcurrentLinkedQueue<>());
+        Cue withdraw = value(DrillReader.readCue("{withdraw: gannet}", drill));
+        Heard heard = new Heard(500 * MILLI, () -> conductor.byHand(withdraw));
+        play(drill, conductor, heard);
+        assertThat(heard.cues).singleElement().satisfies(cue -> {
+            assertThat(cue.by()).isEqualTo(PlayListener.By.HAND);
+            assertThat(cue.atNanos()).isBetween(500 * MILLI, 1_000 * MILLI + SLACK);
+        });
+        assertThat(heard.picks.stream().filter(each -> each.backend() == 1))
+                .isNotEmpty()
+                .allMatch(each -> each.atNanos() <= heard.cues.get(0).atNanos() + MILLI);
+        assertThat(heard.count(null)).isEqualTo(150);
+    }
+
+    @Test
+    void interrupt_endsThePlaySoonAndSaysSo() throws CannotPlay {
+        Drill drill = drill(roundRobin("fixed: 1ms"), "rate: 50/s", "50s", "");
+        Stage[] holder = new Stage[1];
+        Heard heard = new Heard(500 * MILLI, () -> holder[0].interrupt());
+        try (Stage stage = stage(drill, SEED)) {
+            holder[0] = stage;
+            stage.open(heard);
+            stage.play(new Conductor(drill, new Chance(SEED), new ConcurrentLinkedQueue<>()));
+        }
+        assertThat(heard.complete).isFalse();
+        assertThat(heard.endings).isEqualTo(1);
+        assertThat(heard.dues.size()).isBetween(20, 500);
+        assertThat(heard.ends).hasSameSizeAs(heard.dues);
+    }
+
+    /** A pool of two in turn; further lines of the pool may follow. */
+    private static String roundRobin(String time) {
+        return """
+                method: round-robin
+                serves: {workers: 64, queue: 64, time: {%s}}
+                timeouts: {connect: 5s, first-byte: 10s, idle: 20s}
+                backends: {fulmar: {}, gannet: {}}
+                """.formatted(time);
+    }
+
+    private static Drill drill(String pool, String traffic, String lasts, String cues) {
+        String giveUp = traffic.contains("give-up") ? "" : ", give-up: 20s";
+        String text =
+                "drill: Contract\nabout: Even arrivals, so that every number is known.\nstage:\n  pools:\n    seats:\n"
+                        + pool.strip().indent(6)
+                        + "traffic:\n  - {to: seats, arrivals: even, " + traffic + giveUp + "}\nlasts: " + lasts + "\n"
+                        + (cues.isEmpty() ? "" : "cues:\n" + cues + "\n");
+        return value(DrillReader.read("contract", text));
+    }
+
+    private static <T> T value(Parsed<T> parsed) {
+        return parsed.value().orElseThrow(() -> new AssertionError(parsed.problems()));
+    }
+
+    private Heard play(Drill drill) throws CannotPlay {
+        Heard heard = new Heard();
+        play(drill, new Conductor(drill, new Chance(SEED), new ConcurrentLinkedQueue<>()), heard);
+        return heard;
+    }
+
+    /** Plays to the end; the account must add up, whatever the drill is about. Lateness is the machine's own affair. */
+    private void play(Drill drill, Conductor conductor, Heard heard) throws CannotPlay {
+        Judge judge = new Judge(drill, new Cast(drill));
+        try (Stage stage = stage(drill, SEED)) {
+            stage.open(new Tee(judge, heard));
+            stage.play(conductor);
+        }
+        assertThat(judge.verdict().checks())
+                .filteredOn(each -> !each.check().startsWith("lateness"))
+                .allMatch(SelfCheck::ok);
+    }
+}
