@@ -3,6 +3,7 @@ package steelyard.harness.report;
 import java.io.IOException;
 import java.io.InputStream;
 import java.nio.charset.StandardCharsets;
+import java.util.List;
 import java.util.Map;
 import java.util.Properties;
 import java.util.regex.Matcher;
@@ -12,6 +13,10 @@ import java.util.regex.Pattern;
 final class Assets {
     private static final String LIBRARY = "/META-INF/resources/webjars/uplot/";
     private static final Pattern SLOT = Pattern.compile("\\{\\{([a-z-]+)}}");
+
+    /** Our scripts: an earlier one knows nothing of a later one while the page loads. */
+    private static final List<String> PARTS =
+            List.of("figures.js", "ink.js", "layers.js", "charts.js", "stack.js", "rail.js", "readout.js", "start.js");
 
     private Assets() {}
 
@@ -24,7 +29,7 @@ final class Assets {
         StringBuilder scripts = new StringBuilder();
         scripts.append("/*\n").append(library("LICENSE").strip()).append("\n*/\n");
         scripts.append(library("dist/uPlot.iife.min.js")).append("\n(() => {\n'use strict';\n");
-        for (String part : new String[] {"figures.js", "ink.js", "layers.js", "stack.js", "readout.js", "start.js"}) {
+        for (String part : PARTS) {
             scripts.append(own(part));
         }
         return scripts.append("})();\n").toString();
