@@ -113,7 +113,7 @@ public final class Balancer implements AutoCloseable {
     }
 
     /**
-     * Opens the control page, {@code GET /metrics} as OpenMetrics text. At most once, after {@link #begin}.
+     * Opens the control page, {@code GET /metrics} as OpenMetrics text; 503 before {@link #begin}. At most once.
      *
      * @param port of 127.0.0.1, or 0 for any that is free
      * @throws CannotStart when the port cannot be had

@@ -69,6 +69,16 @@ class ControlPageTest {
     }
 
     @Test
+    void page_beforeThePlay_is503() throws Exception {
+        try (Balancer waiting = LivePlay.notBegun(FakeBackend.deadAddress())) {
+            ControlAddress control = waiting.openControl(0);
+            assertThat(control.url()).startsWith("http://127.0.0.1:").endsWith("/metrics");
+            assertThat(read(control, "/metrics", "Authorization: Bearer " + control.token() + "\r\n"))
+                    .startsWith("HTTP/1.1 503 ");
+        }
+    }
+
+    @Test
     void page_otherPath_is404() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
             ControlAddress control = play.balancer.openControl(0);

@@ -10,6 +10,7 @@ import java.util.concurrent.ConcurrentLinkedQueue;
 import java.util.stream.Stream;
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Chance;
+import steelyard.balancer.live.ControlAddress;
 import steelyard.drills.model.Drill;
 import steelyard.harness.conduct.Conductor;
 import steelyard.harness.console.View;
@@ -90,7 +91,7 @@ final class Rehearsal {
     /** Returns why the play broke off, or null when it came to its end or was interrupted. */
     private @Nullable CannotPlay onStage() throws CommandFailure {
         FirstSteps.play(drill, seed, interrupts);
-        Stage stage = new LiveStage(drill, seed);
+        LiveStage stage = new LiveStage(drill, seed);
         try {
             interrupts.atFirst(stage::interrupt);
             open(stage);
@@ -105,9 +106,11 @@ final class Rehearsal {
         }
     }
 
-    private void open(Stage stage) throws CommandFailure {
+    private void open(LiveStage stage) throws CommandFailure {
         try {
             stage.open(listener);
+            ControlAddress control = stage.openControl();
+            out.println("metrics %s (bearer token %s)".formatted(control.url(), control.token()));
         } catch (CannotPlay cannot) {
             discard();
             throw CommandFailure.cannot("steelyard: " + cannot.getMessage(), cannot);

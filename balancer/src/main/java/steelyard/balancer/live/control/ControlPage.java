@@ -132,7 +132,7 @@ public final class ControlPage {
             refused.headers().set(HttpHeaderNames.ALLOW, HttpMethod.GET.asciiName());
             return refused;
         }
-        return null;
+        return decider.hasBegun() ? null : text(HttpResponseStatus.SERVICE_UNAVAILABLE, "Nothing is decided yet.\n");
     }
 
     private FullHttpResponse page() {

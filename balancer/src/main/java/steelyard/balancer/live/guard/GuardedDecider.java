@@ -18,7 +18,7 @@ import steelyard.balancer.settings.BalancerSettings;
  * <p>Time is read inside the lock, so that the Decider never sees it run backwards and the order of decisions is the
  * order of their instants. The sink is called inside the lock. Orders are handed, inside the lock, to one executor,
  * which carries them out in the order in which they were given. A timer on the same executor polls the Decider at its
- * deadlines. Every method may be called from any thread; before {@link #begin} nothing but {@link #end} may be called,
+ * deadlines. Every method may be called from any thread; before {@link #begin} nothing but {@link #hasBegun} and {@link #end} may be called,
  * and after {@link #end} the Decider still answers but orders and timers are dropped.
  */
 public final class GuardedDecider {
@@ -64,6 +64,13 @@ public final class GuardedDecider {
             }
             decider = new Decider(settings, chance, sink, new Noted(), nowNanos);
             rearm(decider, nowNanos);
+        }
+    }
+
+    /** Whether {@link #begin} was called. */
+    public boolean hasBegun() {
+        synchronized (lock) {
+            return decider != null;
         }
     }
 

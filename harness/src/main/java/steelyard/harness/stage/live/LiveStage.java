@@ -18,6 +18,7 @@ import steelyard.backends.fleet.Fleet;
 import steelyard.backends.fleet.Ports;
 import steelyard.backends.stub.Transport;
 import steelyard.balancer.live.Balancer;
+import steelyard.balancer.live.ControlAddress;
 import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.drills.model.Drill;
@@ -125,6 +126,20 @@ public final class LiveStage implements Stage {
     /** Where the front of a pool listens, by the pool's number. Only while the stage is open. */
     public InetSocketAddress frontAddress(int pool) {
         return opened(balancer).frontAddress(pool);
+    }
+
+    /**
+     * Opens the balancer's control page on a loopback port; the address holds the token made for it. At most once, while
+     * the stage is open.
+     *
+     * @throws CannotPlay when no port can be had
+     */
+    public ControlAddress openControl() throws CannotPlay {
+        try {
+            return opened(balancer).openControl(Ports.ofThisProcess().next());
+        } catch (CannotStart | steelyard.balancer.live.CannotStart failure) {
+            throw new CannotPlay(String.valueOf(failure.getMessage()), failure);
+        }
     }
 
     @Override
