@@ -187,6 +187,34 @@ class ConnectionsTest {
     }
 
     @Test
+    void retry_afterAWaitForAConnectionOntoAnIdleOne_readsTheRestOfTheContent() throws Exception {
+        try (ServerSocket full = new ServerSocket(0, 1, InetAddress.getLoopbackAddress());
+                FakeBackend good = FakeBackend.playing(wire -> {
+                    for (String head = wire.readHead(); head != null; head = wire.readHead()) {
+                        String content = wire.read(Wire.contentLength(head));
+                        wire.send("HTTP/1.1 200 OK\r\nContent-Length: " + content.length() + "\r\n\r\n" + content);
+                    }
+                })) {
+            InetSocketAddress address = (InetSocketAddress) full.getLocalSocketAddress();
+            List<Socket> fillers = fill(address);
+            try (LivePlay play = LivePlay.of(pool -> pool.retrying().patience(1, 30, 30), good.address(), address);
+                    Wire client = play.client()) {
+                client.send(GET);
+                client.readAnswer();
+                client.send("POST / HTTP/1.1\r\nHost: a\r\nContent-Length: 10\r\n\r\nhello");
+                await().until(() -> play.decisions.picks().size() == 3);
+                client.send("gulls");
+                assertThat(client.readAnswer()).startsWith("HTTP/1.1 200 ").endsWith("hellogulls");
+                assertThat(good.connections()).isEqualTo(1);
+            } finally {
+                for (Socket filler : fillers) {
+                    filler.close();
+                }
+            }
+        }
+    }
+
+    @Test
     void loops_several_shareOneDecider() throws Exception {
         try (FakeBackend backend = FakeBackend.answering(OK);
                 LivePlay play = LivePlay.onLoops(2, backend.address(), backend.address())) {

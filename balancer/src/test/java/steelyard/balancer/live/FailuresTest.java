@@ -323,6 +323,49 @@ class FailuresTest {
     }
 
     @Test
+    void retry_insideTheContentOntoAnIdleConnection_sendsAllOfIt() throws Exception {
+        try (FakeBackend bad = dyingAtReuse();
+                FakeBackend good = FakeBackend.playing(wire -> {
+                    for (String head = wire.readHead(); head != null; head = wire.readHead()) {
+                        String content = wire.read(Wire.contentLength(head));
+                        wire.send("HTTP/1.1 200 OK\r\nContent-Length: " + content.length() + "\r\n\r\n" + content);
+                    }
+                });
+                LivePlay play = LivePlay.of(Pool::retrying, bad.address(), good.address());
+                Wire client = play.client()) {
+            for (int i = 0; i < 2; i++) {
+                client.send(GET);
+                client.readAnswer();
+            }
+            client.send("PUT / HTTP/1.1\r\nHost: a\r\nContent-Length: 10\r\n\r\nhello");
+            await().until(() -> play.decisions.picks().size() == 4);
+            client.send("gulls");
+            assertThat(client.readAnswer()).startsWith("HTTP/1.1 200 ").endsWith("hellogulls");
+            assertThat(play.decisions.outcomes().subList(2, 4)).containsExactly(Outcome.RESET, Outcome.ANSWERED);
+        }
+    }
+
+    @Test
+    void retry_contentBeyondWhatIsKept_isNotMade() throws Exception {
+        CountDownLatch dies = new CountDownLatch(1);
+        try (FakeBackend bad = FakeBackend.playing(wire -> {
+                    wire.readHead();
+                    wire.read(200_000);
+                    dies.countDown();
+                    wire.reset();
+                });
+                FakeBackend good = FakeBackend.answering(OK);
+                LivePlay play = LivePlay.of(Pool::retrying, bad.address(), good.address());
+                Wire client = play.client()) {
+            client.send("PUT / HTTP/1.1\r\nHost: a\r\nContent-Length: 300000\r\n\r\n" + "x".repeat(200_000));
+            dies.await();
+            assertThat(client.readHead()).startsWith("HTTP/1.1 502 ");
+            assertThat(play.decisions.retries()).containsExactly(false);
+            assertThat(good.connections()).isZero();
+        }
+    }
+
+    @Test
     void client_leavesWhileWaiting_endsTheAttemptAsAbandoned() throws Exception {
         CountDownLatch asked = new CountDownLatch(1);
         CountDownLatch left = new CountDownLatch(1);

@@ -42,7 +42,7 @@ public final class ControlPage {
     private final GuardedDecider decider;
     private final Counts counts;
     private final byte[] authorization;
-    private final ChannelGroup channels = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE);
+    private final ChannelGroup channels = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
 
     /** Makes the pages, and alone touches the meters. */
     private final DefaultEventExecutor maker =

@@ -28,7 +28,7 @@ public final class Forwarding {
     private final Transport transport;
     private final RequestNumbers numbers = new RequestNumbers();
     private final List<Channel> fronts = new ArrayList<>();
-    private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE);
+    private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
     private final Map<EventLoop, LoopConnections> connections = new HashMap<>();
 
     /** @param addresses by backend number */
