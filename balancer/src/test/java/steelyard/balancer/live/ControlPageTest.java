@@ -70,7 +70,7 @@ class ControlPageTest {
 
     @Test
     void page_beforeThePlay_is503() throws Exception {
-        try (Balancer waiting = LivePlay.notBegun(FakeBackend.deadAddress())) {
+        try (Balancer waiting = LivePlay.waiting(FakeBackend.deadAddress()).balancer) {
             ControlAddress control = waiting.openControl(0);
             assertThat(control.url()).startsWith("http://127.0.0.1:").endsWith("/metrics");
             assertThat(read(control, "/metrics", "Authorization: Bearer " + control.token() + "\r\n"))

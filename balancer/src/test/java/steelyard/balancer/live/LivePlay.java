@@ -59,17 +59,6 @@ final class LivePlay implements AutoCloseable {
         return new LivePlay(settings(1, UnaryOperator.identity(), addresses), List.of(addresses));
     }
 
-    /** A balancer that has started and decides nothing yet. */
-    static Balancer notBegun(InetSocketAddress address) throws CannotStart {
-        return Balancer.start(
-                settings(UnaryOperator.identity(), address),
-                backend -> address,
-                pool -> 0,
-                System::nanoTime,
-                backend -> 0.0,
-                new Decisions());
-    }
-
     /** The exception of a balancer whose front is to listen on a port that is taken. */
     static CannotStart startOn(int port, InetSocketAddress address) {
         return assertThrows(
