@@ -10,6 +10,7 @@ import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.function.Predicate;
 
 /** A table of published or derived check values among the test resources. */
 public final class CheckTable {
@@ -36,6 +37,16 @@ public final class CheckTable {
         } catch (IOException e) {
             throw new UncheckedIOException(e);
         }
+    }
+
+    /** The one row of a table that fits. */
+    public static Map<String, String> row(Class<?> beside, String file, Predicate<Map<String, String>> fits) {
+        List<Map<String, String>> found =
+                rows(beside, file).stream().filter(fits).toList();
+        if (found.size() != 1) {
+            throw new IllegalArgumentException(found.size() + " rows of " + file + " fit");
+        }
+        return found.get(0);
     }
 
     public static double number(Map<String, String> row, String column) {

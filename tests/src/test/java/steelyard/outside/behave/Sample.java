@@ -8,20 +8,20 @@ import static org.assertj.core.api.Assertions.assertThat;
  * replications the first half has a false alarm chance of about 8e-4 (t distribution, 19 degrees of freedom); seeds are
  * fixed, so it either always passes or never.
  */
-final class Sample {
+public final class Sample {
 
     private final double[] values;
     private int size;
 
-    Sample(int replications) {
+    public Sample(int replications) {
         values = new double[replications];
     }
 
-    void add(double value) {
+    public void add(double value) {
         values[size++] = value;
     }
 
-    void mustAgreeWith(String what, double expected, double widestRelativeError) {
+    public void mustAgreeWith(String what, double expected, double widestRelativeError) {
         assertThat(size).isEqualTo(values.length).isGreaterThanOrEqualTo(20);
         double error = standardError();
         assertThat(error).as("standard error of " + what).isLessThanOrEqualTo(widestRelativeError * expected);
