@@ -37,7 +37,7 @@ final class TerminalView implements View {
     private volatile boolean resized;
     private Size size;
 
-    private TerminalView(Drill drill, PlayBoard board, Terminal terminal) {
+    TerminalView(Drill drill, PlayBoard board, Terminal terminal) {
         this.drill = drill;
         this.board = board;
         this.terminal = terminal;
@@ -54,6 +54,7 @@ final class TerminalView implements View {
             // The process has handlers of its own for signals, so the terminal must not set any.
             Terminal terminal = TerminalBuilder.builder()
                     .system(true)
+                    .systemOutput(TerminalBuilder.SystemOutput.SysOut)
                     .dumb(false)
                     .nativeSignals(false)
                     .build();
