@@ -115,6 +115,19 @@ class RehearseTest {
     }
 
     @Test
+    void play_thatIsUnfit_endsWith3AndSaysWhy() throws Exception {
+        Path drill = drill("1s", "failed, at-most: 100%");
+        String text = Files.readString(drill);
+        Files.writeString(
+                drill, text.replace("stage:", "stage:\n  connections: 1").replace("{fixed: 1ms}", "{fixed: 300ms}"));
+        Command command = rehearse(drill, "--out", "run");
+        assertThat(command.status()).isEqualTo(3);
+        assertThat(command.out()).contains("Unfit to judge, because of:", "connection cap");
+        assertThat(command.err()).isEmpty();
+        assertThat(json("run", "verdict.json").path("fit").asBoolean(true)).isFalse();
+    }
+
+    @Test
     void play_withoutOut_makesAFolderNamedAfterTheDrill() throws Exception {
         Command command = rehearse(drill("1s", "failed, at-most: 100%"));
         assertEndsWith(0, command);
