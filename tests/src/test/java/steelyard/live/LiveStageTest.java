@@ -13,6 +13,7 @@ import java.util.List;
 import java.util.concurrent.ConcurrentLinkedQueue;
 import java.util.stream.Stream;
 import org.awaitility.Awaitility;
+import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
 import steelyard.backends.behave.Chance;
 import steelyard.contract.Heard;
@@ -27,6 +28,12 @@ import steelyard.harness.stage.Stage;
 import steelyard.harness.stage.live.LiveStage;
 
 class LiveStageTest extends StageContract {
+    /** The first play of a process loads classes for most of a second. */
+    @BeforeAll
+    static void firstSteps() throws CannotPlay {
+        play(drill("", "rate: 500/s", "1s", "  - {at: 500ms, hang: fulmar, for: 100ms}"));
+    }
+
     @Override
     protected Stage stage(Drill drill, long seed) {
         return new LiveStage(drill, seed);
@@ -34,7 +41,6 @@ class LiveStageTest extends StageContract {
 
     @Test
     void close_afterAPlay_leavesNoSocketAndNoThread() throws CannotPlay, IOException {
-        play(drill("", "rate: 50/s", "500ms", "")); // whatever stays for the life of the process is there from now on
         long socketsBefore = sockets();
         play(drill("", "rate: 200/s", "1s", "  - {at: 300ms, kill: fulmar}"));
         // Netty's own executor for shutdown and the like goes to rest after a second.

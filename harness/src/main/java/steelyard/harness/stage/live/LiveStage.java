@@ -48,7 +48,6 @@ public final class LiveStage implements Stage {
     private final Drill drill;
     private final Cast cast;
     private final long seed;
-    private final boolean dry;
     private final PlayClock clock = new PlayClock();
     private final Transport transport = Transport.best();
     private final Fleet fleet = new EmbeddedFleet();
@@ -62,18 +61,9 @@ public final class LiveStage implements Stage {
 
     /** @param seed of every draw of balancer and backends; the agenda should be of the same */
     public LiveStage(Drill drill, long seed) {
-        this(drill, seed, false);
-    }
-
-    private LiveStage(Drill drill, long seed, boolean dry) {
-        this.dry = dry;
         this.drill = drill;
         this.cast = new Cast(drill);
         this.seed = seed;
-    }
-
-    static LiveStage forDryRun(Drill drill) {
-        return new LiveStage(drill, 0, true);
     }
 
     @Override
@@ -82,9 +72,6 @@ public final class LiveStage implements Stage {
             throw new IllegalStateException("a stage is opened once");
         }
         refuseTooMuch();
-        if (!dry) {
-            DryRun.once();
-        }
         Account told = new Account(listener, clock::playNow, this::failed);
         account = told;
         decisions = new BalancerAccount(told, clock);
