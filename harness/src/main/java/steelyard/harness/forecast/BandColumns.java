@@ -31,15 +31,16 @@ final class BandColumns {
     private static final int ENTITLED = 3;
     private static final int UTILISATION = 4;
     private static final int WAITING = 5;
-    static final List<String> OF_GROUP =
-            List.of("picked", "in-flight", "weight", "entitled", "utilisation", "waiting");
+    static final List<String> OF_GROUP = List.of("picked", "in-flight", "weight", "entitled", "utilisation", "waiting");
 
     private final List<Group> groups;
     private final int[] workers;
 
     BandColumns(Cast cast) {
         groups = Group.of(cast);
-        workers = cast.backends().stream().mapToInt(each -> each.serves().workers()).toArray();
+        workers = cast.backends().stream()
+                .mapToInt(each -> each.serves().workers())
+                .toArray();
     }
 
     List<Group> groups() {

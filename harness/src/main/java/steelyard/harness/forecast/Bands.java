@@ -154,7 +154,8 @@ public final class Bands {
     }
 
     /** The standing that most plays (and, in a group, most members) had at the end of a slice; null without a play. */
-    @Nullable Standing standing(int group, int slice) {
+    @Nullable
+    Standing standing(int group, int slice) {
         Standing common = null;
         long most = 0;
         for (Standing each : Standing.values()) {

@@ -15,7 +15,10 @@ import steelyard.harness.record.Wording;
  * @param bound null in the standard set
  */
 public record Figure(
-        Measure measure, @Nullable String of, String text, @Nullable Bound bound) {
+        Measure measure,
+        @Nullable String of,
+        String text,
+        @Nullable Bound bound) {
 
     static Figure of(Finding finding) {
         return new Figure(finding.measure(), finding.of(), finding.text(), finding.bound());

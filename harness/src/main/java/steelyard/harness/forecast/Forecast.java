@@ -91,7 +91,8 @@ public record Forecast(
         if (expectations.isEmpty()) {
             return "Met: nothing was expected.";
         }
-        List<Foreseen> missed = expectations.stream().filter(each -> !each.met()).toList();
+        List<Foreseen> missed =
+                expectations.stream().filter(each -> !each.met()).toList();
         Foreseen decided = (missed.isEmpty() ? expectations : missed)
                 .stream()
                         .min(Comparator.comparingDouble(Forecast::share).thenComparingDouble(Foreseen::slack))

@@ -51,7 +51,8 @@ public record Gaps(int plays, List<Reason> reasons) {
     }
 
     /** All of them in words, or null when there are none. */
-    @Nullable String text() {
+    @Nullable
+    String text() {
         if (reasons.isEmpty()) {
             return null;
         }

@@ -18,19 +18,28 @@ import steelyard.harness.record.Verdict;
 public final class Play {
     private final int number;
     private final long seed;
+    private final List<Figure> figures;
     private final double[] values;
     private final Map<Integer, Gap> gaps;
     private final List<SelfCheck> checks;
 
-    private Play(int number, long seed, double[] values, Map<Integer, Gap> gaps, List<SelfCheck> checks) {
+    private Play(
+            int number,
+            long seed,
+            List<Figure> figures,
+            double[] values,
+            Map<Integer, Gap> gaps,
+            List<SelfCheck> checks) {
         this.number = number;
         this.seed = seed;
+        this.figures = figures;
         this.values = values;
         this.gaps = Map.copyOf(gaps);
         this.checks = List.copyOf(checks);
     }
 
-    static Play of(int number, long seed, Verdict verdict) {
+    /** @param figures those of the verdict's findings; one list for all plays of a series */
+    static Play of(int number, long seed, List<Figure> figures, Verdict verdict) {
         List<Finding> findings = findings(verdict);
         double[] values = new double[findings.size()];
         Map<Integer, Gap> gaps = new HashMap<>();
@@ -41,7 +50,7 @@ public final class Play {
                 gaps.put(figure, new Gap(finding.measured(), finding.note()));
             }
         }
-        return new Play(number, seed, values, gaps, verdict.checks());
+        return new Play(number, seed, figures, values, gaps, verdict.checks());
     }
 
     /** The findings of a verdict in the order of the figures: expectations, then the standard set. */
@@ -58,6 +67,11 @@ public final class Play {
 
     public long seed() {
         return seed;
+    }
+
+    /** What its values are values of. */
+    public List<Figure> figures() {
+        return figures;
     }
 
     /** The value of a figure, or NaN. */

@@ -34,9 +34,8 @@ public record Played(Series series, List<Figure> figures, int expectations, List
     /** In how many plays a figure held its bound; there must be a play. */
     public Held held(int figure) {
         Figure asked = figures.get(figure);
-        long held = plays.stream()
-                .filter(play -> asked.holds(play.value(figure)))
-                .count();
+        long held =
+                plays.stream().filter(play -> asked.holds(play.value(figure))).count();
         return Held.of((int) held, plays.size());
     }
 

@@ -69,7 +69,7 @@ public final class Plays implements AutoCloseable {
     }
 
     /** The same; the bands, which must be of the same series, are given the slices of the plays too. */
-    Played play(Series series, Bands bands, Consumer<Play> each) throws CannotPlay {
+    public Played play(Series series, Bands bands, Consumer<Play> each) throws CannotPlay {
         return new Round(series, bands, each).play();
     }
 
@@ -137,7 +137,7 @@ public final class Plays implements AutoCloseable {
             if (bands != null && done.slices != null) {
                 bands.add(done.slices);
             }
-            Play play = Play.of(done.number, series.seedOf(done.number), done.verdict);
+            Play play = Play.of(done.number, series.seedOf(done.number), figures, done.verdict);
             each.accept(play);
             return play;
         }
@@ -176,5 +176,6 @@ public final class Plays implements AutoCloseable {
         throw new IllegalStateException("a play broke off: " + cause, cause);
     }
 
-    private record Done(int number, Verdict verdict, @Nullable PlaySlices slices) {}
+    private record Done(
+            int number, Verdict verdict, @Nullable PlaySlices slices) {}
 }

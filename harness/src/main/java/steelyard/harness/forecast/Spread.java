@@ -38,7 +38,8 @@ public record Spread(
 
     /** The spread of values; NaN stands for a play without one. */
     public static Spread of(double[] values) {
-        double[] known = Arrays.stream(values).filter(each -> !Double.isNaN(each)).toArray();
+        double[] known =
+                Arrays.stream(values).filter(each -> !Double.isNaN(each)).toArray();
         int undefined = values.length - known.length;
         if (known.length == 0) {
             double none = Double.NaN;

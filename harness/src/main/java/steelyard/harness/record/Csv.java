@@ -4,11 +4,11 @@ import java.util.ArrayList;
 import java.util.List;
 
 /** Rows of comma-separated values as RFC 4180 has them; a field of this project never holds a line break. */
-final class Csv {
+public final class Csv {
     private Csv() {}
 
     /** Adds a field, quoted where it has to be. */
-    static StringBuilder field(StringBuilder out, String text) {
+    public static StringBuilder field(StringBuilder out, String text) {
         String flat = text.replace('\r', ' ').replace('\n', ' ');
         if (flat.indexOf(',') < 0 && flat.indexOf('"') < 0) {
             return out.append(flat);
@@ -17,7 +17,7 @@ final class Csv {
     }
 
     /** The fields of one row. */
-    static List<String> fields(String row) {
+    public static List<String> fields(String row) {
         List<String> fields = new ArrayList<>();
         StringBuilder field = new StringBuilder();
         boolean quoted = false;

@@ -1,20 +1,30 @@
 package steelyard.harness.record;
 
 import java.io.StringWriter;
+import java.util.ArrayList;
+import java.util.List;
 import javax.xml.stream.XMLOutputFactory;
 import javax.xml.stream.XMLStreamException;
 import javax.xml.stream.XMLStreamWriter;
 
 /** {@code junit.xml}: one case an expectation, and one for the play's fitness; no time stamps. */
-final class JunitXml {
+public final class JunitXml {
     private JunitXml() {}
 
-    static String text(String drill, Verdict verdict) {
+    /**
+     * A case of the suite.
+     *
+     * @param failure what to say when it is not ok
+     */
+    public record Case(String name, boolean ok, String failure) {}
+
+    /** The file's text. */
+    public static String text(String drill, List<Case> cases) {
         StringWriter text = new StringWriter();
         try {
             XMLStreamWriter xml = XMLOutputFactory.newFactory().createXMLStreamWriter(text);
             xml.writeStartDocument("UTF-8", "1.0");
-            suite(xml, clean(drill), verdict);
+            suite(xml, clean(drill), cases);
             xml.writeEndDocument();
             xml.close();
         } catch (XMLStreamException e) {
@@ -23,43 +33,53 @@ final class JunitXml {
         return text.append('\n').toString();
     }
 
-    private static void suite(XMLStreamWriter xml, String drill, Verdict verdict) throws XMLStreamException {
-        long missed =
-                verdict.expectations().stream().filter(each -> !each.met()).count();
+    static String text(String drill, Verdict verdict) {
+        List<Case> cases = new ArrayList<>();
+        for (Finding finding : verdict.expectations()) {
+            String note = finding.note() == null ? "" : " (" + finding.note() + ")";
+            String failure = "bound " + finding.boundText() + ", measured " + finding.measured() + note;
+            cases.add(new Case(finding.text() + ": " + finding.boundText(), finding.met(), failure));
+        }
+        cases.add(fitness(verdict.fit(), verdict.checks()));
+        return text(drill, cases);
+    }
+
+    /** The case that says whether it is fit to judge. */
+    public static Case fitness(boolean fit, List<SelfCheck> checks) {
+        return new Case("fit to judge", fit, unfit(checks));
+    }
+
+    private static void suite(XMLStreamWriter xml, String drill, List<Case> cases) throws XMLStreamException {
+        long failures = cases.stream().filter(each -> !each.ok()).count();
         xml.writeCharacters("\n");
         xml.writeStartElement("testsuite");
         xml.writeAttribute("name", drill);
-        xml.writeAttribute("tests", String.valueOf(verdict.expectations().size() + 1));
-        xml.writeAttribute("failures", String.valueOf(missed + (verdict.fit() ? 0 : 1)));
+        xml.writeAttribute("tests", String.valueOf(cases.size()));
+        xml.writeAttribute("failures", String.valueOf(failures));
         xml.writeAttribute("errors", "0");
         xml.writeAttribute("skipped", "0");
-        for (Finding finding : verdict.expectations()) {
-            String name = finding.text() + ": " + finding.boundText();
-            String note = finding.note() == null ? "" : " (" + finding.note() + ")";
-            String failure = "bound " + finding.boundText() + ", measured " + finding.measured() + note;
-            testcase(xml, drill, name, finding.met(), failure);
+        for (Case each : cases) {
+            testcase(xml, drill, each);
         }
-        testcase(xml, drill, "fit to judge", verdict.fit(), unfit(verdict));
         xml.writeCharacters("\n");
         xml.writeEndElement();
     }
 
-    private static void testcase(XMLStreamWriter xml, String drill, String name, boolean ok, String failure)
-            throws XMLStreamException {
+    private static void testcase(XMLStreamWriter xml, String drill, Case each) throws XMLStreamException {
         xml.writeCharacters("\n  ");
         xml.writeStartElement("testcase");
         xml.writeAttribute("classname", "steelyard." + drill);
-        xml.writeAttribute("name", clean(name));
-        if (!ok) {
+        xml.writeAttribute("name", clean(each.name()));
+        if (!each.ok()) {
             xml.writeEmptyElement("failure");
-            xml.writeAttribute("message", clean(failure));
+            xml.writeAttribute("message", clean(each.failure()));
         }
         xml.writeEndElement();
     }
 
-    private static String unfit(Verdict verdict) {
+    private static String unfit(List<SelfCheck> checks) {
         StringBuilder text = new StringBuilder();
-        for (SelfCheck check : verdict.checks()) {
+        for (SelfCheck check : checks) {
             if (!check.ok()) {
                 text.append(text.length() == 0 ? "" : "; ")
                         .append(check.check())

@@ -1,9 +1,5 @@
 package steelyard.harness.record;
 
-import java.nio.charset.StandardCharsets;
-import java.nio.file.Files;
-import java.nio.file.Path;
-import java.nio.file.StandardCopyOption;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.standing.Transition;
 import steelyard.drills.model.Cause;
@@ -135,13 +131,7 @@ public final class Recorder implements PlayListener {
         cues.flush();
     }
 
-    /** Writes a whole file beside the old one and puts it in its place, so that a kill leaves the one or the other. */
     private void replace(String name, String text) {
-        Path file = folder.file(name);
-        Path fresh = folder.file(name + ".part");
-        trouble.guard(file, () -> {
-            Files.write(fresh, text.getBytes(StandardCharsets.UTF_8));
-            Files.move(fresh, file, StandardCopyOption.REPLACE_EXISTING, StandardCopyOption.ATOMIC_MOVE);
-        });
+        trouble.guard(folder.file(name), () -> folder.replace(name, text));
     }
 }

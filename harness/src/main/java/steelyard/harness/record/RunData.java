@@ -11,6 +11,8 @@ import org.jspecify.annotations.Nullable;
  *
  * @param drill title of the drill
  * @param ended {@code complete}, {@code interrupted}, or {@code playing} for a play that was killed
+ * @param standings of a forecast: changes over plays, each at the median of its instants
+ * @param forecast what only a forecast has; null for a rehearsal
  * @param machine what {@code machine.json} says, in its order; empty when it is not there
  */
 public record RunData(
@@ -33,7 +35,8 @@ public record RunData(
         Map<String, String> machine,
         Slices slices,
         List<StandingRow> standings,
-        List<CueRow> cues) {
+        List<CueRow> cues,
+        @Nullable ForecastRow forecast) {
 
     /** The columns of {@code slices.csv} that each backend has, behind its name and a colon. */
     public static final List<String> BACKEND_COLUMNS =
@@ -66,6 +69,8 @@ public record RunData(
      * @param value NaN where it has none
      * @param least NaN without a lower bound
      * @param most NaN without an upper bound
+     * @param held of a forecast: in how many plays the bound held; null without a bound
+     * @param spread of a forecast: where the value, which is then the median, lies over plays
      */
     public record FindingRow(
             String measure,
@@ -79,7 +84,9 @@ public record RunData(
             String unit,
             @Nullable String margin,
             boolean met,
-            @Nullable String why) {
+            @Nullable String why,
+            @Nullable HeldRow held,
+            @Nullable SpreadRow spread) {
 
         static FindingRow of(JsonNode node) {
             return new FindingRow(
@@ -94,11 +101,66 @@ public record RunData(
                     node.path("unit").asText(),
                     text(node, "margin"),
                     node.path("met").asBoolean(true),
-                    text(node, "why"));
+                    text(node, "why"),
+                    HeldRow.of(node.path("held")),
+                    SpreadRow.of(node.path("spread")));
         }
 
         private static @Nullable String text(JsonNode node, String key) {
             return node.path(key).isTextual() ? node.path(key).asText() : null;
+        }
+    }
+
+    /**
+     * What a forecast is of.
+     *
+     * @param plays that were played
+     * @param wanted that were asked for
+     * @param hold the share of plays in which an expectation must hold
+     * @param quantiles how quantiles over plays are taken, in words
+     * @param interval how the interval of a share of plays is taken, in words
+     * @param bandPlays the plays that slices and changes of standing are of: the first so many
+     * @param rows what stands in the columns of slices, in order: a backend, or a group of backends of a pool
+     */
+    public record ForecastRow(
+            int plays,
+            int wanted,
+            double hold,
+            String quantiles,
+            String interval,
+            int bandPlays,
+            List<GroupRow> rows) {}
+
+    /** What stands in the columns of a forecast's slices. */
+    public record GroupRow(String name, String pool, int backends) {}
+
+    /** In how many plays a bound held, with the interval of the share, from 0 to 1. */
+    public record HeldRow(int plays, double share, double low, double high) {
+        static @Nullable HeldRow of(JsonNode node) {
+            return node.isObject()
+                    ? new HeldRow(
+                            node.path("plays").asInt(),
+                            node.path("share").asDouble(),
+                            node.path("low").asDouble(),
+                            node.path("high").asDouble())
+                    : null;
+        }
+    }
+
+    /** Where a figure lies over plays: 5 and 95 %, 2.5 and 97.5 % quantiles, ends. NaN where no play has a value. */
+    public record SpreadRow(
+            int undefined, double low90, double high90, double low95, double high95, double least, double most) {
+        static @Nullable SpreadRow of(JsonNode node) {
+            return node.isObject()
+                    ? new SpreadRow(
+                            node.path("undefined").asInt(),
+                            node.path("low90").asDouble(Double.NaN),
+                            node.path("high90").asDouble(Double.NaN),
+                            node.path("low95").asDouble(Double.NaN),
+                            node.path("high95").asDouble(Double.NaN),
+                            node.path("least").asDouble(Double.NaN),
+                            node.path("most").asDouble(Double.NaN))
+                    : null;
         }
     }
 

@@ -1,9 +1,11 @@
 package steelyard.harness.record;
 
 import java.io.IOException;
+import java.nio.charset.StandardCharsets;
 import java.nio.file.DirectoryStream;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.nio.file.StandardCopyOption;
 
 /** The folder that a play leaves behind, and the names of its files. */
 public final class RunFolder {
@@ -15,6 +17,9 @@ public final class RunFolder {
     public static final String MACHINE = "machine.json";
     public static final String VERDICT = "verdict.json";
     public static final String JUNIT = "junit.xml";
+    /** Of a forecast alone: a row for each play. */
+    public static final String PLAYS = "plays.csv";
+
     public static final String REPORT = "report.html";
 
     private final Path path;
@@ -63,6 +68,17 @@ public final class RunFolder {
     /** The path of one of its files. */
     public Path file(String name) {
         return path.resolve(name);
+    }
+
+    /**
+     * Writes a whole file beside the old one and puts it in its place, so that a kill leaves the one or the other.
+     *
+     * @param name one of the folder's files
+     */
+    public void replace(String name, String text) throws IOException {
+        Path fresh = file(name + ".part");
+        Files.write(fresh, text.getBytes(StandardCharsets.UTF_8));
+        Files.move(fresh, file(name), StandardCopyOption.REPLACE_EXISTING, StandardCopyOption.ATOMIC_MOVE);
     }
 
     private static boolean empty(Path path) throws FolderRefused {

@@ -14,7 +14,7 @@ import steelyard.drills.model.Measure.Unit;
 import steelyard.drills.model.Pool;
 
 /** The JSON files of a run as text: keys in a fixed order, no wall time outside {@code machine.json}. */
-final class RunJson {
+public final class RunJson {
     static final int FORMAT = 1;
 
     private static final ObjectMapper JSON = new ObjectMapper();
@@ -24,6 +24,21 @@ final class RunJson {
 
     /** {@code run.json}; without a verdict while the play goes on. */
     static String run(RunHead head, Cast cast, String ended, @Nullable Verdict verdict) {
+        ObjectNode run = head(head, cast, ended);
+        if (verdict == null) {
+            run.putNull("verdict");
+        } else {
+            putVerdict(run, verdict.met(), verdict.fit(), verdict.text());
+        }
+        putFindings(run.putArray("expectations"), verdict == null ? List.of() : verdict.expectations());
+        putFindings(run.putArray("measures"), verdict == null ? List.of() : verdict.measures());
+        putChecks(run, verdict == null ? List.of() : verdict.checks());
+        run.put("source", head.source());
+        return text(run);
+    }
+
+    /** The first part of {@code run.json}, up to the cast. */
+    public static ObjectNode head(RunHead head, Cast cast, String ended) {
         ObjectNode run = JSON.createObjectNode();
         run.put("format", FORMAT);
         run.put("drill", head.drill().name());
@@ -35,22 +50,20 @@ final class RunJson {
         run.put("ended", ended);
         run.putObject("versions").put("steelyard", head.version());
         putCast(run.putObject("cast"), cast);
-        if (verdict == null) {
-            run.putNull("verdict");
-        } else {
-            run.putObject("verdict")
-                    .put("met", verdict.met())
-                    .put("fit", verdict.fit())
-                    .put("text", verdict.text());
+        return run;
+    }
+
+    /** Adds {@code verdict}. */
+    public static void putVerdict(ObjectNode run, boolean met, boolean fit, String text) {
+        run.putObject("verdict").put("met", met).put("fit", fit).put("text", text);
+    }
+
+    /** Adds {@code checks}. */
+    public static void putChecks(ObjectNode run, List<SelfCheck> checks) {
+        ArrayNode array = run.putArray("checks");
+        for (SelfCheck check : checks) {
+            array.addObject().put("check", check.check()).put("ok", check.ok()).put("text", check.text());
         }
-        putFindings(run.putArray("expectations"), verdict == null ? List.of() : verdict.expectations());
-        putFindings(run.putArray("measures"), verdict == null ? List.of() : verdict.measures());
-        ArrayNode checks = run.putArray("checks");
-        for (SelfCheck check : verdict == null ? List.<SelfCheck>of() : verdict.checks()) {
-            checks.addObject().put("check", check.check()).put("ok", check.ok()).put("text", check.text());
-        }
-        run.put("source", head.source());
-        return text(run);
     }
 
     /** {@code verdict.json}. */
@@ -74,7 +87,7 @@ final class RunJson {
     }
 
     /** {@code machine.json}. */
-    static String machine(Machine machine) {
+    public static String machine(Machine machine) {
         return text(JSON.createObjectNode()
                 .put("started", machine.started())
                 .put("processors", machine.processors())
@@ -139,8 +152,8 @@ final class RunJson {
         }
     }
 
-    /** Durations in seconds, everything else as it is; null where there is no finite value. */
-    private static void putValue(ObjectNode node, String key, Unit unit, double value) {
+    /** Adds a value: durations in seconds, everything else as it is; null where there is no finite value. */
+    public static void putValue(ObjectNode node, String key, Unit unit, double value) {
         if (Double.isNaN(value) || Double.isInfinite(value)) {
             node.putNull(key);
         } else {
@@ -148,7 +161,8 @@ final class RunJson {
         }
     }
 
-    private static String text(ObjectNode node) {
+    /** A file's text: indented, with a line feed at its end. */
+    public static String text(ObjectNode node) {
         try {
             return PRETTY.writeValueAsString(node) + "\n";
         } catch (JsonProcessingException e) {

@@ -11,9 +11,12 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.function.Function;
+import org.jspecify.annotations.Nullable;
 import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.record.RunData.CueRow;
 import steelyard.harness.record.RunData.FindingRow;
+import steelyard.harness.record.RunData.ForecastRow;
+import steelyard.harness.record.RunData.GroupRow;
 import steelyard.harness.record.RunData.HostRow;
 import steelyard.harness.record.RunData.PoolRow;
 import steelyard.harness.record.RunData.StandingRow;
@@ -62,8 +65,27 @@ final class RunReader {
                 run.path("source").asText(),
                 machine(),
                 slices(),
-                rows(RunFolder.STANDING, 6).stream().map(RunReader::standing).toList(),
-                rows(RunFolder.CUES, 5).stream().map(RunReader::cue).toList());
+                rows(RunFolder.STANDING).stream().map(RunReader::standing).toList(),
+                rows(RunFolder.CUES).stream().map(RunReader::cue).toList(),
+                forecast(run.path("forecast")));
+    }
+
+    private static @Nullable ForecastRow forecast(JsonNode node) {
+        return node.isObject()
+                ? new ForecastRow(
+                        node.path("plays").asInt(),
+                        node.path("wanted").asInt(),
+                        node.path("hold").asDouble(),
+                        node.path("quantiles").asText(),
+                        node.path("interval").asText(),
+                        node.path("bandPlays").asInt(),
+                        list(
+                                node.path("rows"),
+                                row -> new GroupRow(
+                                        row.path("name").asText(),
+                                        row.path("pool").asText(),
+                                        row.path("backends").asInt())))
+                : null;
     }
 
     private static HostRow host(JsonNode node) {
@@ -128,9 +150,8 @@ final class RunReader {
     }
 
     private Slices slices() throws FolderRefused {
-        List<String> lines = lines(RunFolder.SLICES);
-        List<String> head = lines.isEmpty() ? List.of() : Csv.fields(lines.get(0));
-        List<List<String>> rows = rows(RunFolder.SLICES, head.size());
+        List<String> head = head(lines(RunFolder.SLICES));
+        List<List<String>> rows = rows(RunFolder.SLICES);
         Map<String, double[]> numbers = new LinkedHashMap<>();
         Map<String, String[]> words = new LinkedHashMap<>();
         for (int column = 0; column < head.size(); column++) {
@@ -152,8 +173,9 @@ final class RunReader {
     }
 
     /** The rows behind the head that have all their fields and their line end. */
-    private List<List<String>> rows(String name, int fields) throws FolderRefused {
+    private List<List<String>> rows(String name) throws FolderRefused {
         List<String> lines = lines(name);
+        int fields = head(lines).size();
         List<List<String>> rows = new ArrayList<>();
         for (String line : lines.subList(Math.min(1, lines.size()), lines.size())) {
             List<String> row = Csv.fields(line);
@@ -162,6 +184,10 @@ final class RunReader {
             }
         }
         return rows;
+    }
+
+    private static List<String> head(List<String> lines) {
+        return lines.isEmpty() ? List.of() : Csv.fields(lines.get(0));
     }
 
     private List<String> lines(String name) throws FolderRefused {

@@ -135,6 +135,8 @@ class RecorderTest {
                                 "share",
                                 "missed by 66.4 %",
                                 false,
+                                null,
+                                null,
                                 null),
                         new FindingRow(
                                 "detected-in",
@@ -148,7 +150,9 @@ class RecorderTest {
                                 "duration",
                                 null,
                                 false,
-                                "fulmar never stopped being picked from <before> its next cue"));
+                                "fulmar never stopped being picked from <before> its next cue",
+                                null,
+                                null));
         assertThat(run.measures()).hasSize(1);
         assertThat(run.checks()).containsExactly(new SelfCheck("connection cap", true, "never hit"));
         assertThat(run.machine()).containsEntry("transport", "epoll").doesNotContainKey("engine");
