@@ -37,8 +37,9 @@ class ModuleRulesTest {
                     "steelyard.harness.stage",
                     "steelyard.harness.conduct",
                     "steelyard.harness.judge",
-                    "steelyard.harness.report",
                     "steelyard.harness.stage.virtual..",
+                    "steelyard.harness.forecast",
+                    "steelyard.harness.report",
                     "steelyard.harness.stage.live..",
                     "steelyard.harness.console",
                     "steelyard.harness.cli"));
