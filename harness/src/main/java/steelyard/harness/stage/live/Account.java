@@ -50,6 +50,7 @@ final class Account {
     private final Thread teller = new Thread(this::run, "account");
     private volatile boolean finishing;
     private volatile long late;
+    private volatile long toldUpToNanos = Long.MAX_VALUE;
     private volatile @Nullable RuntimeException failure;
     private long latestNanos = Long.MIN_VALUE;
 
@@ -69,6 +70,14 @@ final class Account {
     /** Tells something. Entries of one source and one instant keep the order of these calls. Any thread. */
     void tell(Source source, long atNanos, Telling telling) {
         told.add(new Entry(atNanos, source, order.getAndIncrement(), telling));
+    }
+
+    /**
+     * Nothing after {@code nanos} is passed on before this is called again: the generator, which tells of requests by
+     * their due time, has told of all that were due up to then, but may be behind with the rest.
+     */
+    void holdAfter(long nanos) {
+        toldUpToNanos = nanos;
     }
 
     /** Entries that came too late for their place, so far. */
@@ -108,7 +117,7 @@ final class Account {
         int round = 0;
         while (!finishing) {
             LockSupport.parkNanos(ROUND_NANOS);
-            pass(readings[round]);
+            pass(Math.min(readings[round], toldUpToNanos));
             readings[round] = playNow.getAsLong();
             round = (round + 1) % HELD_ROUNDS;
         }

@@ -206,6 +206,14 @@ public final class LiveStage implements Stage {
         LockSupport.parkNanos(SETTLING_STEP_NANOS);
     }
 
+    /**
+     * How many entries of the account came too late for their place and were told with the time of their predecessor;
+     * none, unless a thread was held up for a quarter of a second all by itself. After {@link #play}.
+     */
+    public long toldLate() {
+        return opened(account).late();
+    }
+
     /** The listener failed: there is no use in going on. */
     private void failed(RuntimeException failure) {
         Play playing = play;

@@ -59,6 +59,7 @@ final class Play implements Hands {
 
     /** Starts the turns. The result says whether the play was complete; it fails when the play cannot go on. Any thread. */
     CompletableFuture<Boolean> start() {
+        account.holdAfter(-1);
         loop.execute(this::turn);
         return over;
     }
@@ -83,6 +84,7 @@ final class Play implements Hands {
             if (!ending(now)) {
                 agenda.poll(now, this, MOST_A_TURN);
             }
+            account.holdAfter(toldUpTo(now));
             if (generator.open() == 0 && (interrupted || !agenda.hasNext())) {
                 over.complete(!interrupted);
             } else {
@@ -91,6 +93,13 @@ final class Play implements Hands {
         } catch (RuntimeException failure) {
             fail(failure);
         }
+    }
+
+    private long toldUpTo(long now) {
+        if (interrupted || !agenda.hasNext()) {
+            return Long.MAX_VALUE;
+        }
+        return Math.min(now, agenda.nextNanos() - 1);
     }
 
     private boolean ending(long now) {

@@ -79,6 +79,23 @@ class AccountTest {
     }
 
     @Test
+    void entries_afterTheHold_waitForTheGenerator() throws InterruptedException {
+        account.holdAfter(500);
+        account.start();
+        now.set(1_000);
+        nobody(1, 600);
+        account.tell(Account.Source.TRAFFIC, 500, PlayListener::connectionCapHit);
+        while (threads.isEmpty()) {
+            Thread.sleep(5);
+        }
+        account.tell(Account.Source.TRAFFIC, 550, PlayListener::connectionCapHit);
+        account.holdAfter(1_000);
+        account.finish(true);
+        assertThat(heard).containsExactly("cap at 500", "cap at 550", "nobody for 1 at 600", "ended true at 1000");
+        assertThat(account.late()).isZero();
+    }
+
+    @Test
     void listener_thatFails_hearsNoMoreAndIsReported() {
         account.tell(Account.Source.TRAFFIC, 1, (to, at) -> to.requestSent(at, 0, 0));
         nobody(1, 2);
