@@ -81,7 +81,7 @@ final class Play implements Hands {
         try {
             long now = clock.playNow();
             generator.giveUp(now);
-            if (!ending(now)) {
+            if (!ending(now) && agenda.hasNext() && agenda.nextNanos() <= now) {
                 agenda.poll(now, this, MOST_A_TURN);
             }
             account.holdAfter(toldUpTo(now));
