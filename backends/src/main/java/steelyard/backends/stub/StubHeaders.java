@@ -9,7 +9,7 @@ public final class StubHeaders {
      */
     public static final String REQUEST = "Steelyard-Request";
 
-    /** Number of the attempt at this request, a decimal number; the first try is 0. */
+    /** Number of the attempt at this request, a decimal number of 0 or above; the balancer counts from 1. */
     public static final String ATTEMPT = "Steelyard-Attempt";
 
     private StubHeaders() {}
