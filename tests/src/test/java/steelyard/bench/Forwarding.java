@@ -8,6 +8,7 @@ import java.util.Locale;
 import java.util.Map;
 import java.util.Set;
 import java.util.function.ToDoubleFunction;
+import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.live.Balancer;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
@@ -104,7 +105,7 @@ public final class Forwarding {
                 number -> 0,
                 System::nanoTime,
                 number -> 0.0,
-                new DeafSink());
+                new DecisionSink() {}); // what a recorder costs is not the balancer's
         balancer.begin(System.nanoTime());
         return balancer;
     }

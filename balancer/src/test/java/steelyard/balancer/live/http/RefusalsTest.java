@@ -14,8 +14,6 @@ import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.core.decide.Orders;
-import steelyard.balancer.core.decide.Outcome;
-import steelyard.balancer.core.standing.Transition;
 import steelyard.balancer.live.Leaks;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.settings.BackendSettings;
@@ -55,25 +53,6 @@ class RefusalsTest {
         public void picked(long nowNanos, int pool, int backend, long request, int attempt, int inFlight) {
             picked++;
         }
-
-        @Override
-        public void nobody(long nowNanos, int pool, long request, int attempt) {}
-
-        @Override
-        public void ended(
-                long nowNanos, int backend, long request, int attempt, Outcome outcome, int status, int inFlight) {}
-
-        @Override
-        public void retryAsked(long nowNanos, int pool, long request, int attempt, boolean granted) {}
-
-        @Override
-        public void probed(long nowNanos, int backend, long probe, boolean passed) {}
-
-        @Override
-        public void stood(Transition transition) {}
-
-        @Override
-        public void reweighed(long nowNanos, boolean host, int number, int weight) {}
     }
 
     private static final class NoOrders implements Orders {
