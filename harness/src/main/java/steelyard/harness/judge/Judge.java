@@ -158,6 +158,7 @@ public final class Judge implements PlayListener {
 
     @Override
     public void sampled(long atNanos, Sample sample) {
+        checks.sampled(atNanos, sample);
         for (Meter each : onSamples) {
             each.sampled(atNanos, sample);
         }

@@ -8,6 +8,7 @@ import steelyard.drills.model.Cause;
 import steelyard.drills.model.Measure.Unit;
 import steelyard.harness.record.Cast;
 import steelyard.harness.record.PlayListener;
+import steelyard.harness.record.Sample;
 import steelyard.harness.record.SelfCheck;
 import steelyard.harness.record.Wording;
 
@@ -15,6 +16,7 @@ import steelyard.harness.record.Wording;
 final class SelfChecks implements PlayListener {
     private static final long LATE_NANOS = 5_000_000L;
     private static final int ONE_LATE_IN = 100;
+    private static final int NONE = -1;
 
     private final Cast cast;
     private final RequestLedger requests = new RequestLedger();
@@ -27,6 +29,9 @@ final class SelfChecks implements PlayListener {
     private long late;
     private long capHits;
     private boolean complete;
+    private int astray = NONE;
+    private long astraySpentNanos;
+    private long astrayHeldNanos;
 
     SelfChecks(Cast cast) {
         this.cast = cast;
@@ -88,6 +93,17 @@ final class SelfChecks implements PlayListener {
     }
 
     @Override
+    public void sampled(long atNanos, Sample sample) {
+        for (int backend = 0; backend < inFlight.length && astray == NONE; backend++) {
+            if (sample.spentNanos[backend] != sample.heldNanos[backend]) {
+                astray = backend;
+                astraySpentNanos = sample.spentNanos[backend];
+                astrayHeldNanos = sample.heldNanos[backend];
+            }
+        }
+    }
+
+    @Override
     public void ended(long atNanos, boolean complete) {
         this.complete = complete;
         attempts.close(atNanos);
@@ -108,7 +124,8 @@ final class SelfChecks implements PlayListener {
                 new SelfCheck("requests add up", !complete || requests.balanced(), requests.text()),
                 new SelfCheck(
                         "attempts as balancer and backends count them", attempts.agrees(complete), attempts.text()),
-                littleCheck());
+                littleCheck(),
+                backendsCheck());
     }
 
     private SelfCheck latenessCheck() {
@@ -133,6 +150,19 @@ final class SelfChecks implements PlayListener {
         }
         return new SelfCheck(
                 "time in flight", true, "in flight over time equals the attempts' times, exactly, on every backend");
+    }
+
+    /** The same law within the backends, by their own accounts, at every sample. */
+    private SelfCheck backendsCheck() {
+        return astray == NONE
+                ? new SelfCheck(
+                        "time in backends", true, "held over time equals waits and services, exactly, at every slice")
+                : new SelfCheck(
+                        "time in backends",
+                        false,
+                        cast.backends().get(astray).name() + ": held over time adds up to "
+                                + Wording.duration(astrayHeldNanos) + ", waits and services to "
+                                + Wording.duration(astraySpentNanos));
     }
 
     private void moved(long atNanos, int backend, int level) {

@@ -28,6 +28,12 @@ public final class Sample {
     /** Worker-time spent busy since the start of the play, in nanoseconds. */
     public final long[] busyNanos;
 
+    /** Time that its requests have spent waiting and in service so far, added up over requests, in nanoseconds. */
+    public final long[] spentNanos;
+
+    /** The same as the integral of the number that waits or is in service; kept apart by the backend. */
+    public final long[] heldNanos;
+
     public Sample(int backends) {
         inFlight = new int[backends];
         standing = new Standing[backends];
@@ -38,5 +44,7 @@ public final class Sample {
         waiting = new int[backends];
         inService = new int[backends];
         busyNanos = new long[backends];
+        spentNanos = new long[backends];
+        heldNanos = new long[backends];
     }
 }

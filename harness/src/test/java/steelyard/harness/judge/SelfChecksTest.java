@@ -47,7 +47,7 @@ class SelfChecksTest {
     void read_soundPlay_isFit() {
         Verdict verdict = sound().verdict(DRILL);
 
-        assertThat(verdict.checks()).allMatch(SelfCheck::ok).hasSize(6);
+        assertThat(verdict.checks()).allMatch(SelfCheck::ok).hasSize(7);
         assertThat(verdict.fit()).isTrue();
         assertThat(check(verdict, "requests add up").text()).isEqualTo("100 offered, 100 good, 0 failed, each once");
         assertThat(check(verdict, ATTEMPTS).text()).isEqualTo("100 agree");
@@ -136,6 +136,15 @@ class SelfChecksTest {
                 .at(6_100 * MS, to -> to.attemptEnded(6_100 * MS, FULMAR, 700, 1, Outcome.ANSWERED, 200, 0));
         assertOnlyFails(
                 play, "time in flight", "fulmar: in flight over time adds up to 880 ms, its attempts to 780 ms");
+    }
+
+    @Test
+    void read_backendLosesTimeOfARequest_isUnfit() {
+        Play play = sound().sample(6 * S, sample -> {
+            sample.heldNanos[FULMAR] = 3 * S;
+            sample.spentNanos[FULMAR] = 2 * S;
+        });
+        assertOnlyFails(play, "time in backends", "fulmar: held over time adds up to 3 s, waits and services to 2 s");
     }
 
     @Test

@@ -94,6 +94,8 @@ final class Sampler {
             Figures of = figures.get(backend).join();
             sample.waiting[backend] = of.waiting();
             sample.inService[backend] = of.inService();
+            sample.spentNanos[backend] = of.waitNanos() + of.serviceNanos();
+            sample.heldNanos[backend] = of.heldIntegralNanos();
             sample.busyNanos[backend] = busyNanos(backend, of, endNanos);
         }
         account.tell(Account.Source.SAMPLES, endNanos, (to, at) -> to.sampled(at, sample));

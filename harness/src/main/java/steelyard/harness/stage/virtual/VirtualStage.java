@@ -108,6 +108,8 @@ public final class VirtualStage implements Stage, Hands {
             sample.waiting[backend] = figures.waiting();
             sample.inService[backend] = figures.inService();
             sample.busyNanos[backend] = figures.busyWorkerNanos();
+            sample.spentNanos[backend] = figures.waitNanos() + figures.serviceNanos();
+            sample.heldNanos[backend] = figures.heldIntegralNanos();
         }
         stage.listener.sampled(nowNanos, sample);
         nextSliceNanos = sliceAt(nowNanos + SLICE_NANOS);
