@@ -21,12 +21,16 @@ public final class Chance {
     private static final double TWO_TO_MINUS_53 = 0x1.0p-53;
 
     private final long seed;
-    private final long root;
+    /** The hash of seed and stream, by number of the stream. */
+    private final long[] ofStream;
 
     /** Draws of one seed; every value of {@code seed} is fine. */
     public Chance(long seed) {
         this.seed = seed;
-        this.root = mix(seed);
+        this.ofStream = new long[Stream.MOST + 1];
+        for (Stream stream : Stream.values()) {
+            ofStream[stream.number()] = mix(mix(seed) + stream.number() * STEP);
+        }
     }
 
     public long seed() {
@@ -40,8 +44,7 @@ public final class Chance {
      * @param b second key, usually the attempt
      */
     public long bits(Stream stream, long a, long b) {
-        long ofStream = mix(root + stream.number() * STEP);
-        long ofFirst = mix(ofStream + a * STEP);
+        long ofFirst = mix(ofStream[stream.number()] + a * STEP);
         return mix(ofFirst + b * STEP);
     }
 

@@ -83,8 +83,12 @@ public sealed interface ServiceTime {
         }
     }
 
-    /** Lognormal, given as a person reads it off a latency chart: by its median and its 99 % quantile. */
-    record Lognormal(long medianNanos, long high99Nanos) implements ServiceTime {
+    /**
+     * Lognormal, given as a person reads it off a latency chart: by its median and its 99 % quantile.
+     *
+     * @param sigma standard deviation of the logarithm, which the other two give
+     */
+    record Lognormal(long medianNanos, long high99Nanos, double sigma) implements ServiceTime {
 
         /** The 99 % quantile of the standard normal law. */
         private static final double NORMAL_99 = 2.3263478740408408;
@@ -96,6 +100,17 @@ public sealed interface ServiceTime {
                 throw new IllegalArgumentException("lognormal needs 0 < median <= 99%, but got median " + medianNanos
                         + " ns and 99% " + high99Nanos + " ns");
             }
+            if (sigma != sigma(medianNanos, high99Nanos)) {
+                throw new IllegalArgumentException("sigma " + sigma + " is not what median and 99% give");
+            }
+        }
+
+        public Lognormal(long medianNanos, long high99Nanos) {
+            this(medianNanos, high99Nanos, sigma(medianNanos, high99Nanos));
+        }
+
+        private static double sigma(long medianNanos, long high99Nanos) {
+            return StrictMath.log((double) high99Nanos / medianNanos) / NORMAL_99;
         }
 
         @Override
@@ -103,25 +118,18 @@ public sealed interface ServiceTime {
             return Kind.LOGNORMAL;
         }
 
-        /** Standard deviation of the logarithm. */
-        public double sigma() {
-            return StrictMath.log((double) high99Nanos / medianNanos) / NORMAL_99;
-        }
-
         @Override
         public long demandNanos(Chance chance, long request, int attempt) {
-            return toNanos(medianNanos * StrictMath.exp(sigma() * chance.normal(Stream.SERVICE, request, attempt)));
+            return toNanos(medianNanos * StrictMath.exp(sigma * chance.normal(Stream.SERVICE, request, attempt)));
         }
 
         @Override
         public double meanNanos() {
-            double sigma = sigma();
             return medianNanos * StrictMath.exp(sigma * sigma / 2);
         }
 
         @Override
         public double squaredVariation() {
-            double sigma = sigma();
             return StrictMath.expm1(sigma * sigma);
         }
     }

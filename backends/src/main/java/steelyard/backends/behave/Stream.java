@@ -22,6 +22,9 @@ public enum Stream {
     /** Where in its period the first probe of a backend starts. */
     PROBE_PHASE(7);
 
+    /** No stream has a greater number. */
+    static final int MOST = 7;
+
     private final int number;
 
     Stream(int number) {

@@ -31,6 +31,9 @@ public final class Conductor implements Agenda {
 
     private int nextCue;
     private int carriedOut;
+    /** When the next of all that is planned is due, whether or not the play lasts that long. */
+    private long plannedNanos;
+
     private long polledNanos;
     private boolean over;
 
@@ -46,6 +49,7 @@ public final class Conductor implements Agenda {
         this.arrivals = new ArrivalPlan(drill.traffic(), lastsNanos, chance);
         this.actions = new CueActions(drill, arrivals);
         cues.forEach(actions::check);
+        plan();
     }
 
     /**
@@ -65,8 +69,7 @@ public final class Conductor implements Agenda {
 
     @Override
     public long nextNanos() {
-        long planned =
-                Math.min(Math.min(nextEndNanos(), nextCueNanos()), Math.min(arrivals.nextDueNanos(), lastsNanos));
+        long planned = Math.min(plannedNanos, lastsNanos);
         return byHand.isEmpty() ? planned : Math.min(planned, polledNanos);
     }
 
@@ -81,7 +84,7 @@ public final class Conductor implements Agenda {
 
     /** Does the one thing that comes next. Returns whether there was any. */
     private boolean next(long nowNanos, Hands hands) {
-        long dueNanos = Math.min(Math.min(nextEndNanos(), nextCueNanos()), arrivals.nextDueNanos());
+        long dueNanos = plannedNanos;
         if (dueNanos > nowNanos || dueNanos >= lastsNanos) {
             return handOrOver(nowNanos, hands);
         }
@@ -92,7 +95,12 @@ public final class Conductor implements Agenda {
         } else {
             send(hands);
         }
+        plan();
         return true;
+    }
+
+    private void plan() {
+        plannedNanos = Math.min(Math.min(nextEndNanos(), nextCueNanos()), arrivals.nextDueNanos());
     }
 
     private boolean handOrOver(long nowNanos, Hands hands) {
@@ -102,6 +110,7 @@ public final class Conductor implements Agenda {
             return false;
         }
         carryOut(cue, nowNanos, PlayListener.By.HAND, hands);
+        plan();
         return true;
     }
 

@@ -30,6 +30,7 @@ public final class Judge implements PlayListener {
     private final List<Meter> meters = new ArrayList<>();
     private final SelfChecks checks;
     private final WindowPicks[] windows;
+    private final WindowLatencies[] latencies;
     private final Meter[] onRequests;
     private final Meter[] onPicks;
     private final Meter[] onEnds;
@@ -49,6 +50,7 @@ public final class Judge implements PlayListener {
         expectations.forEach(each -> meters.add(maker.of(each)));
         standard.forEach(each -> meters.add(maker.of(each)));
         windows = maker.picks();
+        latencies = maker.latencies();
         onRequests = hearing(Hears.REQUESTS);
         onPicks = hearing(Hears.PICKS);
         onEnds = hearing(Hears.ATTEMPT_ENDS);
@@ -95,6 +97,9 @@ public final class Judge implements PlayListener {
     public void requestEnded(
             long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
         checks.requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
+        for (WindowLatencies each : latencies) {
+            each.ended(atNanos, dueNanos, traffic, cause);
+        }
         for (Meter each : onRequests) {
             each.requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
         }

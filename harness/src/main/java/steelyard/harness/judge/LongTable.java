@@ -10,21 +10,22 @@ import java.util.Arrays;
 abstract class LongTable {
     private static final int FIRST_CAPACITY = 1_024;
     private static final int NONE = -1;
+    /** Stands in a place without a key; no key has this value. */
+    private static final long EMPTY = Long.MIN_VALUE;
 
-    private long[] keys = new long[FIRST_CAPACITY];
-    private boolean[] used = new boolean[FIRST_CAPACITY];
+    private long[] keys = emptyKeys(FIRST_CAPACITY);
     private int size;
 
-    /** The place of a key, or -1. */
+    /** The place of a key, or -1. A key is any number but the least. */
     final int find(long key) {
         int place = home(key);
-        while (used[place]) {
-            if (keys[place] == key) {
-                return place;
+        while (keys[place] != key) {
+            if (keys[place] == EMPTY) {
+                return NONE;
             }
             place = (place + 1) & (keys.length - 1);
         }
-        return NONE;
+        return place;
     }
 
     /** A place for a key that is not there yet; its columns hold whatever they held. */
@@ -34,7 +35,6 @@ abstract class LongTable {
         }
         int place = free(key);
         keys[place] = key;
-        used[place] = true;
         size++;
         return place;
     }
@@ -43,7 +43,7 @@ abstract class LongTable {
     final void remove(int place) {
         int hole = place;
         int mask = keys.length - 1;
-        for (int next = (hole + 1) & mask; used[next]; next = (next + 1) & mask) {
+        for (int next = (hole + 1) & mask; keys[next] != EMPTY; next = (next + 1) & mask) {
             // A key may fill the hole unless its home lies behind it.
             if (((next - home(keys[next])) & mask) >= ((next - hole) & mask)) {
                 keys[hole] = keys[next];
@@ -51,7 +51,7 @@ abstract class LongTable {
                 hole = next;
             }
         }
-        used[hole] = false;
+        keys[hole] = EMPTY;
         size--;
     }
 
@@ -64,7 +64,7 @@ abstract class LongTable {
     }
 
     final boolean used(int place) {
-        return used[place];
+        return keys[place] != EMPTY;
     }
 
     final long key(int place) {
@@ -79,16 +79,13 @@ abstract class LongTable {
 
     private void grow() {
         long[] oldKeys = keys;
-        boolean[] oldUsed = used;
-        keys = new long[oldKeys.length * 2];
-        used = new boolean[keys.length];
+        keys = emptyKeys(oldKeys.length * 2);
         int[] places = new int[oldKeys.length];
         Arrays.fill(places, NONE);
         for (int old = 0; old < oldKeys.length; old++) {
-            if (oldUsed[old]) {
+            if (oldKeys[old] != EMPTY) {
                 int place = free(oldKeys[old]);
                 keys[place] = oldKeys[old];
-                used[place] = true;
                 places[old] = place;
             }
         }
@@ -97,10 +94,16 @@ abstract class LongTable {
 
     private int free(long key) {
         int place = home(key);
-        while (used[place]) {
+        while (keys[place] != EMPTY) {
             place = (place + 1) & (keys.length - 1);
         }
         return place;
+    }
+
+    private static long[] emptyKeys(int capacity) {
+        long[] keys = new long[capacity];
+        Arrays.fill(keys, EMPTY);
+        return keys;
     }
 
     private int home(long key) {

@@ -9,11 +9,12 @@ import steelyard.drills.model.Expectation;
 import steelyard.drills.model.Expectation.Options;
 import steelyard.harness.record.Cast;
 
-/** Makes the meter of an expectation; those of one window share their counts of picks. */
+/** Makes the meter of an expectation; those of one window share their counts of picks, and their latencies. */
 final class Meters {
     private final Drill drill;
     private final Cast cast;
     private final List<WindowPicks> picks = new ArrayList<>();
+    private final List<WindowLatencies> latencies = new ArrayList<>();
 
     Meters(Drill drill, Cast cast) {
         this.drill = drill;
@@ -25,6 +26,11 @@ final class Meters {
         return picks.toArray(WindowPicks[]::new);
     }
 
+    /** The latencies that meters made so far read from. */
+    WindowLatencies[] latencies() {
+        return latencies.toArray(WindowLatencies[]::new);
+    }
+
     Meter of(Expectation expectation) {
         Window window = new Window(expectation.fromNanos(), expectation.toNanos());
         Options options = expectation.options();
@@ -32,7 +38,7 @@ final class Meters {
         return switch (expectation.measure()) {
             case FAILED -> new Failed(window, traffic(expectation), options.causes(), options.worstNanos());
             case LONGEST_OUTAGE -> new LongestOutage(window, traffic(expectation), options.outageShare());
-            case LATENCY -> new Latency(window, traffic(expectation), options.quantile());
+            case LATENCY -> new Latency(latenciesOf(window, traffic(expectation)), options.quantile());
             case SHARE -> new Share(picksOf(window), members, cast);
             case FAIRNESS -> new Fairness(picksOf(window), members, cast);
             case DETECTED_IN -> new DetectedIn(after(expectation), members, cast, options.until());
@@ -74,6 +80,17 @@ final class Meters {
         }
         WindowPicks fresh = new WindowPicks(window, cast);
         picks.add(fresh);
+        return fresh;
+    }
+
+    private WindowLatencies latenciesOf(Window window, boolean[] trafficCounts) {
+        for (WindowLatencies each : latencies) {
+            if (each.isOf(window, trafficCounts)) {
+                return each;
+            }
+        }
+        WindowLatencies fresh = new WindowLatencies(window, trafficCounts);
+        latencies.add(fresh);
         return fresh;
     }
 

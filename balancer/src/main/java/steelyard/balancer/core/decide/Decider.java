@@ -44,6 +44,9 @@ public final class Decider {
     private final int[] hostWeights;
     private final HostPlaces firstPlaces;
     private final HostPlaces againPlaces;
+    /** As of the last change of each, so that finding the next costs no walk over standings. */
+    private final long[] deadlineNanos;
+
     private final Tournament deadlines;
 
     /**
@@ -63,6 +66,7 @@ public final class Decider {
         pools = new PoolDesk[settings.pools().size()];
         firstOfPool = new int[pools.length];
         setWeights = new int[pools.length][];
+        deadlineNanos = new long[standings.length];
         deadlines = new Tournament(backends.size(), this::earlier);
         int backend = 0;
         for (int pool = 0; pool < pools.length; pool++) {
@@ -113,13 +117,13 @@ public final class Decider {
 
     /** When {@link #poll} has something to do next; any other call may move it. Only while {@link #hasDeadline}. */
     public long nextDeadlineNanos() {
-        return standings[deadlines.best()].deadlineNanos();
+        return deadlineNanos[deadlines.best()];
     }
 
     /** Does everything that is due: starts and drops probes, cuts at drain limits, ends ramps. */
     public void poll(long nowNanos) {
         int backend = deadlines.best();
-        while (backend != NOBODY && nowNanos - standings[backend].deadlineNanos() >= 0) {
+        while (backend != NOBODY && nowNanos - deadlineNanos[backend] >= 0) {
             pollBackend(backend, nowNanos);
             reschedule(backend);
             backend = deadlines.best();
@@ -391,6 +395,7 @@ public final class Decider {
 
     private void reschedule(int backend) {
         if (standings[backend].hasDeadline()) {
+            deadlineNanos[backend] = standings[backend].deadlineNanos();
             deadlines.enter(backend);
         } else {
             deadlines.leave(backend);
@@ -398,6 +403,6 @@ public final class Decider {
     }
 
     private boolean earlier(int backend, int other) {
-        return standings[backend].deadlineNanos() - standings[other].deadlineNanos() < 0;
+        return deadlineNanos[backend] - deadlineNanos[other] < 0;
     }
 }

@@ -3,13 +3,20 @@ package steelyard.harness.stage.virtual;
 import java.util.List;
 import steelyard.balancer.settings.PoolSettings;
 
-/** The limits on the first byte of answers, pool by pool: from the request sent, which on a new connection is later. */
+/**
+ * The limits on the first byte of answers, pool by pool: from the request sent, which on a new connection is later. Nearly
+ * all answers come long before, so what is over at the front goes whenever something is added: what is kept reaches back
+ * no further than the oldest attempt under way.
+ */
 final class FirstBytes {
+    private final Flights flights;
     private final Lane[] onKept;
     private final Lane[] onNew;
+    private long nextNanos = Lane.NEVER;
 
     /** @param returnHopNanos from the backend's side of a new connection to the balancer's */
-    FirstBytes(List<PoolSettings> pools, long returnHopNanos) {
+    FirstBytes(Flights flights, List<PoolSettings> pools, long returnHopNanos) {
+        this.flights = flights;
         onKept = pools.stream()
                 .map(each -> new Lane(each.timeouts().firstByteNanos()))
                 .toArray(Lane[]::new);
@@ -19,29 +26,45 @@ final class FirstBytes {
     }
 
     void sentOnKept(int pool, long token, long nowNanos) {
-        onKept[pool].send(nowNanos, token, 0);
+        add(onKept[pool], token, nowNanos);
     }
 
     /** The backend has just accepted; the request goes out when the balancer knows. */
     void acceptedNew(int pool, long token, long nowNanos) {
-        onNew[pool].send(nowNanos, token, 0);
+        add(onNew[pool], token, nowNanos);
+    }
+
+    private void add(Lane lane, long token, long nowNanos) {
+        while (!lane.isEmpty() && !flights.current(lane.what())) {
+            lane.drop();
+        }
+        lane.send(nowNanos, token, 0, 0);
+        findNext();
     }
 
     long nextNanos() {
+        return nextNanos;
+    }
+
+    private void findNext() {
         long next = Lane.NEVER;
         for (int pool = 0; pool < onKept.length; pool++) {
             next = Math.min(next, Math.min(onKept[pool].nextNanos(), onNew[pool].nextNanos()));
         }
-        return next;
+        nextNanos = next;
     }
 
     /** The token of an attempt whose time is over at {@code nowNanos}, or -1 when there is none any more. */
     long expired(long nowNanos) {
+        if (nowNanos != nextNanos) {
+            return -1;
+        }
         for (int pool = 0; pool < onKept.length; pool++) {
             Lane lane = onKept[pool].nextNanos() == nowNanos ? onKept[pool] : onNew[pool];
             if (lane.nextNanos() == nowNanos) {
                 long token = lane.what();
                 lane.drop();
+                findNext();
                 return token;
             }
         }

@@ -56,7 +56,7 @@ final class Flights {
 
     /** Whether the client of a request still waits for its end. */
     boolean waits(int flight, long requestNumber) {
-        return state[flight] != State.FREE && request[flight] == requestNumber && !told[flight];
+        return request[flight] == requestNumber && !told[flight] && state[flight] != State.FREE;
     }
 
     int open() {

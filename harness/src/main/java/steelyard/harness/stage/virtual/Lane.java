@@ -4,18 +4,22 @@ import java.util.Arrays;
 
 /**
  * Messages that all take equally long: they arrive in the order in which they were sent, so a ring will do where a heap
- * would cost a logarithm. Each carries two numbers, whose meaning is the lane's.
+ * would cost a logarithm. What the numbers of a message mean is said by the lane's owner. A message lies in one stretch of
+ * memory, since all of it is read at once.
  */
 final class Lane {
     /** What {@link #nextNanos} says when the lane is empty. */
     static final long NEVER = Long.MAX_VALUE;
 
+    private static final int FIRST_CAPACITY = 64;
+    /** Numbers a message: when it arrives, what it is about, where it goes, and its tag. */
+    private static final int WIDTH = 4;
+
     private final long delayNanos;
-    private long[] at = new long[64];
-    private long[] what = new long[64];
-    private long[] where = new long[64];
+    private long[] ring = new long[FIRST_CAPACITY * WIDTH];
     private int head;
     private int size;
+    private long nextNanos = NEVER;
 
     Lane(long delayNanos) {
         this.delayNanos = delayNanos;
@@ -26,44 +30,53 @@ final class Lane {
     }
 
     /** Sends a message; {@code nowNanos} never goes back. */
-    void send(long nowNanos, long whatNumber, long whereNumber) {
-        if (size == at.length) {
+    void send(long nowNanos, long what, long where, int tag) {
+        if (size == ring.length) {
             grow();
         }
-        int tail = (head + size) & (at.length - 1);
-        at[tail] = nowNanos + delayNanos;
-        what[tail] = whatNumber;
-        where[tail] = whereNumber;
-        size++;
+        int tail = (head + size) & (ring.length - 1);
+        ring[tail] = nowNanos + delayNanos;
+        ring[tail + 1] = what;
+        ring[tail + 2] = where;
+        ring[tail + 3] = tag;
+        size += WIDTH;
+        nextNanos = ring[head];
     }
 
+    boolean isEmpty() {
+        return size == 0;
+    }
+
+    /** When the message at the head arrives. */
     long nextNanos() {
-        return size == 0 ? NEVER : at[head];
+        return nextNanos;
     }
 
     /** Of the message at the head. */
     long what() {
-        return what[head];
+        return ring[head + 1];
     }
 
     /** Of the message at the head. */
     long where() {
-        return where[head];
+        return ring[head + 2];
+    }
+
+    /** Of the message at the head. */
+    int tag() {
+        return (int) ring[head + 3];
     }
 
     void drop() {
-        head = (head + 1) & (at.length - 1);
-        size--;
+        head = (head + WIDTH) & (ring.length - 1);
+        size -= WIDTH;
+        nextNanos = size == 0 ? NEVER : ring[head];
     }
 
     private void grow() {
-        int old = at.length;
-        at = Arrays.copyOf(at, 2 * old);
-        what = Arrays.copyOf(what, 2 * old);
-        where = Arrays.copyOf(where, 2 * old);
+        int old = ring.length;
+        ring = Arrays.copyOf(ring, 2 * old);
         // What had wrapped round to the front now follows the old end.
-        System.arraycopy(at, 0, at, old, head);
-        System.arraycopy(what, 0, what, old, head);
-        System.arraycopy(where, 0, where, old, head);
+        System.arraycopy(ring, 0, ring, old, head);
     }
 }

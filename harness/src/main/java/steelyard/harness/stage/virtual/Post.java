@@ -1,13 +1,14 @@
 package steelyard.harness.stage.virtual;
 
 /**
- * The lanes of one play: every message that can be under way, by what it is and how long it takes.
+ * Every message of one play that can be under way.
  *
- * <p>A new connection costs a round trip before the request: its lanes are two hops longer. What a message carries is said
- * at its kind: most name a flight's token and a backend.
+ * <p>There is a lane for each length of the way, in hops: a new connection costs a round trip before the request. Messages
+ * of one instant come the shorter way first, and those of one lane in the order in which they were sent. What a message
+ * carries is said at its kind: most name a flight's token and a backend.
  */
 final class Post {
-    /** The ends of lanes; the order decides between messages of one instant. */
+    /** What a message is. */
     enum Kind {
         /** A request reaches the balancer, on an open connection of its client or on a new one. */
         REQUEST,
@@ -35,14 +36,27 @@ final class Post {
     }
 
     private static final Kind[] KINDS = Kind.values();
+    private static final int[] HOPS = hops();
+    private static final int MOST_HOPS = 3;
 
-    private final Lane[] lanes = new Lane[KINDS.length];
+    /** By number of hops, less one. */
+    private final Lane[] lanes = new Lane[MOST_HOPS];
+
+    private final long hopNanos;
 
     Post(Transport transport) {
-        long hop = transport.hopNanos();
-        for (Kind kind : KINDS) {
-            lanes[kind.ordinal()] = new Lane(hops(kind) * hop);
+        hopNanos = transport.hopNanos();
+        for (int hops = 1; hops <= MOST_HOPS; hops++) {
+            lanes[hops - 1] = new Lane(hops * hopNanos);
         }
+    }
+
+    private static int[] hops() {
+        int[] hops = new int[KINDS.length];
+        for (Kind kind : KINDS) {
+            hops[kind.ordinal()] = hops(kind);
+        }
+        return hops;
     }
 
     private static int hops(Kind kind) {
@@ -63,30 +77,28 @@ final class Post {
         };
     }
 
+    /** One way, from one process to the next. */
+    long hopNanos() {
+        return hopNanos;
+    }
+
     void send(Kind kind, long nowNanos, long what, long where) {
-        lanes[kind.ordinal()].send(nowNanos, what, where);
+        lanes[HOPS[kind.ordinal()] - 1].send(nowNanos, what, where, kind.ordinal());
     }
 
-    long nextNanos() {
-        long next = Lane.NEVER;
-        for (Lane lane : lanes) {
-            next = Math.min(next, lane.nextNanos());
-        }
-        return next;
-    }
-
-    /** The kind whose message comes first. */
-    Kind next() {
-        int first = 0;
+    /** The lane whose message comes first; an empty one when nothing is under way. */
+    Lane next() {
+        Lane first = lanes[0];
         for (int lane = 1; lane < lanes.length; lane++) {
-            if (lanes[lane].nextNanos() < lanes[first].nextNanos()) {
-                first = lane;
+            if (lanes[lane].nextNanos() < first.nextNanos()) {
+                first = lanes[lane];
             }
         }
-        return KINDS[first];
+        return first;
     }
 
-    Lane lane(Kind kind) {
-        return lanes[kind.ordinal()];
+    /** What the message at the head of a lane is. */
+    static Kind kind(Lane lane) {
+        return KINDS[lane.tag()];
     }
 }

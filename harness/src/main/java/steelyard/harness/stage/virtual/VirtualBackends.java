@@ -97,8 +97,11 @@ final class VirtualBackends {
 
     private void reschedule(int backend) {
         if (behaviours[backend].hasDeadline()) {
-            deadlines[backend] = behaviours[backend].nextDeadlineNanos();
-            first.enter(backend);
+            long deadline = behaviours[backend].nextDeadlineNanos();
+            if (deadline != deadlines[backend] || !first.has(backend)) {
+                deadlines[backend] = deadline;
+                first.enter(backend);
+            }
         } else if (first.has(backend)) {
             first.leave(backend);
         }

@@ -44,7 +44,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
     private final int[] poolOfTraffic;
     private final int[] poolOf;
     private final boolean[][] idempotent;
-    private final List<PoolSettings> pools;
+    private final PoolRules[] rules;
     /** Kept connections without work, by backend. */
     private final int[] idle;
 
@@ -55,7 +55,8 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         this.post = post;
         Cast cast = new Cast(drill);
         BalancerSettings settings = StageSettings.balancer(drill);
-        pools = settings.pools();
+        List<PoolSettings> pools = settings.pools();
+        rules = pools.stream().map(PoolRules::of).toArray(PoolRules[]::new);
         List<Traffic> traffic = drill.traffic();
         poolOf = new int[cast.backends().size()];
         Arrays.setAll(poolOf, cast::poolOf);
@@ -63,7 +64,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         poolOfTraffic =
                 traffic.stream().mapToInt(each -> cast.poolNumber(each.pool())).toArray();
         flights = new Flights(mostAttempts(pools));
-        firstBytes = new FirstBytes(pools, post.lane(Kind.CONNECT).delayNanos());
+        firstBytes = new FirstBytes(flights, pools, post.hopNanos());
         idempotent = traffic.stream().map(VirtualBalancer::idempotent).toArray(boolean[][]::new);
         clients = new VirtualClients(listener, post, flights, drill, idleLimitNanos(pools));
         probes = new VirtualProbes(settings, post);
@@ -127,15 +128,14 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         failed(flight, Outcome.LATE, GATEWAY_TIMEOUT, Cause.GATEWAY_TIMEOUT, true, nowNanos);
     }
 
-    /** Delivers the message that comes first. */
-    void deliver(VirtualBackends backends, long nowNanos) {
-        Kind kind = post.next();
-        Lane lane = post.lane(kind);
+    /** Delivers the message at the head of a lane. */
+    void deliver(Lane lane, VirtualBackends backends, long nowNanos) {
+        Kind kind = Post.kind(lane);
         long what = lane.what();
         long where = lane.where();
         lane.drop();
         switch (kind) {
-            case REQUEST, REQUEST_ON_NEW -> arrived(Flights.flightOf(what), nowNanos);
+            case REQUEST, REQUEST_ON_NEW -> arrived(what, nowNanos);
             case CLIENT_GONE -> clientGone((int) where, nowNanos);
             case CONNECT -> connect(backends, what, nowNanos);
             case ATTEMPT, ATTEMPT_ON_NEW -> read(backends, what, nowNanos);
@@ -156,9 +156,10 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         clients.send(request, dueNanos, stream, kind, client, nowNanos);
     }
 
-    private void arrived(int flight, long nowNanos) {
-        if (flights.told[flight]) {
-            // Its client gave up meanwhile; what it sent is on the way behind it.
+    private void arrived(long token, long nowNanos) {
+        int flight = Flights.flightOf(token);
+        if (!flights.current(token) || flights.told[flight]) {
+            // Its client gave up meanwhile, and the balancer may know it already.
             return;
         }
         if (!attempt(flight, nowNanos)) {
@@ -200,7 +201,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         int pool = poolOfTraffic[flights.traffic[flight]];
         int attempt = flights.attempt[flight] + 1;
         boolean first = attempt == 1;
-        boolean pins = first && pools.get(pool).count() == PoolSettings.Count.CONNECTIONS;
+        boolean pins = first && rules[pool].pins();
         int backend = decider.pick(
                 pool,
                 flights.request[flight],
@@ -306,10 +307,8 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
     }
 
     private boolean retriesAnswer(int flight, int status, long nowNanos) {
-        PoolSettings pool = pools.get(poolOfTraffic[flights.traffic[flight]]);
-        return pool.retry() != null
-                && pool.retry().also().contains(status)
-                && flights.attempt[flight] <= pool.retry().atMost()
+        PoolRules pool = rules[poolOfTraffic[flights.traffic[flight]]];
+        return pool.asksAbout(flights.attempt[flight], status)
                 && retries(flight, Outcome.ANSWERED, status, true, nowNanos);
     }
 
@@ -328,7 +327,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
     /** An attempt failed: another one is made, or the client told. */
     private void failed(int flight, Outcome outcome, int status, Cause cause, boolean headSent, long nowNanos) {
         end(flight, outcome, 0, nowNanos);
-        boolean asks = pools.get(poolOfTraffic[flights.traffic[flight]]).retry() != null;
+        boolean asks = rules[poolOfTraffic[flights.traffic[flight]]].retries();
         if (!asks || !retries(flight, outcome, 0, headSent, nowNanos)) {
             reply(flight, status, cause, nowNanos);
         }

@@ -20,6 +20,7 @@ final class VirtualClients {
     private final List<Traffic> traffic;
     private final Connections connections;
     private final Lane[] giveUps;
+    private long nextNanos = Lane.NEVER;
 
     VirtualClients(PlayListener listener, Post post, Flights flights, Drill drill, long idleLimitNanos) {
         this.listener = listener;
@@ -42,19 +43,35 @@ final class VirtualClients {
         int flight = flights.take(request, dueNanos, stream, kind, connection);
         Kind how = connections.fresh() ? Kind.REQUEST_ON_NEW : Kind.REQUEST;
         post.send(how, nowNanos, flights.token(flight), 0);
-        giveUps[stream].send(nowNanos, request, flight);
+        limit(giveUps[stream], request, flight, nowNanos);
+    }
+
+    /** Notes when a client gives up. Those at the front whose requests are over go, so that the rest stay few. */
+    private void limit(Lane lane, long request, int flight, long nowNanos) {
+        while (!lane.isEmpty() && !flights.waits((int) lane.where(), lane.what())) {
+            lane.drop();
+        }
+        lane.send(nowNanos, request, flight, 0);
+        findNext();
     }
 
     long nextNanos() {
+        return nextNanos;
+    }
+
+    private void findNext() {
         long next = Lane.NEVER;
         for (Lane lane : giveUps) {
             next = Math.min(next, lane.nextNanos());
         }
-        return next;
+        nextNanos = next;
     }
 
     /** Lets the clients give up whose time is over. */
     void poll(long nowNanos) {
+        if (nowNanos != nextNanos) {
+            return;
+        }
         for (Lane lane : giveUps) {
             while (lane.nextNanos() == nowNanos) {
                 long request = lane.what();
@@ -65,6 +82,7 @@ final class VirtualClients {
                 }
             }
         }
+        findNext();
     }
 
     /** Giving up closes the connection; the balancer learns of it a hop later. */

@@ -83,7 +83,8 @@ public final class VirtualStage implements Stage, Hands {
     private void step(Agenda agenda, Listening stage) {
         // A cue by hand is due at an instant that has passed: when it is found.
         long agendaNanos = agenda.hasNext() ? Math.max(nowNanos, agenda.nextNanos()) : Lane.NEVER;
-        long postNanos = stage.post.nextNanos();
+        Lane post = stage.post.next();
+        long postNanos = post.nextNanos();
         long backendNanos = stage.backends.nextNanos();
         long balancerNanos = stage.balancer.nextNanos();
         nowNanos = Math.min(
@@ -91,7 +92,7 @@ public final class VirtualStage implements Stage, Hands {
         if (agendaNanos == nowNanos) {
             agenda.poll(nowNanos, this, MOST_AT_ONCE);
         } else if (postNanos == nowNanos) {
-            stage.balancer.deliver(stage.backends, nowNanos);
+            stage.balancer.deliver(post, stage.backends, nowNanos);
         } else if (backendNanos == nowNanos) {
             stage.backends.poll(nowNanos);
         } else if (balancerNanos == nowNanos) {
