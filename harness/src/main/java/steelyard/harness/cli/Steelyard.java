@@ -28,6 +28,7 @@ import picocli.CommandLine.Spec;
         versionProvider = Versions.class,
         subcommands = {
             RehearseCommand.class,
+            ForecastCommand.class,
             CheckCommand.class,
             DrillsCommand.class,
             CompletionCommand.class,

@@ -12,13 +12,22 @@ final class ThisMachine {
     private ThisMachine() {}
 
     static Machine now() {
+        return with(Transport.best().name().toLowerCase(Locale.ROOT));
+    }
+
+    /** The same for plays in virtual time, which use no sockets. */
+    static Machine virtual() {
+        return with("none");
+    }
+
+    private static Machine with(String transport) {
         return new Machine(
                 Instant.now().truncatedTo(ChronoUnit.SECONDS).toString(),
                 Runtime.getRuntime().availableProcessors(),
                 memoryBytes(),
                 property("os.name") + " " + property("os.version") + " " + property("os.arch"),
                 property("java.vm.name") + " " + property("java.vm.version"),
-                Transport.best().name().toLowerCase(Locale.ROOT),
+                transport,
                 null);
     }
 

@@ -88,7 +88,7 @@ final class VerdictText {
     }
 
     /** Breaks a line between words; lines after the first are set in. */
-    private static List<String> wrapped(String gap, String text, int width) {
+    static List<String> wrapped(String gap, String text, int width) {
         List<String> lines = new ArrayList<>();
         String rest = gap + text;
         while (rest.length() > width) {
@@ -117,7 +117,7 @@ final class VerdictText {
         return text == null ? "" : text;
     }
 
-    private static String pad(String text, int width, boolean right) {
+    static String pad(String text, int width, boolean right) {
         String blanks = " ".repeat(Math.max(0, width - text.length()));
         return right ? blanks + text : text + blanks;
     }

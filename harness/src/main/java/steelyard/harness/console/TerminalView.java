@@ -5,7 +5,6 @@ import java.util.List;
 import java.util.concurrent.atomic.AtomicBoolean;
 import org.jline.terminal.Size;
 import org.jline.terminal.Terminal;
-import org.jline.terminal.TerminalBuilder;
 import org.jline.utils.AttributedString;
 import org.jline.utils.Display;
 import org.jline.utils.InfoCmp.Capability;
@@ -24,8 +23,6 @@ import steelyard.harness.record.PlayBoard;
 final class TerminalView implements View {
     private static final long TICK_MILLIS = 200;
     private static final int COLOURS_NEEDED = 256;
-    private static final int LEAST_WIDTH = 20;
-    private static final int LEAST_HEIGHT = 6;
 
     private final Drill drill;
     private final PlayBoard board;
@@ -50,26 +47,8 @@ final class TerminalView implements View {
 
     /** A view on the terminal behind standard output, or null where there is none, or none that can redraw. */
     static @Nullable TerminalView on(Drill drill, PlayBoard board) {
-        try {
-            // The process has handlers of its own for signals, so the terminal must not set any.
-            Terminal terminal = TerminalBuilder.builder()
-                    .system(true)
-                    .systemOutput(TerminalBuilder.SystemOutput.SysOut)
-                    .dumb(false)
-                    .nativeSignals(false)
-                    .build();
-            Size size = terminal.getSize();
-            boolean can = terminal.getStringCapability(Capability.cursor_up) != null
-                    && size.getColumns() >= LEAST_WIDTH
-                    && size.getRows() >= LEAST_HEIGHT;
-            if (can) {
-                return new TerminalView(drill, board, terminal);
-            }
-            terminal.close();
-            return null;
-        } catch (IOException | IllegalStateException none) {
-            return null;
-        }
+        Terminal terminal = Terminals.redrawing();
+        return terminal == null ? null : new TerminalView(drill, board, terminal);
     }
 
     @Override

@@ -1,6 +1,7 @@
 package steelyard.harness.forecast;
 
 import org.jspecify.annotations.Nullable;
+import steelyard.drills.model.Measure.Unit;
 import steelyard.harness.record.Wording;
 
 /**
@@ -63,10 +64,13 @@ public record Foreseen(
     }
 
     private String words(double value) {
-        return Wording.value(figure.unit(), value);
+        // Between two counts a quantile may be any part of one.
+        double shown = figure.unit() == Unit.COUNT ? StrictMath.round(value * 10) / 10.0 : value;
+        return Wording.value(figure.unit(), shown);
     }
 
-    static String percent(double share) {
+    /** A share from 0 to 1 in per cent, to one decimal, without the sign: {@code 98.5}. */
+    public static String percent(double share) {
         double shown = StrictMath.round(share * 1000) / 10.0;
         String text = Double.toString(shown);
         return text.endsWith(".0") ? text.substring(0, text.length() - 2) : text;
