@@ -164,8 +164,29 @@ public record RunData(
         }
     }
 
-    /** A change of standing. */
-    public record StandingRow(double at, String backend, String from, String to, String cause, boolean pickable) {}
+    /**
+     * A change of standing; in a forecast one that plays have in common.
+     *
+     * @param at in a forecast the median of its instants
+     * @param low their 5 % quantile; the instant itself in a rehearsal
+     * @param high their 95 % quantile
+     * @param share of the plays that had it, from 0 to 1
+     */
+    public record StandingRow(
+            double at,
+            String backend,
+            String from,
+            String to,
+            String cause,
+            boolean pickable,
+            double low,
+            double high,
+            double share) {
+        /** That of one play. */
+        public StandingRow(double at, String backend, String from, String to, String cause, boolean pickable) {
+            this(at, backend, from, to, cause, pickable, at, at, 1);
+        }
+    }
 
     /** A cue that was applied; {@code by} is {@code drill}, {@code hand} or {@code end}. */
     public record CueRow(double due, double at, String cue, String action, String by) {}

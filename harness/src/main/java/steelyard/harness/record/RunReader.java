@@ -25,6 +25,7 @@ import steelyard.harness.record.RunData.VerdictRow;
 /** Reads a run folder back. A last row that a kill cut short is left out. */
 final class RunReader {
     private static final ObjectMapper JSON = new ObjectMapper();
+    private static final int STANDING_OF_ONE = 6;
 
     private final RunFolder folder;
 
@@ -123,13 +124,20 @@ final class RunReader {
     }
 
     private static StandingRow standing(List<String> row) {
-        return new StandingRow(
-                Double.parseDouble(row.get(0)),
-                row.get(1),
-                row.get(2),
-                row.get(3),
-                row.get(4),
-                Boolean.parseBoolean(row.get(5)));
+        double at = Double.parseDouble(row.get(0));
+        boolean pickable = Boolean.parseBoolean(row.get(5));
+        return row.size() == STANDING_OF_ONE
+                ? new StandingRow(at, row.get(1), row.get(2), row.get(3), row.get(4), pickable)
+                : new StandingRow(
+                        at,
+                        row.get(1),
+                        row.get(2),
+                        row.get(3),
+                        row.get(4),
+                        pickable,
+                        Double.parseDouble(row.get(6)),
+                        Double.parseDouble(row.get(7)),
+                        Double.parseDouble(row.get(8)));
     }
 
     private static CueRow cue(List<String> row) {

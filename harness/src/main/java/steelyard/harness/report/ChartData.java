@@ -12,6 +12,7 @@ import java.math.RoundingMode;
 import java.util.List;
 import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.record.RunData.CueRow;
+import steelyard.harness.record.RunData.ForecastRow;
 import steelyard.harness.record.RunData.StandingRow;
 import steelyard.harness.report.Columns.PerBackend;
 
@@ -37,6 +38,12 @@ final class ChartData {
         data.set("cues", cues(run.run().cues()));
         data.set("requests", requests(run.columns()));
         data.set("backends", backends(run));
+        ForecastRow forecast = run.run().forecast();
+        if (forecast != null && run.columns().size() > 0) {
+            boolean grouped = forecast.rows().stream().anyMatch(row -> row.backends() > 1);
+            data.putObject("forecast").put("plays", forecast.bandPlays()).put("grouped", grouped);
+            data.set("bands", ChartBands.json(run));
+        }
         return new ObjectMapper().writeValueAsString(data).replace("<", "\\u003c");
     }
 
@@ -90,8 +97,11 @@ final class ChartData {
         return array;
     }
 
-    /** The words in turn, each with the second from which it holds. */
+    /** The words in turn, each with the second from which it holds; in a forecast those of most plays. */
     private static ArrayNode standing(RunFiles run, String backend, List<String> sampled) {
+        if (run.run().forecast() != null) {
+            return standing(run.columns().from(), sampled);
+        }
         List<StandingRow> changes = run.run().standings().stream()
                 .filter(change -> change.backend().equals(backend))
                 .toList();
@@ -105,7 +115,17 @@ final class ChartData {
         return array;
     }
 
-    private static JsonNode column(double[] values, int decimals) {
+    private static ArrayNode standing(double[] from, List<String> sampled) {
+        ArrayNode array = JSON.arrayNode();
+        for (int slice = 0; slice < from.length; slice++) {
+            if (slice == 0 || !sampled.get(slice).equals(sampled.get(slice - 1))) {
+                array.addArray().add(rounded(from[slice], 1)).add(sampled.get(slice));
+            }
+        }
+        return array;
+    }
+
+    static JsonNode column(double[] values, int decimals) {
         ArrayNode plain = JSON.arrayNode();
         ArrayNode runs = JSON.arrayNode();
         int start = 0;

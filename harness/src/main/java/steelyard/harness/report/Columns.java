@@ -30,21 +30,26 @@ record Columns(
 
     /** Throws {@link IllegalArgumentException} when a column is missing. */
     static Columns of(Slices slices, List<BackendRow> backends) {
+        return of(slices, backends, "");
+    }
+
+    /** The same of columns whose names have an ending: {@code :mean} in a forecast. */
+    static Columns of(Slices slices, List<BackendRow> backends, String ending) {
         if (slices.rows() == 0) {
             return empty(backends);
         }
         return new Columns(
                 slices.numbers("from"),
-                slices.numbers("offered"),
-                slices.numbers("ok"),
-                failures(slices),
-                slices.numbers("p50_ms"),
-                slices.numbers("p95_ms"),
-                slices.numbers("p99_ms"),
-                slices.numbers("worst_ms"),
-                slices.numbers("retries"),
+                slices.numbers("offered" + ending),
+                slices.numbers("ok" + ending),
+                failures(slices, ending),
+                slices.numbers("p50_ms" + ending),
+                slices.numbers("p95_ms" + ending),
+                slices.numbers("p99_ms" + ending),
+                slices.numbers("worst_ms" + ending),
+                slices.numbers("retries" + ending),
                 backends.stream()
-                        .map(each -> PerBackend.of(slices, each.name()))
+                        .map(each -> PerBackend.of(slices, each.name(), ending))
                         .toList());
     }
 
@@ -56,10 +61,10 @@ record Columns(
         return new Columns(none, none, none, Map.of(), none, none, none, none, none, perBackend);
     }
 
-    private static Map<String, double[]> failures(Slices slices) {
+    private static Map<String, double[]> failures(Slices slices, String ending) {
         Map<String, double[]> failures = new LinkedHashMap<>();
         for (Cause cause : Cause.values()) {
-            double[] counts = slices.numbers(cause.word());
+            double[] counts = slices.numbers(cause.word() + ending);
             if (Arrays.stream(counts).anyMatch(count -> count > 0)) {
                 failures.put(cause.word(), counts);
             }
@@ -80,15 +85,19 @@ record Columns(
             double[] entitled,
             double[] utilisation,
             double[] waiting) {
-        static PerBackend of(Slices slices, String name) {
+        static PerBackend of(Slices slices, String name, String ending) {
             return new PerBackend(
-                    slices.numbers(name, "picked"),
-                    slices.numbers(name, "in-flight"),
+                    slices.numbers(name, "picked" + ending),
+                    slices.numbers(name, "in-flight" + ending),
                     slices.standing(name),
-                    slices.numbers(name, "weight"),
-                    slices.numbers(name, "entitled"),
-                    slices.numbers(name, "utilisation"),
-                    slices.numbers(name, "waiting"));
+                    slices.numbers(name, "weight" + ending),
+                    slices.numbers(name, "entitled" + ending),
+                    slices.numbers(name, "utilisation" + ending),
+                    slices.numbers(name, "waiting" + ending));
+        }
+
+        PerBackend withPicked(double[] other) {
+            return new PerBackend(other, inFlight, standing, weight, entitled, utilisation, waiting);
         }
     }
 }

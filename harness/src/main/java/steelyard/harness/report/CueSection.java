@@ -49,6 +49,9 @@ final class CueSection {
         if (run.run().standings().isEmpty()) {
             return "<p>No standing changed.</p>\n";
         }
+        if (run.run().forecast() != null) {
+            return ForecastSection.changes(run.run().standings());
+        }
         List<Column> columns = List.of(
                 Column.number("At", "s"),
                 Column.rowHead("Backend"),

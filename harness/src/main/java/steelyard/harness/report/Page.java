@@ -3,6 +3,8 @@ package steelyard.harness.report;
 import java.io.IOException;
 import java.util.HashMap;
 import java.util.Map;
+import org.jspecify.annotations.Nullable;
+import steelyard.harness.record.RunData.ForecastRow;
 
 /** Puts the page together from its sections. */
 final class Page {
@@ -17,7 +19,9 @@ final class Page {
         slots.put("data", ChartData.json(run));
         slots.put("kicker", Html.text(VerdictSection.kicker(run)));
         slots.put("verdict", VerdictSection.html(run));
-        slots.put("expectations", VerdictSection.expectations(run));
+        slots.put(
+                "expectations",
+                VerdictSection.expectations(run) + method(run.run().forecast()));
         slots.put("cues", CueSection.cues(run));
         slots.put("changes", CueSection.changes(run));
         slots.put("stretches", StretchSection.html(run));
@@ -27,5 +31,9 @@ final class Page {
         slots.put("machine", SettingsSection.machine(run));
         slots.put("source", Html.text(run.run().source()));
         return Assets.page(slots);
+    }
+
+    private static String method(@Nullable ForecastRow forecast) {
+        return forecast == null ? "" : ForecastSection.method(forecast);
     }
 }

@@ -6,16 +6,24 @@ import java.util.List;
 import steelyard.harness.record.FolderRefused;
 import steelyard.harness.record.RunData;
 import steelyard.harness.record.RunData.BackendRow;
+import steelyard.harness.record.RunData.ForecastRow;
 import steelyard.harness.record.RunData.PoolRow;
 import steelyard.harness.record.RunFolder;
+import steelyard.harness.record.Slices;
 
-/** What the report needs of a run folder. */
-record RunFiles(RunData run, Columns columns) {
+/**
+ * What the report needs of a run folder.
+ *
+ * @param backends whose columns there are: backends, or in a forecast of many groups of them
+ * @param columns what charts draw
+ * @param sums what is added up over slices; the same, but means over plays in a forecast
+ */
+record RunFiles(RunData run, List<BackendRow> backends, Columns columns, Columns sums) {
 
     static RunFiles read(Path folder) throws IOException {
         try {
             RunData run = RunData.read(RunFolder.existing(folder));
-            return new RunFiles(run, Columns.of(run.slices(), run.backends()));
+            return run.forecast() == null ? ofPlay(run) : ofForecast(run, run.forecast());
         } catch (FolderRefused e) {
             throw new IOException(e.getMessage(), e);
         } catch (IllegalArgumentException e) {
@@ -23,8 +31,17 @@ record RunFiles(RunData run, Columns columns) {
         }
     }
 
-    List<BackendRow> backends() {
-        return run.backends();
+    private static RunFiles ofPlay(RunData run) {
+        Columns columns = Columns.of(run.slices(), run.backends());
+        return new RunFiles(run, run.backends(), columns, columns);
+    }
+
+    private static RunFiles ofForecast(RunData run, ForecastRow forecast) {
+        List<BackendRow> rows = forecast.rows().stream()
+                .map(row -> new BackendRow(row.name(), row.pool(), "", 0))
+                .toList();
+        Slices slices = run.slices();
+        return new RunFiles(run, rows, ForecastColumns.medians(slices, rows), ForecastColumns.means(slices, rows));
     }
 
     List<String> pools() {

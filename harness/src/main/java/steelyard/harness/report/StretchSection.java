@@ -13,10 +13,12 @@ final class StretchSection {
 
     static String html(RunFiles run) {
         List<Stretch> stretches = Stretches.of(run);
-        return stretches.isEmpty() ? "<p>No slice was recorded.</p>\n" : clients(stretches) + backends(run, stretches);
+        return stretches.isEmpty()
+                ? "<p>No slice was recorded.</p>\n"
+                : clients(run, stretches) + backends(run, stretches);
     }
 
-    private static String clients(List<Stretch> stretches) {
+    private static String clients(RunFiles run, List<Stretch> stretches) {
         List<Column> columns = new ArrayList<>(List.of(
                 Column.rowHead("Stretch"),
                 Column.words("Opened by"),
@@ -27,7 +29,7 @@ final class StretchSection {
         causes.forEach(cause -> columns.add(Column.failure(cause)));
         columns.add(Column.number("Latency 50 %", "ms"));
         columns.add(Column.number("Latency 99 %", "ms"));
-        Html table = new Html().table("stretches cards", "Requests in each stretch", columns);
+        Html table = new Html().table("stretches cards", caption("Requests in each stretch", run), columns);
         for (Stretch stretch : stretches) {
             List<String> cells = new ArrayList<>(List.of(
                     span(stretch),
@@ -43,6 +45,10 @@ final class StretchSection {
             table.row(columns, cells);
         }
         return table.endTable().toString();
+    }
+
+    private static String caption(String words, RunFiles run) {
+        return run.run().forecast() == null ? words : words + ", means over plays";
     }
 
     private static String span(Stretch stretch) {

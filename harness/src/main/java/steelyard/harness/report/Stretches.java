@@ -18,7 +18,7 @@ final class Stretches {
     private final List<BackendRow> backends;
 
     private Stretches(RunFiles run) {
-        slices = run.columns();
+        slices = run.sums();
         backends = run.backends();
     }
 
@@ -26,8 +26,8 @@ final class Stretches {
         TreeMap<Integer, List<String>> starts = new TreeMap<>();
         starts.put(0, new ArrayList<>());
         for (CueRow cue : run.run().cues()) {
-            int slice = sliceOf(run.columns(), cue.at());
-            if (slice < run.columns().size()) {
+            int slice = sliceOf(run.sums(), cue.at());
+            if (slice < run.sums().size()) {
                 starts.computeIfAbsent(slice, none -> new ArrayList<>()).add(cue.cue());
             }
         }
@@ -35,7 +35,7 @@ final class Stretches {
         List<Stretch> all = new ArrayList<>();
         for (Map.Entry<Integer, List<String>> start : starts.entrySet()) {
             Integer next = starts.higherKey(start.getKey());
-            int end = next == null ? run.columns().size() : next;
+            int end = next == null ? run.sums().size() : next;
             if (end > start.getKey()) {
                 all.add(stretches.stretch(start.getKey(), end, start.getValue()));
             }

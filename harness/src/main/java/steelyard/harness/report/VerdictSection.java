@@ -4,6 +4,7 @@ import java.util.List;
 import org.jspecify.annotations.Nullable;
 import steelyard.harness.record.RunData;
 import steelyard.harness.record.RunData.FindingRow;
+import steelyard.harness.record.RunData.ForecastRow;
 import steelyard.harness.record.RunData.VerdictRow;
 import steelyard.harness.record.SelfCheck;
 import steelyard.harness.report.Html.Column;
@@ -15,6 +16,9 @@ final class VerdictSection {
     /** What kind of play this page is about, in one line. */
     static String kicker(RunFiles files) {
         RunData run = files.run();
+        if (run.forecast() != null) {
+            return ForecastSection.kicker(run, run.forecast());
+        }
         String stage = files.live()
                 ? "Rehearsal on the live stage, " + run.backendsRun() + " backends"
                 : "Play on the virtual stage";
@@ -33,15 +37,22 @@ final class VerdictSection {
 
     static String html(RunFiles files) {
         VerdictRow verdict = files.run().verdict();
+        ForecastRow forecast = files.run().forecast();
         if (verdict == null) {
             return line("open", "No verdict: " + why(files)) + note("Nothing below has been judged.");
         }
-        String ended = files.complete() ? "" : note("The play was interrupted at " + reached(files) + ".");
+        String interrupted = forecast == null
+                ? "The play was interrupted at " + reached(files) + "."
+                : ForecastSection.interrupted(forecast);
+        String ended = files.complete() ? "" : note(interrupted);
         String kind = verdict.met() && verdict.fit() ? "met" : "not-met";
         return line(kind, verdict.text()) + note(fitness(files.run().checks(), verdict.fit())) + ended;
     }
 
     private static String why(RunFiles files) {
+        if (files.run().forecast() != null) {
+            return ForecastSection.why(files.run().ended());
+        }
         return switch (files.run().ended()) {
             case "interrupted" -> "the play was interrupted at " + reached(files) + ".";
             case "playing" -> "the play had reached " + reached(files) + " when it was last heard of.";
@@ -79,6 +90,9 @@ final class VerdictSection {
                     ? "<p>No expectation was judged.</p>\n"
                     : "<p>This drill expects nothing.</p>\n";
         }
+        if (files.run().forecast() != null) {
+            return ForecastSection.expectations(expectations);
+        }
         List<Column> columns = List.of(
                 Column.rowHead("Measure"),
                 Column.number("Bound", ""),
@@ -95,7 +109,7 @@ final class VerdictSection {
     }
 
     /** What was measured, with its target where the words leave it out. */
-    private static String text(FindingRow each) {
+    static String text(FindingRow each) {
         String of = each.of();
         return of == null || each.text().contains(of) ? each.text() : each.text() + " (" + of + ")";
     }
@@ -118,7 +132,8 @@ final class VerdictSection {
         if (measures.isEmpty()) {
             return "<p>None were taken.</p>\n";
         }
-        List<Column> columns = List.of(Column.rowHead("Measure"), Column.number("Measured", ""), Column.words("Note"));
+        String measured = files.run().forecast() == null ? "Measured" : ForecastSection.MEASURED;
+        List<Column> columns = List.of(Column.rowHead("Measure"), Column.number(measured, ""), Column.words("Note"));
         Html table = new Html().table("measures", "Measures of the whole play", columns);
         for (FindingRow each : measures) {
             table.row(columns, List.of(text(each), each.measured(), orEmpty(each.why())));
@@ -126,7 +141,7 @@ final class VerdictSection {
         return table.endTable().toString();
     }
 
-    private static String orEmpty(@Nullable String words) {
+    static String orEmpty(@Nullable String words) {
         return words == null ? "" : words;
     }
 }

@@ -10,10 +10,13 @@ const QUANTILES = [
 /** The charts of a run, from top to bottom. */
 function chartsOf(run, narrow) {
   const several = run.pools.length > 1;
+  const one = run.forecast && run.forecast.grouped ? 'group' : 'backend';
   const of = (pool) => (several ? ` in pool ${pool.name}` : '');
   const rivers = run.pools.map((pool, at) => ({
-    title: `Attempts a second${of(pool)}, by backend`,
-    note: pool.members.length > 1 ? 'dark lines: where entitled shares would put the edges' : '',
+    title: `Attempts a second${of(pool)}, by ${one}`,
+    note:
+      (run.bands ? 'median shares; ' : '') +
+      (pool.members.length > 1 ? 'dark lines: where entitled shares would put the edges' : ''),
     height: Math.min(Math.max(several ? 140 : 180, pool.members.length * 24), 300),
     y: linear(),
     series: [{ figure: (bin) => bin.pools[at] }],
@@ -23,7 +26,7 @@ function chartsOf(run, narrow) {
   const strips = run.pools.map((pool) => {
     const row = pool.members.length > 16 ? 15 : pool.members.length > 6 ? 17 : 21;
     return {
-      title: `Standing${of(pool)}`,
+      title: run.bands ? `Standing in most plays${of(pool)}` : `Standing${of(pool)}`,
       note: '',
       height: pool.members.length * row + 12,
       members: pool.members,
@@ -35,28 +38,33 @@ function chartsOf(run, narrow) {
   });
   const charts = [
     ...rivers,
+    ...(run.bands ? bandCharts(run, one) : []),
     ...strips,
     {
       title: 'Latency of good answers, ms, log scale',
       note: 'quantiles of 100 ms slices',
       height: narrow ? 150 : 170,
       y: logarithmic(),
-      series: QUANTILES.map((each) => ({ ...each, colour: ink[each.tone], figure: (bin) => bin[each.key] })),
+      series: QUANTILES.map((each) => ({ ...each, ...quantileOf(run, each), colour: ink[each.tone] })),
       over: lineNames(QUANTILES.map((each) => each.name)),
       about: () => latencyAbout(run),
     },
     {
       title: 'Failures a second, by cause',
-      note: run.causes.length ? '' : 'no request failed',
+      note: !run.causes.length ? 'no request failed' : run.bands ? 'means over plays; dotted: 95 % of plays stay below' : '',
       height: 110,
       empty: !run.causes.length,
       y: linear(),
-      series: [{ figure: (bin) => bin.failedAll }],
+      series: [
+        { figure: (bin) => bin.failedAll },
+        ...(run.bands ? [{ figure: (bin) => bin.bands.failed.high }] : []),
+      ],
       under: failureLayer(run),
+      over: run.bands ? ceilingLayer((bin) => bin.bands.failed.high) : undefined,
       about: () => failuresAbout(run),
     },
     {
-      title: 'In flight, by backend',
+      title: `In flight, by ${one}`,
       note: 'dotted: of these, waiting in the backend’s queue',
       height: 120,
       y: linear(),
@@ -74,7 +82,7 @@ function chartsOf(run, narrow) {
   ];
   if (run.backends.some((each) => each.weight.some((weight) => weight !== each.weight[0]))) {
     charts.splice(charts.length - 1, 0, {
-      title: 'Weight in effect, by backend',
+      title: `Weight in effect, by ${one}`,
       note: '',
       height: 96,
       y: linear(),
@@ -85,18 +93,69 @@ function chartsOf(run, narrow) {
   return charts;
 }
 
+/** What only a forecast shows: requests and shares, each a line of medians in the band of 90 % of plays. */
+function bandCharts(run, one) {
+  const requests = [
+    { key: 'offered', name: 'offered', width: 1.2, dash: [5, 3], colour: ink.soft },
+    { key: 'ok', name: 'ok', width: 1.6, dash: [], colour: ink.ink },
+  ];
+  const shares = run.backends.map((each) => ({
+    ...bandOf((bin) => bin.backends[each.index].bands.share),
+    colour: backendColour(each.index),
+    width: 1.6,
+    dash: backendDash(each.index),
+    figure: (bin) => bin.backends[each.index].bands.share.median,
+  }));
+  return [
+    {
+      title: `Share of the attempts of its pool, by ${one}, %`,
+      note: 'shaded: 90 % of plays',
+      height: 150,
+      y: { ...linear(), values: (splits) => splits.map((each) => plain(each * 100, each * 100 < 1 ? 1 : 0).replace("0.0", "0")) },
+      series: shares,
+      about: () => backendsAbout(run, run.backends, 'share', 3, 'of 1'),
+    },
+    {
+      title: 'Requests a second',
+      note: 'shaded: 90 % of plays',
+      height: 120,
+      y: linear(),
+      series: requests.map((each) => ({
+        ...bandOf((bin) => bin.bands[each.key]),
+        ...each,
+        figure: (bin) => bin.bands[each.key].median,
+      })),
+      over: lineNames(requests.map((each) => each.name)),
+      about: () => requests.map((each) => `${each.name} ${plain(figuresOf(run, 0, run.slices)[each.key], 0)}`).join(', '),
+    },
+  ];
+}
+
+/** The edges of a line's band. */
+function bandOf(band) {
+  return { low: (bin) => band(bin).low, high: (bin) => band(bin).high };
+}
+
+/** A quantile of a slice; in a forecast the median of it over plays, in the band of 90 % of plays. */
+function quantileOf(run, quantile) {
+  const { key } = quantile;
+  if (!run.bands || !run.bands.requests[key]) return { figure: (bin) => bin[key] };
+  return { ...bandOf((bin) => bin.bands[key]), figure: (bin) => bin.bands[key].median };
+}
+
 /** One line a backend; a light colour on light paper gets a darker edge. */
 function lines(run, figure, dotted) {
   const told = run.backends.filter((each) => !dotted || each[figure].some((value) => value > 0));
   return told.flatMap((each) => {
     const line = {
+      ...(run.bands && !dotted ? bandOf((bin) => bin.backends[each.index].bands[figure]) : {}),
       colour: backendColour(each.index),
       width: dotted ? 1.2 : 1.6,
       dash: dotted ? [1.5, 2.5] : backendDash(each.index),
       figure: (bin) => bin.backends[each.index][figure],
     };
     const light = line.colour === '#F0E442' && ink.byDay && !dotted;
-    return light ? [{ ...line, colour: ink.soft, width: 3.2 }, line] : [line];
+    return light ? [{ ...line, low: undefined, colour: ink.soft, width: 3.2 }, line] : [line];
   });
 }
 

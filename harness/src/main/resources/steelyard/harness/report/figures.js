@@ -46,7 +46,34 @@ function unpacked(raw) {
     for (const member of members) member.picked.forEach((count, at) => (picked[at] += count));
     return { name, members, picked };
   });
-  return { ...raw, requests, backends, pools, causes: Object.keys(requests.failed) };
+  const bands = raw.bands && {
+    requests: unpackedBands(raw.bands.requests),
+    backends: raw.bands.backends.map(unpackedBands),
+  };
+  return { ...raw, requests, backends, pools, bands, causes: Object.keys(requests.failed) };
+}
+
+/** The bands of a forecast: of each figure the median and the quantiles that a chart is shaded between. */
+function unpackedBands(raw) {
+  const bands = {};
+  for (const name of Object.keys(raw)) {
+    bands[name] = { median: column(raw[name].median), low: column(raw[name].low), high: column(raw[name].high) };
+  }
+  return bands;
+}
+
+/** Means over the slices [from, to) of medians and quantiles; rates a second where `seconds` are given. */
+function bandsOf(bands, from, to, seconds) {
+  const means = {};
+  for (const name of Object.keys(bands)) {
+    const scale = seconds && 'offered ok failed'.includes(name) ? (to - from) / seconds : 1;
+    means[name] = {
+      median: mean(bands[name].median, from, to) * scale,
+      low: mean(bands[name].low, from, to) * scale,
+      high: mean(bands[name].high, from, to) * scale,
+    };
+  }
+  return means;
 }
 
 /** How many slices go into a bin so that a bin is wide enough to be seen. */
@@ -122,6 +149,10 @@ function figuresOf(run, from, to) {
     })),
     pools: [],
   };
+  if (run.bands) {
+    figures.bands = bandsOf(run.bands.requests, from, to, seconds);
+    figures.backends.forEach((each, at) => (each.bands = bandsOf(run.bands.backends[at], from, to)));
+  }
   for (const pool of run.pools) {
     const picked = total(pool.picked, from, to) / seconds;
     for (const member of pool.members) {

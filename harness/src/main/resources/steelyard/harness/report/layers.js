@@ -134,6 +134,17 @@ function failureLayer(run) {
   };
 }
 
+/** A dotted line along the tops of steps. */
+function ceilingLayer(height) {
+  return (chart, stack) => {
+    const bins = visible(stack.bins, stack.view);
+    framed(chart, (ctx, dpr) => {
+      ctx.setLineDash([1.5 * dpr, 2.5 * dpr]);
+      stroke(ctx, stepTops(chart, bins, height), ink.ink, 1.2 * dpr);
+    });
+  };
+}
+
 function failureBlock(chart, ctx, bin, cause) {
   if (!bin.failed[cause]) return;
   let base = 0;

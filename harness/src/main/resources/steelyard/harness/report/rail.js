@@ -31,6 +31,10 @@ function layRail(stack) {
   stack.ticks.replaceChildren();
   stack.rail.replaceChildren();
   stack.step.textContent = `Each step of a line or a stack is ${seconds(stack.size * stack.run.slice)}\u00a0s.`;
+  if (stack.run.bands) {
+    const { plays } = stack.run.forecast;
+    stack.step.textContent += ` Lines are medians over ${plays} plays, shaded bands hold 90\u00a0% of them slice by slice.`;
+  }
   layCues(stack);
   layUnplayed(stack);
 }

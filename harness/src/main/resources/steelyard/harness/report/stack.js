@@ -67,7 +67,32 @@ function rebin(stack) {
 function dataOf(stack, spec) {
   const known = (value) => (Number.isFinite(value) ? value : null);
   const x = stack.bins.map((bin) => (bin.from + bin.to) / 2);
-  return [x, ...spec.series.map((series) => stack.bins.map((bin) => known(series.figure(bin))))];
+  const row = (figure) => stack.bins.map((bin) => known(figure(bin)));
+  return [
+    x,
+    ...spec.series.map((series) => row(series.figure)),
+    ...banded(spec).flatMap((series) => [row(series.high), row(series.low)]),
+  ];
+}
+
+/** The series that have a band; its edges follow after all series, the upper edge first. */
+function banded(spec) {
+  return spec.series.filter((series) => series.low);
+}
+
+function bandsBetween(spec) {
+  const first = spec.series.length + 1;
+  return banded(spec).map((series, at) => ({
+    series: [first + 2 * at, first + 2 * at + 1],
+    fill: veiled(series.colour, 0.22),
+  }));
+}
+
+function edgesOf(spec) {
+  return banded(spec).flatMap((series) => {
+    const edge = seriesOf({ ...series, dash: [], width: 0, colour: 'transparent' }, false);
+    return [edge, edge].map((each) => ({ ...each }));
+  });
 }
 
 function buildChart(stack, spec) {
@@ -105,7 +130,8 @@ function optionsOf(stack, spec) {
     legend: { show: false },
     scales: { x: { time: false }, ...(spec.y ? { y: scaleOf(spec.y) } : {}) },
     axes: [{ show: false }, ...(spec.y ? [axisOf(stack, spec.y)] : [])],
-    series: [{}, ...spec.series.map((series) => seriesOf(series, painted))],
+    series: [{}, ...spec.series.map((series) => seriesOf(series, painted)), ...edgesOf(spec)],
+    bands: bandsBetween(spec),
     cursor: {
       y: false,
       points: { show: false },
