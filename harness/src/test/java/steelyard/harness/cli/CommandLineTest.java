@@ -38,6 +38,11 @@ class CommandLineTest {
                     rehearse lose-one-of-three slow-one   | one argument too many, 'slow-one'; `steelyard help rehearse`
                     rehearse --seed five slow-one         | '--seed': 'five' is not a whole number; `steelyard help rehearse`
                     rehearse --backends elsewhere slow-one| --backends can only be embedded, not 'elsewhere'
+                    forecast --hold 90 slow-one           | '90' is not a share from 0% to 100%, such as 90%; `steelyard help forecast`
+                    forecast --hold 101% slow-one         | '101%' is not a share from 0% to 100%
+                    forecast --plays 0 slow-one           | --plays takes a whole number from 1 to 100000, not '0'
+                    forecast --plays many slow-one        | 'many' is not a
+                    forecast --threads 0 slow-one         | --threads takes a whole number from 1 to 256, not '0'
                     rehearse loose-one-of-three           | no bundled drill 'loose-one-of-three'; did you mean 'lose-one-of-three'?
                     check nothing-like-it                 | no bundled drill 'nothing-like-it'; `steelyard drills` lists
                     check nowhere/slow-one.yaml           | nowhere/slow-one.yaml:1:1: there is no such file
@@ -130,6 +135,7 @@ class CommandLineTest {
     @Test
     void completion_always_namesEveryCommandAndTheBundledDrills() {
         assertThat(run("completion")).isZero();
-        assertThat(out.toString()).contains("rehearse check drills completion version help", "lose-one-of-three");
+        assertThat(out.toString())
+                .contains("rehearse forecast check drills completion version help", "lose-one-of-three");
     }
 }
