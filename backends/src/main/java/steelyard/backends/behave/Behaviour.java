@@ -57,7 +57,8 @@ public final class Behaviour {
         }
         this.settings = settings;
         this.chance = chance;
-        // Attempts are 0 and above, so a key below 0 keeps the draws of probes apart from those of requests.
+        // Attempts are counted from 1 (0: not told), so a key below 0 keeps the draws of probes apart from those of
+        // requests.
         this.probeKey = -1 - backend;
         this.tally = new Tally(startNanos);
         this.latestNanos = startNanos;
@@ -67,7 +68,7 @@ public final class Behaviour {
      * A request was read.
      *
      * @param token handed back with the reply; no two requests held at once may share one
-     * @param attempt 0 or above
+     * @param attempt 1 for the first try, or 0 where it is not known
      * @param extraNanos work on top of the drawn demand, 0 to a day
      * @return its place, for {@link #abandon}, or {@link #NOWHERE} if it is over already
      */

@@ -88,8 +88,8 @@ final class PlanRunner implements ReplySink {
 
     /** The head of a request was read. */
     Exchange begin(Connection connection, HttpRequest head) {
-        boolean probe = RequestHeads.path(head.uri()).equals(settings.probePath());
-        long number = RequestHeads.number(head, StubHeaders.REQUEST);
+        boolean probe = RequestHeads.asksFor(head.uri(), settings.probePath());
+        long number = RequestHeads.number(head, probe ? StubHeaders.PROBE : StubHeaders.REQUEST);
         if (number < 0) {
             number = probe ? probes : --unnumbered;
         }

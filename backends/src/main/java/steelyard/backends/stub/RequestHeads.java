@@ -1,6 +1,7 @@
 package steelyard.backends.stub;
 
 import io.netty.handler.codec.http.HttpRequest;
+import org.jspecify.annotations.Nullable;
 
 /** Reads what a stub needs to know from the head of a request. */
 final class RequestHeads {
@@ -17,11 +18,14 @@ final class RequestHeads {
         return path < 0 ? "/" : uri.substring(path);
     }
 
-    /** The path of a request target, without its query. */
-    static String path(String uri) {
+    /** Whether a request target is this path, with whatever query where the path names none; never for null. */
+    static boolean asksFor(String uri, @Nullable String path) {
+        if (path == null) {
+            return false;
+        }
         String target = target(uri);
-        int query = target.indexOf('?');
-        return query < 0 ? target : target.substring(0, query);
+        return target.startsWith(path)
+                && (target.length() == path.length() || target.charAt(path.length()) == '?' && path.indexOf('?') < 0);
     }
 
     /** The decimal number in a header field, or -1 if it is absent or no number of 0 or above. */

@@ -12,7 +12,7 @@ import steelyard.backends.behave.BehaviourSettings;
  * @param address where it listens, with a port of its own
  * @param behaviour how it serves
  * @param seed of its draws
- * @param probePath path that is a probe and not traffic, or null for none
+ * @param probePath path, perhaps with a query, that is a probe and not traffic, or null for none
  * @param answers where its answers come from, or null for the plain answer of the behaviour
  */
 public record StubSettings(

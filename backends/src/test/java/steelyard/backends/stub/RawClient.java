@@ -28,10 +28,10 @@ public final class RawClient implements AutoCloseable {
         in = socket.getInputStream();
     }
 
-    /** Sends a GET that carries its number. */
+    /** Sends the first try of a GET that carries its number. */
     public RawClient get(String path, long request) throws IOException {
         return send("GET " + path + " HTTP/1.1\r\nHost: gannet\r\nSteelyard-Request: " + request
-                + "\r\nSteelyard-Attempt: 0\r\n\r\n");
+                + "\r\nSteelyard-Attempt: 1\r\n\r\n");
     }
 
     public RawClient send(String text) throws IOException {

@@ -44,7 +44,7 @@ class StubFaultsTest {
                     .withMessageContaining("reset");
             assertThatExceptionOfType(ConnectException.class).isThrownBy(stub::client);
             assertThat(stub.figures().lost()).isEqualTo(1);
-            assertThat(stub.heard.lines).containsExactly("received #0.0", "broken #0.0 0");
+            assertThat(stub.heard.lines).containsExactly("received #0.1", "broken #0.1 0");
         }
     }
 
@@ -111,7 +111,7 @@ class StubFaultsTest {
                 prober.longestRead(SILENCE_MILLIS);
                 assertThatExceptionOfType(SocketTimeoutException.class).isThrownBy(prober::readByte);
             }
-            stub.untilHeard("broken #0.0 0");
+            stub.untilHeard("broken #0.1 0");
         }
     }
 
@@ -135,7 +135,7 @@ class StubFaultsTest {
             assertThat(client.send(PROBE).receive().status()).isEqualTo(200);
             stub.apply(Heal.all());
             assertThat(client.get("/", 1).receive().status()).isEqualTo(200);
-            stub.untilHeard("answered #0.0 502");
+            stub.untilHeard("answered #0.1 502");
         }
     }
 

@@ -12,7 +12,11 @@ import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.EnumSource;
+import steelyard.backends.behave.Behaviour;
 import steelyard.backends.behave.BehaviourSettings;
+import steelyard.backends.behave.Chance;
+import steelyard.backends.behave.Reply;
+import steelyard.backends.behave.ReplySink;
 import steelyard.backends.behave.ServiceTime;
 import steelyard.backends.fleet.BackendSpec;
 
@@ -32,15 +36,15 @@ class StubTrafficTest {
                 assertThat(answer.headers()).contains("content-length: 40");
                 assertThat(answer.body()).hasSize(40).startsWith("served by");
             }
-            stub.untilHeard("answered #2.0 200");
+            stub.untilHeard("answered #2.1 200");
             assertThat(stub.heard.lines)
                     .containsExactly(
-                            "received #0.0",
-                            "answered #0.0 200",
-                            "received #1.0",
-                            "answered #1.0 200",
-                            "received #2.0",
-                            "answered #2.0 200");
+                            "received #0.1",
+                            "answered #0.1 200",
+                            "received #1.1",
+                            "answered #1.1 200",
+                            "received #2.1",
+                            "answered #2.1 200");
         }
     }
 
@@ -141,7 +145,7 @@ class StubTrafficTest {
                 client.get("/", 0);
                 stub.until(figures -> figures.inService() == 1);
             }
-            stub.untilHeard("broken #0.0 0");
+            stub.untilHeard("broken #0.1 0");
             assertThat(stub.figures().abandoned()).isEqualTo(1);
             assertThat(stub.figures().inService()).isEqualTo(1);
             stub.pass(SERVICE);
@@ -160,10 +164,61 @@ class StubTrafficTest {
                             .receive()
                             .status())
                     .isEqualTo(200);
-            assertThat(stub.heard.lines).containsExactly("received #0.0");
+            assertThat(stub.heard.lines).containsExactly("received #0.1");
             assertThat(stub.figures().probes()).isEqualTo(1);
         }
     }
+
+    @Test
+    void probe_pathWithAQuery_isNotTraffic() throws Exception {
+        try (OneStub stub = new OneStub(new BackendSpec("gannet", OneStub.NO_TIME, "/afloat?deep=1", null));
+                RawClient client = stub.client()) {
+            String probe = "GET /afloat?deep=1 HTTP/1.1\r\nHost: gannet\r\n\r\n";
+            assertThat(client.send(probe).receive().status()).isEqualTo(200);
+            assertThat(client.get("/afloat", 1).receive().status()).isEqualTo(200);
+            assertThat(stub.figures().probes()).isEqualTo(1);
+            assertThat(stub.figures().received()).isEqualTo(1);
+        }
+    }
+
+    /** Probes that never arrived have numbers too: those that do must not draw what belongs to them. */
+    @Test
+    void probe_thatCarriesItsNumber_drawsByThatNumber() throws Exception {
+        BehaviourSettings lossy = OneStub.NO_TIME.withProbeLoss(0.5);
+        long lost = lost(lossy, 100, 140);
+        assertThat(lost).as("a range that tells the two apart").isNotEqualTo(lost(lossy, 0, 40));
+        try (OneStub stub = OneStub.of(lossy);
+                RawClient prober = stub.client()) {
+            for (long probe = 100; probe < 140; probe++) {
+                prober.send("GET /afloat HTTP/1.1\r\nHost: gannet\r\nSteelyard-Probe: " + probe + "\r\n\r\n");
+            }
+            stub.until(figures -> figures.probes() == 40);
+            assertThat(stub.figures().probesFailed()).isEqualTo(lost);
+        }
+    }
+
+    /** How many probes from one number to below another a behaviour of the same settings and seed loses. */
+    private static long lost(BehaviourSettings settings, long from, long to) {
+        Behaviour behaviour = new Behaviour(0, settings, new Chance(1), 0);
+        for (long probe = from; probe < to; probe++) {
+            behaviour.probe(probe, probe, 0, NOBODY);
+        }
+        return behaviour.figures(0, NOBODY).probesFailed();
+    }
+
+    private static final ReplySink NOBODY = new ReplySink() {
+        @Override
+        public void reply(long token, long request, int attempt, Reply reply, int status, int bytes, long atNanos) {}
+
+        @Override
+        public void probeReply(long token, long probe, Reply reply, int status, long atNanos) {}
+
+        @Override
+        public void listening(boolean open, long atNanos) {}
+
+        @Override
+        public void connectionsReset(long atNanos) {}
+    };
 
     // The only test here with a running clock: the stub's own timer has to bring the answer.
     @ParameterizedTest
@@ -212,7 +267,7 @@ class StubTrafficTest {
             stub.until(figures -> figures.inService() == 1);
             stub.close();
             assertThat(client.readByte()).isEqualTo(-1);
-            assertThat(stub.heard.lines).isEqualTo(List.of("received #0.0", "broken #0.0 0"));
+            assertThat(stub.heard.lines).isEqualTo(List.of("received #0.1", "broken #0.1 0"));
         }
     }
 
