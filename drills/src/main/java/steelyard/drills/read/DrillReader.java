@@ -86,7 +86,7 @@ public final class DrillReader {
         long lasts = fields.need("lasts", Durations.POSITIVE, Durations.DAY);
         StageReader stageReader = new StageReader(problems, folder);
         Stage stage = stageReader.read(fields);
-        List<Traffic> traffic = new TrafficReader(problems, stageReader.poolNames(), lasts).read(fields);
+        List<Traffic> traffic = new TrafficReader(problems, stageReader.poolNames(), stage, lasts).read(fields);
         Roster roster = new Roster(stage);
         CueSchedule schedule = new CueSchedule(problems, roster, List.of(), lasts);
         CueReader cueReader = new CueReader(problems);

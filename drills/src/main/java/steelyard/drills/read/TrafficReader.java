@@ -7,6 +7,10 @@ import java.util.HashSet;
 import java.util.List;
 import java.util.Locale;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
+import steelyard.drills.model.Pool;
+import steelyard.drills.model.Probe;
+import steelyard.drills.model.Stage;
 import steelyard.drills.model.Traffic;
 
 /** Reads {@code traffic:}. */
@@ -21,12 +25,14 @@ final class TrafficReader {
 
     private final Problems problems;
     private final List<String> pools;
+    private final @Nullable Stage stage;
     private final long lastsNanos;
 
-    /** With the names of the pools, none when they are not known. */
-    TrafficReader(Problems problems, List<String> pools, long lastsNanos) {
+    /** With the names of the pools, none when they are not known, and the stage, null when it could not be read. */
+    TrafficReader(Problems problems, List<String> pools, @Nullable Stage stage, long lastsNanos) {
         this.problems = problems;
         this.pools = pools;
+        this.stage = stage;
         this.lastsNanos = lastsNanos;
     }
 
@@ -48,14 +54,45 @@ final class TrafficReader {
     }
 
     private Traffic stream(Fields fields) {
+        String to = to(fields);
+        List<Traffic.Request> requests = requests(fields);
+        refuseProbePath(fields, to, requests);
         return new Traffic(
-                to(fields),
+                to,
                 fields.read("arrivals", ARRIVALS, Traffic.Arrivals.POISSON),
                 steps(fields),
                 fields.read("clients", CLIENTS, 64),
                 fields.read("skew", SKEW, 0.0),
                 fields.read("give-up", Durations.POSITIVE, 10 * Durations.SECOND),
-                requests(fields));
+                requests);
+    }
+
+    /** A backend knows a probe by its path alone, so a request for it would be no traffic. */
+    private void refuseProbePath(Fields fields, String to, List<Traffic.Request> requests) {
+        String probed = probePath(to);
+        for (Traffic.Request request : requests) {
+            if (probed != null && asksFor(request.path(), probed)) {
+                problems.add(
+                        fields.has("requests") ? fields.valuePlace("requests") : fields.place(),
+                        "a backend would take '" + request.path() + "' for a probe of the pool",
+                        "ask for another path, or let the probe do so");
+            }
+        }
+    }
+
+    private @Nullable String probePath(String pool) {
+        for (Pool each : stage == null ? List.<Pool>of() : stage.pools()) {
+            Probe probe = each.probe();
+            if (each.name().equals(pool) && probe != null) {
+                return probe.path();
+            }
+        }
+        return null;
+    }
+
+    /** Whether a target is this path, with whatever query where the path names none. */
+    private static boolean asksFor(String target, String path) {
+        return target.equals(path) || (path.indexOf('?') < 0 && target.startsWith(path + "?"));
     }
 
     private String to(Fields fields) {
