@@ -69,6 +69,12 @@ class ReadmeTest {
         assertThat(keys).isEmpty();
     }
 
+    /** The format has true and false, and no other words for them. */
+    @Test
+    void readme_always_writesSwitchesAsTheReaderTakesThem() {
+        assertThat(lacks("`[a-z-]+: (yes|no|on|off)`")).isTrue();
+    }
+
     private boolean lacks(String pattern) {
         return !Pattern.compile(pattern).matcher(readme).find();
     }

@@ -79,10 +79,10 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
      * @param factor of {@code slow} and {@code surge}: times that much; 1 otherwise
      * @param plusNanos of {@code slow}: and that much longer
      * @param share of {@code fail}: of the new requests; 1 otherwise
-     * @param status of {@code fail}
+     * @param status of {@code fail}, from 400 to 599
      * @param afterWork of {@code fail}: the status is sent after the work, not at once
      * @param probes whether a slow or failing backend treats probes the same way
-     * @param periodNanos of {@code flap-probe}: one good and one bad half
+     * @param periodNanos of {@code flap-probe}: one bad and one good half
      * @param weight of {@code reweigh}
      * @param limitNanos of {@code drain}; 0 for the pool's own
      */
@@ -104,7 +104,7 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
             Check.that(factor >= 0, "factor cannot be negative: %s", factor);
             Check.notNegative(plusNanos, "plus");
             Check.share(share, "share");
-            Check.that(status >= 200 && status <= 599, "status %d", status);
+            Check.that(status >= 400 && status <= 599, "status %d of a failure", status);
             Check.notNegative(periodNanos, "period");
             Check.notNegative(weight, "weight");
             Check.notNegative(limitNanos, "limit");

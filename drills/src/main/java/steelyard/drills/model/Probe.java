@@ -7,7 +7,7 @@ import org.jspecify.annotations.Nullable;
  *
  * @param path what an HTTP probe asks for; null for a TCP probe
  * @param everyNanos from one start to the next, above zero
- * @param withinNanos an answer later than that is a miss, above zero
+ * @param withinNanos an answer that does not come earlier is a miss; above zero
  * @param misses in a row that make a backend down, at least 1
  * @param passes in a row that make it up again, at least 1
  */

@@ -28,7 +28,7 @@ enum Keys {
     PROBE("a probe", "{path: /afloat, every: 1s}", "kind", "path", "every", "within", "misses", "passes"),
     WARM_UP("a warm-up", "{ramp: 5s, floor: 10%}", "ramp", "floor"),
     DRAIN("a drain", "{limit: 10s}", "limit"),
-    RETRY("a retry", "{at-most: 1, budget: 20%}", "at-most", "budget", "bucket", "also"),
+    RETRY("a retry", "{at-most: 1, budget: 40%}", "at-most", "budget", "bucket", "also"),
     TIMEOUTS("timeouts", "{connect: 1s}", "connect", "first-byte", "idle"),
     FRONT("a front", "{port: 18080}", "port"),
     BACKEND("a backend", "{weight: 1}", "weight", "host", "starts", "times", "serves"),

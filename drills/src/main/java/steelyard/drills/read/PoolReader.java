@@ -14,6 +14,7 @@ import steelyard.drills.model.WarmUp;
 /** Reads one pool. */
 final class PoolReader {
     private static final long SECOND = Durations.SECOND;
+    private static final long MILLISECOND = SECOND / 1_000;
     private static final Quantity<Pool.Method> METHOD = Words.of("a method", Pool.Method.values());
     private static final Quantity<Pool.Count> COUNT = Words.of("a unit to count", Pool.Count.values());
     private static final Quantity<Pool.Weights> WEIGHTS = Words.of("an owner of weights", Pool.Weights.values());
@@ -95,8 +96,8 @@ final class PoolReader {
         return new Probe(
                 kind,
                 path,
-                fields.read("every", Durations.PERIOD, 2 * SECOND),
-                fields.read("within", Durations.POSITIVE, SECOND),
+                fields.read("every", Durations.PERIOD, SECOND),
+                fields.read("within", Durations.POSITIVE, 400 * MILLISECOND),
                 fields.read("misses", IN_A_ROW, 3),
                 fields.read("passes", IN_A_ROW, 2));
     }
@@ -112,7 +113,7 @@ final class PoolReader {
     private static Retry retry(Fields fields) {
         return new Retry(
                 fields.read("at-most", RETRIES, 1),
-                fields.read("budget", Shares.SHARE, 0.2),
+                fields.read("budget", Shares.SHARE, 0.4),
                 fields.read("bucket", BUCKET, 10),
                 Set.copyOf(fields.values("also", Numbers.STATUS)));
     }

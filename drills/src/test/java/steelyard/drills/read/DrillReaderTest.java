@@ -91,6 +91,12 @@ class DrillReaderTest {
     }
 
     @Test
+    void read_ofAnEmptyRetry_fillsInTheDefaults() {
+        Drill drill = read(LEAST.replace("method: round-robin", "method: round-robin, retry: {}"));
+        assertThat(drill.stage().pool("seats").retry()).isEqualTo(new Retry(1, 0.4, 10, Set.of()));
+    }
+
+    @Test
     void read_ofADrillWithoutExpectations_givesANotice() {
         assertThat(shown(LEAST))
                 .containsExactly("d:1:1: notice: the drill expects nothing, so it cannot fail; add expect:");
@@ -110,7 +116,7 @@ class DrillReaderTest {
         assertThat(seats.count()).isEqualTo(Pool.Count.CONNECTIONS);
         assertThat(seats.forwarded()).isTrue();
         assertThat(seats.frontPort()).isEqualTo(18080);
-        assertThat(stage.pool("cargo").probe()).isEqualTo(new Probe(Probe.Kind.TCP, null, 2 * S, S, 3, 2));
+        assertThat(stage.pool("cargo").probe()).isEqualTo(new Probe(Probe.Kind.TCP, null, S, 400 * MS, 3, 2));
         assertThat(stage.pool("cargo").warmUp()).isEqualTo(new WarmUp(5 * S, 0.1));
     }
 
