@@ -99,6 +99,37 @@ class StreamingTest {
         }
     }
 
+    /** A client that asks on and on without reading must not have its answers, each of one read, pile up here. */
+    @Test
+    void answers_clientSendsAheadAndReadsLate_backendWaitsAndAllArrive() throws Exception {
+        int size = 8 * 1024;
+        int answers = 6_400; // 50 MiB
+        String answer = "HTTP/1.1 200 OK\r\nContent-Length: " + size + "\r\n\r\n" + "x".repeat(size);
+        AtomicLong sent = new AtomicLong();
+        try (FakeBackend backend = FakeBackend.playing(wire -> {
+                    while (wire.readHead() != null) {
+                        wire.send(answer);
+                        sent.addAndGet(size);
+                    }
+                });
+                LivePlay play = LivePlay.of(backend.address());
+                Wire client = play.client()) {
+            CompletableFuture<Void> sending = CompletableFuture.runAsync(() -> {
+                try {
+                    client.send("GET / HTTP/1.1\r\nHost: a\r\n\r\n".repeat(answers));
+                } catch (IOException e) {
+                    throw new UncheckedIOException(e);
+                }
+            });
+            awaitRest(sent);
+            assertThat(sent.get()).isLessThan(MOST_BUFFERED);
+            for (int i = 0; i < answers; i++) {
+                assertThat(client.readAnswer()).endsWith("x");
+            }
+            sending.get(60, TimeUnit.SECONDS);
+        }
+    }
+
     /** Waits until a count that grows has stood still for a while. */
     private static void awaitRest(AtomicLong count) {
         long[] last = {-1};

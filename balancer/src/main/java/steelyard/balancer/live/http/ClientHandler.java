@@ -76,8 +76,9 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         }
     }
 
+    /** A request waits for the answer before it, and for a client that takes answers: none may pile up here. */
     private boolean waitsItsTurn(HttpObject part) {
-        return exchange != null && exchange.requestComplete() && part instanceof HttpRequest;
+        return part instanceof HttpRequest && (exchange != null && exchange.requestComplete() || !channel.isWritable());
     }
 
     private void accept(HttpObject part) {
@@ -140,6 +141,8 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     public void channelWritabilityChanged(ChannelHandlerContext context) {
         if (exchange != null) {
             exchange.clientWritable(channel.isWritable());
+        } else {
+            catchUp();
         }
     }
 
@@ -268,7 +271,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
             return;
         }
         catchingUp = true;
-        while (!closing && !ahead.isEmpty() && (exchange == null || !exchange.requestComplete())) {
+        while (!closing && !ahead.isEmpty() && !waitsItsTurn(ahead.getFirst())) {
             accept(ahead.removeFirst());
         }
         catchingUp = false;
