@@ -3,6 +3,7 @@ package steelyard.balancer.live;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.List;
+import java.util.Locale;
 import java.util.concurrent.BlockingQueue;
 import java.util.concurrent.LinkedBlockingQueue;
 import java.util.concurrent.TimeUnit;
@@ -156,6 +157,41 @@ class ForwardingTest {
                 assertThat(client.readAnswer()).endsWith("\r\n\r\n/" + i);
             }
             assertThat(slow.connections() + quick.connections()).isEqualTo(2);
+        }
+    }
+
+    @Test
+    void forwarding_answer_carriesViaAfterThoseOfOthers() throws Exception {
+        try (FakeBackend backend =
+                        FakeBackend.answering("HTTP/1.1 200 OK\r\nVia: 1.1 inner\r\nContent-Length: 0\r\n\r\n");
+                LivePlay play = LivePlay.of(backend.address())) {
+            assertThat(play.ask("GET / HTTP/1.1\r\nHost: a\r\n\r\n").toLowerCase(Locale.ROOT))
+                    .containsSubsequence("via: 1.1 inner", "via: 1.1 steelyard");
+        }
+    }
+
+    @Test
+    void forwarding_answerOfAnOldBackend_saysSoInVia() throws Exception {
+        try (FakeBackend backend = FakeBackend.answering("HTTP/1.0 200 OK\r\nContent-Length: 0\r\n\r\n");
+                LivePlay play = LivePlay.of(backend.address())) {
+            assertThat(play.ask("GET / HTTP/1.1\r\nHost: a\r\n\r\n")).containsIgnoringCase("via: 1.0 steelyard");
+        }
+    }
+
+    @Test
+    void forwarding_interimAnswer_losesWhatIsForOneHop() throws Exception {
+        try (FakeBackend backend = FakeBackend.answering("HTTP/1.1 103 Early Hints\r\nConnection: x-hop\r\n"
+                        + "X-Hop: 1\r\nLink: </a>\r\n\r\nHTTP/1.1 200 OK\r\nContent-Length: 0\r\n\r\n");
+                LivePlay play = LivePlay.of(backend.address());
+                Wire client = play.client()) {
+            client.send("GET / HTTP/1.1\r\nHost: a\r\n\r\n");
+            assertThat(client.readHead())
+                    .startsWith("HTTP/1.1 103")
+                    .containsIgnoringCase("link: </a>")
+                    .containsIgnoringCase("via: 1.1 steelyard")
+                    .doesNotContainIgnoringCase("connection:")
+                    .doesNotContainIgnoringCase("x-hop");
+            assertThat(client.readHead()).startsWith("HTTP/1.1 200");
         }
     }
 

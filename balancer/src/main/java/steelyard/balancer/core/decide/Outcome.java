@@ -16,7 +16,7 @@ public enum Outcome {
     LATE,
     /** Nothing moved for the idle limit, inside the exchange. */
     STALLED,
-    /** Cut at the limit of a drain, or at a withdrawal. */
+    /** Cut at the limit of a drain. */
     CUT,
     /** The client went away. */
     ABANDONED

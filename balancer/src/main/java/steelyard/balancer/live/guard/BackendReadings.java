@@ -56,7 +56,7 @@ public final class BackendReadings {
         return standing[backend];
     }
 
-    /** Its weight after warm-up, 0 where it may not be picked. */
+    /** What it weighs, ramp and host included, whether or not it may be picked. */
     public double effectiveWeight(int backend) {
         return effectiveWeight[backend];
     }

@@ -19,16 +19,19 @@ final class AnswerHeads {
                         && headers.getAll(HttpHeaderNames.TRANSFER_ENCODING).size() == 1;
     }
 
+    /** Prepares an interim answer: it is a head alone. */
+    static void prepareInterim(HttpResponse response, PoolFront pool) {
+        prepareFields(response, pool);
+    }
+
     /**
      * @param empty whether the answer has no content by its status or method
      * @param oldClient whether the client speaks HTTP/1.0, which knows no chunks
      * @return whether the end of the content will be shown by closing alone
      */
-    static boolean prepare(HttpResponse response, boolean empty, boolean oldClient) {
+    static boolean prepare(HttpResponse response, PoolFront pool, boolean empty, boolean oldClient) {
         HttpHeaders headers = response.headers();
-        Fields.removeHopByHop(headers);
-        headers.remove(Fields.FORWARDED); // not for responses (RFC 7239, 4)
-        response.setProtocolVersion(HttpVersion.HTTP_1_1);
+        prepareFields(response, pool);
         if (!headers.contains(HttpHeaderNames.DATE)) {
             headers.set(HttpHeaderNames.DATE, HttpDate.now());
         }
@@ -47,5 +50,15 @@ final class AnswerHeads {
         }
         headers.set(HttpHeaderNames.TRANSFER_ENCODING, HttpHeaderValues.CHUNKED);
         return false;
+    }
+
+    /** Via is owed in answers by a proxy and left to a gateway (RFC 9110, 7.6.3): the stricter rule is kept. */
+    private static void prepareFields(HttpResponse response, PoolFront pool) {
+        HttpHeaders headers = response.headers();
+        Fields.removeHopByHop(headers);
+        headers.remove(Fields.FORWARDED); // not for responses (RFC 7239, 4)
+        boolean old = response.protocolVersion().minorVersion() == 0;
+        headers.add(HttpHeaderNames.VIA, old ? pool.via10() : pool.via11());
+        response.setProtocolVersion(HttpVersion.HTTP_1_1);
     }
 }

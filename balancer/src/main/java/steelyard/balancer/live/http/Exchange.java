@@ -262,6 +262,7 @@ final class Exchange {
 
     void interim(HttpResponse response) {
         if (!oldClient) {
+            AnswerHeads.prepareInterim(response, pool);
             client.write(response);
             client.write(LastHttpContent.EMPTY_LAST_CONTENT);
         }
@@ -279,7 +280,7 @@ final class Exchange {
 
     private void passOn(HttpResponse response) {
         boolean empty = HttpMethod.HEAD.equals(head.method()) || status == 204 || status == 304;
-        endShownByClosing = AnswerHeads.prepare(response, empty, oldClient);
+        endShownByClosing = AnswerHeads.prepare(response, pool, empty, oldClient);
         closesClient =
                 !keepClient || oldClient || !body.complete() || pool.decider().saysClose(backend);
         passedOn = true;

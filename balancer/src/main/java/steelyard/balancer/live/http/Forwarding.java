@@ -77,7 +77,7 @@ public final class Forwarding {
         onEveryLoop(there -> there.cut(backend));
     }
 
-    /** Closes the fronts, then the client connections, then those to backends, and waits for each. */
+    /** Closes the fronts and the client connections, and waits for both; those to backends close on their loops a moment later. */
     public void close() {
         fronts.forEach(front -> front.close().awaitUninterruptibly());
         clients.close().awaitUninterruptibly();
