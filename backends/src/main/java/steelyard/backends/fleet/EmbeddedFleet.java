@@ -137,7 +137,7 @@ public final class EmbeddedFleet implements Fleet {
             Throwable cause = failures.get(0);
             throw new CannotStart(
                     "backend " + spec.name() + " cannot listen on 127.0.0.1:" + address.getPort() + ": "
-                            + cause.getMessage(),
+                            + cause.getMessage() + "; end what took the port, or play again to get another",
                     cause);
         }
         stubs.add(stub);

@@ -2,6 +2,7 @@ package steelyard.balancer.core.pick;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import java.util.Arrays;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
 
@@ -103,7 +104,7 @@ abstract class PickerContract {
         int members = 9;
         Picker picker = full(members);
         boolean[] in = new boolean[members];
-        java.util.Arrays.fill(in, true);
+        Arrays.fill(in, true);
         for (int call = 0; call < 5_000; call++) {
             int member = random.nextInt(members);
             switch (random.nextInt(5)) {

@@ -27,7 +27,7 @@ class TournamentTest {
     }
 
     @Test
-    void best_oneSingleplace_isThatPlace() {
+    void best_ofASinglePlace_isThatPlace() {
         Tournament tournament = new Tournament(1, (a, b) -> false);
         tournament.enter(0);
 
