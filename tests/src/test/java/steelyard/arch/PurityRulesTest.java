@@ -99,6 +99,24 @@ class PurityRulesTest {
             .callMethodWhere(reads(Set.of("java.lang.Math.random", "java.util.UUID.randomUUID")));
 
     @ArchTest
+    static final ArchRule only_plays_of_a_forecast_has_threads = noClasses()
+            .that()
+            .resideInAPackage("steelyard.harness.forecast")
+            .and()
+            .haveNameNotMatching(".*\\.Plays(\\$.*)?")
+            .should()
+            .dependOnClassesThat(resideInAPackage("java.util.concurrent..").or(type(Thread.class)));
+
+    @ArchTest
+    static final ArchRule a_forecast_reads_no_clock = noClasses()
+            .that()
+            .resideInAPackage("steelyard.harness.forecast")
+            .should()
+            .callMethodWhere(reads(WALL))
+            .orShould()
+            .dependOnClassesThat(type(Clock.class));
+
+    @ArchTest
     static final ArchRule only_the_play_clock_reads_elapsed_time = noClasses()
             .that()
             .doNotHaveFullyQualifiedName(PLAY_CLOCK)

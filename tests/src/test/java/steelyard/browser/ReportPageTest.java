@@ -29,17 +29,6 @@ class ReportPageTest {
     private static final int PHONE = 390;
     private static final int TABLET = 800;
     private static final long MOST_BYTES = 1_500_000;
-    private static final double LEAST_CONTRAST = 4.5;
-
-    /** Whatever matches one of these may not overlap anything else that matches it. */
-    private static final List<String> APART = List.of(
-            ".cue, .second, h3",
-            "h3, .plot",
-            ".strip-name",
-            "#readout tr",
-            "#readout p",
-            "main > *",
-            "h1, h2, .verdict, .fitness, .about, .wide");
 
     @TempDir
     private static @Nullable Path folder;
@@ -94,14 +83,7 @@ class ReportPageTest {
     void page_inEveryView_isQuietFitsAndReads(String run, int width, String scheme) {
         open(run, width, scheme);
 
-        assertThat(browser.complaints()).isEmpty();
-        assertThat(list(PageScripts.REQUESTS)).isEmpty();
-        assertThat(number("return document.documentElement.scrollWidth")).isLessThanOrEqualTo(width);
-        for (String css : APART) {
-            assertThat(list(PageScripts.OVERLAPS, css)).as(css).isEmpty();
-        }
-        assertThat(number("return document.querySelectorAll('main *').length")).isGreaterThan(100);
-        assertThat(list(PageScripts.FAINT_TEXT, LEAST_CONTRAST)).isEmpty();
+        PageLooks.assertGood(browser, width);
     }
 
     @Test
@@ -114,7 +96,7 @@ class ReportPageTest {
         browser.open(faulty, DESK, "light");
 
         assertThat(list(PageScripts.OVERLAPS, ".cue")).isEqualTo(List.of("one | two"));
-        assertThat(list(PageScripts.FAINT_TEXT, LEAST_CONTRAST)).isEqualTo(List.of("one 2.85"));
+        assertThat(list(PageScripts.FAINT_TEXT, PageLooks.LEAST_CONTRAST)).isEqualTo(List.of("one 2.85"));
         assertThat(number("return document.documentElement.scrollWidth")).isGreaterThan(DESK);
         assertThat(browser.complaints()).hasSize(1);
     }

@@ -22,7 +22,7 @@ import steelyard.harness.record.RunHead;
 import steelyard.harness.report.Report;
 
 /** A small drill, and forecasts of it. */
-final class Small {
+public final class Small {
     static final String TEXT = """
             drill: A small one
             about: Two backends, one dies and comes back.
@@ -55,13 +55,13 @@ final class Small {
         return read(TEXT);
     }
 
-    static Drill read(String text) {
+    public static Drill read(String text) {
         Parsed<Drill> parsed = DrillReader.read("drill", text);
         return parsed.value().orElseThrow(() -> new AssertionError(parsed.problems()));
     }
 
     /** Plays a series into a folder, as the command does. */
-    static Played record(Series series, int threads, Path folder) throws Exception {
+    public static Played record(Series series, int threads, Path folder) throws Exception {
         return record(series, threads, folder, (plays, play) -> {});
     }
 
