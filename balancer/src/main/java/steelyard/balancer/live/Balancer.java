@@ -158,12 +158,12 @@ public final class Balancer implements AutoCloseable {
         decider.change((core, now) -> core.withdraw(backend, now));
     }
 
-    /** Sets the weight of a backend. */
+    /** Sets the weight of a backend, from 0 to a million; another one is an {@link IllegalArgumentException}. */
     public void reweigh(int backend, int weight) {
         decider.change((core, now) -> core.reweigh(backend, weight, now));
     }
 
-    /** Sets the weight of a host. */
+    /** Sets the weight of a host, from 0 to a million; another one is an {@link IllegalArgumentException}. */
     public void reweighHost(int host, int weight) {
         decider.change((core, now) -> core.reweighHost(host, weight, now));
     }

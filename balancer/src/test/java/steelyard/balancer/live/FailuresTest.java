@@ -8,6 +8,8 @@ import java.util.List;
 import java.util.concurrent.CountDownLatch;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.ValueSource;
 import steelyard.balancer.core.decide.Outcome;
 
 /** What a client sees, and what is reported, when the backend or the client fails. */
@@ -169,6 +171,27 @@ class FailuresTest {
                 Wire client = play.client()) {
             client.send("POST / HTTP/1.1\r\nHost: a\r\nContent-Length: 10\r\n\r\nhel");
             assertThat(client.readToEnd()).startsWith("HTTP/1.1 408 ");
+            assertThat(play.decisions.outcomes()).containsExactly(Outcome.ABANDONED);
+        }
+    }
+
+    /** What is no chunk of RFC 9112, 7.1; the long one is 2^64 + 5. */
+    @ParameterizedTest
+    @ValueSource(
+            strings = {
+                "g\r\n",
+                "0x5\r\nhello\r\n0\r\n\r\n",
+                "-1\r\nhello\r\n0\r\n\r\n",
+                " 5\r\nhello\r\n0\r\n\r\n",
+                "5\r\nhello0\r\n\r\n",
+                "10000000000000005\r\nhello\r\n0\r\n\r\n",
+            })
+    void client_sendsWhatIsNoChunk_is400AndAbandoned(String content) throws Exception {
+        try (FakeBackend backend = silent();
+                LivePlay play = LivePlay.of(pool -> pool.patience(10, 30, 5), backend.address());
+                Wire client = play.client()) {
+            client.send("POST / HTTP/1.1\r\nHost: a\r\nTransfer-Encoding: chunked\r\n\r\n" + content + GET);
+            assertThat(client.readToEnd()).startsWith("HTTP/1.1 400 ").containsOnlyOnce("HTTP/1.1");
             assertThat(play.decisions.outcomes()).containsExactly(Outcome.ABANDONED);
         }
     }

@@ -326,14 +326,21 @@ public final class Decider {
         reschedule(backend);
     }
 
-    /** Sets a backend's weight, from 0 to {@link BackendSettings#MOST_WEIGHT}. */
+    /**
+     * Sets a backend's weight.
+     *
+     * @param weight from 0 to {@link BackendSettings#MOST_WEIGHT}
+     * @throws IllegalArgumentException for another one; nothing changes then
+     */
     public void reweigh(int backend, int weight, long nowNanos) {
+        requireWeight(weight);
         pools[poolOf[backend]].reweigh(member(backend), weight, nowNanos);
         sink.reweighed(nowNanos, false, backend, weight);
     }
 
-    /** Sets a host's weight, from 0 to {@link BackendSettings#MOST_WEIGHT}. */
+    /** Sets a host's weight; see {@link #reweigh}. */
     public void reweighHost(int host, int weight, long nowNanos) {
+        requireWeight(weight);
         hostWeights[host] = weight;
         firstPlaces.weigh(host, weight);
         againPlaces.weigh(host, weight);
@@ -380,6 +387,13 @@ public final class Decider {
     }
 
     // --- inside -----------------------------------------------------------------------------------------------------
+
+    private static void requireWeight(int weight) {
+        if (weight < 0 || weight > BackendSettings.MOST_WEIGHT) {
+            throw new IllegalArgumentException(
+                    "a weight is from 0 to " + BackendSettings.MOST_WEIGHT + ", not " + weight);
+        }
+    }
 
     private int member(int backend) {
         return backend - firstOfPool[poolOf[backend]];

@@ -2,6 +2,7 @@ package steelyard.balancer.live.http;
 
 import io.netty.handler.codec.http.DefaultHttpHeadersFactory;
 import io.netty.handler.codec.http.HttpDecoderConfig;
+import io.netty.handler.codec.http.HttpMessage;
 import io.netty.handler.codec.http.HttpRequestDecoder;
 
 /** Limits of the decoders: a request line of 8 KiB (RFC 9112, 3, asks for 8000 octets), a header section of 32 KiB. */
@@ -13,7 +14,15 @@ final class Codecs {
     private Codecs() {}
 
     static HttpRequestDecoder requests() {
-        return new HttpRequestDecoder(config());
+        return new HttpRequestDecoder(config()) {
+            @Override
+            protected HttpMessage createMessage(String[] line) throws Exception {
+                if (!line[2].startsWith("HTTP/")) { // the decoder itself would take small letters
+                    throw new IllegalArgumentException("a version is written in capitals (RFC 9112, 2.3)");
+                }
+                return super.createMessage(line);
+            }
+        };
     }
 
     static BackendDecoder answers(Runnable bytesCame) {

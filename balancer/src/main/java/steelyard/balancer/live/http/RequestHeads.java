@@ -70,8 +70,11 @@ final class RequestHeads {
     /** A target in absolute form names the host, and wins over the Host field (RFC 9112, 3.2.2). */
     private static @Nullable OwnAnswer originForm(HttpRequest request, HttpHeaders headers) {
         String target = request.uri();
-        if (target.startsWith("/") || target.equals("*")) {
+        if (target.startsWith("/")) {
             return null;
+        }
+        if (target.equals("*")) { // of a whole server, which only OPTIONS asks about (RFC 9112, 3.2.4)
+            return HttpMethod.OPTIONS.equals(request.method()) ? null : OwnAnswer.FAULTY;
         }
         if (!target.toLowerCase(Locale.ROOT).startsWith("http://")) {
             return OwnAnswer.FAULTY;

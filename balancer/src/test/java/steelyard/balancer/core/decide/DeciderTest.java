@@ -208,6 +208,21 @@ class DeciderTest {
         assertThat(decider.entitledShare(1, 5)).isEqualTo(0.75);
     }
 
+    @ParameterizedTest
+    @ValueSource(ints = {-1, BackendSettings.MOST_WEIGHT + 1})
+    void reweigh_outOfRange_isRefusedAndChangesNothing(int weight) {
+        Decider decider = decider(Stand.of(Method.STRIDE, 2));
+
+        assertThatThrownBy(() -> decider.reweigh(1, weight, 5))
+                .isInstanceOf(IllegalArgumentException.class)
+                .hasMessageContaining(String.valueOf(weight));
+        assertThatThrownBy(() -> decider.reweighHost(1, weight, 5))
+                .isInstanceOf(IllegalArgumentException.class)
+                .hasMessageContaining(String.valueOf(weight));
+        assertThat(decider.weight(1)).isEqualTo(1);
+        assertThat(decider.hostWeight(1)).isEqualTo(8);
+    }
+
     @Test
     void entitledShare_whileWarming_followsTheRamp() {
         Decider decider = decider(Stand.of(Method.STRIDE, 2).warmUp(1_000, 0.1));

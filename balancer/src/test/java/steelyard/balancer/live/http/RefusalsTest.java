@@ -143,6 +143,7 @@ class RefusalsTest {
                 "Content-Length: -1",
                 "Content-Length: 0x5",
                 "Content-Length: 5 5",
+                "Content-Length:",
                 "Content-Length: 5a",
                 "Content-Length: 5,6",
                 "Content-Length: 5\r\nContent-Length: 6",
@@ -166,6 +167,10 @@ class RefusalsTest {
                 "HELO x\r\n\r\n",
                 "GET / HTTP/1.1\r\nHost: a\r\nX: a\0b\r\n\r\n",
                 "GET ftp://a/ HTTP/1.1\r\nHost: a\r\n\r\n",
+                "GET * HTTP/1.1\r\nHost: a\r\n\r\n",
+                "GET /a b HTTP/1.1\r\nHost: a\r\n\r\n",
+                "GET / http/1.1\r\nHost: a\r\n\r\n",
+                "GET / HTTP/1.1\r\nHost: a\r\nX: a\rb\r\n\r\n",
                 "OPTIONS / HTTP/1.1\r\nHost: a\r\nMax-Forwards: x\r\n\r\n",
             })
     void head_faulty_is400(String request) {
