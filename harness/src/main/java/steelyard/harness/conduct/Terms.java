@@ -27,7 +27,7 @@ final class Terms {
                 Arrays.fill(ofMember, NOBODY);
                 ofMember[Cue.Kind.KILL.ordinal()] = kill;
             }
-            case REVIVE -> Arrays.fill(ofMember, NOBODY);
+            case REVIVE -> revived(ofMember);
             case SLOW, FAIL, HANG, REFUSE, KILL, FAIL_PROBE, FLAP_PROBE, SURGE -> ofMember[kind.ordinal()] = number;
             case REWEIGH, DRAIN, ADMIT, WITHDRAW -> {
                 // Never ended by time.
@@ -42,6 +42,17 @@ final class Terms {
 
     /** Its end was carried out. */
     void ended(Cue.Kind kind, int member) {
-        holder[member][kind.ordinal()] = NOBODY;
+        if (kind == Cue.Kind.KILL) {
+            revived(holder[member]);
+        } else {
+            holder[member][kind.ordinal()] = NOBODY;
+        }
+    }
+
+    /** What was killed starts again without any fault; what runs is left as it is. */
+    private static void revived(int[] ofMember) {
+        if (ofMember[Cue.Kind.KILL.ordinal()] != NOBODY) {
+            Arrays.fill(ofMember, NOBODY);
+        }
     }
 }

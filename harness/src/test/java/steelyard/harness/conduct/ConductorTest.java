@@ -139,6 +139,26 @@ class ConductorTest {
         assertThat(notSent()).contains("change 0 Revive[]");
     }
 
+    /** To revive a backend that runs changes nothing, so its fault still has its end to come. */
+    @Test
+    void end_afterAReviveOfARunningOne_stillHeals() {
+        Drill drill = drill("  - {at: 1s, slow: fulmar, factor: 2, for: 2s}\n  - {at: 2s, revive: fulmar}");
+        play(conductor(drill), 4 * SECOND);
+        assertThat(notSent())
+                .endsWith("change 0 Heal[fault=SLOW]", applied(drill.cues().get(0), 3_000, "END"));
+    }
+
+    /** A backend that starts again has no fault left. */
+    @Test
+    void end_afterTheEndOfAKill_isNoEventAnyMore() {
+        Drill drill = drill("""
+                  - {at: 1s, slow: fulmar, factor: 2, for: 3s}
+                  - {at: 2s, kill: fulmar, for: 1s}
+                """);
+        play(conductor(drill), 5 * SECOND);
+        assertThat(notSent()).endsWith("change 0 Revive[]", applied(drill.cues().get(1), 3_000, "END"));
+    }
+
     @Test
     void surge_bendsTheArrivalsFromWhenItWasDue_andEnds() {
         // 10/s with the first at 50 ms; from 1 s to 2 s three times as many; the poll that finds out comes late.
