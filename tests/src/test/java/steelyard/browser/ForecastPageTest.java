@@ -112,7 +112,7 @@ class ForecastPageTest {
         assertThat(text(".kicker")).startsWith("Forecast by 7 plays in virtual time · 60 s each · seeds 1 to 7");
         assertThat(text(".verdict")).startsWith("Met: all 6 expectations held in at least 90");
         assertThat(text("#expectations thead")).contains("Held in", "95 % confidence");
-        assertThat(text("#expectations tbody tr")).contains("100.0 %", "59.0 % to 100.0 %", "met");
+        assertThat(text("#expectations tbody tr")).contains("100 %", "59 % to 100 %", "met");
         browser.run("document.querySelectorAll('details').forEach(each => each.open = true)");
         assertThat(text(".changes tbody tr")).contains("fulmar up down misses 100.0");
     }

@@ -31,12 +31,14 @@ public record Foreseen(
         return Double.isNaN(spread.median()) ? gaps.commonest() : words(spread.median());
     }
 
-    /** The 90 % band in words: {@code 2.1 s to 3.02 s}; empty when no play has a value. */
+    /** The 90 % band in words: {@code 2.1 s to 3.02 s}, {@code always}; empty when no play has a value. */
     public String band() {
         if (Double.isNaN(spread.median())) {
             return "";
         }
-        return spread.constant() ? "always" : words(spread.low90()) + " to " + words(spread.high90());
+        return spread.constant() && spread.undefined() == 0
+                ? "always"
+                : words(spread.low90()) + " to " + words(spread.high90());
     }
 
     /** Median and band in words: {@code 2.61 s (2.1 s to 3.02 s)}. */

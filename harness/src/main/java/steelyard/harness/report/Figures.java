@@ -27,7 +27,12 @@ final class Figures {
     }
 
     static String plainSeconds(double seconds) {
-        String text = String.format(Locale.ROOT, "%.1f", seconds);
+        return trimmed(seconds);
+    }
+
+    /** One decimal, unless it is zero. */
+    static String trimmed(double value) {
+        String text = String.format(Locale.ROOT, "%.1f", value);
         return text.endsWith(".0") ? text.substring(0, text.length() - 2) : text;
     }
 }

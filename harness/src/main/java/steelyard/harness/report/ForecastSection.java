@@ -60,11 +60,16 @@ final class ForecastSection {
     }
 
     private static String share(@Nullable HeldRow held) {
-        return held == null ? "" : Figures.percent(held.share()) + " %";
+        return held == null ? "" : percent(held.share());
     }
 
     private static String interval(@Nullable HeldRow held) {
-        return held == null ? "" : Figures.percent(held.low()) + " % to " + Figures.percent(held.high()) + " %";
+        return held == null ? "" : percent(held.low()) + " to " + percent(held.high());
+    }
+
+    /** Without a decimal that is zero, as the sentence of the verdict has it. */
+    private static String percent(double share) {
+        return Figures.trimmed(share * 100) + " %";
     }
 
     private static String outcome(FindingRow each) {
@@ -79,7 +84,7 @@ final class ForecastSection {
                 : "";
         return "<p class=\"hint\">"
                 + Html.text("An expectation is met when it holds in at least "
-                        + Figures.percent(forecast.hold()) + " % of plays. Bands are " + forecast.quantiles() + "; "
+                        + percent(forecast.hold()) + " of plays. Bands are " + forecast.quantiles() + "; "
                         + forecast.interval() + "." + bands)
                 + "</p>\n";
     }

@@ -1,0 +1,33 @@
+package steelyard.harness.cli;
+
+import static org.assertj.core.api.Assertions.assertThat;
+
+import java.util.List;
+import org.junit.jupiter.api.Test;
+
+class TextTableTest {
+    private static final List<String> HEAD = List.of("measure", "median", "");
+    private static final List<List<String>> ROWS =
+            List.of(List.of("failed, whole play", "0.2 %", "met"), List.of("cut", "12", "not met"));
+
+    @Test
+    void table_thatFits_hasItsNumbersToTheRight() {
+        assertThat(TextTable.lines(HEAD, ROWS, 80))
+                .containsExactly(
+                        "measure             median",
+                        "failed, whole play   0.2 %  met",
+                        "cut                     12  not met");
+    }
+
+    @Test
+    void table_thatIsTooWide_isStacked() {
+        assertThat(TextTable.lines(HEAD, ROWS, 24))
+                .containsExactly(
+                        "failed, whole play",
+                        "  median  0.2 %",
+                        "          met",
+                        "cut",
+                        "  median  12",
+                        "          not met");
+    }
+}
