@@ -18,12 +18,18 @@ final class Problems {
     }
 
     void add(Place place, String message, String remedy) {
-        refused = true;
+        if (!refused) {
+            // A notice on a text with problems is often their mere consequence.
+            found.clear();
+            refused = true;
+        }
         keep(Problem.Severity.PROBLEM, place, message, remedy);
     }
 
     void notice(Place place, String message, String remedy) {
-        keep(Problem.Severity.NOTICE, place, message, remedy);
+        if (!refused) {
+            keep(Problem.Severity.NOTICE, place, message, remedy);
+        }
     }
 
     private void keep(Problem.Severity severity, Place place, String message, String remedy) {
@@ -40,10 +46,6 @@ final class Problems {
     /** The problems in the order of the file; the notices only where there is no problem. */
     List<Problem> inOrder() {
         List<Problem> sorted = new ArrayList<>(found);
-        if (refused) {
-            // A notice on a file with problems is often their mere consequence.
-            sorted.removeIf(problem -> problem.severity() == Problem.Severity.NOTICE);
-        }
         sorted.sort(Comparator.comparingInt(Problem::line).thenComparingInt(Problem::column));
         return sorted;
     }

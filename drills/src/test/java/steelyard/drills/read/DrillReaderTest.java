@@ -9,6 +9,8 @@ import java.nio.file.Path;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
+import java.util.stream.Collectors;
+import java.util.stream.IntStream;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import steelyard.drills.model.Backend;
@@ -94,6 +96,15 @@ class DrillReaderTest {
     void read_ofAnEmptyRetry_fillsInTheDefaults() {
         Drill drill = read(LEAST.replace("method: round-robin", "method: round-robin, retry: {}"));
         assertThat(drill.stage().pool("seats").retry()).isEqualTo(new Retry(1, 0.4, 10, Set.of()));
+    }
+
+    /** Only so many lines are kept, and a problem must not be lost among notices that came before it. */
+    @Test
+    void read_ofAProblemAfterVeryManyNotices_saysTheProblem() {
+        String idle = IntStream.range(0, 300).mapToObj(i -> "quay-" + i + ": ").collect(Collectors.joining(", "));
+        String text =
+                LEAST.replace("stage: {", "stage: {hosts: {" + idle + "}, ").replace("10/s", "10");
+        assertThat(shown(text)).singleElement().asString().contains("'10' for 'rate' has no unit");
     }
 
     @Test
