@@ -1,6 +1,7 @@
 package steelyard.drills.read;
 
 import java.io.IOException;
+import java.io.InputStream;
 import java.nio.ByteBuffer;
 import java.nio.charset.CharacterCodingException;
 import java.nio.charset.StandardCharsets;
@@ -162,7 +163,14 @@ public final class DrillReader {
                 tooLarge(size, problems);
                 return null;
             }
-            byte[] bytes = Files.readAllBytes(file);
+            byte[] bytes;
+            try (InputStream in = Files.newInputStream(file)) {
+                bytes = in.readNBytes(MOST_BYTES + 1); // a pipe or a device holds more than its size says
+            }
+            if (bytes.length > MOST_BYTES) {
+                tooLarge(bytes.length, problems);
+                return null;
+            }
             return StandardCharsets.UTF_8
                     .newDecoder()
                     .decode(ByteBuffer.wrap(bytes))

@@ -10,6 +10,8 @@ import java.util.Collections;
 import java.util.List;
 import java.util.stream.Stream;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.condition.EnabledOnOs;
+import org.junit.jupiter.api.condition.OS;
 import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.MethodSource;
@@ -77,6 +79,14 @@ class BrokenDrillTest {
                         .hasToString(
                                 file + ":1:1: the file holds 10000 kB; a drill holds at most 1048 kB; backends with"
                                         + " times: 40 save lines"));
+    }
+
+    @Test
+    @EnabledOnOs(OS.LINUX)
+    void read_ofADeviceWithoutEnd_isRefusedAtTheLimit() {
+        assertThat(DrillReader.read(Path.of("/dev/zero")).problems())
+                .singleElement()
+                .satisfies(problem -> assertThat(problem.message()).startsWith("the file holds 1048 kB"));
     }
 
     @Test
