@@ -3,7 +3,10 @@ package steelyard.harness.cli;
 import java.util.ArrayList;
 import java.util.List;
 
-/** Rows under a head: the first column and the one without a head to the left, the others to the right. */
+/**
+ * Rows under a head: the first column and the one without a head, which is the outcome, to the left, the others to the
+ * right.
+ */
 final class TextTable {
     private static final String GAP = "  ";
 
@@ -38,9 +41,10 @@ final class TextTable {
         int widest = head.stream().skip(1).mapToInt(String::length).max().orElse(0);
         List<String> lines = new ArrayList<>();
         for (List<String> row : rows) {
-            lines.addAll(VerdictText.wrapped("", row.get(0), width));
+            String outcome = head.indexOf("") < 0 ? "" : row.get(head.indexOf("")) + ": ";
+            lines.addAll(VerdictText.wrapped("", outcome + row.get(0), width));
             for (int column = 1; column < head.size(); column++) {
-                if (!row.get(column).isEmpty()) {
+                if (!head.get(column).isEmpty() && !row.get(column).isEmpty()) {
                     lines.add(GAP + VerdictText.pad(head.get(column), widest, false) + GAP + row.get(column));
                 }
             }

@@ -1,5 +1,6 @@
 package steelyard.harness.judge;
 
+import java.util.Arrays;
 import java.util.Set;
 import steelyard.harness.record.Cast;
 import steelyard.harness.record.Sample;
@@ -14,7 +15,9 @@ final class PeakUtilisation extends Meter {
 
     private final Window window;
     private final int[] members;
+    /** By place among the members, as the columns of {@link #busyNanos} are: what a stage of thousands needs no more of. */
     private final int[] workers;
+
     private final long[] sampleNanos = new long[SECOND + 1];
     private final long[][] busyNanos;
     private int samples;
@@ -23,8 +26,10 @@ final class PeakUtilisation extends Meter {
     PeakUtilisation(Window window, int[] members, Cast cast) {
         this.window = window;
         this.members = members;
-        workers = cast.backends().stream().mapToInt(b -> b.serves().workers()).toArray();
-        busyNanos = new long[SECOND + 1][workers.length];
+        workers = Arrays.stream(members)
+                .map(backend -> cast.backends().get(backend).serves().workers())
+                .toArray();
+        busyNanos = new long[SECOND + 1][members.length];
         if (window.fromNanos() == 0) {
             samples = 1; // All were idle at the start of the play, and no sample says so.
         }
@@ -44,7 +49,9 @@ final class PeakUtilisation extends Meter {
         }
         int place = samples % (SECOND + 1);
         sampleNanos[place] = atNanos;
-        System.arraycopy(sample.busyNanos, 0, busyNanos[place], 0, workers.length);
+        for (int member = 0; member < members.length; member++) {
+            busyNanos[place][member] = sample.busyNanos[members[member]];
+        }
         samples++;
         boolean shortWindow = window.toNanos() - window.fromNanos() < SECOND * Slice.NANOS;
         if (shortWindow && samples > 1) {
@@ -62,9 +69,9 @@ final class PeakUtilisation extends Meter {
 
     private void stretch(int begin, int end) {
         long spanNanos = sampleNanos[end] - sampleNanos[begin];
-        for (int backend : members) {
-            double busy = (double) (busyNanos[end][backend] - busyNanos[begin][backend]);
-            double share = Math.min(1, busy / spanNanos / workers[backend]);
+        for (int member = 0; member < members.length; member++) {
+            double busy = (double) (busyNanos[end][member] - busyNanos[begin][member]);
+            double share = Math.min(1, busy / spanNanos / workers[member]);
             peak = Double.isNaN(peak) ? share : Math.max(peak, share);
         }
     }

@@ -20,14 +20,8 @@ class TextTableTest {
     }
 
     @Test
-    void table_thatIsTooWide_isStacked() {
+    void table_thatIsTooWide_isStackedBehindItsOutcomes() {
         assertThat(TextTable.lines(HEAD, ROWS, 24))
-                .containsExactly(
-                        "failed, whole play",
-                        "  median  0.2 %",
-                        "          met",
-                        "cut",
-                        "  median  12",
-                        "          not met");
+                .containsExactly("met: failed, whole play", "  median  0.2 %", "not met: cut", "  median  12");
     }
 }
