@@ -9,8 +9,8 @@ import java.util.Optional;
 
 /** The bundled drills. Stateless; any thread may call. */
 public final class DrillLibrary {
-    private static final List<String> NAMES =
-            List.of("drain-for-patching", "lose-one-of-three", "reweigh-live", "slow-one", "uneven-hosts");
+    private static final List<String> NAMES = List.of(
+            "drain-for-patching", "lose-one-of-three", "reweigh-live", "slow-one", "uneven-hosts", "which-probe");
 
     private DrillLibrary() {}
 

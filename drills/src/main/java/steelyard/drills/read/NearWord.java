@@ -5,17 +5,17 @@ import java.util.Locale;
 import org.jspecify.annotations.Nullable;
 
 /** Finds the word that was probably meant. */
-final class NearWord {
+public final class NearWord {
     private NearWord() {}
 
     /** "did you mean 'weight'?", or what is given when no word is close. */
-    static String remedy(String written, Collection<String> known, String otherwise) {
+    public static String remedy(String written, Collection<String> known, String otherwise) {
         String near = nearest(written, known);
         return near == null ? otherwise : "did you mean '" + near + "'?";
     }
 
     /** The closest of the known words, or null when none is close: a third of the letters may differ, at most 3. */
-    static @Nullable String nearest(String written, Collection<String> known) {
+    public static @Nullable String nearest(String written, Collection<String> known) {
         String word = plain(written);
         int most = Math.min(3, Math.max(1, word.length() / 3));
         String best = null;

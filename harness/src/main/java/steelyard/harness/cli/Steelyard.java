@@ -29,6 +29,8 @@ import picocli.CommandLine.Spec;
         subcommands = {
             RehearseCommand.class,
             ForecastCommand.class,
+            TuneCommand.class,
+            TuneCommand.class,
             CheckCommand.class,
             DrillsCommand.class,
             CompletionCommand.class,

@@ -37,8 +37,12 @@ final class Assets {
 
     /** The skeleton with its slots filled, in one pass, so that no value is read as a slot. */
     static String page(Map<String, String> values) throws IOException {
+        return page("report.html", values);
+    }
+
+    static String page(String skeleton, Map<String, String> values) throws IOException {
         StringBuilder page = new StringBuilder();
-        Matcher slot = SLOT.matcher(own("report.html"));
+        Matcher slot = SLOT.matcher(own(skeleton));
         while (slot.find()) {
             String value = values.get(slot.group(1));
             if (value == null) {
@@ -49,7 +53,7 @@ final class Assets {
         return slot.appendTail(page).toString();
     }
 
-    private static String own(String name) throws IOException {
+    static String own(String name) throws IOException {
         return read("/steelyard/harness/report/" + name);
     }
 

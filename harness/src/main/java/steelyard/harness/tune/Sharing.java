@@ -1,0 +1,30 @@
+package steelyard.harness.tune;
+
+import java.util.IdentityHashMap;
+import java.util.Map;
+import org.snakeyaml.engine.v2.nodes.Node;
+import org.snakeyaml.engine.v2.nodes.NodeTuple;
+
+/** Which nodes of a text are reached on more than one way, through aliases. */
+final class Sharing {
+    private final Map<Node, Integer> ways = new IdentityHashMap<>();
+
+    Sharing(Node root) {
+        count(root);
+    }
+
+    /** Below a node that was counted already nothing is counted again, so that aliases of aliases cost nothing. */
+    private void count(Node node) {
+        if (ways.merge(node, 1, Integer::sum) > 1) {
+            return;
+        }
+        Yaml.items(node).forEach(this::count);
+        for (NodeTuple each : Yaml.entries(node)) {
+            count(each.getValueNode());
+        }
+    }
+
+    boolean shared(Node node) {
+        return ways.getOrDefault(node, 0) > 1;
+    }
+}
