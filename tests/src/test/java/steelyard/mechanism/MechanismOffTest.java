@@ -35,7 +35,12 @@ class MechanismOffTest {
                 off("drain-for-patching", "warm-up", " *warm-up: .*\n", "", "share of fulmar"),
                 off("reweigh-live", "method", "weighted-round-robin", "round-robin", "share of petrel, from 1 s"),
                 off("reweigh-live", "reweigh", "weight: 12, as", "weight: 3, as", "share of fulmar, from 21 s"),
-                off("uneven-hosts", "host weights", "weights: host", "weights: backend", "share of host south-quay"));
+                off("uneven-hosts", "host weights", "weights: host", "weights: backend", "share of host south-quay"),
+                off("which-probe", "period", "every: 500ms", "every: 3s", "failed"),
+                off("which-probe", "period", "every: 500ms", "every: 3s", "detected-in of fulmar"),
+                off("which-probe", "limit", "within: 250ms", "within: 2500ms", "detected-in of fulmar"),
+                off("which-probe", "misses", "misses: 3", "misses: 8", "failed"),
+                off("which-probe", "misses", "misses: 3", "misses: 1", "standing-changes"));
     }
 
     private static Arguments off(

@@ -30,7 +30,6 @@ import picocli.CommandLine.Spec;
             RehearseCommand.class,
             ForecastCommand.class,
             TuneCommand.class,
-            TuneCommand.class,
             CheckCommand.class,
             DrillsCommand.class,
             CompletionCommand.class,

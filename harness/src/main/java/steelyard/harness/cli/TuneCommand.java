@@ -35,8 +35,8 @@ import steelyard.harness.tune.Variation;
             "A measure is named by the first words of what is measured: failed, latency 99%%, share of fulmar. "
                     + "Expectations of the drill come before measures of the whole play.",
             "Cells are ranked by their means. A cell is non-dominated when no other is better on one measure and at "
-                    + "least as good on the other. Of these, and where all expectations hold, the one is taken whose "
-                    + "larger loss to the best of them is the smallest."
+                    + "least as good on the other. One is taken among the cells where all expectations hold: of those "
+                    + "that no other such cell beats, the one whose larger loss to the best non-dominated cell is the smallest."
         })
 final class TuneCommand implements Callable<Integer> {
     private static final int MOST_PLAYS = 100_000;

@@ -1,7 +1,6 @@
 package steelyard.harness.report;
 
 import steelyard.drills.model.Measure.Unit;
-import steelyard.harness.record.Wording;
 import steelyard.harness.tune.Result.Axis;
 import steelyard.harness.tune.TuneWords;
 
@@ -14,7 +13,7 @@ import steelyard.harness.tune.TuneWords;
 record Shown(double value, String words, Unit unit) {
 
     static Shown of(Axis axis) {
-        Unit unit = TuneWords.meanUnit(axis.figure().unit());
+        Unit unit = axis.figure().unit();
         String word = axis.figure().text();
         return axis.fromMiddle()
                 ? new Shown(axis.cost(), word + ": distance from the middle of its bound", unit)
@@ -22,6 +21,6 @@ record Shown(double value, String words, Unit unit) {
     }
 
     String words(double other) {
-        return Wording.value(unit, other);
+        return TuneWords.mean(unit, other);
     }
 }

@@ -6,6 +6,7 @@ import java.util.List;
 import java.util.Optional;
 import java.util.function.Function;
 import java.util.stream.Collectors;
+import java.util.stream.IntStream;
 import steelyard.drills.model.Measure.Unit;
 import steelyard.harness.record.Wording;
 import steelyard.harness.tune.Result.Axis;
@@ -13,9 +14,10 @@ import steelyard.harness.tune.Result.Axis;
 /**
  * The settings that one would take, and why.
  *
- * <p>Those are looked at that no other beats and whose expectations all hold in enough plays. On each of the two
- * measures a cell loses something to the best of them: nothing for the best, all for the worst. The one is taken whose
- * larger loss is the smallest (minimax regret, Savage 1951); among equals the one with the smaller loss on what is wanted.
+ * <p>Those are looked at whose expectations all hold together in enough plays, and of these the ones that no other of
+ * them beats. On each of the two measures a cell loses something to the best non-dominated cell of the whole grid: nothing
+ * at the best, all at the worst of them. The one is taken whose larger loss is the smallest (minimax regret, Savage 1951);
+ * among equals the one with the smaller loss on what is wanted.
  *
  * @param taken empty when no cell's expectations hold
  * @param reason one sentence
@@ -35,14 +37,20 @@ public record Choice(Optional<Result> taken, String reason, List<Result> ranked,
      * @param hold the share of plays in which all expectations must hold, from 0 to 1
      */
     public static Choice of(List<Result> results, List<Front.Mark> marks, double hold) {
+        List<Result> holding =
+                results.stream().filter(each -> each.holds(hold) && each.fit()).toList();
         List<Result> good = new ArrayList<>();
-        List<Result> rest = new ArrayList<>();
-        for (int at = 0; at < results.size(); at++) {
-            Result result = results.get(at);
-            boolean open = marks.get(at) == Front.Mark.NON_DOMINATED && result.holds(hold) && result.fit();
-            (open ? good : rest).add(result);
+        List<Result> rest = new ArrayList<>(results);
+        for (Result each : holding) {
+            if (holding.stream().noneMatch(other -> Front.beats(other, each))) {
+                good.add(each);
+                rest.remove(each);
+            }
         }
-        Losses losses = Losses.among(good);
+        Losses losses = Losses.among(IntStream.range(0, results.size())
+                .filter(at -> marks.get(at) == Front.Mark.NON_DOMINATED)
+                .mapToObj(results::get)
+                .toList());
         good.sort(Comparator.comparingDouble(losses::larger).thenComparingDouble(losses::ofWant));
         rest.sort(Comparator.comparing((Result each) -> !each.fit())
                 .thenComparing(each -> -Math.min(each.held().share(), hold))
@@ -61,19 +69,19 @@ public record Choice(Optional<Result> taken, String reason, List<Result> ranked,
     }
 
     private static String none(Result best, double hold) {
-        return "None: in no cell that is not beaten all expectations hold in at least " + share(hold)
-                + " of plays; nearest is " + best.cell().words() + " with "
-                + share(best.held().share()) + ".";
+        return "In no cell do all expectations hold together in at least " + share(hold) + " of plays; nearest is "
+                + best.cell().words() + " with " + share(best.held().share()) + ".";
     }
 
     private static String sentence(Result taken, int candidates, Losses losses, double hold) {
-        String all = "whose expectations all hold in at least " + share(hold) + " of plays";
+        String all = "where all expectations hold together in at least " + share(hold) + " of plays";
         if (candidates == 1) {
-            return "It is the only non-dominated cell " + all + ".";
+            return "Of the cells " + all + " it is the only one that no other beats on both measures.";
         }
-        return "Of the " + candidates + " non-dominated cells " + all + " its larger loss is the smallest: "
+        return candidates + " cells " + all
+                + " are beaten by no other such cell; of these its larger loss is the smallest: "
                 + loss(taken.want(), losses.ofWant(taken)) + " and " + loss(taken.against(), losses.ofAgainst(taken))
-                + " of the way from the best of them to the worst.";
+                + " of the way from the best non-dominated cell of the grid to the worst.";
     }
 
     private static String loss(Axis axis, double loss) {
@@ -98,9 +106,12 @@ public record Choice(Optional<Result> taken, String reason, List<Result> ranked,
             return least(results, axis, 1);
         }
 
+        /** With sign -1 the greatest, negated; a cell without values has no say. */
         private static double least(List<Result> results, Function<Result, Axis> axis, int sign) {
             return results.stream()
-                    .mapToDouble(each -> sign * axis.apply(each).cost())
+                    .mapToDouble(each -> axis.apply(each).cost())
+                    .filter(Double::isFinite)
+                    .map(cost -> sign * cost)
                     .min()
                     .orElse(0);
         }
@@ -118,10 +129,10 @@ public record Choice(Optional<Result> taken, String reason, List<Result> ranked,
         }
 
         private static double part(double cost, double best, double worst) {
-            if (!Double.isFinite(worst)) {
-                return Double.isFinite(cost) ? 0 : 1;
+            if (worst == best) {
+                return cost > best ? 1 : 0;
             }
-            return worst == best ? 0 : (cost - best) / (worst - best);
+            return (cost - best) / (worst - best);
         }
     }
 
