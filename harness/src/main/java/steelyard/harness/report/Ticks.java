@@ -7,41 +7,71 @@ import java.util.Arrays;
 import java.util.List;
 
 /**
- * Where a scale is marked: at multiples of 1, 2 or 5 times a power of ten that span all values.
+ * Where a scale is marked: at multiples of 1, 2 or 5 times a power of ten that span all values. A scale whose values are
+ * all above zero and differ by more than {@value #MOST_LINEAR} times is logarithmic.
  *
- * @param from first mark
- * @param to last mark, above the first
+ * @param from where the scale begins
+ * @param to where it ends
  */
-record Ticks(double from, double to, List<Double> list) {
+record Ticks(double from, double to, boolean log, List<Double> list) {
     private static final int MOST = 6;
+    private static final double MOST_LINEAR = 12;
 
     static Ticks of(double... values) {
         double least = Arrays.stream(values).min().orElse(0);
         double most = Arrays.stream(values).max().orElse(1);
-        if (most - least <= Math.abs(most) * 1e-9) {
-            double room = most == 0 ? 1 : Math.abs(most) / 2;
-            least -= most == 0 ? 0 : room;
-            most += room;
+        return least > 0 && most / least > MOST_LINEAR ? log(least, most) : linear(least, most);
+    }
+
+    private static Ticks linear(double least, double most) {
+        double from = least;
+        double to = most;
+        if (to - from <= Math.abs(to) * 1e-9) {
+            double room = to == 0 ? 1 : Math.abs(to) / 2;
+            from -= to == 0 ? 0 : room;
+            to += room;
         }
-        if (least > 0 && least < (most - least) / 2) {
-            least = 0;
+        if (from > 0 && from < (to - from) / 2) {
+            from = 0;
         }
-        BigDecimal step = step((most - least) / (MOST - 1));
-        BigDecimal first =
-                BigDecimal.valueOf(least).divide(step, 0, RoundingMode.FLOOR).multiply(step);
-        List<Double> ticks = new ArrayList<>();
-        BigDecimal at = first;
-        ticks.add(at.doubleValue());
-        while (at.doubleValue() < most && ticks.size() < 3 * MOST) {
+        BigDecimal step = step((to - from) / (MOST - 1));
+        BigDecimal at =
+                BigDecimal.valueOf(from).divide(step, 0, RoundingMode.FLOOR).multiply(step);
+        List<Double> ticks = new ArrayList<>(List.of(at.doubleValue()));
+        while (at.doubleValue() < to && ticks.size() < 3 * MOST) {
             at = at.add(step);
             ticks.add(at.doubleValue());
         }
-        return new Ticks(first.doubleValue(), at.doubleValue(), List.copyOf(ticks));
+        return new Ticks(ticks.get(0), at.doubleValue(), false, List.copyOf(ticks));
     }
 
-    /** The smallest of 1, 2 and 5 times a power of ten that is not smaller. */
+    /** All of 1, 2 and 5 times powers of ten from the last below the least to the first above the most. */
+    private static Ticks log(double least, double most) {
+        List<Double> ticks = new ArrayList<>();
+        boolean sparse = most / least > 2_000;
+        for (int power = exponent(least); power <= exponent(most) + 1; power++) {
+            for (int times : sparse ? new int[] {1} : new int[] {1, 2, 5}) {
+                double value =
+                        BigDecimal.valueOf(times).scaleByPowerOfTen(power).doubleValue();
+                if (!ticks.isEmpty() && value <= least) {
+                    ticks.clear();
+                }
+                ticks.add(value);
+                if (value >= most) {
+                    return new Ticks(ticks.get(0), value, true, List.copyOf(ticks));
+                }
+            }
+        }
+        throw new IllegalStateException("no scale from " + least + " to " + most);
+    }
+
+    private static int exponent(double value) {
+        return (int) StrictMath.floor(StrictMath.log10(value));
+    }
+
+    /** The smallest of 1, 2, 5 and 10 times a power of ten that is not smaller. */
     private static BigDecimal step(double atLeast) {
-        BigDecimal power = BigDecimal.ONE.scaleByPowerOfTen((int) StrictMath.floor(StrictMath.log10(atLeast)));
+        BigDecimal power = BigDecimal.ONE.scaleByPowerOfTen(exponent(atLeast));
         for (int times : new int[] {1, 2, 5}) {
             BigDecimal step = power.multiply(BigDecimal.valueOf(times));
             if (step.doubleValue() >= atLeast) {
@@ -53,6 +83,6 @@ record Ticks(double from, double to, List<Double> list) {
 
     /** Where a value lies on the scale, from 0 to 1. */
     double part(double value) {
-        return (value - from) / (to - from);
+        return log ? StrictMath.log(value / from) / StrictMath.log(to / from) : (value - from) / (to - from);
     }
 }
