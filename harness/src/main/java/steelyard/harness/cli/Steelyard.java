@@ -30,6 +30,7 @@ import picocli.CommandLine.Spec;
             RehearseCommand.class,
             ForecastCommand.class,
             TuneCommand.class,
+            CompareCommand.class,
             CheckCommand.class,
             DrillsCommand.class,
             CompletionCommand.class,

@@ -11,7 +11,7 @@ import org.apache.commons.statistics.interval.Interval;
 import org.apache.commons.statistics.interval.NormalConfidenceInterval;
 
 /**
- * How far a second mean or share lies from a first, with a 95 % interval. Above zero the second is larger.
+ * How far a second mean or share lies from a first, with an interval. Above zero the second is larger.
  *
  * @param size second minus first
  * @param low lower end of the interval
@@ -19,7 +19,8 @@ import org.apache.commons.statistics.interval.NormalConfidenceInterval;
  * @param method how the interval is taken
  */
 public record Difference(double size, double low, double high, Method method) {
-    private static final double ERROR_RATE = 0.05;
+    /** How often an interval may miss, where nothing else is said. */
+    public static final double ERROR_RATE = 0.05;
 
     /** How an interval is taken. */
     public enum Method {
@@ -28,7 +29,9 @@ public record Difference(double size, double low, double high, Method method) {
         /** Difference of two means with variances of their own (Welch 1947). */
         WELCH("Welch's t interval"),
         /** Difference of two shares out of counts: Wilson intervals put together (Newcombe 1998, method 10). */
-        NEWCOMBE("Newcombe's interval of two shares");
+        NEWCOMBE("Newcombe's interval of two shares"),
+        /** A single run beside a forecast: the forecast's band around the run. */
+        BAND("95 % band of the forecast");
 
         private final String words;
 
@@ -47,8 +50,9 @@ public record Difference(double size, double low, double high, Method method) {
      *
      * @param first at least two values
      * @param second as many
+     * @param errorRate how often the interval may miss, above 0 and below 1
      */
-    public static Difference paired(double[] first, double[] second) {
+    public static Difference paired(double[] first, double[] second, double errorRate) {
         if (first.length != second.length || first.length < 2) {
             throw new IllegalArgumentException(first.length + " values beside " + second.length);
         }
@@ -61,12 +65,12 @@ public record Difference(double size, double low, double high, Method method) {
             return new Difference(moments.mean, moments.mean, moments.mean, Method.PAIRED);
         }
         Interval interval = NormalConfidenceInterval.MEAN.fromErrorRate(
-                moments.mean, moments.variance, differences.length, ERROR_RATE);
+                moments.mean, moments.variance, differences.length, errorRate);
         return new Difference(moments.mean, interval.getLowerBound(), interval.getUpperBound(), Method.PAIRED);
     }
 
     /** The difference of the means of values that have nothing to do with each other; at least two on each side. */
-    public static Difference welch(double[] first, double[] second) {
+    public static Difference welch(double[] first, double[] second, double errorRate) {
         Moments one = Moments.of(first);
         Moments two = Moments.of(second);
         double size = two.mean - one.mean;
@@ -78,16 +82,16 @@ public record Difference(double size, double low, double high, Method method) {
                 .with(DataDispersion.HETEROSCEDASTIC)
                 .test(first, second)
                 .getDegreesOfFreedom();
-        double half = TDistribution.of(freedom).inverseSurvivalProbability(ERROR_RATE / 2) * error;
+        double half = TDistribution.of(freedom).inverseSurvivalProbability(errorRate / 2) * error;
         return new Difference(size, size - half, size + half, Method.WELCH);
     }
 
     /** The difference of two shares, each of them so many out of so many, above zero. */
-    public static Difference shares(int first, int ofFirst, int second, int ofSecond) {
+    public static Difference shares(int first, int ofFirst, int second, int ofSecond, double errorRate) {
         double one = (double) first / ofFirst;
         double two = (double) second / ofSecond;
-        Interval around = BinomialConfidenceInterval.WILSON_SCORE.fromErrorRate(ofFirst, first, ERROR_RATE);
-        Interval beside = BinomialConfidenceInterval.WILSON_SCORE.fromErrorRate(ofSecond, second, ERROR_RATE);
+        Interval around = BinomialConfidenceInterval.WILSON_SCORE.fromErrorRate(ofFirst, first, errorRate);
+        Interval beside = BinomialConfidenceInterval.WILSON_SCORE.fromErrorRate(ofSecond, second, errorRate);
         double size = two - one;
         double below = StrictMath.hypot(two - beside.getLowerBound(), around.getUpperBound() - one);
         double above = StrictMath.hypot(beside.getUpperBound() - two, one - around.getLowerBound());

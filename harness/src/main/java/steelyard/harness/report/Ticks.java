@@ -53,11 +53,11 @@ record Ticks(double from, double to, boolean log, List<Double> list) {
             for (int times : sparse ? new int[] {1} : new int[] {1, 2, 5}) {
                 double value =
                         BigDecimal.valueOf(times).scaleByPowerOfTen(power).doubleValue();
-                if (!ticks.isEmpty() && value <= least) {
+                if (!ticks.isEmpty() && value < least) {
                     ticks.clear();
                 }
                 ticks.add(value);
-                if (value >= most) {
+                if (value > most) {
                     return new Ticks(ticks.get(0), value, true, List.copyOf(ticks));
                 }
             }

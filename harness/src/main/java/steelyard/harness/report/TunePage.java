@@ -100,6 +100,8 @@ public final class TunePage {
         for (Variation each : tuned.request().grid().variations()) {
             columns.add(Column.number(each.path(), ""));
         }
+        columns.add(Column.number("All held", "of plays"));
+        columns.add(Column.words("Mark"));
         Result any = tuned.results().get(0);
         for (Axis axis : List.of(any.want(), any.against())) {
             String word = axis.figure().measure().word();
@@ -107,8 +109,6 @@ public final class TunePage {
             columns.add(Column.number(word, "median"));
             columns.add(Column.number(word, "90 % of plays"));
         }
-        columns.add(Column.number("All held", "of plays"));
-        columns.add(Column.words("Mark"));
         Html table = new Html().table("cells", "Every cell, in the order of the grid", columns);
         for (int at = 0; at < tuned.results().size(); at++) {
             table.row(columns, row(tuned.results().get(at), tuned.marks().get(at)));
@@ -122,14 +122,14 @@ public final class TunePage {
         List<String> row = new ArrayList<>();
         row.add(String.valueOf(result.cell().number()));
         row.addAll(result.cell().values().values());
+        row.add(TuneWords.share(result.held().share()));
+        boolean taken = choice.taken().filter(result::equals).isPresent();
+        row.add(!result.fit() ? "unfit to judge" : taken ? mark.word() + ", taken" : mark.word());
         for (Axis axis : List.of(result.want(), result.against())) {
             row.add(TuneWords.mean(axis));
             row.add(TuneWords.median(axis));
             row.add(TuneWords.band90(axis));
         }
-        row.add(TuneWords.share(result.held().share()));
-        boolean taken = choice.taken().filter(result::equals).isPresent();
-        row.add(!result.fit() ? "unfit to judge" : taken ? mark.word() + ", taken" : mark.word());
         return row;
     }
 

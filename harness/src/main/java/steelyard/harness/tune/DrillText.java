@@ -11,6 +11,7 @@ import org.snakeyaml.engine.v2.nodes.MappingNode;
 import org.snakeyaml.engine.v2.nodes.Node;
 import org.snakeyaml.engine.v2.nodes.NodeTuple;
 import steelyard.drills.read.NearWord;
+import steelyard.harness.compare.DrillYaml;
 
 /**
  * The text of a drill, in which a setting named by its path can be given another value. What is not named stays as it
@@ -41,7 +42,7 @@ final class DrillText {
     /** @param text of a drill that was read without problems */
     DrillText(String text) {
         this.text = text;
-        root = Yaml.root(text);
+        root = DrillYaml.root(text);
     }
 
     /**
@@ -62,8 +63,8 @@ final class DrillText {
     }
 
     private static void checkValue(String path, String value) throws TuneRefused {
-        Node alone = Yaml.root("[" + value + "\n]");
-        boolean one = alone != null && Yaml.items(alone).size() == 1;
+        Node alone = DrillYaml.root("[" + value + "\n]");
+        boolean one = alone != null && DrillYaml.items(alone).size() == 1;
         if (!one || value.lines().count() != 1 || value.contains(" #") || value.startsWith("#")) {
             throw new TuneRefused("--vary " + path + ": '" + value + "' is not one value of a drill");
         }
@@ -120,22 +121,22 @@ final class DrillText {
             }
             if (spots.isEmpty()) {
                 known.addAll(TOP);
-                pools.forEach(pool -> known.add(Yaml.key(pool)));
-                backends(pools).forEach(backend -> known.add(Yaml.key(backend)));
+                pools.forEach(pool -> known.add(DrillYaml.key(pool)));
+                backends(pools).forEach(backend -> known.add(DrillYaml.key(backend)));
             }
         }
 
         private List<NodeTuple> pools() {
-            Node stage = Yaml.value(top, "stage");
-            Node pools = stage == null ? null : Yaml.value(stage, "pools");
-            return pools == null ? List.of() : Yaml.entries(pools);
+            Node stage = DrillYaml.value(top, "stage");
+            Node pools = stage == null ? null : DrillYaml.value(stage, "pools");
+            return pools == null ? List.of() : DrillYaml.entries(pools);
         }
 
         private List<NodeTuple> backends(List<NodeTuple> pools) {
             List<NodeTuple> backends = new ArrayList<>();
             for (NodeTuple pool : pools) {
-                Node named = Yaml.value(pool.getValueNode(), "backends");
-                backends.addAll(named == null ? List.of() : Yaml.entries(named));
+                Node named = DrillYaml.value(pool.getValueNode(), "backends");
+                backends.addAll(named == null ? List.of() : DrillYaml.entries(named));
             }
             return backends;
         }
@@ -149,7 +150,7 @@ final class DrillText {
             if (named == null) {
                 return false;
             }
-            String name = Yaml.key(named);
+            String name = DrillYaml.key(named);
             if (path.equals(name)) {
                 throw new TuneRefused(
                         "--vary " + path + " names no setting; write which of its settings, as in " + path + ".weight");
@@ -161,13 +162,13 @@ final class DrillText {
 
         private void follow(Node node, String rest) throws TuneRefused {
             checkAlone(node);
-            if (!Yaml.items(node).isEmpty()) {
+            if (!DrillYaml.items(node).isEmpty()) {
                 followItems(node, rest);
                 return;
             }
-            NodeTuple entry = longest(Yaml.entries(node), rest);
+            NodeTuple entry = longest(DrillYaml.entries(node), rest);
             if (entry != null) {
-                String key = Yaml.key(entry);
+                String key = DrillYaml.key(entry);
                 Node value = entry.getValueNode();
                 if (key.equals(rest)) {
                     add(Spot.replacing(text, value), value);
@@ -180,7 +181,7 @@ final class DrillText {
         }
 
         private void miss(Node node, String rest) throws TuneRefused {
-            boolean map = node instanceof MappingNode || Yaml.empty(node);
+            boolean map = node instanceof MappingNode || DrillYaml.empty(node);
             boolean last = rest.indexOf('.') < 0;
             if (map && last) {
                 if (!rest.matches(PLAIN_KEY)) {
@@ -193,11 +194,11 @@ final class DrillText {
             if (!map) {
                 single = before(rest);
             }
-            Yaml.entries(node).forEach(each -> known.add(Yaml.key(each)));
+            DrillYaml.entries(node).forEach(each -> known.add(DrillYaml.key(each)));
         }
 
         private void followItems(Node list, String rest) throws TuneRefused {
-            List<Node> items = Yaml.items(list);
+            List<Node> items = DrillYaml.items(list);
             String first = word(rest);
             if (first.matches("[0-9]+") && rest.length() > first.length()) {
                 int number = first.length() > 6 ? 0 : Integer.parseInt(first);
@@ -225,8 +226,8 @@ final class DrillText {
 
         private @Nullable String name(Node item, String rest) {
             for (String key : new String[] {"to", "as"}) {
-                Node node = Yaml.value(item, key);
-                String name = node == null ? null : Yaml.scalar(node);
+                Node node = DrillYaml.value(item, key);
+                String name = node == null ? null : DrillYaml.scalar(node);
                 if (name != null && rest.startsWith(name + ".")) {
                     return name;
                 }
@@ -275,9 +276,9 @@ final class DrillText {
     private static @Nullable NodeTuple longest(List<NodeTuple> entries, String rest) {
         NodeTuple found = null;
         for (NodeTuple each : entries) {
-            String key = Yaml.key(each);
+            String key = DrillYaml.key(each);
             boolean fits = rest.equals(key) || rest.startsWith(key + ".");
-            if (fits && (found == null || key.length() > Yaml.key(found).length())) {
+            if (fits && (found == null || key.length() > DrillYaml.key(found).length())) {
                 found = each;
             }
         }

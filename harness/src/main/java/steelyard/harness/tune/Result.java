@@ -110,7 +110,12 @@ public record Result(Cell cell, Axis want, Axis against, Held held, boolean fit)
         boolean tellsFrom(Axis other) {
             if (spread.undefined() != other.spread.undefined()) {
                 int plays = values.length;
-                return Difference.shares(spread.undefined(), plays, other.spread.undefined(), other.values.length)
+                return Difference.shares(
+                                spread.undefined(),
+                                plays,
+                                other.spread.undefined(),
+                                other.values.length,
+                                Difference.ERROR_RATE)
                         .beyondChance();
             }
             double[] mine = new double[costs.length];
@@ -123,7 +128,8 @@ public record Result(Cell cell, Axis want, Axis against, Held held, boolean fit)
                 }
             }
             return pairs > 1
-                    && Difference.paired(Arrays.copyOf(mine, pairs), Arrays.copyOf(theirs, pairs))
+                    && Difference.paired(
+                                    Arrays.copyOf(mine, pairs), Arrays.copyOf(theirs, pairs), Difference.ERROR_RATE)
                             .beyondChance();
         }
     }

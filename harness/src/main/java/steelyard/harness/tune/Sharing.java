@@ -4,6 +4,7 @@ import java.util.IdentityHashMap;
 import java.util.Map;
 import org.snakeyaml.engine.v2.nodes.Node;
 import org.snakeyaml.engine.v2.nodes.NodeTuple;
+import steelyard.harness.compare.DrillYaml;
 
 /** Which nodes of a text are reached on more than one way, through aliases. */
 final class Sharing {
@@ -18,8 +19,8 @@ final class Sharing {
         if (ways.merge(node, 1, Integer::sum) > 1) {
             return;
         }
-        Yaml.items(node).forEach(this::count);
-        for (NodeTuple each : Yaml.entries(node)) {
+        DrillYaml.items(node).forEach(this::count);
+        for (NodeTuple each : DrillYaml.entries(node)) {
             count(each.getValueNode());
         }
     }

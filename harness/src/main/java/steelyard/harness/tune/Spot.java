@@ -3,6 +3,7 @@ package steelyard.harness.tune;
 import org.snakeyaml.engine.v2.common.FlowStyle;
 import org.snakeyaml.engine.v2.nodes.MappingNode;
 import org.snakeyaml.engine.v2.nodes.Node;
+import steelyard.harness.compare.DrillYaml;
 
 /**
  * A stretch of a text that a value takes the place of.
@@ -16,8 +17,8 @@ record Spot(int begin, int end, String before, String after) {
 
     /** In place of a value. An anchor in front of it is kept. */
     static Spot replacing(String text, Node value) {
-        int begin = at(text, Yaml.start(value));
-        int end = at(text, Yaml.end(value));
+        int begin = at(text, DrillYaml.start(value));
+        int end = at(text, DrillYaml.end(value));
         if (begin == end) {
             return new Spot(begin, end, " ", "");
         }
@@ -28,8 +29,8 @@ record Spot(int begin, int end, String before, String after) {
 
     /** As a first entry of a map. */
     static Spot adding(String text, Node map, String key) {
-        int begin = at(text, Yaml.start(map));
-        if (Yaml.empty(map)) {
+        int begin = at(text, DrillYaml.start(map));
+        if (DrillYaml.empty(map)) {
             return new Spot(begin, begin, " {" + key + ": ", "}");
         }
         MappingNode entries = (MappingNode) map;
@@ -38,7 +39,7 @@ record Spot(int begin, int end, String before, String after) {
             return new Spot(inside, inside, key + ": ", entries.getValue().isEmpty() ? "" : ", ");
         }
         Node first = entries.getValue().get(0).getKeyNode();
-        int place = at(text, Yaml.start(first));
+        int place = at(text, DrillYaml.start(first));
         int column = first.getStartMark().orElseThrow().getColumn();
         return new Spot(place, place, key + ": ", "\n" + " ".repeat(column));
     }

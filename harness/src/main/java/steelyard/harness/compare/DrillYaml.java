@@ -1,4 +1,4 @@
-package steelyard.harness.tune;
+package steelyard.harness.compare;
 
 import java.util.List;
 import java.util.Optional;
@@ -14,14 +14,14 @@ import org.snakeyaml.engine.v2.nodes.ScalarNode;
 import org.snakeyaml.engine.v2.nodes.SequenceNode;
 
 /** The library's nodes of a text that a drill's reader has taken already. */
-final class Yaml {
+public final class DrillYaml {
     private static final LoadSettings SETTINGS =
             LoadSettings.builder().setUseMarks(true).build();
 
-    private Yaml() {}
+    private DrillYaml() {}
 
     /** The root of a text, or null when there is none that can be read. */
-    static @Nullable Node root(String text) {
+    public static @Nullable Node root(String text) {
         try {
             Optional<Node> root = new Compose(SETTINGS).composeString(text);
             return root.orElse(null);
@@ -31,7 +31,7 @@ final class Yaml {
     }
 
     /** The value of a key of a map; null when it is no map or has no such key. */
-    static @Nullable Node value(Node node, String key) {
+    public static @Nullable Node value(Node node, String key) {
         for (NodeTuple each : entries(node)) {
             if (key(each).equals(key)) {
                 return each.getValueNode();
@@ -40,36 +40,36 @@ final class Yaml {
         return null;
     }
 
-    static List<NodeTuple> entries(Node node) {
+    public static List<NodeTuple> entries(Node node) {
         return node instanceof MappingNode map ? map.getValue() : List.of();
     }
 
-    static String key(NodeTuple entry) {
+    public static String key(NodeTuple entry) {
         return entry.getKeyNode() instanceof ScalarNode scalar ? scalar.getValue() : "";
     }
 
-    static List<Node> items(Node node) {
+    public static List<Node> items(Node node) {
         return node instanceof SequenceNode list ? list.getValue() : List.of();
     }
 
     /** The text of a single value; null for anything else. */
-    static @Nullable String scalar(@Nullable Node node) {
+    public static @Nullable String scalar(@Nullable Node node) {
         return node instanceof ScalarNode scalar ? scalar.getValue() : null;
     }
 
     /** Whether nothing was written, as in {@code fulmar:}. */
-    static boolean empty(Node node) {
+    public static boolean empty(Node node) {
         return node instanceof ScalarNode scalar
                 && scalar.getValue().isEmpty()
                 && offset(node.getStartMark()) == offset(node.getEndMark());
     }
 
     /** Where a node begins, in code points from the start of the text. */
-    static int start(Node node) {
+    public static int start(Node node) {
         return offset(node.getStartMark());
     }
 
-    static int end(Node node) {
+    public static int end(Node node) {
         return offset(node.getEndMark());
     }
 

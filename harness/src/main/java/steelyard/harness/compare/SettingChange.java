@@ -1,0 +1,47 @@
+package steelyard.harness.compare;
+
+import java.util.ArrayList;
+import java.util.LinkedHashMap;
+import java.util.LinkedHashSet;
+import java.util.List;
+import java.util.Map;
+import java.util.Set;
+
+/**
+ * A setting that differs.
+ *
+ * @param setting its path in the drill, or what else a run was told
+ * @param first as the first side has it; {@code -} where it has none
+ * @param second the same of the second side
+ */
+public record SettingChange(String setting, String first, String second) {
+    private static final String NONE = "-";
+
+    /** All that differ: those of the drill in the order of its text, then how it was played. */
+    static List<SettingChange> between(Runs first, Runs second) {
+        Map<String, String> one = settings(first);
+        Map<String, String> two = settings(second);
+        Set<String> names = new LinkedHashSet<>(one.keySet());
+        names.addAll(two.keySet());
+        List<SettingChange> changes = new ArrayList<>();
+        for (String name : names) {
+            String before = one.getOrDefault(name, NONE);
+            String after = two.getOrDefault(name, NONE);
+            if (!before.equals(after)) {
+                changes.add(new SettingChange(name, before, after));
+            }
+        }
+        return changes;
+    }
+
+    private static Map<String, String> settings(Runs runs) {
+        Map<String, String> settings =
+                new LinkedHashMap<>(FlatDrill.of(runs.first().source()));
+        settings.put("(stage)", runs.first().stage());
+        settings.put("(backends)", runs.first().backendsRun());
+        settings.put("(plays)", runs.words());
+        settings.put("(seeds)", runs.seeds());
+        settings.put("(version)", runs.first().version());
+        return settings;
+    }
+}
