@@ -39,6 +39,8 @@ class ModuleRulesTest {
                     "steelyard.harness.judge",
                     "steelyard.harness.stage.virtual..",
                     "steelyard.harness.forecast",
+                    "steelyard.harness.compare",
+                    "steelyard.harness.tune",
                     "steelyard.harness.report",
                     "steelyard.harness.stage.live..",
                     "steelyard.harness.console",

@@ -19,11 +19,18 @@ public record SettingChange(String setting, String first, String second) {
 
     /** All that differ: those of the drill in the order of its text, then how it was played. */
     static List<SettingChange> between(Runs first, Runs second) {
-        Map<String, String> one = settings(first);
-        Map<String, String> two = settings(second);
+        List<SettingChange> changes = new ArrayList<>();
+        add(
+                changes,
+                FlatDrill.of(first.first().source()),
+                FlatDrill.of(second.first().source()));
+        add(changes, played(first), played(second));
+        return changes;
+    }
+
+    private static void add(List<SettingChange> changes, Map<String, String> one, Map<String, String> two) {
         Set<String> names = new LinkedHashSet<>(one.keySet());
         names.addAll(two.keySet());
-        List<SettingChange> changes = new ArrayList<>();
         for (String name : names) {
             String before = one.getOrDefault(name, NONE);
             String after = two.getOrDefault(name, NONE);
@@ -31,12 +38,10 @@ public record SettingChange(String setting, String first, String second) {
                 changes.add(new SettingChange(name, before, after));
             }
         }
-        return changes;
     }
 
-    private static Map<String, String> settings(Runs runs) {
-        Map<String, String> settings =
-                new LinkedHashMap<>(FlatDrill.of(runs.first().source()));
+    private static Map<String, String> played(Runs runs) {
+        Map<String, String> settings = new LinkedHashMap<>();
         settings.put("(stage)", runs.first().stage());
         settings.put("(backends)", runs.first().backendsRun());
         settings.put("(plays)", runs.words());
