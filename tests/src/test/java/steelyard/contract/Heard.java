@@ -42,6 +42,7 @@ public final class Heard implements PlayListener {
     public boolean monotone = true;
     public int endings;
     public boolean complete;
+    public long interruptedNanos = -1;
     private final Runnable atFirstSamples;
     private final long atNanosOfInterest;
     private boolean ran;
@@ -136,6 +137,11 @@ public final class Heard implements PlayListener {
             ran = true;
             atFirstSamples.run();
         }
+    }
+
+    @Override
+    public void interrupted(long atNanos) {
+        interruptedNanos = atNanos;
     }
 
     @Override

@@ -233,7 +233,28 @@ public abstract class StageContract {
         assertThat(heard.complete).isFalse();
         assertThat(heard.endings).isEqualTo(1);
         assertThat(heard.dues.size()).isBetween(20, 500);
-        assertThat(heard.ends).hasSameSizeAs(heard.dues);
+        assertThat(heard.ends).hasSizeLessThanOrEqualTo(heard.dues.size());
+        assertThat(heard.interruptedNanos).isBetween(500 * MILLI, 10_000 * MILLI);
+        assertThat(heard.dues).allMatch(due -> due <= heard.interruptedNanos);
+    }
+
+    @Test
+    void interrupt_whileRequestsHang_tellsNoEndOfThem() throws CannotPlay {
+        Drill drill = drill(
+                roundRobin("fixed: 1ms"),
+                "rate: 50/s",
+                "50s",
+                "  - {at: 100ms, hang: [fulmar, gannet], as: both hang}");
+        Stage[] holder = new Stage[1];
+        Heard heard = new Heard(500 * MILLI, () -> holder[0].interrupt());
+        try (Stage stage = stage(drill, SEED)) {
+            holder[0] = stage;
+            stage.open(heard);
+            stage.play(new Conductor(drill, new Chance(SEED), new ConcurrentLinkedQueue<>()));
+        }
+        assertThat(heard.complete).isFalse();
+        assertThat(heard.ends).isNotEmpty().allMatch(each -> each.cause() == null);
+        assertThat(heard.dues.size() - heard.ends.size()).isGreaterThan(5);
     }
 
     /** A pool of two in turn; further lines of the pool may follow. */

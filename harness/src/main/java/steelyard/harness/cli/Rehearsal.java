@@ -150,9 +150,6 @@ final class Rehearsal {
 
     private void print(Verdict verdict, boolean reported) {
         out.println();
-        if (interrupts.came()) {
-            out.println("Interrupted before the end; judged on what there was.");
-        }
         List<String> lines = VerdictText.lines(verdict, view.width());
         lines.forEach(out::println);
         out.println();

@@ -31,8 +31,9 @@ final class VerdictText {
                 lines.addAll(notes(verdict.expectations(), width));
             }
         }
-        List<SelfCheck> failed =
-                verdict.checks().stream().filter(check -> !check.ok()).toList();
+        List<SelfCheck> failed = verdict.checks().stream()
+                .filter(check -> !check.ok() && !check.check().equals(SelfCheck.PLAYED_TO_ITS_END))
+                .toList();
         if (!failed.isEmpty()) {
             lines.add("");
             lines.add("Unfit to judge, because of:");
@@ -109,7 +110,7 @@ final class VerdictText {
             orEmpty(finding.boundText()),
             finding.measured(),
             orEmpty(finding.marginText()),
-            finding.met() ? "met" : "not met"
+            finding.outcome()
         };
     }
 

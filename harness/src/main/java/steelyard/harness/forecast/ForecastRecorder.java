@@ -8,6 +8,7 @@ import java.util.List;
 import org.jspecify.annotations.Nullable;
 import steelyard.harness.record.Cast;
 import steelyard.harness.record.Csv;
+import steelyard.harness.record.CueWords;
 import steelyard.harness.record.Fixed;
 import steelyard.harness.record.JunitXml;
 import steelyard.harness.record.Machine;
@@ -121,8 +122,8 @@ public final class ForecastRecorder implements AutoCloseable {
         for (PlaySlices.Applied each : bands.cues()) {
             Fixed.seconds(text, each.dueNanos()).append(',');
             Fixed.seconds(text, each.atNanos()).append(',');
-            Csv.field(text, each.cue().name()).append(',');
-            Csv.field(text, each.cue().text())
+            Csv.field(text, CueWords.name(each.cue(), each.by())).append(',');
+            Csv.field(text, CueWords.action(each.cue(), each.by()))
                     .append(',')
                     .append(Words.of(each.by()))
                     .append('\n');

@@ -26,6 +26,39 @@ final class Findings {
                 reading.note());
     }
 
+    /**
+     * What is found in a play that was interrupted: known only where its window was over, or what was waited for had come.
+     *
+     * @param playedNanos when it was interrupted
+     */
+    static Finding cutShort(Expectation expectation, Reading reading, long lastsNanos, long playedNanos) {
+        Finding whole = of(expectation, true, reading, lastsNanos);
+        boolean windowed = expectation.after() == null;
+        if (windowed ? expectation.toNanos() <= playedNanos : reading.hasValue()) {
+            return whole;
+        }
+        boolean begun = windowed && expectation.fromNanos() < playedNanos && reading.hasValue();
+        return new Finding(
+                whole.measure(),
+                whole.of(),
+                whole.text(),
+                whole.bound(),
+                begun ? whole.measured() : "not measured",
+                begun ? whole.value() : Double.NaN,
+                begun ? "measured up to " + instant(playedNanos) : null,
+                false);
+    }
+
+    /** The sentence about a play that was interrupted. */
+    static String interrupted(long playedNanos) {
+        return "Interrupted at " + instant(playedNanos) + ": not judged; what was measured up to then stands below.";
+    }
+
+    /** To a tenth of a second. */
+    static String instant(long nanos) {
+        return Wording.duration(StrictMath.round(nanos / 1e8) * 100_000_000L);
+    }
+
     /** One sentence: the reason why the play is unfit, else the expectation that was missed or held by least. */
     static String sentence(List<Finding> found, List<SelfCheck> checks) {
         for (SelfCheck check : checks) {

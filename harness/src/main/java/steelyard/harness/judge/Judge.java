@@ -39,6 +39,8 @@ public final class Judge implements PlayListener {
     private final Meter[] onCues;
     private final Meter[] onSamples;
     private boolean ended;
+    private boolean complete;
+    private long playedNanos = Long.MAX_VALUE;
 
     /** @param cast of the drill's stage */
     public Judge(Drill drill, Cast cast) {
@@ -74,13 +76,17 @@ public final class Judge implements PlayListener {
         for (int i = 0; i < meters.size(); i++) {
             boolean expected = i < expectations.size();
             Expectation expectation = expected ? expectations.get(i) : standard.get(i - expectations.size());
-            Finding finding = Findings.of(expectation, expected, meters.get(i).read(), drill.lastsNanos());
+            Reading reading = meters.get(i).read();
+            Finding finding = complete || !expected
+                    ? Findings.of(expectation, expected, reading, drill.lastsNanos())
+                    : Findings.cutShort(expectation, reading, drill.lastsNanos(), playedNanos);
             (expected ? found : measures).add(finding);
         }
         List<SelfCheck> selfChecks = checks.read();
         boolean met = found.stream().allMatch(Finding::met);
         boolean fit = selfChecks.stream().allMatch(SelfCheck::ok);
-        return new Verdict(met, fit, Findings.sentence(found, selfChecks), found, measures, selfChecks);
+        String text = complete ? Findings.sentence(found, selfChecks) : Findings.interrupted(playedNanos);
+        return new Verdict(met, fit, text, found, measures, selfChecks);
     }
 
     @Override
@@ -170,8 +176,16 @@ public final class Judge implements PlayListener {
     }
 
     @Override
+    public void interrupted(long atNanos) {
+        playedNanos = atNanos;
+        checks.interrupted(atNanos);
+    }
+
+    @Override
     public void ended(long atNanos, boolean complete) {
         ended = true;
+        this.complete = complete;
+        playedNanos = Math.min(playedNanos, atNanos);
         checks.ended(atNanos, complete);
         for (Meter each : meters) {
             each.ended(atNanos, complete);

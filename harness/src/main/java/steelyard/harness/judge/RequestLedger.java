@@ -2,6 +2,7 @@ package steelyard.harness.judge;
 
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Cause;
+import steelyard.harness.record.Wording;
 
 /** Every request ends once: counts, and the requests that are open now. */
 final class RequestLedger extends LongTable {
@@ -34,14 +35,18 @@ final class RequestLedger extends LongTable {
         }
     }
 
-    boolean balanced() {
-        return offered == good + failed && size() == 0 && dueTwice == 0 && endedUndue == 0;
+    /** @param complete whether the play was played to its end; an interrupted one leaves requests open */
+    boolean balanced(boolean complete) {
+        return offered == good + failed + size() && (!complete || size() == 0) && dueTwice == 0 && endedUndue == 0;
     }
 
-    String text() {
+    String text(boolean complete) {
         String sums = offered + " offered, " + good + " good, " + failed + " failed";
-        if (balanced()) {
-            return sums + ", each once";
+        if (balanced(complete)) {
+            return size() == 0
+                    ? sums + ", each once"
+                    : sums + ", each once; " + Wording.count(size(), "was", "were")
+                            + " open when the play was interrupted";
         }
         return sums + "; " + size() + " never ended, " + endedUndue + " ended twice or were never due, " + dueTwice
                 + " were due twice";

@@ -29,6 +29,7 @@ final class SelfChecks implements PlayListener {
     private long late;
     private long capHits;
     private boolean complete;
+    private long playedNanos = Long.MAX_VALUE;
     private int astray = NONE;
     private long astraySpentNanos;
     private long astrayHeldNanos;
@@ -104,8 +105,14 @@ final class SelfChecks implements PlayListener {
     }
 
     @Override
+    public void interrupted(long atNanos) {
+        playedNanos = atNanos;
+    }
+
+    @Override
     public void ended(long atNanos, boolean complete) {
         this.complete = complete;
+        playedNanos = Math.min(playedNanos, atNanos);
         attempts.close(atNanos);
         for (int backend = 0; backend < inFlight.length; backend++) {
             moved(atNanos, backend, inFlight[backend]);
@@ -115,13 +122,16 @@ final class SelfChecks implements PlayListener {
     /** What was found, once the play has ended. */
     List<SelfCheck> read() {
         return List.of(
-                new SelfCheck("played to its end", complete, complete ? "complete" : "the play was interrupted"),
+                new SelfCheck(
+                        SelfCheck.PLAYED_TO_ITS_END,
+                        complete,
+                        complete ? "complete" : "interrupted at " + Findings.instant(playedNanos)),
                 latenessCheck(),
                 new SelfCheck(
                         "connection cap",
                         capHits == 0,
                         capHits == 0 ? "never hit" : "hit " + Wording.count(capHits, "time", "times")),
-                new SelfCheck("requests add up", !complete || requests.balanced(), requests.text()),
+                new SelfCheck("requests add up", requests.balanced(complete), requests.text(complete)),
                 new SelfCheck(
                         "attempts as balancer and backends count them", attempts.agrees(complete), attempts.text()),
                 littleCheck(),

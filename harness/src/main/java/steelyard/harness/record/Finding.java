@@ -13,6 +13,7 @@ import steelyard.drills.model.Measure;
  * @param measured the value in words, or {@code never}, {@code not measured}, {@code infinite}
  * @param value in the unit of the measure (nanoseconds, fraction, count), or NaN where it has none
  * @param note why it has no value, or what has to be said about it; null for nothing
+ * @param reached false when the play was interrupted before this could be known
  */
 public record Finding(
         Measure measure,
@@ -21,7 +22,8 @@ public record Finding(
         @Nullable Bound bound,
         String measured,
         double value,
-        @Nullable String note) {
+        @Nullable String note,
+        boolean reached) {
 
     public Finding {
         if (Double.isInfinite(value)) {
@@ -29,9 +31,29 @@ public record Finding(
         }
     }
 
-    /** Whether the bound held; true where nothing was expected. */
+    /** What a play found that got as far as this. */
+    public Finding(
+            Measure measure,
+            @Nullable String of,
+            String text,
+            @Nullable Bound bound,
+            String measured,
+            double value,
+            @Nullable String note) {
+        this(measure, of, text, bound, measured, value, note, true);
+    }
+
+    /** Whether the bound held; true where nothing was expected, false where the play did not get that far. */
     public boolean met() {
-        return bound == null || bound.holds(value);
+        return bound == null || (reached && bound.holds(value));
+    }
+
+    /** {@code met}, {@code not met} or {@code not reached}. */
+    public String outcome() {
+        if (!reached) {
+            return "not reached";
+        }
+        return met() ? "met" : "not met";
     }
 
     /** The bound in words, or null where nothing was expected. */
@@ -41,10 +63,10 @@ public record Finding(
 
     /**
      * How far the value is from the nearer end of its bound, in the unit of the measure: below zero when missed, NaN
-     * without a value or a bound.
+     * without a value or a bound, or where the play did not get that far.
      */
     public double margin() {
-        if (bound == null || Double.isNaN(value)) {
+        if (bound == null || !reached || Double.isNaN(value)) {
             return Double.NaN;
         }
         return Math.min(value - bound.least(), bound.most() - value);

@@ -14,9 +14,15 @@ public final class JunitXml {
     /**
      * A case of the suite.
      *
+     * @param skipped whether it was never judged; not ok then
      * @param failure what to say when it is not ok
      */
-    public record Case(String name, boolean ok, String failure) {}
+    public record Case(String name, boolean ok, boolean skipped, String failure) {
+        /** A case that was judged. */
+        public Case(String name, boolean ok, String failure) {
+            this(name, ok, false, failure);
+        }
+    }
 
     /** The file's text. */
     public static String text(String drill, List<Case> cases) {
@@ -37,8 +43,11 @@ public final class JunitXml {
         List<Case> cases = new ArrayList<>();
         for (Finding finding : verdict.expectations()) {
             String note = finding.note() == null ? "" : " (" + finding.note() + ")";
-            String failure = "bound " + finding.boundText() + ", measured " + finding.measured() + note;
-            cases.add(new Case(finding.text() + ": " + finding.boundText(), finding.met(), failure));
+            String measured = "bound " + finding.boundText() + ", measured " + finding.measured() + note;
+            String unfit = verdict.fit() ? "" : "the play is unfit to judge; ";
+            String failure = finding.reached() ? unfit + measured : "not reached";
+            cases.add(
+                    new Case(finding.text() + ": " + finding.boundText(), finding.met(), !finding.reached(), failure));
         }
         cases.add(fitness(verdict.fit(), verdict.checks()));
         return text(drill, cases);
@@ -46,18 +55,19 @@ public final class JunitXml {
 
     /** The case that says whether it is fit to judge. */
     public static Case fitness(boolean fit, List<SelfCheck> checks) {
-        return new Case("fit to judge", fit, unfit(checks));
+        return new Case("fit to judge", fit, "unfit to judge: " + unfit(checks));
     }
 
     private static void suite(XMLStreamWriter xml, String drill, List<Case> cases) throws XMLStreamException {
-        long failures = cases.stream().filter(each -> !each.ok()).count();
+        long skipped = cases.stream().filter(Case::skipped).count();
+        long failures = cases.stream().filter(each -> !each.ok()).count() - skipped;
         xml.writeCharacters("\n");
         xml.writeStartElement("testsuite");
         xml.writeAttribute("name", drill);
         xml.writeAttribute("tests", String.valueOf(cases.size()));
         xml.writeAttribute("failures", String.valueOf(failures));
         xml.writeAttribute("errors", "0");
-        xml.writeAttribute("skipped", "0");
+        xml.writeAttribute("skipped", String.valueOf(skipped));
         for (Case each : cases) {
             testcase(xml, drill, each);
         }
@@ -71,7 +81,7 @@ public final class JunitXml {
         xml.writeAttribute("classname", "steelyard." + drill);
         xml.writeAttribute("name", clean(each.name()));
         if (!each.ok()) {
-            xml.writeEmptyElement("failure");
+            xml.writeEmptyElement(each.skipped() ? "skipped" : "failure");
             xml.writeAttribute("message", clean(each.failure()));
         }
         xml.writeEndElement();

@@ -78,6 +78,12 @@ public interface PlayListener {
     /** The state of every backend at the end of a slice (each 100 ms, the first at 100 ms). The sample is reused. */
     default void sampled(long atNanos, Sample sample) {}
 
+    /**
+     * The play was interrupted: nothing more is sent. Requests that are open when it ends are nobody's failure, and their
+     * end is never told.
+     */
+    default void interrupted(long atNanos) {}
+
     /** Nothing more comes. {@code complete} unless the play was interrupted. */
     default void ended(long atNanos, boolean complete) {}
 

@@ -78,8 +78,8 @@ public final class Recorder implements PlayListener {
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
         StringBuilder row = Fixed.seconds(cues.row(), dueNanos).append(',');
         Fixed.seconds(row, atNanos).append(',');
-        Csv.field(row, cue.name()).append(',');
-        Csv.field(row, cue.text()).append(',').append(Words.of(by));
+        Csv.field(row, CueWords.name(cue, by)).append(',');
+        Csv.field(row, CueWords.action(cue, by)).append(',').append(Words.of(by));
         cues.write();
     }
 
@@ -90,6 +90,11 @@ public final class Recorder implements PlayListener {
             flushedNanos = atNanos;
             flush();
         }
+    }
+
+    @Override
+    public void interrupted(long atNanos) {
+        book.interrupted(atNanos);
     }
 
     @Override

@@ -69,6 +69,7 @@ public record RunData(
      * @param value NaN where it has none
      * @param least NaN without a lower bound
      * @param most NaN without an upper bound
+     * @param reached false when the play was interrupted before the outcome could be known
      * @param held of a forecast: in how many plays the bound held; null without a bound
      * @param spread of a forecast: where the value, which is then the median, lies over plays
      */
@@ -84,6 +85,7 @@ public record RunData(
             String unit,
             @Nullable String margin,
             boolean met,
+            boolean reached,
             @Nullable String why,
             @Nullable HeldRow held,
             @Nullable SpreadRow spread) {
@@ -100,7 +102,8 @@ public record RunData(
                     node.path("most").asDouble(Double.NaN),
                     node.path("unit").asText(),
                     text(node, "margin"),
-                    node.path("met").asBoolean(true),
+                    !node.path("met").isNull() && node.path("met").asBoolean(true),
+                    !node.path("met").isNull(),
                     text(node, "why"),
                     HeldRow.of(node.path("held")),
                     SpreadRow.of(node.path("spread")));

@@ -73,15 +73,19 @@ public final class RunJson {
         node.put("stage", head.stage());
         node.put("met", verdict.met());
         node.put("fit", verdict.fit());
+        node.put("exit", verdict.exit());
+        node.put("text", verdict.text());
         ArrayNode expectations = node.putArray("expectations");
         for (Finding finding : verdict.expectations()) {
-            expectations
+            ObjectNode each = expectations
                     .addObject()
                     .put("measure", finding.measure().word())
                     .put("of", finding.of())
+                    .put("text", finding.text())
                     .put("bound", finding.boundText())
-                    .put("measured", finding.measured())
-                    .put("met", finding.met());
+                    .put("measured", finding.measured());
+            putMet(each, finding);
+            putRange(each, finding);
         }
         return text(node);
     }
@@ -129,7 +133,6 @@ public final class RunJson {
 
     private static void putFindings(ArrayNode array, List<Finding> findings) {
         for (Finding finding : findings) {
-            Unit unit = finding.measure().unit();
             ObjectNode node = array.addObject()
                     .put("measure", finding.measure().word())
                     .put("of", finding.of())
@@ -139,16 +142,32 @@ public final class RunJson {
                 node.put("bound", finding.boundText());
             }
             node.put("measured", finding.measured());
-            putValue(node, "value", unit, finding.value());
+            putRange(node, finding);
             if (bound != null) {
-                putValue(node, "least", unit, bound.least());
-                putValue(node, "most", unit, bound.most());
-            }
-            node.put("unit", Words.of(unit));
-            if (bound != null) {
-                node.put("margin", finding.marginText()).put("met", finding.met());
+                putMet(node.put("margin", finding.marginText()), finding);
             }
             node.put("why", finding.note());
+        }
+    }
+
+    /** Adds the value, the ends of its bound where there is one, and the unit of all of them. */
+    private static void putRange(ObjectNode node, Finding finding) {
+        Unit unit = finding.measure().unit();
+        Bound bound = finding.bound();
+        putValue(node, "value", unit, finding.value());
+        if (bound != null) {
+            putValue(node, "least", unit, bound.least());
+            putValue(node, "most", unit, bound.most());
+        }
+        node.put("unit", Words.of(unit));
+    }
+
+    /** Null where it is not known. */
+    private static void putMet(ObjectNode node, Finding finding) {
+        if (finding.reached()) {
+            node.put("met", finding.met());
+        } else {
+            node.putNull("met");
         }
     }
 

@@ -6,4 +6,7 @@ package steelyard.harness.record;
  * @param check what was checked
  * @param text what was found, in words
  */
-public record SelfCheck(String check, boolean ok, String text) {}
+public record SelfCheck(String check, boolean ok, String text) {
+    /** The check of every play that an interruption alone fails. */
+    public static final String PLAYED_TO_ITS_END = "played to its end";
+}

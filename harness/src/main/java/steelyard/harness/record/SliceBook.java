@@ -36,6 +36,7 @@ public final class SliceBook implements PlayListener {
     private long sampledTo;
     private long lastSampleNanos;
     private long told;
+    private long lastIndex = Long.MAX_VALUE;
 
     /** @param receiver gets each slice once, in order, and must not keep it */
     public SliceBook(Cast cast, Consumer<Slice> receiver) {
@@ -106,6 +107,12 @@ public final class SliceBook implements PlayListener {
         handOut(false);
     }
 
+    /** Slices that begin after it are not handed out: nothing is sent in them. */
+    @Override
+    public void interrupted(long atNanos) {
+        lastIndex = atNanos / Slice.NANOS;
+    }
+
     @Override
     public void ended(long atNanos, boolean complete) {
         for (long index = Math.max(sampledTo, base); index < next; index++) {
@@ -117,7 +124,9 @@ public final class SliceBook implements PlayListener {
     private void handOut(boolean all) {
         while (base < next && (all || settled())) {
             Slice slice = ring[place(base)];
-            receiver.accept(slice);
+            if (base <= lastIndex) {
+                receiver.accept(slice);
+            }
             spare.add(slice);
             base++;
         }

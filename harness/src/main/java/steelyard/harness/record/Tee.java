@@ -127,6 +127,13 @@ public final class Tee implements PlayListener {
     }
 
     @Override
+    public void interrupted(long atNanos) {
+        for (PlayListener each : listeners) {
+            each.interrupted(atNanos);
+        }
+    }
+
+    @Override
     public void ended(long atNanos, boolean complete) {
         for (PlayListener each : listeners) {
             each.ended(atNanos, complete);

@@ -26,6 +26,14 @@ public record Verdict(
         checks = List.copyOf(checks);
     }
 
+    /** The exit status that goes with it: 0 met, 1 not met, 3 unfit to judge. An interruption has one of its own. */
+    public int exit() {
+        if (!fit) {
+            return 3;
+        }
+        return met ? 0 : 1;
+    }
+
     /** The same with one more self-check; one that does not hold makes the play unfit and is named first. */
     public Verdict with(SelfCheck check) {
         List<SelfCheck> all = new ArrayList<>(checks);

@@ -40,7 +40,6 @@ final class CueSection {
         return switch (word) {
             case "drill" -> "the drill";
             case "hand" -> "hand";
-            case "end" -> "end of an earlier cue";
             default -> word;
         };
     }

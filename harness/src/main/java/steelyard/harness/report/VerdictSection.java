@@ -41,10 +41,10 @@ final class VerdictSection {
         if (verdict == null) {
             return line("open", "No verdict: " + why(files)) + note("Nothing below has been judged.");
         }
-        String interrupted = forecast == null
-                ? "The play was interrupted at " + reached(files) + "."
-                : ForecastSection.interrupted(forecast);
-        String ended = files.complete() ? "" : note(interrupted);
+        String ended = files.complete() || forecast == null ? "" : note(ForecastSection.interrupted(forecast));
+        if (forecast == null && !files.complete()) {
+            return line("open", verdict.text()) + note(others(files.run().checks()));
+        }
         String kind = verdict.met() && verdict.fit() ? "met" : "not-met";
         return line(kind, verdict.text()) + note(fitness(files.run().checks(), verdict.fit())) + ended;
     }
@@ -64,6 +64,15 @@ final class VerdictSection {
         long held = checks.stream().filter(SelfCheck::ok).count();
         String count = held + " of " + checks.size() + " self-checks hold.";
         return fit ? "Fit to judge: " + count : "Only " + count + " Nothing below is a verdict.";
+    }
+
+    /** Of an interrupted play: what is said beside that it was interrupted. */
+    private static String others(List<SelfCheck> checks) {
+        List<SelfCheck> others = checks.stream()
+                .filter(check -> !check.check().equals(SelfCheck.PLAYED_TO_ITS_END))
+                .toList();
+        long held = others.stream().filter(SelfCheck::ok).count();
+        return held + " of " + others.size() + " other self-checks hold.";
     }
 
     private static String line(String kind, String text) {
@@ -115,6 +124,9 @@ final class VerdictSection {
     }
 
     private static String outcome(FindingRow each) {
+        if (!each.reached()) {
+            return each.why() == null ? "not reached" : "not reached: " + each.why();
+        }
         if (each.met()) {
             return each.why() == null ? "met" : "met: " + each.why();
         }

@@ -199,5 +199,7 @@ class SelfChecksTest {
         assertThat(verdict.fit()).isFalse();
         assertThat(verdict.checks().stream().filter(each -> !each.ok()).map(SelfCheck::check))
                 .containsExactly("played to its end");
+        assertThat(check(verdict, "requests add up").text())
+                .endsWith("each once; 1 was open when the play was interrupted");
     }
 }

@@ -135,6 +135,7 @@ class RecorderTest {
                                 "share",
                                 "missed by 66.4 %",
                                 false,
+                                true,
                                 null,
                                 null,
                                 null),
@@ -150,6 +151,7 @@ class RecorderTest {
                                 "duration",
                                 null,
                                 false,
+                                true,
                                 "fulmar never stopped being picked from <before> its next cue",
                                 null,
                                 null));
@@ -283,8 +285,9 @@ class RecorderTest {
         assertThat(((Element) cases.item(2)).getAttribute("name")).isEqualTo("fit to judge");
         assertThat(((Element) cases.item(2)).getAttribute("classname")).isEqualTo("steelyard." + DRILL.name());
         assertThat(((Element) failures.item(0)).getAttribute("message"))
-                .isEqualTo("bound at most 0.3 %, measured 66.7 %");
-        assertThat(((Element) failures.item(2)).getAttribute("message")).isEqualTo("a check: told <twice> & more");
+                .isEqualTo("the play is unfit to judge; bound at most 0.3 %, measured 66.7 %");
+        assertThat(((Element) failures.item(2)).getAttribute("message"))
+                .isEqualTo("unfit to judge: a check: told <twice> & more");
     }
 
     @Test
@@ -296,11 +299,52 @@ class RecorderTest {
         assertThat(Files.readString(dir.resolve("run/verdict.json"), StandardCharsets.UTF_8))
                 .isEqualToIgnoringWhitespace("""
                         {"drill": "Lose one, \\"at the peak\\" & <after>", "stage": "live", "met": false, "fit": true,
+                         "exit": 1, "text": "Not met: \\"both\\" missed.",
                          "expectations": [
-                          {"measure": "failed", "of": null, "bound": "at most 0.3 %", "measured": "66.7 %", "met": false},
-                          {"measure": "detected-in", "of": "fulmar", "bound": "from 1.9 s to 3.2 s", "measured": "never",
-                           "met": false}]}
+                          {"measure": "failed", "of": null, "text": "failed, whole play", "bound": "at most 0.3 %",
+                           "measured": "66.7 %", "met": false, "value": 0.6666666666666666, "least": null,
+                           "most": 0.003, "unit": "share"},
+                          {"measure": "detected-in", "of": "fulmar", "text": "detected-in of fulmar, after kill fulmar",
+                           "bound": "from 1.9 s to 3.2 s", "measured": "never", "met": false, "value": null,
+                           "least": 1.9, "most": 3.2, "unit": "duration"}]}
                         """);
+    }
+
+    @Test
+    void finish_expectationNotReached_isNeitherMetNorMissed(@TempDir Path dir) throws Exception {
+        Recorder recorder = recorder(dir.resolve("run"));
+        recorder.interrupted(0);
+        recorder.ended(0, false);
+        Finding ahead = new Finding(
+                Measure.FAILED,
+                null,
+                "failed, whole play",
+                new Bound(Double.NEGATIVE_INFINITY, 0.003),
+                "not measured",
+                Double.NaN,
+                null,
+                false);
+        recorder.finish(new Verdict(false, false, "Interrupted.", List.of(ahead), List.of(), List.of()));
+
+        RunData run = RunData.read(RunFolder.existing(dir.resolve("run")));
+        assertThat(run.expectations().get(0).reached()).isFalse();
+        assertThat(run.expectations().get(0).met()).isFalse();
+        assertThat(Files.readString(dir.resolve("run/verdict.json"))).contains("\"met\": null", "\"exit\": 3");
+        assertThat(Files.readString(dir.resolve("run/junit.xml")))
+                .contains("skipped=\"1\"", "<skipped message=\"not reached\"/>");
+    }
+
+    @Test
+    void cue_endOfItsTime_isNamedAsAnEnd(@TempDir Path dir) throws Exception {
+        Recorder recorder = recorder(dir.resolve("run"));
+        recorder.cueApplied(S, S, KILL, By.DRILL);
+        recorder.cueApplied(2 * S, 2 * S, KILL, By.END);
+        recorder.ended(3 * S, true);
+
+        assertThat(RunData.read(RunFolder.existing(dir.resolve("run"))).cues())
+                .containsExactly(
+                        new CueRow(1, 1, "kill fulmar", "kill fulmar", "drill"),
+                        new CueRow(2, 2, "kill fulmar ends", "end of kill fulmar", "end"));
     }
 
     @Test

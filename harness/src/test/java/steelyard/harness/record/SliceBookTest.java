@@ -77,6 +77,17 @@ class SliceBookTest {
     }
 
     @Test
+    void ended_afterAnInterruption_handsOutNothingBeyondIt() {
+        book.requestDue(50 * MS, 0, 0, 0, 0);
+        book.requestDue(150 * MS, 1, 0, 0, 0);
+        book.interrupted(160 * MS);
+        book.requestEnded(410 * MS, 0, 50 * MS, 0, 0, null, 200);
+        book.ended(2_000 * MS, false);
+
+        assertThat(rows).containsExactly("0: 1 = 1 + 0", "1: 0 = 0 + 0");
+    }
+
+    @Test
     void slice_picksAndSample_areThoseOfTheSlice() {
         List<Slice> kept = new ArrayList<>();
         List<String> states = new ArrayList<>();

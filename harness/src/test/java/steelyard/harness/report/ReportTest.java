@@ -87,6 +87,20 @@ class ReportTest {
     }
 
     @Test
+    void write_interruptedRun_saysItOnceAndJudgesNothing() throws IOException {
+        String run = TinyRun.RUN
+                .replace("\"complete\"", "\"interrupted\"")
+                .replace("\"fit\": true", "\"fit\": false")
+                .replaceFirst("\"text\": \"(Not m|M)et", "\"text\": \"Interrupted at 12.3 s: not judged; $1et")
+                .replaceFirst("\"met\": (true|false), \"why\"", "\"met\": null, \"why\"");
+
+        assertThat(page(run))
+                .contains("Interrupted at 12.3 s:</strong> not judged;")
+                .contains(">not reached")
+                .doesNotContain("was interrupted at", "Only ", "Nothing below");
+    }
+
+    @Test
     void write_runThatRecordedNoSlice_stillMakesAPage() throws IOException {
         TinyRun.write(folder);
         Path slices = folder.resolve("slices.csv");

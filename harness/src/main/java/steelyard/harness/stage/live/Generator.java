@@ -99,9 +99,14 @@ final class Generator implements ClientConnection.Owner {
         return giveUps.nextNanos();
     }
 
-    /** Lets every client give up that has waited long enough by {@code nowNanos}; all of them for the greatest value. */
+    /** Lets every client give up that has waited long enough by {@code nowNanos}. */
     void giveUp(long nowNanos) {
         giveUps.expire(nowNanos, this::giveUp);
+    }
+
+    /** Drops every open request without telling of an end: what an interruption cuts off has not failed. */
+    void drop() {
+        giveUps.expire(Long.MAX_VALUE, this::drop);
     }
 
     /** Sends a request; parameters as of {@link steelyard.harness.stage.Hands#send}. */
@@ -162,6 +167,17 @@ final class Generator implements ClientConnection.Owner {
 
     private void giveUp(Exchange exchange) {
         end(exchange, Cause.GAVE_UP, 0);
+        leave(exchange);
+    }
+
+    private void drop(Exchange exchange) {
+        if (exchange.end()) {
+            open--;
+            leave(exchange);
+        }
+    }
+
+    private static void leave(Exchange exchange) {
         ClientConnection connection = exchange.connection();
         if (connection != null) {
             connection.abandon();

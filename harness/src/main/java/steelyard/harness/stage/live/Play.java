@@ -106,9 +106,12 @@ final class Play implements Hands {
         if (!interrupted) {
             return false;
         }
-        abandonNanos = Math.min(abandonNanos, now + GRACE_NANOS);
+        if (abandonNanos == Long.MAX_VALUE) {
+            abandonNanos = now + GRACE_NANOS;
+            account.tell(Account.Source.CUES, now, PlayListener::interrupted);
+        }
         if (now >= abandonNanos) {
-            generator.giveUp(Long.MAX_VALUE);
+            generator.drop();
         }
         return true;
     }

@@ -185,7 +185,6 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
 
     /** Interrupted: everybody gives up, and the balancer knows at once. */
     void abandonAll(long nowNanos) {
-        clients.giveUpAll(nowNanos);
         for (int flight = 0; flight < flights.used(); flight++) {
             if (flights.state[flight] == State.ATTEMPTED) {
                 end(flight, Outcome.ABANDONED, 0, nowNanos);

@@ -139,13 +139,4 @@ final class VirtualClients {
     void pin(int flight, int backend) {
         connections.pin(flights.connection[flight], backend);
     }
-
-    /** Every client gives up at once: the play was interrupted. */
-    void giveUpAll(long nowNanos) {
-        for (int flight = 0; flight < flights.used(); flight++) {
-            if (flights.waits(flight, flights.request[flight])) {
-                giveUp(flight, nowNanos);
-            }
-        }
-    }
 }

@@ -73,7 +73,8 @@ public final class VirtualStage implements Stage, Hands {
             step(agenda, stage);
         }
         boolean complete = !interrupted;
-        if (interrupted) {
+        if (!complete) {
+            stage.listener.interrupted(nowNanos);
             stage.balancer.abandonAll(nowNanos);
         }
         stage.listener.ended(nowNanos, complete);
