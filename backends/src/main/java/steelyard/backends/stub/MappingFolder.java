@@ -148,8 +148,15 @@ final class MappingFolder {
     }
 
     private static String reason(RuntimeException failure) {
-        return firstLine(String.valueOf(
-                failure instanceof ClientError told ? told.getErrors().first().getDetail() : failure.getMessage()));
+        return plain(firstLine(String.valueOf(
+                failure instanceof ClientError told ? told.getErrors().first().getDetail() : failure.getMessage())));
+    }
+
+    /** The engine names its own classes, which say nothing to whoever wrote the file. */
+    private static String plain(String reason) {
+        return reason.replaceAll("\\s*\\(class [^)]*\\)", "")
+                .replace(", not marked as ignorable", "")
+                .replaceAll("`?(?:[a-z]\\w*\\.)+[A-Z][\\w$.]*`?", "such a value");
     }
 
     private static String firstLine(String text) {

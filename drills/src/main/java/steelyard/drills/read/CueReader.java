@@ -25,6 +25,20 @@ final class CueReader {
         this.problems = problems;
     }
 
+    /** Notes which names of cues will be refused, so that instants which count from them raise no problem of their own. */
+    static void refuseNames(List<Node> cues, Problems problems) {
+        for (Node cue : cues) {
+            for (Node.Entry entry : cue instanceof Node.Entries map ? map.list() : List.<Node.Entry>of()) {
+                String name = entry.value() instanceof Node.Scalar scalar
+                        ? scalar.text().strip()
+                        : "";
+                if (entry.key().equals("as") && !name.isEmpty() && !fits(name)) {
+                    problems.refuseName(name);
+                }
+            }
+        }
+    }
+
     /** A cue of a file. */
     CueDraft read(Node node) {
         Fields fields = Fields.open(node, Keys.CUE, problems);

@@ -26,6 +26,7 @@ final class CueSchedule {
 
     private final Map<CueDraft, Start> starts = new IdentityHashMap<>();
     private final Map<String, Integer> used = new HashMap<>();
+    private final List<Placed<Cue>> placed = new ArrayList<>();
 
     /** With the cues that are there already, and the length of the play. */
     CueSchedule(Problems problems, Roster roster, List<Cue> there, long lastsNanos) {
@@ -50,6 +51,11 @@ final class CueSchedule {
         }
         cues.sort(Comparator.comparingLong(Cue::atNanos));
         return cues;
+    }
+
+    /** The cues that were scheduled, each with the place of its draft. */
+    List<Placed<Cue>> placed() {
+        return placed;
     }
 
     private void enterNames(CueDraft draft) {
@@ -79,7 +85,9 @@ final class CueSchedule {
         for (int i = 0; i < draft.times(); i++) {
             String called = name == null ? free(kind.word() + " " + target.text()) : CueDraft.repeat(name.value(), i);
             long at = start + i * draft.everyNanos();
-            cues.add(new Cue(called, at, kind, target, draft.settings(), draft.forNanos()));
+            Cue cue = new Cue(called, at, kind, target, draft.settings(), draft.forNanos());
+            cues.add(cue);
+            placed.add(new Placed<>(draft.place(), cue));
         }
     }
 
@@ -178,7 +186,7 @@ final class CueSchedule {
 
     private @Nullable Named named(String name, Place place) {
         Named named = names.get(name);
-        if (named == null) {
+        if (named == null && !problems.meansRefusedName(name)) {
             String otherwise = names.isEmpty()
                     ? "name a cue with as: " + name
                     : "the named cues are "

@@ -91,8 +91,11 @@ public final class DrillReader {
         Roster roster = new Roster(stage);
         CueSchedule schedule = new CueSchedule(problems, roster, List.of(), lasts);
         CueReader cueReader = new CueReader(problems);
-        List<Cue> cues = schedule.schedule(
-                fields.list("cues").stream().map(cueReader::read).toList());
+        List<Node> cueNodes = fields.list("cues");
+        CueReader.refuseNames(cueNodes, problems);
+        List<Cue> cues =
+                schedule.schedule(cueNodes.stream().map(cueReader::read).toList());
+        new CueNotices(problems, lasts).check(schedule.placed());
         ExpectationResolver resolver = new ExpectationResolver(problems, roster, schedule, cues, traffic, lasts);
         List<Expectation> expectations = resolver.resolve(expectations(fields, problems));
         noticeIdlePools(fields, problems, stage, traffic);
@@ -155,7 +158,7 @@ public final class DrillReader {
     private static @Nullable String load(Path file, Problems problems) {
         try {
             if (Files.isDirectory(file)) {
-                problems.add(Place.START, "this is a folder", "name a drill file in it");
+                problems.add(Place.FILE, "this is a folder", "name a drill file in it");
                 return null;
             }
             long size = Files.size(file);
@@ -176,18 +179,18 @@ public final class DrillReader {
                     .decode(ByteBuffer.wrap(bytes))
                     .toString();
         } catch (NoSuchFileException e) {
-            problems.add(Place.START, "there is no such file", "steelyard drills lists the bundled ones");
+            problems.add(Place.FILE, "there is no such file", "steelyard drills lists the bundled ones");
         } catch (CharacterCodingException e) {
-            problems.add(Place.START, "the file is not UTF-8", "save the drill as UTF-8 text");
+            problems.add(Place.FILE, "the file is not UTF-8", "save the drill as UTF-8 text");
         } catch (IOException e) {
-            problems.add(Place.START, "the file cannot be read: " + e.getMessage(), "look at its permissions");
+            problems.add(Place.FILE, "the file cannot be read: " + e.getMessage(), "look at its permissions");
         }
         return null;
     }
 
     private static void tooLarge(long bytes, Problems problems) {
         problems.add(
-                Place.START,
+                Place.FILE,
                 "the file holds " + bytes / 1000 + " kB",
                 "a drill holds at most " + MOST_BYTES / 1000 + " kB; backends with times: 40 save lines");
     }

@@ -20,7 +20,7 @@ final class Durations {
 
     /** Above zero, to a day. */
     static final Quantity<Long> POSITIVE = DURATION.that(
-            n -> n > 0 && n <= DAY, "is not between zero and a day", "write a duration above zero, at most 24h");
+            n -> n > 0 && n <= DAY, "is not above zero, up to a day", "write a duration above zero, at most 24h");
 
     /** Of what comes again and again: a millisecond or more, to a day. */
     static final Quantity<Long> PERIOD = DURATION.that(

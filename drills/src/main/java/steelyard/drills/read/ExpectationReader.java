@@ -41,7 +41,7 @@ final class ExpectationReader {
     /** The draft; null when not even the measure is known. */
     @Nullable
     ExpectationDraft read(Node node) {
-        Fields fields = Fields.open(node, Keys.EXPECTATION, problems);
+        Fields fields = Fields.open(node, Keys.EXPECTATION, keysOf(node), problems);
         if (!fields.has("measure")) {
             fields.missing("measure", "write measure: failed, or another one");
             return null;
@@ -64,9 +64,32 @@ final class ExpectationReader {
                 bound(fields, measure));
     }
 
-    private void refuseStrangeKeys(Fields fields, Measure measure) {
+    /** The keys that an expectation may have: those of its measure, or all where that is not known. */
+    private static List<String> keysOf(Node node) {
+        List<String> keys = Keys.EXPECTATION.words();
+        for (Node.Entry entry : node instanceof Node.Entries map ? map.list() : List.<Node.Entry>of()) {
+            for (Measure measure : Measure.values()) {
+                if (entry.key().equals("measure")
+                        && entry.value() instanceof Node.Scalar word
+                        && word.text().equals(measure.word())) {
+                    List<String> own = own(measure);
+                    keys = keys.stream()
+                            .filter(key -> EVERYWHERE.contains(key) || own.contains(key))
+                            .toList();
+                }
+            }
+        }
+        return keys;
+    }
+
+    private static List<String> own(Measure measure) {
         List<String> own = new ArrayList<>(optionsOf(measure));
         own.addAll(measure.countsFromCue() ? List.of("after") : List.of("from", "to"));
+        return own;
+    }
+
+    private void refuseStrangeKeys(Fields fields, Measure measure) {
+        List<String> own = own(measure);
         for (String key : fields.given()) {
             if (!EVERYWHERE.contains(key) && !own.contains(key)) {
                 String remedy =

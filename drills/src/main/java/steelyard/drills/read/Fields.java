@@ -9,20 +9,28 @@ import org.jspecify.annotations.Nullable;
 /** A map of a drill, read key by key. What is not known or there twice is noted when it is opened. */
 final class Fields {
     private final Keys keys;
+    private final List<String> listed;
     private final Place place;
     private final Problems problems;
     private final Map<String, Node.Entry> entries = new LinkedHashMap<>();
+    private final List<String> unknown = new ArrayList<>();
     private boolean odd;
 
-    private Fields(Keys keys, Place place, Problems problems) {
+    private Fields(Keys keys, List<String> listed, Place place, Problems problems) {
         this.keys = keys;
+        this.listed = listed;
         this.place = place;
         this.problems = problems;
     }
 
     /** Opens a node as a map of those keys; what is no map is noted and read as an empty one. */
     static Fields open(Node node, Keys keys, Problems problems) {
-        Fields fields = new Fields(keys, node.place(), problems);
+        return open(node, keys, keys.words(), problems);
+    }
+
+    /** The same, where only some of the keys may stand in this one: the message about an unknown key lists those. */
+    static Fields open(Node node, Keys keys, List<String> listed, Problems problems) {
+        Fields fields = new Fields(keys, listed, node.place(), problems);
         if (node instanceof Node.Entries map) {
             map.list().forEach(fields::keep);
         } else if (!(node instanceof Node.Scalar scalar && scalar.empty())) {
@@ -39,11 +47,12 @@ final class Fields {
         String key = entry.key();
         if (!keys.words().contains(key)) {
             odd = true;
-            String known = keys.noun() + " knows " + Sentence.and(keys.words());
+            unknown.add(key);
+            String known = keys.noun() + " knows " + Sentence.and(listed);
             problems.add(
                     entry.place(),
                     "unknown key " + Quantity.quoted(key) + " in " + keys.noun(),
-                    NearWord.remedy(key, keys.words(), known));
+                    NearWord.remedy(key, listed, known));
             return;
         }
         Node.Entry first = entries.putIfAbsent(key, entry);
@@ -115,9 +124,10 @@ final class Fields {
         return read(key, quantity, harmless);
     }
 
-    /** Notes that a key is missing, unless one that cannot be read may be the one. */
+    /** Notes that a key is missing, unless the map is none or an unknown key of it was probably meant as this one. */
     void missing(String key, String remedy) {
-        if (!odd) {
+        boolean misspelt = unknown.stream().anyMatch(word -> key.equals(NearWord.nearest(word, listed)));
+        if (odd == !unknown.isEmpty() && !misspelt) {
             problems.add(place, keys.noun() + " needs '" + key + "'", remedy);
         }
     }
@@ -125,7 +135,7 @@ final class Fields {
     /** The map behind a key, empty when the key is absent. */
     Fields map(String key, Keys inner) {
         Node node = node(key);
-        return node == null ? new Fields(inner, place, problems) : open(node, inner, problems);
+        return node == null ? new Fields(inner, inner.words(), place, problems) : open(node, inner, problems);
     }
 
     /** The nodes of the list behind a key; what is no list is noted. */

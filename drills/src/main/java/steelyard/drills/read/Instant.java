@@ -16,7 +16,10 @@ record Instant(Place place, @Nullable String base, long offsetNanos) {
     static @Nullable Instant read(Fields fields, String key) {
         Node node = fields.node(key);
         String text = fields.read(key, TEXT);
-        return node == null || text == null ? null : parse(new Placed<>(node.place(), text), key, fields.problems());
+        if (node == null || text == null || fields.problems().meansRefusedName(text.strip())) {
+            return null;
+        }
+        return parse(new Placed<>(node.place(), text), key, fields.problems());
     }
 
     private static @Nullable Instant parse(Placed<String> text, String key, Problems problems) {

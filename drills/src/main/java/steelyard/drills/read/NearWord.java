@@ -1,11 +1,14 @@
 package steelyard.drills.read;
 
 import java.util.Collection;
+import java.util.List;
 import java.util.Locale;
 import org.jspecify.annotations.Nullable;
 
-/** Finds the word that was probably meant. */
+/** Finds the word that was probably meant: one that differs by few letters, or that begins so. */
 public final class NearWord {
+    private static final int LEAST_BEGINNING = 3;
+
     private NearWord() {}
 
     /** "did you mean 'weight'?", or what is given when no word is close. */
@@ -29,7 +32,15 @@ public final class NearWord {
                 most = distance - 1;
             }
         }
-        return best;
+        return best == null ? begunBy(word, known) : best;
+    }
+
+    /** The one known word that begins so; null when there is none, or several. */
+    private static @Nullable String begunBy(String word, Collection<String> known) {
+        List<String> found = known.stream()
+                .filter(candidate -> plain(candidate).startsWith(word))
+                .toList();
+        return word.length() >= LEAST_BEGINNING && found.size() == 1 ? found.get(0) : null;
     }
 
     /** Case and the choice between dash, underscore and nothing are never what was meant to differ. */

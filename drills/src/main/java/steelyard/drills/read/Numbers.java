@@ -59,12 +59,16 @@ final class Numbers {
         return value == null ? null : value.doubleValue();
     }
 
+    /** What is beyond an int becomes the least or the greatest one, so that a message can say the range. */
     private static @Nullable Integer whole(String text) {
-        BigDecimal value = decimal(text);
-        if (value == null || value.scale() != 0 || Math.abs(value.longValue()) > Integer.MAX_VALUE) {
+        boolean signed = text.startsWith("-") || text.startsWith("+");
+        String digits = signed ? text.substring(1) : text;
+        if (digits.isEmpty() || digits.chars().anyMatch(c -> c < '0' || c > '9')) {
             return null;
         }
-        return value.intValue();
+        BigDecimal value = decimal(digits);
+        int size = value == null ? Integer.MAX_VALUE : (int) Math.min(Integer.MAX_VALUE, value.longValue());
+        return text.startsWith("-") ? -size : size;
     }
 
     private static @Nullable Boolean truth(String text) {

@@ -1,6 +1,8 @@
 package steelyard.drills.read;
 
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import java.util.Set;
 import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
@@ -35,6 +37,7 @@ final class PoolReader {
 
     private final Problems problems;
     private final BackendsReader backends;
+    private final Map<Integer, String> ports = new HashMap<>();
 
     PoolReader(Problems problems, BackendsReader backends) {
         this.problems = problems;
@@ -54,7 +57,7 @@ final class PoolReader {
         long drain = fields.map("drain", Keys.DRAIN).read("limit", Durations.POSITIVE, 30 * SECOND);
         Timeouts timeouts = timeouts(fields.map("timeouts", Keys.TIMEOUTS));
         boolean forwarded = fields.read("forwarded", Numbers.YES_OR_NO, false);
-        int port = fields.map("front", Keys.FRONT).read("port", PORT, 0);
+        int port = port(fields.map("front", Keys.FRONT), entry.key());
         BackendsReader.OfPool ofPool = backends.read(fields, entry.key());
         checkWeights(fields, method, weights, ofPool);
         checkLoss(fields, probe, ofPool);
@@ -76,6 +79,18 @@ final class PoolReader {
                         list);
     }
 
+    private int port(Fields front, String pool) {
+        int port = front.read("port", PORT, 0);
+        String other = port == 0 ? null : ports.putIfAbsent(port, pool);
+        if (other != null) {
+            problems.add(
+                    front.valuePlace("port"),
+                    "port " + port + " is the front of pool '" + other + "' already",
+                    "choose another one");
+        }
+        return port;
+    }
+
     /**
      * What is behind a key that may be left out. Where a key of the pool could not be read it may be this one,
      * misspelt; something harmless then stands in, so that nobody is told that the pool lacks it.
@@ -93,13 +108,17 @@ final class PoolReader {
             problems.add(
                     fields.keyPlace("path"), "a tcp probe asks for no path", "leave out path, or write kind: http");
         }
+        long every = fields.read("every", Durations.PERIOD, SECOND);
+        long within = fields.read("within", Durations.POSITIVE, 400 * MILLISECOND);
+        if (within > every) {
+            problems.notice(
+                    fields.keyPlace(fields.has("within") ? "within" : "every"),
+                    "a probe may take " + Durations.text(within) + ", longer than from one to the next: a late answer"
+                            + " delays the next probe",
+                    "write a within of at most " + Durations.text(every));
+        }
         return new Probe(
-                kind,
-                path,
-                fields.read("every", Durations.PERIOD, SECOND),
-                fields.read("within", Durations.POSITIVE, 400 * MILLISECOND),
-                fields.read("misses", IN_A_ROW, 3),
-                fields.read("passes", IN_A_ROW, 2));
+                kind, path, every, within, fields.read("misses", IN_A_ROW, 3), fields.read("passes", IN_A_ROW, 2));
     }
 
     private WarmUp warmUp(Fields pool) {
@@ -141,7 +160,10 @@ final class PoolReader {
                         "write method: weighted-round-robin to use them");
             }
         } else if (written != null && ofPool.noneWeighs()) {
-            problems.add(written, "every backend of the pool has weight 0", "give one a weight of at least 1");
+            problems.notice(
+                    written,
+                    "every backend of the pool has weight 0, so none takes work",
+                    "give one a weight of at least 1");
         }
     }
 

@@ -6,8 +6,8 @@ import java.util.Objects;
  * Something wrong with a drill file, or worth knowing about it, and where.
  *
  * @param file the file as the person named it
- * @param line from 1
- * @param column from 1, in characters
+ * @param line from 1; 0 for the file as a whole
+ * @param column from 1, in characters; 0 for the file as a whole
  * @param message what is wrong, one line without a full stop
  * @param remedy what to do about it, one line without a full stop
  */
@@ -27,11 +27,12 @@ public record Problem(Severity severity, String file, int line, int column, Stri
         NOTICE
     }
 
-    /** One line, as it is shown: {@code file:line:column: message; remedy}. */
+    /** One line, as it is shown: {@code file:line:column: message; remedy}; the file alone where that is the place. */
     @Override
     public String toString() {
         String word = severity == Severity.NOTICE ? "notice: " : "";
-        return file + ":" + line + ":" + column + ": " + word + message + "; " + remedy;
+        String place = line == 0 ? file : file + ":" + line + ":" + column;
+        return place + ": " + word + message + "; " + remedy;
     }
 
     /** Text of the file may be quoted in it, so nothing of it may break the line or act on a terminal. */

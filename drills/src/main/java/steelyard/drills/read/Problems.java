@@ -2,7 +2,9 @@ package steelyard.drills.read;
 
 import java.util.ArrayList;
 import java.util.Comparator;
+import java.util.HashSet;
 import java.util.List;
+import java.util.Set;
 
 /** Collects what is found while one text is read. */
 final class Problems {
@@ -11,6 +13,7 @@ final class Problems {
 
     private final String file;
     private final List<Problem> found = new ArrayList<>();
+    private final Set<String> refusedNames = new HashSet<>();
     private boolean refused;
 
     Problems(String file) {
@@ -36,6 +39,16 @@ final class Problems {
         if (found.size() < MOST) {
             found.add(new Problem(severity, file, place.line(), place.column(), message, remedy));
         }
+    }
+
+    /** Remembers a name that was refused where it was given. */
+    void refuseName(String name) {
+        refusedNames.add(name);
+    }
+
+    /** Whether a text counts from a refused name; what is wrong was noted at the name. */
+    boolean meansRefusedName(String text) {
+        return refusedNames.stream().anyMatch(name -> text.equals(name) || text.startsWith(name + " "));
     }
 
     /** Whether the text cannot become a value. */

@@ -27,6 +27,9 @@ record TargetDraft(Place place, Target.Kind kind, List<Placed<String>> names) {
         List<Placed<String>> names = new ArrayList<>();
         for (Node one : nodes) {
             String name = NAME.read(one, key, problems);
+            if (name != null && names.stream().anyMatch(there -> there.value().equals(name))) {
+                problems.notice(one.place(), "'" + name + "' is named twice", "keep one");
+            }
             if (name != null) {
                 names.add(new Placed<>(one.place(), name));
             }

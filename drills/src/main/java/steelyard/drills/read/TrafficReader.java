@@ -45,7 +45,10 @@ final class TrafficReader {
         Node node = drill.node("traffic");
         List<Node> nodes = drill.list("traffic");
         for (Node one : nodes) {
-            streams.add(stream(Fields.open(one, Keys.TRAFFIC, problems)));
+            Fields fields = Fields.open(one, Keys.TRAFFIC, problems);
+            Traffic stream = stream(fields);
+            streams.add(stream);
+            noticeSilence(fields, stream);
         }
         if (nodes.isEmpty() && node instanceof Node.Items) {
             problems.add(node.place(), "there is no traffic", "write traffic: [{to: seats, rate: 300/s}]");
@@ -76,6 +79,24 @@ final class TrafficReader {
                         fields.has("requests") ? fields.valuePlace("requests") : fields.place(),
                         "a backend would take '" + request.path() + "' for a probe of the pool",
                         "ask for another path, or let the probe do so");
+            }
+        }
+    }
+
+    /** Without mapping files every answer of a backend has status 200. */
+    private void noticeSilence(Fields fields, Traffic stream) {
+        boolean own = stage != null
+                && stage.pools().stream()
+                        .filter(pool -> pool.name().equals(stream.pool()))
+                        .flatMap(pool -> pool.backends().stream())
+                        .allMatch(backend -> backend.serves().answers() == null);
+        for (int i = 0; own && i < stream.requests().size(); i++) {
+            Traffic.Request request = stream.requests().get(i);
+            if (!request.good().isEmpty() && !request.good().contains(200)) {
+                problems.notice(
+                        fields.list("requests").get(i).place(),
+                        "no answer to '" + request.path() + "' could be good: the backends answer with status 200",
+                        "add 200 to good, or give the backends a folder of answers");
             }
         }
     }
@@ -127,6 +148,11 @@ final class TrafficReader {
         if (steps.isEmpty()) {
             problems.add(fields.valuePlace("steps"), "steps: has no step", "write steps: [{for: 20s, rate: 300/s}]");
             steps.add(new Traffic.Step(1, 1));
+        } else if (begins < lastsNanos) {
+            problems.notice(
+                    fields.keyPlace("steps"),
+                    "the steps end at " + Durations.text(begins) + ", before the play does: the last rate holds on",
+                    "lengthen the last step, or add one");
         }
         return steps;
     }

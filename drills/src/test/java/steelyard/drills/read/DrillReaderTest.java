@@ -192,7 +192,7 @@ class DrillReaderTest {
     @Test
     void read_ofTraffic_takesStepsAndTheMix() {
         Traffic traffic = read(EveryKeyTest.TEXT).traffic().get(0);
-        assertThat(traffic.steps()).containsExactly(new Traffic.Step(20 * S, 300), new Traffic.Step(10 * S, 20));
+        assertThat(traffic.steps()).containsExactly(new Traffic.Step(20 * S, 300), new Traffic.Step(100 * S, 20));
         assertThat(traffic.arrivals()).isEqualTo(Traffic.Arrivals.EVEN);
         assertThat(traffic.skew()).isEqualTo(1.1);
         assertThat(traffic.requests())

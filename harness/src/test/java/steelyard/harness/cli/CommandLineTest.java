@@ -58,7 +58,7 @@ class CommandLineTest {
                     compare nowhere else --margin 5       | '5' is not a share from 0% to 100%
                     rehearse loose-one-of-three           | no bundled drill 'loose-one-of-three'; did you mean 'lose-one-of-three'?
                     check nothing-like-it                 | no bundled drill 'nothing-like-it'; `steelyard drills` lists
-                    check nowhere/slow-one.yaml           | nowhere/slow-one.yaml:1:1: there is no such file
+                    check nowhere/slow-one.yaml           | nowhere/slow-one.yaml: there is no such file
                     drills --show slow-on                 | no bundled drill 'slow-on'; did you mean 'slow-one'?
                     help rehears                          | unknown command 'rehears'
                     """)
