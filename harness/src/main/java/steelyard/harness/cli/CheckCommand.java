@@ -46,6 +46,7 @@ final class CheckCommand implements Callable<Integer> {
             DrillSource source = DrillSource.named(path);
             Drill drill = source.drill();
             source.lines().forEach(err::println);
+            Playable.rates(drill, source.places()).forEach(err::println);
             spec.commandLine().getOut().println(source.name() + ": ok: " + summary(drill));
             return true;
         } catch (CommandFailure wrong) {

@@ -8,8 +8,10 @@ import java.util.Locale;
 import java.util.Optional;
 import steelyard.drills.model.Drill;
 import steelyard.drills.read.DrillLibrary;
+import steelyard.drills.read.DrillPlaces;
 import steelyard.drills.read.DrillReader;
 import steelyard.drills.read.Parsed;
+import steelyard.drills.read.Problem;
 
 /**
  * A drill as it was named on the command line: a file, or else the name of a bundled drill.
@@ -31,7 +33,12 @@ record DrillSource(String name, String stem, String text, Parsed<Drill> parsed) 
         String name = path.toString();
         String bare = name.replaceFirst(ENDING, "");
         Optional<String> bundled = DrillLibrary.text(bare);
-        if (!Files.exists(path) && bundled.isPresent()) {
+        if (name.isEmpty()) {
+            throw CommandFailure.wrong(
+                    List.of("steelyard: the name of the drill is empty; name a file, or a bundled drill (`steelyard"
+                            + " drills` lists them)"));
+        }
+        if (!Files.isRegularFile(path) && bundled.isPresent()) {
             return new DrillSource(bare, bare, bundled.get(), DrillReader.read(bare, bundled.get()));
         }
         boolean looksBare = path.getNameCount() == 1 && bare.equals(name);
@@ -55,16 +62,25 @@ record DrillSource(String name, String stem, String text, Parsed<Drill> parsed) 
     }
 
     /**
-     * The drill.
+     * The drill, its folders of answers read once.
      *
-     * @throws CommandFailure with every problem, when there is none
+     * @throws CommandFailure with every problem, when there is none or a folder of answers cannot be used
      */
     Drill drill() throws CommandFailure {
         Optional<Drill> drill = parsed.value();
         if (drill.isEmpty()) {
             throw CommandFailure.wrong(lines());
         }
+        List<Problem> answers = Playable.answers(drill.get(), places());
+        if (!answers.isEmpty()) {
+            throw CommandFailure.wrong(answers.stream().map(Object::toString).toList());
+        }
         return drill.get();
+    }
+
+    /** Where the keys of the drill stand. */
+    DrillPlaces places() {
+        return DrillPlaces.of(name, text);
     }
 
     private static String stem(Path path) {

@@ -2,6 +2,8 @@ package steelyard.harness.cli;
 
 import java.util.List;
 import java.util.Locale;
+import java.util.regex.Matcher;
+import java.util.regex.Pattern;
 import picocli.CommandLine;
 import picocli.CommandLine.IParameterExceptionHandler;
 import picocli.CommandLine.ParameterException;
@@ -9,6 +11,9 @@ import picocli.CommandLine.UnmatchedArgumentException;
 
 /** A wrong command line: one line that says what is wrong and what was probably meant. */
 final class WrongUsage implements IParameterExceptionHandler {
+
+    /** Digits that were refused all the same. */
+    private static final Pattern BEYOND = Pattern.compile("'[+-]?\\d+' is not a whole number");
 
     @Override
     public int handleParseException(ParameterException found, String[] arguments) {
@@ -40,7 +45,13 @@ final class WrongUsage implements IParameterExceptionHandler {
                 .replaceAll("\\s*\\R\\s*", " ")
                 .replaceAll("\\.$", "")
                 .replace("subcommand", "command")
-                .replace("is not a long", "is not a whole number");
+                .replace("is not a long", "is not a whole number")
+                .replace("is not an int", "is not a whole number");
+        Matcher beyond = BEYOND.matcher(message);
+        if (beyond.find()) {
+            message = message.replace(
+                    "is not a whole number", "is out of range, from " + Long.MIN_VALUE + " to " + Long.MAX_VALUE);
+        }
         return message.substring(0, 1).toLowerCase(Locale.ROOT) + message.substring(1);
     }
 

@@ -37,6 +37,14 @@ public final class RunFolder {
         if (Files.exists(path) && !Files.isDirectory(path)) {
             throw new FolderRefused(path + " is a file; name a folder that does not exist yet");
         }
+        Path above = path.toAbsolutePath().normalize().getParent();
+        while (above != null && !Files.exists(above)) {
+            above = above.getParent();
+        }
+        if (above != null && !Files.isDirectory(above)) {
+            throw new FolderRefused(
+                    path + " cannot be made, since " + above.getFileName() + " is a file; name another folder");
+        }
         if (Files.isDirectory(path) && !empty(path)) {
             throw new FolderRefused(path + " is already there and not empty; name another folder or remove it");
         }
@@ -44,7 +52,7 @@ public final class RunFolder {
             Files.createDirectories(path);
             Files.delete(Files.createTempFile(path, "check", null));
         } catch (IOException e) {
-            throw new FolderRefused(path + " cannot be written to; name a folder that can", e);
+            throw new FolderRefused(path + " cannot be written to; name a folder that can be written to", e);
         }
         return new RunFolder(path);
     }
