@@ -72,7 +72,7 @@ class LiveStageTest extends StageContract {
             assertThatThrownBy(() -> stage.open(new PlayListener() {}))
                     .isInstanceOf(CannotPlay.class)
                     .hasMessage("the drill offers 27000 requests a second at its peak, more than the 20000 that the"
-                            + " generator sends: lower its rates or its surge");
+                            + " generator sends: forecast it, or lower its rates or its surge");
         }
     }
 

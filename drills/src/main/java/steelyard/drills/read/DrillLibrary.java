@@ -10,7 +10,13 @@ import java.util.Optional;
 /** The bundled drills. Stateless; any thread may call. */
 public final class DrillLibrary {
     private static final List<String> NAMES = List.of(
-            "drain-for-patching", "lose-one-of-three", "reweigh-live", "slow-one", "uneven-hosts", "which-probe");
+            "drain-for-patching",
+            "lose-one-of-three",
+            "many-quays",
+            "reweigh-live",
+            "slow-one",
+            "uneven-hosts",
+            "which-probe");
 
     private DrillLibrary() {}
 

@@ -28,6 +28,9 @@ final class FirstSteps {
 
     /** Plays them on a stage of their own, which is gone afterwards. What cannot be played shows in the true play. */
     static void play(Drill drill, long seed, Interrupts interrupts) {
+        if (LiveStage.tooMuch(drill)) {
+            return;
+        }
         Drill first = brief(drill);
         Cast cast = new Cast(first);
         PlayListener listener = new Tee(new Judge(first, cast), new PlayBoard(cast));

@@ -1,6 +1,8 @@
 package steelyard.harness.record;
 
+import java.util.HashMap;
 import java.util.List;
+import java.util.Map;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Host;
@@ -12,6 +14,7 @@ public final class Cast {
     private final List<Pool> pools;
     private final List<Host> hosts;
     private final List<Backend> backends;
+    private final Map<String, Integer> backendNumbers = new HashMap<>();
     private final int[] poolOf;
     private final int[] hostOf;
 
@@ -26,6 +29,7 @@ public final class Cast {
             for (Backend each : pools.get(pool).backends()) {
                 poolOf[backend] = pool;
                 hostOf[backend] = hostNumber(each.host());
+                backendNumbers.put(each.name(), backend);
                 backend++;
             }
         }
@@ -75,12 +79,11 @@ public final class Cast {
 
     /** The number of a backend. Throws {@link IllegalArgumentException} for an unknown name. */
     public int backendNumber(String name) {
-        for (int backend = 0; backend < backends.size(); backend++) {
-            if (backends.get(backend).name().equals(name)) {
-                return backend;
-            }
+        Integer backend = backendNumbers.get(name);
+        if (backend == null) {
+            throw new IllegalArgumentException("no backend " + name);
         }
-        throw new IllegalArgumentException("no backend " + name);
+        return backend;
     }
 
     /** The numbers of a target's backends, in stage order. */

@@ -84,12 +84,17 @@ public final class LiveStage implements Stage {
         loops = transport.loops(1, "generator");
     }
 
+    /** Whether a drill offers more than the generator could send, so that {@link #open} refuses it. */
+    public static boolean tooMuch(Drill drill) {
+        return OfferedRate.peakPerSecond(drill) > MOST_REQUESTS_A_SECOND;
+    }
+
     private void refuseTooMuch() throws CannotPlay {
         double peak = OfferedRate.peakPerSecond(drill);
-        if (peak > MOST_REQUESTS_A_SECOND) {
-            throw new CannotPlay(
-                    "the drill offers " + Math.round(peak) + " requests a second at its peak, more than the "
-                            + MOST_REQUESTS_A_SECOND + " that the generator sends: lower its rates or its surge");
+        if (tooMuch(drill)) {
+            throw new CannotPlay("the drill offers " + Math.round(peak)
+                    + " requests a second at its peak, more than the " + MOST_REQUESTS_A_SECOND
+                    + " that the generator sends: forecast it, or lower its rates or its surge");
         }
     }
 

@@ -8,7 +8,6 @@ import steelyard.backends.behave.Change;
 import steelyard.backends.behave.Figures;
 import steelyard.backends.behave.Reply;
 import steelyard.backends.behave.ReplySink;
-import steelyard.balancer.core.pick.Tournament;
 
 /** All behaviours of a play, and which of them has something planned first. */
 final class VirtualBackends {
@@ -25,16 +24,14 @@ final class VirtualBackends {
     private final Behaviour[] behaviours;
     private final Sink[] sinks;
     private final boolean[] killed;
-    private final long[] deadlines;
-    private final Tournament first;
+    private final Deadlines deadlines;
 
     /** @param hearer hears everything from the first call on */
     VirtualBackends(List<BehaviourSettings> settings, Chance chance, Hearer hearer) {
         behaviours = new Behaviour[settings.size()];
         sinks = new Sink[behaviours.length];
         killed = new boolean[behaviours.length];
-        deadlines = new long[behaviours.length];
-        first = new Tournament(behaviours.length, (a, b) -> deadlines[a] < deadlines[b]);
+        deadlines = new Deadlines(behaviours.length);
         for (int backend = 0; backend < behaviours.length; backend++) {
             behaviours[backend] = new Behaviour(backend, settings.get(backend), chance, 0);
             sinks[backend] = new Sink(backend, hearer);
@@ -42,13 +39,12 @@ final class VirtualBackends {
     }
 
     long nextNanos() {
-        int backend = first.best();
-        return backend == Tournament.NOBODY ? Lane.NEVER : deadlines[backend];
+        return deadlines.first();
     }
 
     /** Does what the first backend has planned. */
     void poll(long nowNanos) {
-        int backend = first.best();
+        int backend = deadlines.whoIsFirst();
         behaviours[backend].poll(nowNanos, sinks[backend]);
         reschedule(backend);
     }
@@ -96,15 +92,8 @@ final class VirtualBackends {
     }
 
     private void reschedule(int backend) {
-        if (behaviours[backend].hasDeadline()) {
-            long deadline = behaviours[backend].nextDeadlineNanos();
-            if (deadline != deadlines[backend] || !first.has(backend)) {
-                deadlines[backend] = deadline;
-                first.enter(backend);
-            }
-        } else if (first.has(backend)) {
-            first.leave(backend);
-        }
+        Behaviour behaviour = behaviours[backend];
+        deadlines.set(backend, behaviour.hasDeadline() ? behaviour.nextDeadlineNanos() : Lane.NEVER);
     }
 
     /** Tells the hearer which backend it was. */
