@@ -66,7 +66,10 @@ class MechanismOffTest {
     }
 
     static List<String> drills() {
-        return DrillLibrary.names();
+        // Two thousand backends take long: ManyQuaysTest plays them thinned out.
+        return DrillLibrary.names().stream()
+                .filter(each -> !each.equals("many-quays"))
+                .toList();
     }
 
     @ParameterizedTest

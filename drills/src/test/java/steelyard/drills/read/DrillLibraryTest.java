@@ -7,6 +7,7 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.time.Duration;
 import java.util.List;
+import java.util.stream.Stream;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.MethodSource;
@@ -29,7 +30,7 @@ class DrillLibraryTest {
     }
 
     @ParameterizedTest
-    @MethodSource("names")
+    @MethodSource("rehearsable")
     void text_ofABundledDrill_suitsASmallMachine(String name) {
         Drill drill = DrillReader.read(name, DrillLibrary.text(name).orElseThrow())
                 .value()
@@ -40,6 +41,11 @@ class DrillLibraryTest {
         assertThat(Duration.ofNanos(drill.lastsNanos())).isBetween(Duration.ofSeconds(30), Duration.ofSeconds(60));
         assertThat(rate).isBetween(300.0, 900.0);
         assertThat(drill.about()).contains("Watch");
+    }
+
+    /** All but the one that is there to be more than a machine can rehearse. */
+    static Stream<String> rehearsable() {
+        return DrillLibrary.names().stream().filter(name -> !name.equals("many-quays"));
     }
 
     @Test
