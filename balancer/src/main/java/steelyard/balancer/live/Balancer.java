@@ -6,6 +6,7 @@ import java.security.SecureRandom;
 import java.util.ArrayList;
 import java.util.HexFormat;
 import java.util.List;
+import java.util.Locale;
 import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Chance;
@@ -90,11 +91,19 @@ public final class Balancer implements AutoCloseable {
             fronts.add(forwarding.bind(pool, port));
         } catch (IOException e) {
             String name = settings.pools().get(pool).name();
-            throw new CannotStart(
-                    "the front of pool " + name + " cannot listen on port " + port + " (" + e.getMessage()
-                            + "): choose another port, or end what holds it",
-                    e);
+            throw new CannotStart("the front of pool " + name + " cannot listen: " + reason(port, e), e);
         }
+    }
+
+    /** The system's own words differ from one transport to the next. */
+    private static String reason(int port, IOException refused) {
+        String told = String.valueOf(refused.getMessage()).toLowerCase(Locale.ROOT);
+        String why = told.contains("in use")
+                ? " is taken: choose another one, or end what holds it"
+                : told.contains("permission") || told.contains("denied")
+                        ? " is kept for the system: choose one from 1024 on"
+                        : " cannot be had: choose another one";
+        return "port " + port + why;
     }
 
     /**
@@ -132,10 +141,7 @@ public final class Balancer implements AutoCloseable {
             return new ControlAddress(address, token);
         } catch (IOException e) {
             page.close();
-            throw new CannotStart(
-                    "the control page cannot listen on port " + port + " (" + e.getMessage()
-                            + "): choose another port, or end what holds it",
-                    e);
+            throw new CannotStart("the control page cannot listen: " + reason(port, e), e);
         }
     }
 

@@ -12,6 +12,7 @@ import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Chance;
 import steelyard.balancer.live.ControlAddress;
 import steelyard.drills.model.Drill;
+import steelyard.drills.model.Pool;
 import steelyard.harness.conduct.Conductor;
 import steelyard.harness.console.View;
 import steelyard.harness.judge.Judge;
@@ -30,6 +31,7 @@ import steelyard.harness.stage.live.LiveStage;
 
 /** One drill played live: puts stage, conductor, recorder, judge and view together, and takes them apart. */
 final class Rehearsal {
+    private final DrillSource source;
     private final Drill drill;
     private final long seed;
     private final RunFolder folder;
@@ -47,6 +49,7 @@ final class Rehearsal {
      */
     Rehearsal(DrillSource source, Drill drill, long seed, Path path, boolean plain, PrintWriter out, PrintWriter err)
             throws CommandFailure {
+        this.source = source;
         this.drill = drill;
         this.seed = seed;
         this.out = out;
@@ -113,8 +116,23 @@ final class Rehearsal {
             out.println("metrics %s (bearer token %s)".formatted(control.url(), control.token()));
         } catch (CannotPlay cannot) {
             discard();
-            throw CommandFailure.cannot("steelyard: " + cannot.getMessage(), cannot);
+            throw CommandFailure.cannot(line(String.valueOf(cannot.getMessage())), cannot);
         }
+    }
+
+    /** A port that the drill asked for is shown where it did. */
+    private String line(String problem) {
+        for (Pool pool : drill.stage().pools()) {
+            String port = "port " + pool.frontPort();
+            if (pool.frontPort() != 0 && problem.startsWith("the front of pool " + pool.name() + " ")) {
+                String why = problem.substring(problem.indexOf(port));
+                int end = why.indexOf(": ");
+                return source.places()
+                        .problem(why.substring(0, end), why.substring(end + 2), "stage", "pools", pool.name(), "front")
+                        .toString();
+            }
+        }
+        return "steelyard: " + problem;
     }
 
     /** Nothing was played, so nothing is left behind; the folder was empty before. */

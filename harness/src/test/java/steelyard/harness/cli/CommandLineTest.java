@@ -36,6 +36,7 @@ class CommandLineTest {
                     rehearse --sed                        | unknown option '--sed'; did you mean '--seed'?
                     rehearse                              | missing required parameter: 'DRILL'; `steelyard help rehearse`
                     rehearse lose-one-of-three slow-one   | one argument too many, 'slow-one'; `steelyard help rehearse`
+                    rehearse --seed 99999999999999999999 slow-one | is out of range, from -9223372036854775808 to 9223372036854775807
                     rehearse --seed five slow-one         | '--seed': 'five' is not a whole number; `steelyard help rehearse`
                     rehearse --backends elsewhere slow-one| --backends can only be embedded, not 'elsewhere'
                     forecast --hold 90 slow-one           | '90' is not a share from 0% to 100%, such as 90%; `steelyard help forecast`
@@ -66,6 +67,45 @@ class CommandLineTest {
         assertThat(run(line.strip().split(" +"))).isEqualTo(2);
         assertThat(err.toString().strip()).contains(message).doesNotContain("\n", "\tat ");
         assertThat(out.toString()).isEmpty();
+    }
+
+    @ParameterizedTest
+    @ValueSource(strings = {"check", "rehearse", "forecast"})
+    void drill_withoutAName_isAskedFor(String command) {
+        assertThat(run(command, "")).isEqualTo(2);
+        assertThat(err.toString()).startsWith("steelyard: the name of the drill is empty; name a file");
+    }
+
+    @Test
+    void out_belowAFile_saysWhichFileIsInTheWay() throws IOException {
+        Path file = Files.writeString(folder.resolve("notes"), "x");
+        assertThat(run("forecast", "--out", file.resolve("sub").toString(), "slow-one"))
+                .isEqualTo(3);
+        assertThat(err.toString()).contains("cannot be made, since notes is a file; name another folder");
+    }
+
+    @ParameterizedTest
+    @ValueSource(strings = {"check", "rehearse", "forecast"})
+    void drill_whoseAnswersCannotBeUsed_isWrongAtItsKey(String command) throws IOException {
+        Path answers = Files.createDirectory(folder.resolve("answers"));
+        String text = DrillLibrary.text("slow-one").orElseThrow();
+        Path drill = folder.resolve("drill.yaml");
+        Files.writeString(drill, text.replace("serves: {", "serves: {answers: answers, "));
+        assertThat(run(command, drill.toString())).isEqualTo(2);
+        assertThat(err.toString()).contains("drill.yaml:13:16: ").contains("no mapping in it");
+        Files.writeString(answers.resolve("a.json"), "{\"response\": {\"colour\": 1}}");
+        assertThat(run(command, drill.toString())).isEqualTo(2);
+        assertThat(err.toString()).contains("a.json: not a mapping").doesNotContain("class ", "wiremock");
+    }
+
+    @Test
+    void check_ofTooMuchTraffic_givesANoticeAtTheRate() throws IOException {
+        String text = DrillLibrary.text("slow-one").orElseThrow();
+        Path drill = Files.writeString(folder.resolve("drill.yaml"), text.replace("rate: 700/s", "rate: 25000/s"));
+        assertThat(run("check", drill.toString())).isZero();
+        assertThat(err.toString())
+                .contains("notice: the traffic reaches 25000 requests a second")
+                .matches("(?s).*drill.yaml:\\d+:5: .*");
     }
 
     @Test
