@@ -167,6 +167,23 @@ class ForecastTest {
         assertThat(command.out()).contains("Interrupted; judged on the first ", " of 100000.");
     }
 
+    @Test
+    void forecast_interruptedBeforeAPlayHasEnded_saysSoAndEndsWith130() throws Exception {
+        Path drill = drill("failed, at-most: 100%");
+        Files.writeString(
+                drill,
+                Files.readString(drill).replace("rate: 50/s", "rate: 20000/s").replace("lasts: 2s", "lasts: 1h"));
+        Command command = forecast(drill, "--plays", "3");
+        await().atMost(Duration.ofSeconds(60)).until(() -> command.out().contains("in virtual time"));
+        command.signal("INT");
+        assertThat(command.status()).as(command.out() + command.err()).isEqualTo(130);
+        assertThat(command.out()).contains("Interrupted before a play had ended; nothing is foreseen.");
+        assertThat(json("run.json").path("ended").asText()).isEqualTo("interrupted");
+        assertThat(json("run.json").path("verdict").isNull()).isTrue();
+        assertThat(folder.resolve("run/verdict.json")).doesNotExist();
+        assertThat(Files.readString(folder.resolve("run/report.html"))).contains("interrupted before a play had ended");
+    }
+
     private int rowsOfPlays() throws IOException {
         Path rows = folder.resolve("run/plays.csv");
         return Files.exists(rows) ? (int) Files.readString(rows).lines().count() : 0;
