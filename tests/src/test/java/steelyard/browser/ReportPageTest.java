@@ -233,7 +233,7 @@ class ReportPageTest {
         browser.run("document.querySelector('.cue').click()");
         settle();
 
-        assertThat(find("#readout .when").getText()).startsWith("Mean from 12 s to 24 s");
+        assertThat(find("#readout .when").getText()).startsWith("12 s to 24 s: means");
     }
 
     /** Charts paint in the next frames. */

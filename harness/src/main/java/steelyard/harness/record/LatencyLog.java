@@ -11,7 +11,7 @@ import org.HdrHistogram.HistogramLogWriter;
 import org.jspecify.annotations.Nullable;
 
 /**
- * Writes {@code latency.hlog}: one histogram a second, of good answers by due time, in nanoseconds. Base time is 0, so
+ * Writes {@code latency.hlog}: one histogram a slice, of good answers by due time, in nanoseconds. Base time is 0, so
  * that nothing of the wall clock is in it.
  */
 final class LatencyLog {
@@ -24,14 +24,13 @@ final class LatencyLog {
     private final ByteArrayOutputStream lines = new ByteArrayOutputStream();
 
     private final HistogramLogWriter writer = new HistogramLogWriter(lines);
-    private final Histogram second = new Histogram(1_000, 1_000_000_000L, 3);
+    private final Histogram one = new Histogram(1_000, 1_000_000_000L, 3);
     private @Nullable OutputStream out;
-    private long secondNumber;
 
     LatencyLog(Path file, Trouble trouble) {
         this.file = file;
         this.trouble = trouble;
-        second.setAutoResize(true);
+        one.setAutoResize(true);
         trouble.guard(file, () -> out = new BufferedOutputStream(Files.newOutputStream(file)));
         writer.outputLogFormatVersion();
         writer.outputBaseTime(0);
@@ -41,28 +40,24 @@ final class LatencyLog {
 
     /** Slices come in order. */
     void add(Slice slice) {
-        long number = slice.index() / SLICES_A_SECOND;
-        if (number != secondNumber) {
-            endSecond();
-            secondNumber = number;
+        if (slice.ok() > 0) {
+            one.reset();
+            slice.addLatencies(one);
+            double from = (double) slice.index() / SLICES_A_SECOND;
+            double to = (double) (slice.index() + 1) / SLICES_A_SECOND;
+            writer.outputIntervalHistogram(from, to, one, LARGEST_IN_MILLIS);
         }
-        slice.addLatencies(second);
+        if (slice.index() % SLICES_A_SECOND == SLICES_A_SECOND - 1) {
+            flush();
+        }
     }
 
     void close() {
-        endSecond();
+        flush();
         OutputStream stream = out;
         if (stream != null) {
             trouble.guard(file, stream::close);
         }
-    }
-
-    private void endSecond() {
-        if (second.getTotalCount() > 0) {
-            writer.outputIntervalHistogram(secondNumber, secondNumber + 1.0, second, LARGEST_IN_MILLIS);
-            second.reset();
-        }
-        flush();
     }
 
     private void flush() {

@@ -38,6 +38,11 @@ final class ChartData {
         data.set("cues", cues(run.run().cues()));
         data.set("requests", requests(run.columns()));
         data.set("backends", backends(run));
+        if (run.latencies().known()) {
+            data.set(
+                    "latencies",
+                    LatencySteps.json(run.latencies(), run.columns().size()));
+        }
         ForecastRow forecast = run.run().forecast();
         if (forecast != null && run.columns().size() > 0) {
             boolean grouped = forecast.rows().stream().anyMatch(row -> row.backends() > 1);

@@ -9,6 +9,7 @@ import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.record.RunData.ForecastRow;
 import steelyard.harness.record.RunData.PoolRow;
 import steelyard.harness.record.RunFolder;
+import steelyard.harness.record.SliceLatencies;
 import steelyard.harness.record.Slices;
 
 /**
@@ -16,14 +17,18 @@ import steelyard.harness.record.Slices;
  *
  * @param backends whose columns there are: backends, or in a forecast of many groups of them
  * @param columns what charts draw
+ * @param latencies of each slice of a play; unknown for a forecast
  * @param sums what is added up over slices; the same, but means over plays in a forecast
  */
-record RunFiles(RunData run, List<BackendRow> backends, Columns columns, Columns sums) {
+record RunFiles(RunData run, List<BackendRow> backends, Columns columns, Columns sums, SliceLatencies latencies) {
 
     static RunFiles read(Path folder) throws IOException {
         try {
-            RunData run = RunData.read(RunFolder.existing(folder));
-            return run.forecast() == null ? ofPlay(run) : ofForecast(run, run.forecast());
+            RunFolder existing = RunFolder.existing(folder);
+            RunData run = RunData.read(existing);
+            return run.forecast() == null
+                    ? ofPlay(run, SliceLatencies.read(existing))
+                    : ofForecast(run, run.forecast());
         } catch (FolderRefused e) {
             throw new IOException(e.getMessage(), e);
         } catch (IllegalArgumentException e) {
@@ -31,9 +36,9 @@ record RunFiles(RunData run, List<BackendRow> backends, Columns columns, Columns
         }
     }
 
-    private static RunFiles ofPlay(RunData run) {
+    private static RunFiles ofPlay(RunData run, SliceLatencies latencies) {
         Columns columns = Columns.of(run.slices(), run.backends());
-        return new RunFiles(run, run.backends(), columns, columns);
+        return new RunFiles(run, run.backends(), columns, columns, latencies);
     }
 
     private static RunFiles ofForecast(RunData run, ForecastRow forecast) {
@@ -41,7 +46,12 @@ record RunFiles(RunData run, List<BackendRow> backends, Columns columns, Columns
                 .map(row -> new BackendRow(row.name(), row.pool(), "", 0))
                 .toList();
         Slices slices = run.slices();
-        return new RunFiles(run, rows, ForecastColumns.medians(slices, rows), ForecastColumns.means(slices, rows));
+        return new RunFiles(
+                run,
+                rows,
+                ForecastColumns.medians(slices, rows),
+                ForecastColumns.means(slices, rows),
+                SliceLatencies.none());
     }
 
     List<String> pools() {

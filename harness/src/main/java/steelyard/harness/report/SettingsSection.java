@@ -29,19 +29,25 @@ final class SettingsSection {
         List<Column> columns = new ArrayList<>(List.of(Column.rowHead("Setting")));
         pools.forEach(pool -> columns.add(Column.words("Pool " + pool.name())));
         Html table = new Html().table("settings", "Pools", columns);
-        table.row(columns, across("method", pools, PoolRow::method));
+        table.row(columns, across("method", pools, pool -> whole(pool.method())));
         table.row(columns, across("count", pools, PoolRow::count));
         table.row(columns, across("weights", pools, PoolRow::weights));
         Set<String> keys = new LinkedHashSet<>();
         pools.forEach(pool -> keys.addAll(pool.settings().keySet()));
         for (String key : keys) {
-            table.row(columns, across(key, pools, pool -> pool.settings().getOrDefault(key, Figures.NONE)));
+            table.row(columns, across(key, pools, pool -> whole(pool.settings().getOrDefault(key, Figures.NONE))));
         }
         return table.endTable().toString();
     }
 
+    /** Words with a hyphen are not broken, and neither is a number from its unit. */
+    private static String whole(String text) {
+        return text.replaceAll("(?<=\\w)-(?=\\w)", "\u2011")
+                .replaceAll("(\\d) (%|ms|s|B|KiB|MiB)(?![a-zA-Z])", "$1\u00a0$2");
+    }
+
     private static List<String> across(String key, List<PoolRow> pools, Function<PoolRow, String> setting) {
-        List<String> cells = new ArrayList<>(List.of(key));
+        List<String> cells = new ArrayList<>(List.of(whole(key)));
         pools.forEach(pool -> cells.add(setting.apply(pool)));
         return cells;
     }

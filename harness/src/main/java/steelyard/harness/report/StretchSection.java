@@ -47,6 +47,16 @@ final class StretchSection {
         return table.endTable().toString();
     }
 
+    /** What a reader should know about the tables. */
+    static String note(RunFiles run) {
+        String latencies = run.latencies().known()
+                ? "Its latencies are quantiles of its good answers; a measure of latency counts a failed request as"
+                        + " infinitely slow, so the two differ where requests failed."
+                : "Its latencies are the means of its slices\u2019 quantiles of good answers, weighted by their number: near"
+                        + " to the quantiles of the whole stretch, not the same.";
+        return "A stretch runs from one cue to the next, to the slice of 100 ms. " + latencies;
+    }
+
     private static String caption(String words, RunFiles run) {
         return run.run().forecast() == null ? words : words + ", means over plays";
     }

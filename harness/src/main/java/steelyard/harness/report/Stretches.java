@@ -7,6 +7,7 @@ import java.util.Map;
 import java.util.TreeMap;
 import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.record.RunData.CueRow;
+import steelyard.harness.record.SliceLatencies;
 import steelyard.harness.report.Columns.PerBackend;
 
 /**
@@ -16,10 +17,12 @@ import steelyard.harness.report.Columns.PerBackend;
 final class Stretches {
     private final Columns slices;
     private final List<BackendRow> backends;
+    private final SliceLatencies latencies;
 
     private Stretches(RunFiles run) {
         slices = run.sums();
         backends = run.backends();
+        latencies = run.latencies();
     }
 
     static List<Stretch> of(RunFiles run) {
@@ -65,8 +68,8 @@ final class Stretches {
                 sum(slices.offered(), from, to),
                 sum(slices.ok(), from, to),
                 failed,
-                weighted(slices.p50(), from, to),
-                weighted(slices.p99(), from, to),
+                quantile(0.5, slices.p50(), from, to),
+                quantile(0.99, slices.p99(), from, to),
                 parts);
     }
 
@@ -93,6 +96,10 @@ final class Stretches {
         return sum;
     }
 
+    private double quantile(double share, double[] quantiles, int from, int to) {
+        return latencies.known() ? latencies.quantile(from, to, share) / 1e6 : weighted(quantiles, from, to);
+    }
+
     private double weighted(double[] quantiles, int from, int to) {
         double sum = 0;
         double weights = 0;
@@ -106,8 +113,8 @@ final class Stretches {
     }
 
     /**
-     * What happened between two cues. Times in seconds; a quantile in milliseconds is the mean of the slices' own,
-     * weighted by their good answers.
+     * What happened between two cues. Times in seconds; a quantile in milliseconds is that of its good answers,
+     * or, where only slices are known, the mean of their own, weighted by their good answers.
      *
      * @param cues the names of the cues that opened it; empty for the first
      * @param failed by cause, for causes that occurred in the play

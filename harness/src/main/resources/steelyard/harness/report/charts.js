@@ -16,7 +16,7 @@ function chartsOf(run, narrow) {
     title: `Attempts a second${of(pool)}, by ${one}`,
     note:
       (run.bands ? 'median shares; ' : '') +
-      (pool.members.length > 1 ? 'dark lines: where entitled shares would put the edges' : ''),
+      (pool.members.length > 1 ? 'thin lines: where entitled shares would put the edges' : ''),
     height: Math.min(Math.max(several ? 140 : 180, pool.members.length * 24), 300),
     y: linear(),
     series: [{ figure: (bin) => bin.pools[at] }],
@@ -42,7 +42,7 @@ function chartsOf(run, narrow) {
     ...strips,
     {
       title: 'Latency of good answers, ms, log scale',
-      note: 'quantiles of 100 ms slices',
+      note: run.latencies ? 'quantiles of each step' : 'quantiles of 100 ms slices',
       height: narrow ? 150 : 170,
       y: logarithmic(),
       series: QUANTILES.map((each) => ({ ...each, ...quantileOf(run, each), colour: ink[each.tone] })),
@@ -80,16 +80,16 @@ function chartsOf(run, narrow) {
       about: () => backendsAbout(run, run.backends, 'utilisation', 2, 'of 1 busy'),
     },
   ];
-  if (run.backends.some((each) => each.weight.some((weight) => weight !== each.weight[0]))) {
-    charts.splice(charts.length - 1, 0, {
-      title: `Weight in effect, by ${one}`,
-      note: '',
-      height: 96,
-      y: linear(),
-      series: lines(run, 'weight').map((each) => ({ ...each, stepped: true })),
-      about: () => backendsAbout(run, run.backends, 'weight', 2, 'weight'),
-    });
-  }
+  const moving = run.pools.filter((pool) => pool.members.some((each) => each.weight.some((weight) => weight !== each.weight[0])));
+  const weights = moving.map((pool) => ({
+    title: `Weight in effect${of(pool)}, by ${one}`,
+    note: '',
+    height: 96,
+    y: linear(),
+    series: lines(run, 'weight', false, pool.members).map((each) => ({ ...each, stepped: true })),
+    about: () => backendsAbout(run, pool.members, 'weight', 2, 'weight'),
+  }));
+  charts.splice(charts.length - 1, 0, ...weights);
   return charts;
 }
 
@@ -144,8 +144,8 @@ function quantileOf(run, quantile) {
 }
 
 /** One line a backend; a light colour on light paper gets a darker edge. */
-function lines(run, figure, dotted) {
-  const told = run.backends.filter((each) => !dotted || each[figure].some((value) => value > 0));
+function lines(run, figure, dotted, members = run.backends) {
+  const told = members.filter((each) => !dotted || each[figure].some((value) => value > 0));
   return told.flatMap((each) => {
     const line = {
       ...(run.bands && !dotted ? bandOf((bin) => bin.backends[each.index].bands[figure]) : {}),
@@ -229,7 +229,7 @@ function standingAbout(backend) {
 
 function latencyAbout(run) {
   const all = figuresOf(run, 0, run.slices);
-  return `over the play, mean of slices: 50 % ${millis(all.p50)} ms, 99 % ${millis(all.p99)} ms; worst ${millis(all.worst)} ms`;
+  return `over the play${run.latencies ? '' : ', mean of slices'}: 50 % ${millis(all.p50)} ms, 99 % ${millis(all.p99)} ms; worst ${millis(all.worst)} ms`;
 }
 
 function failuresAbout(run) {

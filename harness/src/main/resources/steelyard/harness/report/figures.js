@@ -50,7 +50,61 @@ function unpacked(raw) {
     requests: unpackedBands(raw.bands.requests),
     backends: raw.bands.backends.map(unpackedBands),
   };
-  return { ...raw, requests, backends, pools, bands, causes: Object.keys(requests.failed) };
+  const latencies = raw.latencies && unpackedLatencies(raw.latencies);
+  return { ...raw, requests, backends, pools, bands, latencies, causes: Object.keys(requests.failed) };
+}
+
+/** The latencies of all slices as steps and how often each was met; `starts` says where a slice begins. */
+function unpackedLatencies(raw) {
+  const steps = [];
+  const counts = [];
+  const starts = [0];
+  for (const slice of raw.slices) {
+    let step = 0;
+    for (const number of slice) {
+      if (number < 0) {
+        counts[counts.length - 1] = -number;
+      } else {
+        step += number;
+        steps.push(step);
+        counts.push(1);
+      }
+    }
+    starts.push(steps.length);
+  }
+  const most = steps.reduce((best, each) => Math.max(best, each), 0);
+  return { bits: raw.bits, steps, counts, starts, met: new Int32Array(most + 1) };
+}
+
+/** The end of a step, in milliseconds: steps are even up to 2^bits units of 512 ns, then halve each doubling as often. */
+function stepEnd(step, bits) {
+  const half = 2 ** (bits - 1);
+  const doublings = Math.max(0, Math.floor(step / half) - 1);
+  return ((step - doublings * half + 1) * 2 ** doublings * 512 - 1) / 1e6;
+}
+
+/** Quantiles, in rising order, of the good answers of the slices [from, to): the smallest that a share is not above. */
+function quantilesOf(latencies, from, to, shares) {
+  const { steps, counts, starts, met, bits } = latencies;
+  const end = starts[Math.min(to, starts.length - 1)];
+  let total = 0;
+  let low = met.length;
+  let high = -1;
+  for (let at = starts[Math.min(from, starts.length - 1)]; at < end; at++) {
+    met[steps[at]] += counts[at];
+    total += counts[at];
+    low = Math.min(low, steps[at]);
+    high = Math.max(high, steps[at]);
+  }
+  let step = low;
+  let sum = total ? met[low] : 0;
+  const found = shares.map((share) => {
+    const rank = Math.max(1, Math.ceil(share * total));
+    while (step < high && sum < rank) sum += met[++step];
+    return total ? stepEnd(step, bits) : NAN;
+  });
+  met.fill(0, low, high + 1);
+  return found;
 }
 
 /** The bands of a forecast: of each figure the median and the quantiles that a chart is shaded between. */
@@ -120,11 +174,14 @@ function most(values, from, to) {
   return best;
 }
 
-/** Everything that charts and readout say of the slices [from, to): rates a second, means, quantiles of slices. */
+/** Everything that charts and readout say of the slices [from, to): rates a second, means, quantiles. */
 function figuresOf(run, from, to) {
   const seconds = (to - from) * run.slice;
   const { requests } = run;
   const failed = run.causes.map((cause) => total(requests.failed[cause], from, to) / seconds);
+  const quantiles = run.latencies
+    ? quantilesOf(run.latencies, from, to, [0.5, 0.95, 0.99])
+    : [requests.p50, requests.p95, requests.p99].map((each) => weighted(each, requests.ok, from, to));
   const figures = {
     from: from * run.slice,
     to: to * run.slice,
@@ -133,9 +190,9 @@ function figuresOf(run, from, to) {
     retries: total(requests.retries, from, to) / seconds,
     failed,
     failedAll: failed.reduce((sum, each) => sum + each, 0),
-    p50: weighted(requests.p50, requests.ok, from, to),
-    p95: weighted(requests.p95, requests.ok, from, to),
-    p99: weighted(requests.p99, requests.ok, from, to),
+    p50: quantiles[0],
+    p95: quantiles[1],
+    p99: quantiles[2],
     worst: most(requests.worst, from, to),
     backends: run.backends.map((each) => ({
       picked: total(each.picked, from, to) / seconds,

@@ -96,12 +96,19 @@ function nameBands(chart, pool, edges, bin, stack) {
   pool.members.forEach((member, at) => {
     const top = yOf(chart, edges[at](bin));
     const bottom = yOf(chart, edges[at + 1](bin));
-    if (bottom - top >= 11 * dpr) sideLabel(chart, member.name, (top + bottom) / 2);
+    if (bottom - top >= 11 * dpr) sideLabel(chart, member.name, (top + bottom) / 2, beside(chart, stack));
   });
 }
 
-function sideLabel(chart, text, y) {
-  const { ctx, bbox } = chart;
+/** Where the drawing ends: at the frame, or where the play was broken off. In pixels of the page. */
+function beside(chart, stack) {
+  const dpr = window.devicePixelRatio || 1;
+  const frame = chart.bbox.left + chart.bbox.width;
+  return Math.min(frame, xOf(chart, Math.max(stack.run.played, stack.view.from))) / dpr + 6;
+}
+
+function sideLabel(chart, text, y, left) {
+  const { ctx } = chart;
   const dpr = window.devicePixelRatio || 1;
   ctx.save();
   ctx.scale(dpr, dpr);
@@ -109,8 +116,12 @@ function sideLabel(chart, text, y) {
   ctx.fillStyle = ink.ink;
   ctx.textAlign = 'left';
   ctx.textBaseline = 'middle';
-  const left = (bbox.left + bbox.width) / dpr + 6;
-  ctx.fillText(shortened(ctx, text, chart.width - left), left, y / dpr);
+  const shown = shortened(ctx, text, chart.width - left);
+  ctx.lineJoin = 'round';
+  ctx.lineWidth = 4;
+  ctx.strokeStyle = ink.paper;
+  ctx.strokeText(shown, left, y / dpr);
+  ctx.fillText(shown, left, y / dpr);
   ctx.restore();
 }
 
@@ -216,7 +227,8 @@ function lineNames(names) {
     ends.sort((a, b) => a.y - b.y);
     for (let at = 1; at < ends.length; at++) ends[at].y = Math.max(ends[at].y, ends[at - 1].y + 12 * dpr);
     pushUp(ends, chart.bbox.top + chart.bbox.height, 12 * dpr);
-    ends.forEach((end) => sideLabel(chart, end.name, end.y));
+    const left = beside(chart, stack);
+    ends.forEach((end) => sideLabel(chart, end.name, end.y, left));
   };
 }
 

@@ -18,11 +18,23 @@ function buildReadout(stack, place) {
   readout.back = element('button', 'back', head, 'Whole play');
   readout.back.type = 'button';
   readout.back.addEventListener('click', () => look(stack, whole(stack.run)));
+  readout.fold = element('button', 'fold', head);
+  readout.fold.type = 'button';
+  readout.fold.addEventListener('click', () => fold(readout, !place.classList.contains('folded')));
   readout.requests = element('div', 'requests', place);
   readout.standings = element('p', 'standings', place);
   readout.table = element('table', 'backends', place);
+  place.tabIndex = 0;
+  fold(readout, matchMedia('(max-width: 600px)').matches);
   colourReadout(readout);
   return readout;
+}
+
+/** Folded, only the requests are left to see; a narrow page begins so. */
+function fold(readout, folded) {
+  readout.place.classList.toggle('folded', folded);
+  readout.fold.textContent = folded ? 'More' : 'Less';
+  readout.fold.setAttribute('aria-expanded', String(!folded));
 }
 
 /** Builds its rows; again after the colours changed. */
@@ -92,10 +104,13 @@ function say(readout, bin) {
   const from = Math.floor(view.from / run.slice + 1e-6);
   const to = Math.min(Math.ceil(view.to / run.slice - 1e-6), run.slices);
   const figures = bin || figuresOf(run, from, Math.max(to, from));
-  readout.when.textContent = bin ? `At ${seconds(bin.from)} s` : 'Mean';
+  const until = seconds(Math.min(view.to, run.played));
+  readout.when.textContent = bin ? `At ${seconds(bin.from)} s` : `${seconds(view.from)} s to ${until} s`;
   readout.span.textContent = bin
     ? ` to ${seconds(bin.to)} s`
-    : ` from ${seconds(view.from)} s to ${seconds(Math.min(view.to, run.played))} s`;
+    : run.latencies
+      ? ': means, and quantiles of good answers'
+      : ': means over slices';
   readout.back.hidden = !zoomed(stack);
   sayRequests(readout, figures);
   run.backends.forEach((each) => sayBackend(readout.cells[each.index], each, figures, bin));

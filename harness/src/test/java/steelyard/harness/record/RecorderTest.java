@@ -213,24 +213,29 @@ class RecorderTest {
     }
 
     @Test
-    void latencyLog_readBack_holdsGoodAnswersBySecond(@TempDir Path dir) throws Exception {
+    void latencyLog_readBack_holdsGoodAnswersBySlice(@TempDir Path dir) throws Exception {
         Path folder = dir.resolve("run");
         Recorder recorder = recorder(folder);
         play(recorder, 30);
         recorder.ended(3 * S, true);
 
-        List<EncodableHistogram> seconds = new ArrayList<>();
+        List<EncodableHistogram> slices = new ArrayList<>();
         try (HistogramLogReader reader = new HistogramLogReader(
                 new FileInputStream(folder.resolve("latency.hlog").toFile()))) {
             while (reader.hasNext()) {
-                seconds.add(reader.nextIntervalHistogram());
+                slices.add(reader.nextIntervalHistogram());
             }
         }
-        // Only the first second had good answers, ten of them, each after 20 ms.
-        assertThat(seconds).hasSize(1);
-        assertThat(((org.HdrHistogram.AbstractHistogram) seconds.get(0)).getTotalCount())
-                .isEqualTo(10);
-        assertThat(seconds.get(0).getMaxValueAsDouble()).isBetween(20e6, 20.03e6);
+        // Only the first second had good answers, one in each slice, each after 20 ms.
+        assertThat(slices).hasSize(10);
+        assertThat(slices.get(3).getStartTimeStamp()).isEqualTo(300);
+        assertThat(slices.get(3).getMaxValueAsDouble()).isBetween(20e6, 20.03e6);
+        SliceLatencies read = SliceLatencies.read(RunFolder.existing(folder));
+        assertThat(read.known()).isTrue();
+        assertThat(read.of(3).getTotalCount()).isEqualTo(1);
+        assertThat(read.of(10)).isNull();
+        assertThat(read.quantile(0, 30, 0.5)).isBetween(20e6, 20.03e6);
+        assertThat(read.quantile(10, 30, 0.5)).isNaN();
         assertThat(Files.readString(folder.resolve("latency.hlog"))).doesNotContain("StartTime: 1", "2026", "1970");
     }
 
