@@ -7,7 +7,6 @@ import steelyard.harness.forecast.Forecast;
 import steelyard.harness.forecast.Foreseen;
 import steelyard.harness.forecast.Held;
 import steelyard.harness.forecast.Spread;
-import steelyard.harness.record.SelfCheck;
 
 /** A forecast as a person reads it: in a sentence, each expectation with the share of plays that held it, each measure. */
 final class ForecastText {
@@ -22,6 +21,7 @@ final class ForecastText {
     /** @param width a table wider than that is written one row after the other */
     static List<String> lines(Forecast forecast, int width) {
         List<String> lines = new ArrayList<>(VerdictText.wrapped("", forecast.text(), width));
+        lines.addAll(UnfitText.lines(forecast.text(), forecast.checks(), width));
         List<Foreseen> expectations = forecast.expectations();
         if (!expectations.isEmpty()) {
             lines.add("");
@@ -49,13 +49,6 @@ final class ForecastText {
                 .forEach(each -> lines.addAll(
                         VerdictText.wrapped("", "note on " + each.figure().text() + ": " + each.note(), width)));
         lines.addAll(VerdictText.wrapped("", "Bands are " + Spread.METHOD + "; " + Held.METHOD + ".", width));
-        List<SelfCheck> failed =
-                forecast.checks().stream().filter(check -> !check.ok()).toList();
-        if (!failed.isEmpty()) {
-            lines.add("");
-            lines.add("Unfit to judge, because of:");
-            failed.forEach(check -> lines.addAll(VerdictText.wrapped(GAP, check.check() + ": " + check.text(), width)));
-        }
         return lines;
     }
 

@@ -23,7 +23,9 @@ import picocli.CommandLine.Spec;
             "1:an expectation was not met",
             "2:the drill or the command line is wrong",
             "3:it could not be played here, or is unfit to judge",
-            "130:interrupted (143: terminated)"
+            "129:the terminal is gone",
+            "130:interrupted",
+            "143:terminated"
         },
         versionProvider = Versions.class,
         subcommands = {

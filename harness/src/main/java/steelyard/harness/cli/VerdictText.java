@@ -22,30 +22,34 @@ final class VerdictText {
     static List<String> lines(Verdict verdict, int width) {
         List<String> lines = new ArrayList<>();
         lines.addAll(wrapped("", verdict.text(), width));
+        lines.addAll(UnfitText.lines(verdict.text(), verdict.checks(), width));
         if (!verdict.expectations().isEmpty()) {
             lines.add("");
-            List<String> table = table(verdict.expectations());
+            List<String[]> rows = verdict.expectations().stream()
+                    .map(finding -> cells(finding, verdict.fit()))
+                    .toList();
+            List<String> table = table(rows);
             boolean fits = table.stream().allMatch(line -> line.length() <= width);
-            lines.addAll(fits ? table : stacked(verdict.expectations(), width));
+            lines.addAll(fits ? table : stacked(verdict.expectations(), rows, width));
             if (fits) {
                 lines.addAll(notes(verdict.expectations(), width));
             }
-        }
-        List<SelfCheck> failed = verdict.checks().stream()
-                .filter(check -> !check.ok() && !check.check().equals(SelfCheck.PLAYED_TO_ITS_END))
-                .toList();
-        if (!failed.isEmpty()) {
-            lines.add("");
-            lines.add("Unfit to judge, because of:");
-            failed.forEach(check -> lines.addAll(wrapped(GAP, check.check() + ": " + check.text(), width)));
+            if (verdict.fit()) {
+                lines.add(sum(verdict.expectations()));
+            }
         }
         return lines;
     }
 
-    private static List<String> table(List<Finding> findings) {
+    private static String sum(List<Finding> findings) {
+        long met = findings.stream().filter(Finding::met).count();
+        return met + " of " + findings.size() + " met";
+    }
+
+    private static List<String> table(List<String[]> findings) {
         List<String[]> rows = new ArrayList<>();
         rows.add(HEAD);
-        findings.forEach(finding -> rows.add(cells(finding)));
+        rows.addAll(findings);
         int[] widths = new int[HEAD.length];
         for (String[] row : rows) {
             for (int column = 0; column < row.length; column++) {
@@ -71,10 +75,11 @@ final class VerdictText {
                 .toList();
     }
 
-    private static List<String> stacked(List<Finding> findings, int width) {
+    private static List<String> stacked(List<Finding> findings, List<String[]> rows, int width) {
         List<String> lines = new ArrayList<>();
-        for (Finding finding : findings) {
-            String[] cells = cells(finding);
+        for (int row = 0; row < rows.size(); row++) {
+            Finding finding = findings.get(row);
+            String[] cells = rows.get(row);
             lines.addAll(wrapped("", cells[4] + ": " + cells[0], width));
             for (int column = 1; column <= 3; column++) {
                 if (!cells[column].isEmpty()) {
@@ -104,13 +109,14 @@ final class VerdictText {
         return lines;
     }
 
-    private static String[] cells(Finding finding) {
+    /** What an unfit play came to stands in brackets, since it is no verdict. */
+    private static String[] cells(Finding finding, boolean fit) {
         return new String[] {
             finding.text(),
             orEmpty(finding.boundText()),
             finding.measured(),
             orEmpty(finding.marginText()),
-            finding.outcome()
+            fit || !finding.reached() ? finding.outcome() : "(" + finding.outcome() + ")"
         };
     }
 

@@ -38,7 +38,8 @@ class VerdictTextTest {
                         "expectation                          bound  measured  margin",
                         "failed                       at most 0.3 %    0.12 %  0.18 %  met",
                         "detected-in of fulmar  from 1.9 s to 3.2 s     never          not met",
-                        "note on detected-in of fulmar: it stayed up");
+                        "note on detected-in of fulmar: it stayed up",
+                        "1 of 2 met");
     }
 
     @Test
@@ -55,16 +56,35 @@ class VerdictTextTest {
                         "not met: detected-in of fulmar",
                         "  bound     from 1.9 s to 3.2 s",
                         "  measured  never",
-                        "  note      it stayed up");
+                        "  note      it stayed up",
+                        "1 of 2 met");
     }
 
     @Test
     void lines_ofAnUnfitPlay_sayWhy() {
-        assertThat(VerdictText.lines(verdict(false), 80))
+        assertThat(VerdictText.lines(verdict(false), 100))
                 .containsExactly(
                         "Not met: detected-in.",
+                        "Unfit to judge: lateness of the generator: 99 % within 9 ms.",
+                        "  Play it on a machine that does nothing else, or lower the rate of the traffic.");
+    }
+
+    @Test
+    void lines_ofAnUnfitPlay_sayAReasonOnceAndGiveNoVerdict() {
+        SelfCheck strangers = new SelfCheck("attempts", false, "80 agree, 3 not of this play");
+        Verdict verdict = new Verdict(
+                false,
+                false,
+                "Unfit to judge: attempts: 80 agree, 3 not of this play.",
+                List.of(failed),
+                List.of(),
+                List.of(strangers));
+        assertThat(VerdictText.lines(verdict, 120))
+                .containsExactly(
+                        "Unfit to judge: attempts: 80 agree, 3 not of this play.",
+                        "  Nobody else may send requests to the front or the backends while a drill is played.",
                         "",
-                        "Unfit to judge, because of:",
-                        "  lateness of the generator: 99 % within 9 ms");
+                        "expectation          bound  measured  margin",
+                        "failed       at most 0.3 %    0.12 %  0.18 %  (met)");
     }
 }
