@@ -122,7 +122,7 @@ class RehearseTest {
                 drill, text.replace("stage:", "stage:\n  connections: 1").replace("{fixed: 1ms}", "{fixed: 300ms}"));
         Command command = rehearse(drill, "--out", "run");
         assertThat(command.status()).isEqualTo(3);
-        assertThat(command.out()).contains("Unfit to judge, because of:", "connection cap");
+        assertThat(command.out()).contains("Unfit to judge: connection cap", "Raise connections");
         assertThat(command.err()).isEmpty();
         assertThat(json("run", "verdict.json").path("fit").asBoolean(true)).isFalse();
     }
@@ -189,14 +189,18 @@ class RehearseTest {
         refused("run is a file; name a folder that does not exist yet", drill("1s", "failed, at-most: 100%"));
         Command command = rehearse(folder.resolve("play.yaml"), "--out", "run/below");
         assertThat(command.status()).isEqualTo(3);
-        assertThat(command.err()).matches("steelyard: run/below cannot be written to; .*\\R");
+        assertThat(command.err()).matches("steelyard: run/below cannot be made, since run is a file; .*\\R");
     }
 
     @Test
     void frontPort_thatIsTaken_isRefusedAndLeavesNothing() throws Exception {
         try (ServerSocket taken = new ServerSocket(0, 1, InetAddress.getLoopbackAddress())) {
             String front = "\n      front: {port: " + taken.getLocalPort() + "}";
-            refused(String.valueOf(taken.getLocalPort()), drill("1s", front, "20/s", "failed, at-most: 100%"));
+            Command command = rehearse(drill("1s", front, "20/s", "failed, at-most: 100%"), "--out", "run");
+            assertThat(command.status()).isEqualTo(3);
+            assertThat(command.err())
+                    .matches(
+                            ".*play\\.yaml:9:7: port " + taken.getLocalPort() + " is taken; choose another one, .*\\R");
         }
         assertThat(folder.resolve("run")).doesNotExist();
     }

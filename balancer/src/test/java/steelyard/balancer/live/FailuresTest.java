@@ -453,7 +453,7 @@ class FailuresTest {
             InetSocketAddress address = taken.address();
             assertThat(LivePlay.startOn(address.getPort(), address))
                     .hasMessageContaining("terns")
-                    .hasMessageContaining(String.valueOf(address.getPort()))
+                    .hasMessageContaining("port " + address.getPort() + " is taken: choose another one")
                     .hasMessageNotContaining("\n");
         }
     }

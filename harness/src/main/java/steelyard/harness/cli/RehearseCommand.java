@@ -3,6 +3,8 @@ package steelyard.harness.cli;
 import java.io.PrintWriter;
 import java.nio.file.Path;
 import java.time.LocalDateTime;
+import java.util.Iterator;
+import java.util.List;
 import java.util.concurrent.Callable;
 import org.jspecify.annotations.Nullable;
 import picocli.CommandLine.Command;
@@ -29,6 +31,14 @@ import steelyard.drills.model.Drill;
 final class RehearseCommand implements Callable<Integer> {
     private static final String EMBEDDED = "embedded";
 
+    /** Where backends can run, for shell completion. */
+    static final class Places implements Iterable<String> {
+        @Override
+        public Iterator<String> iterator() {
+            return List.of(EMBEDDED).iterator();
+        }
+    }
+
     @Parameters(
             paramLabel = "DRILL",
             description = "A drill file, or the name of a bundled drill (`steelyard drills` lists them).")
@@ -38,6 +48,7 @@ final class RehearseCommand implements Callable<Integer> {
             names = "--backends",
             paramLabel = "WHERE",
             defaultValue = EMBEDDED,
+            completionCandidates = Places.class,
             description = "Where the backends run: embedded, in this process (the only choice).")
     private String backends = EMBEDDED;
 

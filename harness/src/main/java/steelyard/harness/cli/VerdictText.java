@@ -4,7 +4,6 @@ import java.util.ArrayList;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
 import steelyard.harness.record.Finding;
-import steelyard.harness.record.SelfCheck;
 import steelyard.harness.record.Verdict;
 
 /** A verdict as a person reads it, from the top: in a sentence, each expectation beside its bound, why it is unfit. */

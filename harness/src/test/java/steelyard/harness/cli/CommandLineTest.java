@@ -5,6 +5,7 @@ import static org.assertj.core.api.Assertions.assertThat;
 import java.io.IOException;
 import java.io.PrintWriter;
 import java.io.StringWriter;
+import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
@@ -184,7 +185,25 @@ class CommandLineTest {
     @Test
     void help_always_listsEveryExitStatus() {
         run("help");
-        assertThat(out.toString()).containsSubsequence("\n  0 ", "\n  1 ", "\n  2 ", "\n  3 ", "\n  129 ", "\n  130 ", "\n  143 ");
+        assertThat(out.toString())
+                .containsSubsequence("\n  0 ", "\n  1 ", "\n  2 ", "\n  3 ", "\n  129 ", "\n  130 ", "\n  143 ");
+    }
+
+    @Test
+    void completion_inBash_completesADrillByNameOrFile() throws Exception {
+        run("completion");
+        Files.writeString(folder.resolve("slow-own.yaml"), "");
+        Path script = Files.writeString(folder.resolve("script"), out.toString());
+        String tab = "source " + script + "; COMP_CWORD=2; COMP_WORDS=(steelyard rehearse slow-); _complete_steelyard;"
+                + " echo \"${COMPREPLY[*]}\"; COMP_CWORD=3; COMP_WORDS=(steelyard rehearse --backends e);"
+                + " _complete_steelyard; echo \"${COMPREPLY[*]}\"";
+        Process bash = new ProcessBuilder("bash", "-c", tab)
+                .directory(folder.toFile())
+                .redirectErrorStream(true)
+                .start();
+        String said = new String(bash.getInputStream().readAllBytes(), StandardCharsets.UTF_8);
+        assertThat(said.split("\\s+")).contains("slow-one", "slow-own.yaml", "embedded");
+        assertThat(out.toString()).doesNotContain("YOUR_APP_HOME", "picocli.info");
     }
 
     @Test
