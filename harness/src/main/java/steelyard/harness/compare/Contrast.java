@@ -8,6 +8,7 @@ import java.util.Map;
 import java.util.Optional;
 import java.util.function.DoubleUnaryOperator;
 import org.jspecify.annotations.Nullable;
+import steelyard.drills.model.Measure;
 import steelyard.harness.compare.Difference.Method;
 import steelyard.harness.forecast.PlayTable;
 import steelyard.harness.forecast.Spread;
@@ -50,7 +51,7 @@ final class Contrast {
     }
 
     Line line(Sample one, Sample two) {
-        Direction direction = one.direction();
+        Direction direction = direction(one);
         if (one.undefined() != two.undefined()) {
             return gaps(one, two);
         }
@@ -72,6 +73,12 @@ final class Contrast {
                 ? difference(one, two, direction::cost).orElseThrow()
                 : shown.get();
         return judge(one, two, shown.get(), judged, direction);
+    }
+
+    /** A backend that does more of the work is no worse for it, unless its drill bounds that. */
+    private static Direction direction(Sample sample) {
+        boolean load = !sample.expected() && sample.measure() == Measure.PEAK_UTILISATION;
+        return load ? Direction.NONE : sample.direction();
     }
 
     private Line judge(Sample one, Sample two, Difference shown, Difference judged, Direction direction) {

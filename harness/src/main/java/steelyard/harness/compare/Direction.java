@@ -22,7 +22,7 @@ import steelyard.drills.model.Measure;
 public record Direction(Side side, double middle) {
     private static final Direction LESS = new Direction(Side.LESS, 0);
     private static final Direction MORE = new Direction(Side.MORE, 0);
-    private static final Direction NONE = new Direction(Side.NONE, 0);
+    static final Direction NONE = new Direction(Side.NONE, 0);
 
     /** The sides that can be better. */
     public enum Side {

@@ -78,9 +78,9 @@ public record Choice(Optional<Result> taken, String reason, List<Result> ranked,
         if (candidates == 1) {
             return "Of the cells " + all + " it is the only one that no other beats on both measures.";
         }
-        return candidates + " cells " + all
-                + " are beaten by no other such cell; of these its larger loss is the smallest: "
-                + loss(taken.want(), losses.ofWant(taken)) + " and " + loss(taken.against(), losses.ofAgainst(taken))
+        return "Of the " + candidates + " cells that no other beats among those " + all
+                + ", its larger loss is the smallest: " + loss(taken.want(), losses.ofWant(taken)) + " and "
+                + loss(taken.against(), losses.ofAgainst(taken))
                 + " of the way from the best non-dominated cell of the grid to the worst.";
     }
 

@@ -23,10 +23,9 @@ class ChoiceTest {
         Choice choice = choose(.9, CHEAP, KNEE, CALM, BEATEN);
         assertThat(choice.taken()).contains(KNEE);
         assertThat(choice.reason())
-                .isEqualTo(
-                        "3 cells where all expectations hold together in at least 90 % of plays are "
-                                + "beaten by no other such cell; of these its larger loss is the smallest: failed 10 % and "
-                                + "standing-changes 20 % of the way from the best non-dominated cell of the grid to the worst.");
+                .isEqualTo("Of the 3 cells that no other beats among those where all expectations hold "
+                        + "together in at least 90 % of plays, its larger loss is the smallest: failed 10 % and standing-changes "
+                        + "20 % of the way from the best non-dominated cell of the grid to the worst.");
         assertThat(choice.ranked()).containsExactly(KNEE, CHEAP, CALM, BEATEN);
         assertThat(choice.note()).isEmpty();
     }
