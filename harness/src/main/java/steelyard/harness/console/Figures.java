@@ -1,5 +1,7 @@
 package steelyard.harness.console;
 
+import java.math.BigDecimal;
+import java.math.MathContext;
 import java.util.Comparator;
 import java.util.Locale;
 import java.util.Map;
@@ -24,6 +26,14 @@ final class Figures {
     static String share(double share) {
         double percent = share * 100;
         return String.format(Locale.ROOT, percent > 0 && percent < 9.95 ? "%.1f %%" : "%.0f %%", percent);
+    }
+
+    /** A share that never reads as nothing: {@code 0.0043 %}, {@code 0.2 %}, {@code 33 %}. */
+    static String exactShare(double share) {
+        double percent = share * 100;
+        return percent > 0 && percent < 0.095
+                ? new BigDecimal(percent).round(new MathContext(2)).toPlainString() + " %"
+                : share(share);
     }
 
     /** {@code 12}, or {@code 3.4} for what is no whole number. */

@@ -46,7 +46,7 @@ final class PlainView implements View {
 
     @Override
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
-        events.add(line(atNanos, (by == By.END ? "end of cue: " : "cue: ") + Scene.text(cue)));
+        events.add(line(atNanos, "cue: " + Scene.text(cue, by)));
     }
 
     @Override

@@ -19,6 +19,10 @@ import steelyard.harness.record.Words;
  * fit is left out, last things first.
  */
 final class SceneLines {
+    private static final int TITLE_LINE = 0;
+    private static final int PLAYED_LINE = 2;
+    private static final int NOW_LINE = 3;
+    private static final int NEXT_LINE = 4;
     private static final int BAR_MOST = 40;
     private static final int BAR_LEAST = 8;
     private static final String HINT = "Ctrl-C ends the play and writes the run.";
@@ -43,13 +47,21 @@ final class SceneLines {
         lines.add(plain(scene.title()));
         lines.add(progress(scene));
         PlayBoard.Played played = figures.lastCue();
-        lines.add(cue("played", played == null ? "" : at(played.atNanos(), Scene.text(played.cue()))));
-        lines.add(cue("next", scene.next() == null ? "" : at(scene.next().atNanos(), Scene.text(scene.next()))));
+        lines.add(cue("played", played == null ? "" : at(played.atNanos(), Scene.text(played.cue(), played.by()))));
+        lines.add(cue("now", inForce(scene)));
+        lines.add(cue(
+                "next",
+                scene.next() == null
+                        ? ""
+                        : at(scene.next().atNanos(), scene.next().text())));
         lines.add(plain("rate    " + Figures.count(figures.offeredLastSecond()) + "/s, " + Figures.count(figures.good())
                 + " good so far"));
         lines.add(failures(figures));
         if (height - lines.size() >= 2) {
             backends(figures.backends(), lines);
+        } else {
+            makeRoom(lines);
+            lines.add(plain(figures.backends().size() + " backends: " + standings(figures.backends())));
         }
         if (height - lines.size() >= 2 && !figures.ended()) {
             lines.add(plain(""));
@@ -58,8 +70,22 @@ final class SceneLines {
         return List.copyOf(lines.subList(0, Math.min(lines.size(), height)));
     }
 
+    /** On a very low terminal a line about the backends is worth more than what is next, goes on or was played. */
+    private void makeRoom(List<AttributedString> lines) {
+        for (int line : new int[] {NEXT_LINE, NOW_LINE, PLAYED_LINE, TITLE_LINE}) {
+            if (lines.size() >= height) {
+                lines.remove(line);
+            }
+        }
+    }
+
+    private static String inForce(Scene scene) {
+        return scene.inForce().stream().map(Scene::text).collect(Collectors.joining("; "));
+    }
+
+    /** The last answers come a little after the end; they are no more of the play than there is. */
     private AttributedString progress(Scene scene) {
-        long at = scene.figures().atNanos();
+        long at = Math.min(scene.figures().atNanos(), scene.lastsNanos());
         String text = Figures.seconds(at) + " of " + Figures.seconds(scene.lastsNanos());
         int bar = Math.min(BAR_MOST, width - text.length() - 4);
         if (bar >= BAR_LEAST) {
@@ -83,7 +109,7 @@ final class SceneLines {
             return cut(line.append("0").toAttributedString());
         }
         double share = (double) figures.failed() / (figures.failed() + figures.good());
-        line.styled(colours.failure(), Figures.count(figures.failed()) + " (" + Figures.share(share) + ")");
+        line.styled(colours.failure(), Figures.count(figures.failed()) + " (" + Figures.exactShare(share) + ")");
         line.append("  ").append(Figures.causes(figures.failedBy()));
         return cut(line.toAttributedString());
     }
@@ -101,17 +127,17 @@ final class SceneLines {
             lines.add(cut(columns.row(backends.get(backend), style)));
         }
         if (shown < backends.size()) {
-            lines.add(plain(rest(backends.subList(shown, backends.size()))));
+            List<BackendFigures> hidden = backends.subList(shown, backends.size());
+            lines.add(plain("and " + hidden.size() + " more: " + standings(hidden)));
         }
     }
 
-    private static String rest(List<BackendFigures> hidden) {
+    private static String standings(List<BackendFigures> hidden) {
         Map<String, Long> byStanding = hidden.stream()
                 .collect(Collectors.groupingBy(each -> Words.of(each.standing()), TreeMap::new, Collectors.counting()));
-        String words = byStanding.entrySet().stream()
+        return byStanding.entrySet().stream()
                 .map(each -> each.getValue() + " " + each.getKey())
                 .collect(Collectors.joining(", "));
-        return "and " + hidden.size() + " more: " + words;
     }
 
     private AttributedString plain(String text) {

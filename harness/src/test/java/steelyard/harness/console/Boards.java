@@ -21,14 +21,24 @@ final class Boards {
 
     /** A minute's drill with those backends, one killed at 15 s and back at 35 s. */
     static Drill drill(String title, List<String> backends) {
+        return drill(
+                title,
+                backends,
+                "{at: 15s, kill: " + backends.get(0) + ", as: the first dies}",
+                "{at: 35s, revive: " + backends.get(0) + "}");
+    }
+
+    /** A minute's drill with those backends and cues. */
+    static Drill drill(String title, List<String> backends, String... cues) {
         StringBuilder text = new StringBuilder("drill: '" + title + "'\nabout: Views.\nstage:\n  pools:\n    seats:\n");
         text.append("      method: round-robin\n      serves: {workers: 1, queue: 1, time: {fixed: 1ms}}\n");
         text.append("      backends:\n");
         backends.forEach(name -> text.append("        ").append(name).append(": {weight: 1}\n"));
         text.append("traffic:\n  - {to: seats, arrivals: even, rate: 10/s, requests: [{get: /, share: 100%}]}\n");
         text.append("lasts: 60s\ncues:\n");
-        text.append("  - {at: 15s, kill: ").append(backends.get(0)).append(", as: the first dies}\n");
-        text.append("  - {at: 35s, revive: ").append(backends.get(0)).append("}\n");
+        for (String cue : cues) {
+            text.append("  - ").append(cue).append('\n');
+        }
         text.append("expect:\n  - {measure: failed, at-most: 1%}\n");
         return DrillReader.read("views", text.toString())
                 .value()

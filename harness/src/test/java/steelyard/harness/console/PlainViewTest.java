@@ -34,7 +34,7 @@ class PlainViewTest {
                 .containsExactly(
                         "   15.0 s  cue: kill fulmar (the first dies)",
                         "   17.4 s  fulmar: up to down, misses",
-                        "   35.0 s  end of cue: revive fulmar");
+                        "   35.0 s  cue: revive fulmar ends");
     }
 
     @Test

@@ -9,6 +9,7 @@ import org.jline.utils.AttributedCharSequence.ForceMode;
 import org.jline.utils.AttributedString;
 import org.junit.jupiter.api.Test;
 import steelyard.drills.model.Cause;
+import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
 
 class SceneLinesTest {
@@ -32,6 +33,7 @@ class SceneLinesTest {
                         "Lose one of three",
                         "20.0 s of 60.0 s  [=============                           ]",
                         "played  15.0 s  kill fulmar (the first dies)",
+                        "now     kill fulmar (the first dies)",
                         "next    35.0 s  revive fulmar",
                         "rate    893/s, 15,412 good so far",
                         "failed  31 (0.2 %)  reset 23, refused 8",
@@ -72,8 +74,38 @@ class SceneLinesTest {
         List<String> names =
                 IntStream.range(1, 21).mapToObj(number -> "gull-" + number).toList();
         List<String> text = text(lines(Boards.drill("Many", names), Map.of(), 79, 12, Colours.SOME));
-        assertThat(text).hasSize(12).contains("gull-4   up              1    50 %      1,234");
-        assertThat(text.get(11)).isEqualTo("and 16 more: 16 up");
+        assertThat(text).hasSize(12).contains("gull-3   up              1    50 %      1,234");
+        assertThat(text.get(11)).isEqualTo("and 17 more: 17 up");
+    }
+
+    @Test
+    void backends_onAVeryLowTerminal_areCountedInALine() {
+        List<String> text = text(lines(three, Map.of(Cause.RESET, 1L), 79, 5, Colours.SOME));
+        assertThat(text)
+                .containsExactly(
+                        "Lose one of three",
+                        "20.0 s of 60.0 s  [=============                           ]",
+                        "rate    893/s, 15,412 good so far",
+                        "failed  1 (0.0065 %)  reset 1",
+                        "3 backends: 1 down, 2 up");
+    }
+
+    @Test
+    void cue_thatEnds_isNextByNameAndGoesOnUntilThen() {
+        Drill drill = Boards.drill(
+                "Brown out",
+                List.of("fulmar", "gannet"),
+                "{at: 15s, slow: fulmar, factor: 8, for: 20s, as: brown out}");
+        assertThat(text(lines(drill, Map.of(), 79, 23, Colours.SOME)))
+                .contains("now     slow fulmar (brown out)", "next    35.0 s  brown out ends");
+    }
+
+    @Test
+    void inForce_atEachInstant_isWhatBeganAndWasNotUndone() {
+        List<Cue> cues = three.cues();
+        assertThat(InForce.at(14 * Boards.SECOND, cues)).isEmpty();
+        assertThat(InForce.at(15 * Boards.SECOND, cues)).containsExactly(cues.get(0));
+        assertThat(InForce.at(35 * Boards.SECOND, cues)).isEmpty();
     }
 
     @Test
