@@ -42,6 +42,8 @@ class ControlPageTest {
                     .contains("steelyard_in_flight{backend=\"tern-2\",pool=\"terns\"} 0.0\n")
                     .contains("steelyard_weight{backend=\"tern-2\",pool=\"terns\"} 7.0\n")
                     .contains("steelyard_reweighs_total{backend=\"tern-2\",pool=\"terns\"} 1.0\n")
+                    .contains("# HELP steelyard_in_flight Attempts in flight on a backend\n")
+                    .doesNotContainPattern("# HELP \\S+ *\n")
                     .endsWith("# EOF\n");
             play.ask(GET);
             assertThat(read(control, "/metrics", bearer))

@@ -8,7 +8,7 @@ import steelyard.balancer.settings.PoolSettings;
  * Effective weights and entitled shares of one pool's members.
  *
  * <p>Effective weight = set weight x ramp fraction; under host weights = host's weight x the member's part of the set
- * weights that the pool may pick on that host x ramp fraction; under plain round robin = ramp fraction. Entitled share =
+ * weights that the pool may pick on that host x ramp fraction, where one that may not be picked counts as if it came back alone; under plain round robin = ramp fraction. Entitled share =
  * effective weight over the sum of those that may be picked. Both are computed for a whole pool at once and kept until
  * the instant or a weight or standing changes, so that reading every member costs one pass. Not thread-safe.
  */
@@ -82,8 +82,9 @@ public final class PoolWeights {
         if (!byHost) {
             return set[member];
         }
-        double others = onHost[hostOf[member]];
-        return others == 0 ? 0 : (double) hostSet[hostOf[member]] * set[member] / others;
+        // A member that may not be picked is shown as if it alone came back among those that may be.
+        double there = onHost[hostOf[member]] + (standings[member].shown().pickable() ? 0 : set[member]);
+        return there == 0 ? 0 : (double) hostSet[hostOf[member]] * set[member] / there;
     }
 
     private void sumHosts() {

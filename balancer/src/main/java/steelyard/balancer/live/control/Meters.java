@@ -7,6 +7,7 @@ import io.micrometer.prometheusmetrics.PrometheusConfig;
 import io.micrometer.prometheusmetrics.PrometheusMeterRegistry;
 import java.util.List;
 import java.util.Locale;
+import java.util.Map;
 import java.util.function.DoubleSupplier;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.core.standing.Standing;
@@ -19,6 +20,25 @@ import steelyard.balancer.settings.PoolSettings;
 /** The meters over {@link Counts} and over the present state of every backend. Used by one thread. */
 final class Meters {
     static final String OPEN_METRICS = "application/openmetrics-text; version=1.0.0; charset=utf-8";
+
+    /** What each meter says, by its name. */
+    static final Map<String, String> HELP = Map.ofEntries(
+            Map.entry("steelyard.host.reweighs", "Changes of the weight of a host"),
+            Map.entry("steelyard.nobody", "Requests for which no backend could be picked"),
+            Map.entry("steelyard.retries", "Retries asked for, by whether the budget granted them"),
+            Map.entry("steelyard.picks", "Attempts picked for a backend"),
+            Map.entry("steelyard.attempts", "Attempts that ended on a backend, by how"),
+            Map.entry("steelyard.probes", "Probes of a backend, by answer"),
+            Map.entry("steelyard.reweighs", "Changes of the set weight of a backend"),
+            Map.entry("steelyard.transitions", "Changes of the standing of a backend, by the new one"),
+            Map.entry("steelyard.standing", "1 for the standing that a backend has now, 0 for the others"),
+            Map.entry("steelyard.in.flight", "Attempts in flight on a backend"),
+            Map.entry("steelyard.weight", "Set weight of a backend"),
+            Map.entry(
+                    "steelyard.effective.weight",
+                    "Weight of a backend after warm-up and host weights; of one that may not be picked, if it came"
+                            + " back alone"),
+            Map.entry("steelyard.entitled.share", "Effective weight over the sum of those that may be picked"));
 
     private final GuardedDecider decider;
     private final Counts counts;
@@ -87,12 +107,16 @@ final class Meters {
     /** The registry holds weakly what it reads from; {@code this} is held by the page. */
     private void counter(String name, Tags tags, DoubleSupplier value) {
         FunctionCounter.builder(name, this, held -> value.getAsDouble())
+                .description(HELP.get(name))
                 .tags(tags)
                 .register(registry);
     }
 
     private void gauge(String name, Tags tags, DoubleSupplier value) {
-        Gauge.builder(name, this, held -> value.getAsDouble()).tags(tags).register(registry);
+        Gauge.builder(name, this, held -> value.getAsDouble())
+                .description(HELP.get(name))
+                .tags(tags)
+                .register(registry);
     }
 
     private static String word(Enum<?> constant) {

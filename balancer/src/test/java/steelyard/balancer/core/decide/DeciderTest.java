@@ -251,6 +251,27 @@ class DeciderTest {
         assertThat(decider.entitledShare(0, 3)).isEqualTo(0.25);
     }
 
+    @Test
+    void effectiveWeight_ofOneThatMayNotBePicked_isWhatItWouldWeighIfItCameBackAlone() {
+        Decider byHost = decider(Stand.byHost(
+                new BackendSettings("fulmar", 1, 0, false),
+                new BackendSettings("gannet", 3, 0, false),
+                new BackendSettings("petrel", 1, 1, false)));
+        double gannet = byHost.effectiveWeight(1, 1);
+        double petrel = byHost.effectiveWeight(2, 1);
+        byHost.drain(1, 0, 2);
+        byHost.drain(2, 0, 2);
+        assertThat(byHost.effectiveWeight(1, 3)).isEqualTo(gannet);
+        assertThat(byHost.effectiveWeight(2, 3)).isEqualTo(petrel).isPositive();
+        byHost.withdraw(0, 4);
+        assertThat(byHost.effectiveWeight(1, 5)).isEqualTo(gannet * 4 / 3);
+        assertThat(byHost.entitledShare(1, 5)).isZero();
+
+        Decider alone = decider(Stand.of(Method.STRIDE, 2));
+        alone.drain(0, 0, 1);
+        assertThat(alone.effectiveWeight(0, 2)).isEqualTo(1);
+    }
+
     /**
      * Over a ramp from floor m, the newcomer among n equals gets the mean of f / (n - 1 + f), that is
      * m^2/(n-1+m) + (1-m) - (n-1) ln(n/(n-1+m)): 0.1914 for n = 3, m = 0.1 (derived; checked by numerical integration).
