@@ -236,6 +236,30 @@ class ReportPageTest {
         assertThat(find("#readout .when").getText()).startsWith("12 s to 24 s: means");
     }
 
+    @Test
+    void readout_onAPhone_beginsFoldedAndNeverCoversMuch() {
+        open("two-pools", PHONE, "light");
+        String share = "return document.querySelector('#readout').getBoundingClientRect().height / innerHeight";
+
+        assertThat(find("#readout .backends").isDisplayed()).isFalse();
+        assertThat(number(share)).isLessThan(0.2);
+
+        browser.run("document.querySelector('.fold').click()");
+        assertThat(find("#readout .backends").isDisplayed()).isTrue();
+        assertThat(find(".fold").getText()).isEqualTo("Less");
+        assertThat(number(share)).isLessThan(0.23);
+    }
+
+    @Test
+    void weights_ofTwoPools_haveAChartEach() {
+        open("two-pools", DESK, "dark");
+
+        assertThat(list("return [...document.querySelectorAll('h3')].map(each => each.textContent)"))
+                .asString()
+                .contains("Weight in effect in pool seats, by backend", "Weight in effect in pool berths, by backend")
+                .doesNotContain("dark lines");
+    }
+
     /** Charts paint in the next frames. */
     private static void settle() {
         browser.run("return new Promise(done => setTimeout(() => requestAnimationFrame(() =>"

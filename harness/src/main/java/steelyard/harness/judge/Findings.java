@@ -45,7 +45,7 @@ final class Findings {
                 whole.bound(),
                 begun ? whole.measured() : "not measured",
                 begun ? whole.value() : Double.NaN,
-                begun ? "measured up to " + instant(playedNanos) : null,
+                null,
                 false);
     }
 

@@ -221,8 +221,9 @@ function lineNames(names) {
     const dpr = window.devicePixelRatio || 1;
     const ends = [];
     names.forEach((name, at) => {
-      const value = lastKnown(chart.data[at + 1], chart.data[0], stack.view.to);
-      if (Number.isFinite(value)) ends.push({ name, y: yOf(chart, value) });
+      const values = lastKnown(chart.data[at + 1], chart.data[0], stack.view.to);
+      const sum = values.reduce((height, value) => height + yOf(chart, value), 0);
+      if (values.length) ends.push({ name, y: sum / values.length });
     });
     ends.sort((a, b) => a.y - b.y);
     for (let at = 1; at < ends.length; at++) ends[at].y = Math.max(ends[at].y, ends[at - 1].y + 12 * dpr);
@@ -240,9 +241,11 @@ function pushUp(ends, limit, apart) {
   }
 }
 
+/** The last few values: the very last alone may be of a slice that was cut short. */
 function lastKnown(values, xs, until) {
-  for (let at = values.length - 1; at >= 0; at--) {
-    if (xs[at] <= until && Number.isFinite(values[at])) return values[at];
+  const known = [];
+  for (let at = values.length - 1; at >= 0 && known.length < 5; at--) {
+    if (xs[at] <= until && Number.isFinite(values[at])) known.push(values[at]);
   }
-  return NAN;
+  return known;
 }

@@ -45,6 +45,7 @@ function layUnplayed(stack) {
   const gap = element('div', 'unplayed', stack.ticks);
   const left = pageX(stack, Math.max(run.played, view.from));
   gap.style.left = left + 'px';
+  if (stack.labelled) gap.classList.add('named');
   gap.style.width = stack.gutter + stack.inner - left + 'px';
   const words = element('span', '', gap, 'not played');
   words.style.top = stack.charts[0].root.getBoundingClientRect().top - stack.place.getBoundingClientRect().top + 12 + 'px';

@@ -104,7 +104,7 @@ function say(readout, bin) {
   const from = Math.floor(view.from / run.slice + 1e-6);
   const to = Math.min(Math.ceil(view.to / run.slice - 1e-6), run.slices);
   const figures = bin || figuresOf(run, from, Math.max(to, from));
-  const until = seconds(Math.min(view.to, run.played));
+  const until = seconds(Math.min(view.to, run.played, run.lasts));
   readout.when.textContent = bin ? `At ${seconds(bin.from)} s` : `${seconds(view.from)} s to ${until} s`;
   readout.span.textContent = bin
     ? ` to ${seconds(bin.to)} s`
