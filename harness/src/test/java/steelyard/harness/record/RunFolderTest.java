@@ -38,7 +38,7 @@ class RunFolderTest {
                 .hasMessage(file + " is a file; name a folder that does not exist yet");
         assertThatThrownBy(() -> RunFolder.create(file.resolve("run")))
                 .isInstanceOf(FolderRefused.class)
-                .hasMessageContaining("cannot be written to");
+                .hasMessageContaining("cannot be made, since file is a file");
     }
 
     @Test
