@@ -103,7 +103,7 @@ final class CompareText {
 
     private static String value(Line line, double value) {
         Unit unit = Unit.valueOf(line.unit().toUpperCase(Locale.ROOT));
-        return TuneWords.mean(unit, unit == Unit.DURATION ? value * NANOS : value);
+        return TuneWords.value(unit, unit == Unit.DURATION ? value * NANOS : value);
     }
 
     private static String signed(Line line, double value) {

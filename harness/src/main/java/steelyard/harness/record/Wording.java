@@ -12,12 +12,12 @@ public final class Wording {
 
     private Wording() {}
 
-    /** A measured value, to three significant digits; counts in full and plain numbers to four decimals. */
+    /** A measured value, to three significant digits; counts in full, what lies between two counts to two decimals, plain numbers to four. */
     public static String value(Unit unit, double value) {
         return switch (unit) {
             case SHARE -> plain(rounded(BigDecimal.valueOf(value).movePointRight(2))) + " %";
             case DURATION -> duration(value, true);
-            case COUNT -> plain(BigDecimal.valueOf(value));
+            case COUNT -> plain(BigDecimal.valueOf(value).setScale(2, RoundingMode.HALF_UP));
             case NUMBER -> plain(BigDecimal.valueOf(value).setScale(4, RoundingMode.HALF_UP));
         };
     }

@@ -21,6 +21,6 @@ record Shown(double value, String words, Unit unit) {
     }
 
     String words(double other) {
-        return TuneWords.mean(unit, other);
+        return TuneWords.value(unit, other);
     }
 }

@@ -49,7 +49,7 @@ record Ticks(double from, double to, boolean log, List<Double> list) {
     private static Ticks log(double least, double most) {
         List<Double> ticks = new ArrayList<>();
         boolean sparse = most / least > 2_000;
-        for (int power = exponent(least); power <= exponent(most) + 1; power++) {
+        for (int power = exponent(least) - 1; power <= exponent(most) + 1; power++) {
             for (int times : sparse ? new int[] {1} : new int[] {1, 2, 5}) {
                 double value =
                         BigDecimal.valueOf(times).scaleByPowerOfTen(power).doubleValue();

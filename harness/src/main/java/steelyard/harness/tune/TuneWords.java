@@ -1,7 +1,5 @@
 package steelyard.harness.tune;
 
-import java.math.BigDecimal;
-import java.math.RoundingMode;
 import steelyard.drills.model.Measure.Unit;
 import steelyard.harness.compare.Direction;
 import steelyard.harness.forecast.Figure;
@@ -20,7 +18,7 @@ public final class TuneWords {
 
     /** The mean over the plays that have a value, and how many have none. */
     public static String mean(Axis axis) {
-        String mean = mean(axis.figure().unit(), axis.mean());
+        String mean = value(axis.figure().unit(), axis.mean());
         int without = axis.spread().undefined();
         return without == 0
                 ? mean
@@ -47,26 +45,9 @@ public final class TuneWords {
         return axis.spread().constant() ? "always " + value(unit, low) : value(unit, low) + " to " + value(unit, high);
     }
 
-    /** A value; {@code none} for NaN. A quantile of counts may lie between two of them. */
+    /** A value; {@code none} for NaN. */
     public static String value(Unit unit, double value) {
-        if (Double.isNaN(value)) {
-            return "none";
-        }
-        boolean whole = value == StrictMath.rint(value) || unit != Unit.COUNT;
-        return whole ? Wording.value(unit, value) : mean(unit, value);
-    }
-
-    /** A mean; that of counts may lie between two of them. */
-    public static String mean(Unit unit, double value) {
-        if (Double.isNaN(value)) {
-            return "none";
-        }
-        return unit == Unit.COUNT
-                ? BigDecimal.valueOf(value)
-                        .setScale(2, RoundingMode.HALF_UP)
-                        .stripTrailingZeros()
-                        .toPlainString()
-                : Wording.value(unit, value);
+        return Double.isNaN(value) ? "none" : Wording.value(unit, value);
     }
 
     /** What is measured, and which side is the better one. */

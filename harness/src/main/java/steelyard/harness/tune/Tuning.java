@@ -63,9 +63,10 @@ public final class Tuning implements AutoCloseable {
      * Prepares the plays.
      *
      * @param threads how many plays may go on at once
-     * @throws TuneRefused when a measure is none of the drill's, or a cell cannot be forecast
+     * @throws TuneRefused when a measure is none of the drill's
+     * @throws CannotPlay when a cell cannot be forecast
      */
-    public Tuning(Request request, int threads) throws TuneRefused {
+    public Tuning(Request request, int threads) throws TuneRefused, CannotPlay {
         this.request = request;
         for (Cell cell : request.grid().cells()) {
             List<Figure> figures = figures(cell.drill());
@@ -74,7 +75,7 @@ public final class Tuning implements AutoCloseable {
             try {
                 Plays.check(cell.drill());
             } catch (CannotPlay cannot) {
-                throw new TuneRefused("with " + cell.words() + ": " + cannot.getMessage());
+                throw new CannotPlay("with " + cell.words() + ": " + cannot.getMessage(), cannot);
             }
         }
         plays = new Plays(threads);
