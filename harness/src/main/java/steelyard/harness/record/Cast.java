@@ -16,6 +16,7 @@ public final class Cast {
     private final List<Backend> backends;
     private final Map<String, Integer> backendNumbers = new HashMap<>();
     private final int[] poolOf;
+    private final int[] poolsOfTraffic;
     private final int[] hostOf;
 
     public Cast(Drill drill) {
@@ -24,6 +25,9 @@ public final class Cast {
         backends = drill.stage().backends();
         poolOf = new int[backends.size()];
         hostOf = new int[backends.size()];
+        poolsOfTraffic = drill.traffic().stream()
+                .mapToInt(each -> poolNumber(each.pool()))
+                .toArray();
         int backend = 0;
         for (int pool = 0; pool < pools.size(); pool++) {
             for (Backend each : pools.get(pool).backends()) {
@@ -50,6 +54,11 @@ public final class Cast {
     /** The number of the pool that carries a backend. */
     public int poolOf(int backend) {
         return poolOf[backend];
+    }
+
+    /** By traffic stream: the number of the pool that it goes to. */
+    public int[] poolsOfTraffic() {
+        return poolsOfTraffic.clone();
     }
 
     /** The number of the host that a backend stands on. */

@@ -39,7 +39,7 @@ public final class Recorder implements PlayListener {
         standing.write();
         cues.row().append("due,at,cue,action,by");
         cues.write();
-        SliceTable table = new SliceTable(slices, cast.backends());
+        SliceTable table = new SliceTable(slices, cast);
         book = new SliceBook(cast, slice -> {
             table.write(slice);
             latency.add(slice);

@@ -27,6 +27,10 @@ public final class Slice {
     /** Latency of good answers; takes whatever comes, three significant digits. */
     final IntCountsHistogram latency = new IntCountsHistogram(FINEST_NANOS, 1_000_000_000L, 3);
 
+    /** Requests by pool. */
+    final int[] offeredTo;
+
+    final int[] failedOf;
     final int[] picked;
     final int[] inFlight;
     final Standing[] standing;
@@ -40,8 +44,10 @@ public final class Slice {
 
     long firstTold;
 
-    Slice(int backends) {
+    Slice(int backends, int pools) {
         latency.setAutoResize(true);
+        offeredTo = new int[pools];
+        failedOf = new int[pools];
         picked = new int[backends];
         inFlight = new int[backends];
         standing = new Standing[backends];
@@ -58,6 +64,8 @@ public final class Slice {
         ok = 0;
         retries = 0;
         Arrays.fill(failedBy, 0);
+        Arrays.fill(offeredTo, 0);
+        Arrays.fill(failedOf, 0);
         Arrays.fill(picked, 0);
         Arrays.fill(utilisation, 0);
         latency.reset();
@@ -86,6 +94,16 @@ public final class Slice {
 
     public int failedBy(Cause cause) {
         return failedBy[cause.ordinal()];
+    }
+
+    /** Requests that go to a pool, by its number. */
+    public int offeredTo(int pool) {
+        return offeredTo[pool];
+    }
+
+    /** Requests that go to a pool and failed. */
+    public int failedOf(int pool) {
+        return failedOf[pool];
     }
 
     /** Attempts beyond the first that were picked. */

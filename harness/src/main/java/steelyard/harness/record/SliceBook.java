@@ -26,6 +26,8 @@ public final class SliceBook implements PlayListener {
     private final Consumer<Slice> receiver;
     private final int backends;
     private final int[] workers;
+    private final int[] poolOfTraffic;
+    private final int pools;
     private final ArrayDeque<Slice> spare = new ArrayDeque<>();
     private final Sample last;
     private final long[] busyBefore;
@@ -43,6 +45,8 @@ public final class SliceBook implements PlayListener {
         this.receiver = receiver;
         backends = cast.backends().size();
         workers = cast.backends().stream().mapToInt(b -> b.serves().workers()).toArray();
+        pools = cast.pools().size();
+        poolOfTraffic = cast.poolsOfTraffic();
         last = new Sample(backends);
         busyBefore = new long[backends];
         for (int b = 0; b < backends; b++) {
@@ -63,6 +67,9 @@ public final class SliceBook implements PlayListener {
             long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
         at(atNanos / Slice.NANOS);
         Slice slice = at(Math.max(base, dueNanos / Slice.NANOS));
+        int pool = poolOfTraffic[traffic];
+        slice.offeredTo[pool]++;
+        slice.failedOf[pool] += cause == null ? 0 : 1;
         if (cause == null) {
             slice.ok++;
             slice.latency.recordValue(Math.max(0, atNanos - dueNanos));
@@ -169,7 +176,7 @@ public final class SliceBook implements PlayListener {
             }
             Slice slice = spare.poll();
             if (slice == null) {
-                slice = new Slice(backends);
+                slice = new Slice(backends, pools);
             }
             slice.reset(next, told);
             ring[place(next)] = slice;

@@ -10,10 +10,14 @@ final class SliceTable {
 
     private final RowFile rows;
     private final int backends;
+    private final int pools;
 
-    SliceTable(RowFile rows, List<Backend> backends) {
+    /** Requests by pool have columns of their own where there are several pools. */
+    SliceTable(RowFile rows, Cast cast) {
         this.rows = rows;
+        List<Backend> backends = cast.backends();
         this.backends = backends.size();
+        pools = cast.pools().size() > 1 ? cast.pools().size() : 0;
         StringBuilder head = rows.row().append("slice,from,offered,ok,failed");
         for (Cause cause : CAUSES) {
             head.append(',').append(cause.word());
@@ -23,6 +27,11 @@ final class SliceTable {
             for (String column : RunData.BACKEND_COLUMNS) {
                 Csv.field(head.append(','), backend.name() + ":" + column);
             }
+        }
+        for (int pool = 0; pool < pools; pool++) {
+            String name = "pool " + cast.pools().get(pool).name();
+            Csv.field(head.append(','), name + ":offered");
+            Csv.field(head.append(','), name + ":failed");
         }
         rows.write();
     }
@@ -43,6 +52,9 @@ final class SliceTable {
         row.append(',').append(slice.retries());
         for (int b = 0; b < backends; b++) {
             backend(row, slice, b);
+        }
+        for (int pool = 0; pool < pools; pool++) {
+            row.append(',').append(slice.offeredTo(pool)).append(',').append(slice.failedOf(pool));
         }
         rows.write();
     }

@@ -34,6 +34,11 @@ public final class Slices {
         return values;
     }
 
+    /** Whether there is such a column of numbers. */
+    public boolean has(String column) {
+        return numbers.containsKey(column);
+    }
+
     /** A column of one backend: {@code picked}, {@code in-flight}, {@code weight} ... */
     public double[] numbers(String backend, String column) {
         return numbers(backend + ":" + column);

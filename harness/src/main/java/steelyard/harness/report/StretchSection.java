@@ -15,7 +15,7 @@ final class StretchSection {
         List<Stretch> stretches = Stretches.of(run);
         return stretches.isEmpty()
                 ? "<p>No slice was recorded.</p>\n"
-                : clients(run, stretches) + backends(run, stretches);
+                : clients(run, stretches) + PoolStretches.html(run, stretches) + backends(run, stretches);
     }
 
     private static String clients(RunFiles run, List<Stretch> stretches) {
@@ -61,7 +61,7 @@ final class StretchSection {
         return run.run().forecast() == null ? words : words + ", means over plays";
     }
 
-    private static String span(Stretch stretch) {
+    static String span(Stretch stretch) {
         return Figures.plainSeconds(stretch.from()) + " to " + Figures.seconds(stretch.to());
     }
 

@@ -178,6 +178,10 @@ class RecorderTest {
         assertThat(slices.numbers("failed")[10]).isEqualTo(1);
         assertThat(slices.numbers("p99_ms")[0]).isBetween(20.0, 20.03);
         assertThat(slices.numbers("p99_ms")[10]).isNaN();
+        assertThat(slices.numbers("pool seats:offered")).containsOnly(1);
+        assertThat(slices.numbers("pool seats:failed")[9]).isZero();
+        assertThat(slices.numbers("pool seats:failed")[10]).isEqualTo(1);
+        assertThat(slices.numbers("pool cargo:offered")).containsOnly(0);
         assertThat(slices.numbers("gannet", "picked")).containsOnly(1);
         assertThat(slices.numbers("gannet", "entitled")[3]).isEqualTo(0.333333);
         assertThat(slices.numbers("gannet", "utilisation")[0]).isZero();
