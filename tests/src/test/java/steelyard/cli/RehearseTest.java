@@ -155,7 +155,7 @@ class RehearseTest {
         int status = command.status();
         assertThat(command.out())
                 .containsPattern("Interrupted at [0-9.]+ m?s: not judged; what was measured up to then stands below\\.")
-                .doesNotContain("Unfit to judge", " not met");
+                .doesNotContain("played to its end", " not met");
         assertThat(command.err()).isEmpty();
         assertThat(filesOf(folder.resolve("run"))).isEqualTo(RUN_FILES);
         assertThat(json("run", "run.json").path("ended").asText()).isEqualTo("interrupted");
