@@ -31,9 +31,9 @@ public record Foreseen(
         return Double.isNaN(spread.median()) ? gaps.commonest() : words(spread.median());
     }
 
-    /** The 90 % band in words: {@code 2.1 s to 3.02 s}, {@code always}; empty when no play has a value. */
+    /** The 90 % band in words: {@code 2.1 s to 3.02 s}, {@code always}; empty with less than two values. */
     public String band() {
-        if (Double.isNaN(spread.median())) {
+        if (spread.plays() - spread.undefined() < 2) {
             return "";
         }
         return spread.constant() && spread.undefined() == 0
