@@ -5,7 +5,6 @@ import java.util.List;
 import steelyard.harness.forecast.Spread;
 import steelyard.harness.tune.Choice;
 import steelyard.harness.tune.Confirmed;
-import steelyard.harness.tune.Front;
 import steelyard.harness.tune.Result;
 import steelyard.harness.tune.Result.Axis;
 import steelyard.harness.tune.TuneWords;
@@ -65,15 +64,9 @@ final class TuneText {
         for (int at = 0; at < tuned.results().size(); at++) {
             Result result = tuned.results().get(at);
             boolean taken = choice.taken().filter(result::equals).isPresent();
-            rows.add(row(
-                    result,
-                    taken ? "non-dominated, taken" : word(result, tuned.marks().get(at))));
+            rows.add(row(result, TuneWords.mark(result, tuned.marks().get(at), taken)));
         }
         return TextTable.lines(head, rows, width);
-    }
-
-    private static String word(Result result, Front.Mark mark) {
-        return result.fit() ? mark.word() : "unfit to judge";
     }
 
     private static List<String> row(Result result, String mark) {

@@ -124,7 +124,7 @@ public final class TunePage {
         row.addAll(result.cell().values().values());
         row.add(TuneWords.share(result.held().share()));
         boolean taken = choice.taken().filter(result::equals).isPresent();
-        row.add(!result.fit() ? "unfit to judge" : taken ? mark.word() + ", taken" : mark.word());
+        row.add(TuneWords.mark(result, mark, taken));
         for (Axis axis : List.of(result.want(), result.against())) {
             row.add(TuneWords.mean(axis));
             row.add(TuneWords.median(axis));

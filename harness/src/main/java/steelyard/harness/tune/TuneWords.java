@@ -63,6 +63,14 @@ public final class TuneWords {
                 + ")";
     }
 
+    /** What is to be said of a cell beside the others: {@code non-dominated, taken}; empty for nothing. */
+    public static String mark(Result result, Front.Mark mark, boolean taken) {
+        if (!result.fit()) {
+            return "unfit to judge";
+        }
+        return !taken ? mark.word() : mark.word().isEmpty() ? "taken" : mark.word() + ", taken";
+    }
+
     /** A share of plays: {@code 98 %}. */
     public static String share(double share) {
         return Wording.value(Unit.SHARE, share);
