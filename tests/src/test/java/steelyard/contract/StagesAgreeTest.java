@@ -3,6 +3,7 @@ package steelyard.contract;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.ArrayDeque;
+import java.util.Arrays;
 import java.util.Comparator;
 import java.util.List;
 import java.util.Locale;
@@ -79,7 +80,9 @@ class StagesAgreeTest {
         assertThat(found).isBetween(300 * MILLI, 600 * MILLI + MILLI);
         assertThat(both.live.transitions.get(0).atNanos() - 1_000 * MILLI).isBetween(300 * MILLI, 2_100 * MILLI);
         // A stall of the machine makes requests of before the kill late, so live only the causes are sure.
-        assertThat(both.live.ends).extracting(Heard.End::cause).containsOnly(null, Cause.REFUSED, Cause.RESET);
+        assertThat(both.live.ends)
+                .extracting(Heard.End::cause)
+                .isSubsetOf(Arrays.asList(null, Cause.REFUSED, Cause.RESET));
         assertThat(both.virtual.ends.stream().filter(end -> end.cause() != null))
                 .isNotEmpty()
                 .allMatch(end -> end.cause() == Cause.REFUSED || end.cause() == Cause.RESET)
