@@ -12,6 +12,7 @@ import io.netty.handler.codec.http.HttpHeaderValues;
 import io.netty.handler.codec.http.HttpHeaders;
 import io.netty.handler.codec.http.HttpHeadersFactory;
 import io.netty.handler.codec.http.HttpResponseStatus;
+import java.nio.ByteBuffer;
 import java.nio.charset.StandardCharsets;
 import java.util.Map;
 
@@ -90,9 +91,10 @@ final class Replies {
         return new DefaultFullHttpResponse(HTTP_1_1, HttpResponseStatus.valueOf(status), body, HEADERS, TRAILERS);
     }
 
+    /** Of memory that goes with its last reference: nobody has to release it. */
     private static ByteBuf shared(byte[] bytes) {
-        return Unpooled.unreleasableBuffer(
-                Unpooled.directBuffer(bytes.length).writeBytes(bytes).asReadOnly());
+        ByteBuffer direct = ByteBuffer.allocateDirect(bytes.length).put(bytes).flip();
+        return Unpooled.unreleasableBuffer(Unpooled.wrappedBuffer(direct).asReadOnly());
     }
 
     /** RFC 9110, 6.4.1. */
