@@ -4,6 +4,8 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.Random;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.ValueSource;
 
 class TournamentTest {
 
@@ -56,6 +58,32 @@ class TournamentTest {
                 assertThat(tournament.best()).isEqualTo(walk(key, in, -1));
                 assertThat(tournament.bestAfter(last)).isEqualTo(walk(key, in, last));
             }
+        }
+    }
+
+    /** The cost of a change and of a look-up: a match a level at most, whatever the size. */
+    @ParameterizedTest
+    @ValueSource(ints = {3, 16, 256, 10_000})
+    void anyCall_ofEverySize_playsAMatchALevelAtMost(int size) {
+        int levels = Integer.SIZE - Integer.numberOfLeadingZeros(size - 1);
+        int[] key = new int[size];
+        int[] matches = {0};
+        Tournament tournament = new Tournament(size, (a, b) -> {
+            matches[0]++;
+            return key[a] < key[b];
+        });
+        for (int place = 0; place < size; place++) {
+            tournament.enter(place);
+        }
+        for (int change = 0; change < 3 * size; change++) {
+            int place = tournament.best();
+            key[place]++;
+            matches[0] = 0;
+            tournament.changed(place);
+            assertThat(matches[0]).isLessThanOrEqualTo(levels);
+            matches[0] = 0;
+            tournament.bestAfter(place);
+            assertThat(matches[0]).isLessThanOrEqualTo(levels);
         }
     }
 
