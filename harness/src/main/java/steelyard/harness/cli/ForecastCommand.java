@@ -9,10 +9,7 @@ import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Model.CommandSpec;
 import picocli.CommandLine.Option;
-import picocli.CommandLine.ParameterException;
-import picocli.CommandLine.Parameters;
 import picocli.CommandLine.Spec;
-import steelyard.drills.model.Drill;
 import steelyard.harness.forecast.Series;
 
 /** {@code forecast}: plays a drill many times in virtual time and says in what share of plays each expectation holds. */
@@ -23,13 +20,9 @@ import steelyard.harness.forecast.Series;
         parameterListHeading = "%n",
         optionListHeading = "%nOptions:%n")
 final class ForecastCommand implements Callable<Integer> {
-    private static final int MOST_PLAYS = 100_000;
-    private static final int MOST_THREADS = 256;
 
-    @Parameters(
-            paramLabel = "DRILL",
-            description = "A drill file, or the name of a bundled drill (`steelyard drills` lists them).")
-    private Path drill = Path.of("");
+    @Mixin
+    private DrillOptions drill = new DrillOptions();
 
     @Option(
             names = "--plays",
@@ -61,14 +54,8 @@ final class ForecastCommand implements Callable<Integer> {
             description = "Seed of the first play, the next has one more; ${DEFAULT-VALUE} unless given.")
     private long seed;
 
-    @Option(names = "--plain", description = "Write plain lines, on a terminal too.")
-    private boolean plain;
-
-    @Option(
-            names = "--threads",
-            paramLabel = "N",
-            description = "How many plays go on at once; one a processor unless given. Changes no figure.")
-    private @Nullable Integer threads;
+    @Mixin
+    private ThreadsOption threads = new ThreadsOption();
 
     @Mixin
     private HelpOption help = new HelpOption();
@@ -78,30 +65,19 @@ final class ForecastCommand implements Callable<Integer> {
 
     @Override
     public Integer call() throws Exception {
-        check("--plays", plays, MOST_PLAYS);
-        int atOnce = threads == null
-                ? Math.min(MOST_THREADS, Runtime.getRuntime().availableProcessors())
-                : check("--threads", threads, MOST_THREADS);
-        DrillSource source = DrillSource.named(drill);
-        Drill read = source.drill();
+        WholeNumber.within(spec, "--plays", plays, 1, WholeNumber.MOST_PLAYS);
+        int atOnce = threads.atOnce(spec);
         PrintWriter err = spec.commandLine().getErr();
-        source.lines().forEach(err::println);
+        DrillOptions.Opened opened = drill.open(err);
+        DrillSource source = opened.source();
         Path folder = out == null ? RunPath.unused(source.stem(), LocalDateTime.now()) : out;
         return new Forecasting(
                         source.text(),
-                        Series.of(read, seed, plays),
+                        Series.of(opened.drill(), seed, plays),
                         hold,
                         atOnce,
                         spec.commandLine().getOut(),
                         err)
-                .play(folder, plain);
-    }
-
-    private int check(String option, int value, int most) {
-        if (value < 1 || value > most) {
-            throw new ParameterException(
-                    spec.commandLine(), option + " takes a whole number from 1 to " + most + ", not '" + value + "'");
-        }
-        return value;
+                .play(folder, drill.plain());
     }
 }

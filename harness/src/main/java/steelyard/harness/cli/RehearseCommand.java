@@ -12,9 +12,7 @@ import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Model.CommandSpec;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.ParameterException;
-import picocli.CommandLine.Parameters;
 import picocli.CommandLine.Spec;
-import steelyard.drills.model.Drill;
 
 /** {@code rehearse}: plays a drill live and prints the verdict. */
 @Command(
@@ -39,10 +37,8 @@ final class RehearseCommand implements Callable<Integer> {
         }
     }
 
-    @Parameters(
-            paramLabel = "DRILL",
-            description = "A drill file, or the name of a bundled drill (`steelyard drills` lists them).")
-    private Path drill = Path.of("");
+    @Mixin
+    private DrillOptions drill = new DrillOptions();
 
     @Option(
             names = "--backends",
@@ -65,9 +61,6 @@ final class RehearseCommand implements Callable<Integer> {
             description = "Whole number that all chance is drawn from; ${DEFAULT-VALUE} unless given.")
     private long seed;
 
-    @Option(names = "--plain", description = "Write plain lines, on a terminal too.")
-    private boolean plain;
-
     @Mixin
     private HelpOption help = new HelpOption();
 
@@ -80,13 +73,18 @@ final class RehearseCommand implements Callable<Integer> {
             throw new ParameterException(
                     spec.commandLine(), "--backends can only be " + EMBEDDED + ", not '" + backends + "'");
         }
-        DrillSource source = DrillSource.named(drill);
-        Drill read = source.drill();
         PrintWriter err = spec.commandLine().getErr();
-        source.lines().forEach(err::println);
+        DrillOptions.Opened opened = drill.open(err);
+        DrillSource source = opened.source();
         Path folder = out == null ? RunPath.unused(source.stem(), LocalDateTime.now()) : out;
         return new Rehearsal(
-                        source, read, seed, folder, plain, spec.commandLine().getOut(), err)
+                        source,
+                        opened.drill(),
+                        seed,
+                        folder,
+                        drill.plain(),
+                        spec.commandLine().getOut(),
+                        err)
                 .play();
     }
 }

@@ -11,8 +11,6 @@ import picocli.CommandLine.Command;
 import picocli.CommandLine.Mixin;
 import picocli.CommandLine.Model.CommandSpec;
 import picocli.CommandLine.Option;
-import picocli.CommandLine.ParameterException;
-import picocli.CommandLine.Parameters;
 import picocli.CommandLine.Spec;
 import steelyard.harness.tune.Aim;
 import steelyard.harness.tune.Grid;
@@ -39,14 +37,10 @@ import steelyard.harness.tune.Variation;
                     + "that no other such cell beats, the one whose larger loss to the best non-dominated cell is the smallest."
         })
 final class TuneCommand implements Callable<Integer> {
-    private static final int MOST_PLAYS = 100_000;
     private static final int MOST_CONFIRMED = 100;
-    private static final int MOST_THREADS = 256;
 
-    @Parameters(
-            paramLabel = "DRILL",
-            description = "A drill file, or the name of a bundled drill (`steelyard drills` lists them).")
-    private Path drill = Path.of("");
+    @Mixin
+    private DrillOptions drill = new DrillOptions();
 
     @Option(
             names = "--vary",
@@ -99,14 +93,8 @@ final class TuneCommand implements Callable<Integer> {
             description = "Seed of the first play of each cell, the next has one more; ${DEFAULT-VALUE} unless given.")
     private long seed;
 
-    @Option(names = "--plain", description = "Write plain lines, on a terminal too.")
-    private boolean plain;
-
-    @Option(
-            names = "--threads",
-            paramLabel = "N",
-            description = "How many plays go on at once; one a processor unless given. Changes no figure.")
-    private @Nullable Integer threads;
+    @Mixin
+    private ThreadsOption threads = new ThreadsOption();
 
     @Mixin
     private HelpOption help = new HelpOption();
@@ -116,21 +104,17 @@ final class TuneCommand implements Callable<Integer> {
 
     @Override
     public Integer call() throws Exception {
-        check("--plays", plays, 2, MOST_PLAYS);
-        check("--confirm", confirm, 0, MOST_CONFIRMED);
-        int atOnce = threads == null
-                ? Math.min(MOST_THREADS, Runtime.getRuntime().availableProcessors())
-                : check("--threads", threads, 1, MOST_THREADS);
-        DrillSource source = DrillSource.named(drill);
-        source.drill();
+        WholeNumber.within(spec, "--plays", plays, 2, WholeNumber.MOST_PLAYS);
+        WholeNumber.within(spec, "--confirm", confirm, 0, MOST_CONFIRMED);
+        int atOnce = threads.atOnce(spec);
         PrintWriter err = spec.commandLine().getErr();
-        source.lines().forEach(err::println);
+        DrillSource source = drill.open(err).source();
         Path folder = out == null ? RunPath.unused(source.stem() + "-tune", LocalDateTime.now()) : out;
         return new GridPlays(
                         source,
                         request(source),
                         atOnce,
-                        plain,
+                        drill.plain(),
                         spec.commandLine().getOut(),
                         err)
                 .play(folder, confirm);
@@ -147,14 +131,5 @@ final class TuneCommand implements Callable<Integer> {
         } catch (TuneRefused refused) {
             throw CommandFailure.wrong(List.of("steelyard: " + refused.getMessage()));
         }
-    }
-
-    private int check(String option, int value, int least, int most) {
-        if (value < least || value > most) {
-            throw new ParameterException(
-                    spec.commandLine(),
-                    option + " takes a whole number from " + least + " to " + most + ", not '" + value + "'");
-        }
-        return value;
     }
 }

@@ -1,26 +1,15 @@
 package steelyard.harness.console;
 
-import java.io.IOException;
 import java.util.List;
-import java.util.concurrent.atomic.AtomicBoolean;
-import org.jline.terminal.Size;
 import org.jline.terminal.Terminal;
 import org.jline.utils.AttributedString;
-import org.jline.utils.Display;
-import org.jline.utils.InfoCmp.Capability;
 
 /** A bar that is drawn again in place; its last state stays. Time is counted in its own ticks. */
 final class ProgressBar implements Progress {
-    private static final long TICK_MILLIS = 200;
-
     private final String title;
     private final String noun;
     private final long total;
-    private final Terminal terminal;
-    private final Display display;
-    private final Size size;
-    private final Ticker ticker = new Ticker(this::show);
-    private final AtomicBoolean closed = new AtomicBoolean();
+    private final DrawnLines lines;
     private volatile long done;
     private long ticks;
 
@@ -28,17 +17,12 @@ final class ProgressBar implements Progress {
         this.title = title;
         this.noun = noun;
         this.total = total;
-        this.terminal = terminal;
-        display = new Display(terminal, false);
-        size = terminal.getSize();
-        display.resize(size.getRows(), size.getColumns());
+        lines = new DrawnLines(terminal, this::show);
     }
 
     @Override
     public void begin() {
-        terminal.echo(false); // a key pressed would move what is drawn
-        terminal.puts(Capability.cursor_invisible);
-        ticker.start(TICK_MILLIS);
+        lines.begin();
     }
 
     @Override
@@ -48,34 +32,22 @@ final class ProgressBar implements Progress {
 
     @Override
     public int width() {
-        return size.getColumns();
+        return lines.size().getColumns();
     }
 
     @Override
     public void close() {
-        if (!closed.compareAndSet(false, true)) {
-            return;
-        }
-        ticker.stop();
-        terminal.puts(Capability.cursor_normal);
-        terminal.writer().println();
-        terminal.echo(true);
-        terminal.flush();
-        try {
-            terminal.close();
-        } catch (IOException gone) {
-            // Nobody is left to look at it.
-        }
+        lines.close();
     }
 
     private void show() {
         // The last column stays free: what a terminal does after writing it differs.
-        int width = size.getColumns() - 1;
+        int width = lines.size().getColumns() - 1;
         AttributedString first =
                 new AttributedString(SceneLines.pad(title, width, false).stripTrailing());
-        AttributedString bar = new AttributedString(line(done, total, noun, ticks * TICK_MILLIS, width));
+        AttributedString bar = new AttributedString(line(done, total, noun, ticks * DrawnLines.TICK_MILLIS, width));
         ticks++;
-        display.update(List.of(first, bar), size.cursorPos(1, bar.columnLength()));
+        lines.update(List.of(first, bar));
     }
 
     /** {@code [#####.....]  100 of 200 plays, 4 s left}; the bar is left out where there is no room. */
