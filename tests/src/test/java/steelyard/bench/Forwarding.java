@@ -13,6 +13,7 @@ import steelyard.balancer.live.Balancer;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.RetrySettings;
 import steelyard.balancer.settings.TimeoutSettings;
@@ -83,19 +84,10 @@ public final class Forwarding {
 
     /** As a drill would have it: a pool with a retry budget and the decisions listened to. */
     private static Balancer balancer(InetSocketAddress backend) throws Exception {
-        PoolSettings pool = new PoolSettings(
-                "seats",
-                PoolSettings.Method.WEIGHTED_ROUND_ROBIN,
-                PoolSettings.Count.REQUESTS,
-                PoolSettings.Weights.BACKEND,
-                null,
-                null,
-                30 * SECOND,
-                new RetrySettings(1, 0.4, 10, Set.of()),
-                new TimeoutSettings(5 * SECOND, 30 * SECOND, 60 * SECOND),
-                false,
-                0,
-                List.of(
+        PoolSettings pool = PoolSettings.named("seats", PickSettings.of(PoolSettings.Method.WEIGHTED_ROUND_ROBIN))
+                .retry(new RetrySettings(1, 0.4, 10, Set.of()))
+                .timeouts(new TimeoutSettings(5 * SECOND, 30 * SECOND, 60 * SECOND))
+                .of(List.of(
                         new BackendSettings("fulmar", 1, 0, false),
                         new BackendSettings("gannet", 2, 0, false),
                         new BackendSettings("petrel", 3, 0, false)));
@@ -104,7 +96,7 @@ public final class Forwarding {
                 number -> backend,
                 number -> 0,
                 System::nanoTime,
-                number -> 0.0,
+                (draw, a, b) -> 0,
                 new DecisionSink() {}); // what a recorder costs is not the balancer's
         balancer.begin(System.nanoTime());
         return balancer;

@@ -76,9 +76,13 @@ public class PicksBench {
     /** A pick, and what every pick brings with it: in flight goes up here and down where the last cycle's pick was. */
     @Benchmark
     public int pick(Pool pool) {
-        int member = pool.picker.pick(NONE, 0, 0);
+        int member = pool.picker.pick(0, 1, 0, NONE, 0, 0);
         pool.inFlight[member] ^= 1;
-        pool.picker.inFlight(member, pool.inFlight[member]);
+        if (pool.inFlight[member] == 1) {
+            pool.picker.began(member, 1, 0);
+        } else {
+            pool.picker.ended(member, 0, true, 0);
+        }
         return member;
     }
 }

@@ -20,10 +20,14 @@ public enum Stream {
     /** Whether a fault that strikes a share of the requests strikes this one. */
     FAULT(6),
     /** Where in its period the first probe of a backend starts. */
-    PROBE_PHASE(7);
+    PROBE_PHASE(7),
+    /** How far the period after a probe is off, where probes have jitter. */
+    PROBE_JITTER(8),
+    /** Where in its period the first load reading of a backend starts. */
+    READING_PHASE(9);
 
     /** No stream has a greater number. */
-    static final int MOST = 7;
+    static final int MOST = 9;
 
     private final int number;
 

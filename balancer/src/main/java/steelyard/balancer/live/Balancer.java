@@ -229,6 +229,21 @@ public final class Balancer implements AutoCloseable {
         }
 
         @Override
+        public void startReading(int backend, long number) {
+            throw new IllegalStateException("not asked for");
+        }
+
+        @Override
+        public void dropReading(int backend, long number) {
+            throw new IllegalStateException("not asked for");
+        }
+
+        @Override
+        public void place(long ticket, int backend) {
+            throw new IllegalStateException("not asked for");
+        }
+
+        @Override
         public void cut(int backend) {
             forwarding.cut(backend);
         }

@@ -4,38 +4,72 @@ import java.util.List;
 import org.jspecify.annotations.Nullable;
 
 /**
- * One pool.
+ * One pool. {@link #named} begins one whose settings are the usual but for some.
  *
  * @param probe null for no probes: every backend counts as up
  * @param warmUp null for a return at full weight
- * @param drainLimitNanos what is in flight that long after a drain began is cut; above zero
  * @param retry null for none
- * @param forwarded whether requests get the Forwarded field (RFC 7239)
- * @param frontPort the port to listen on, or 0 for one that the caller of the live side chooses
+ * @param load what load weights are computed from; there where, and only where, weights are those of load
+ * @param affinity null for none
+ * @param bench null for none
+ * @param inFlight null for no limit
  */
 public record PoolSettings(
         String name,
-        Method method,
-        Count count,
-        Weights weights,
+        PickSettings pick,
         @Nullable ProbeSettings probe,
         @Nullable WarmUpSettings warmUp,
-        long drainLimitNanos,
+        DrainSettings drain,
         @Nullable RetrySettings retry,
+        @Nullable LoadSettings load,
+        @Nullable AffinitySettings affinity,
+        @Nullable BenchSettings bench,
+        ReserveSettings reserve,
+        @Nullable InFlightSettings inFlight,
         TimeoutSettings timeouts,
-        boolean forwarded,
-        int frontPort,
+        LimitSettings limits,
+        FrontSettings front,
         List<BackendSettings> backends) {
 
     public PoolSettings {
         backends = List.copyOf(backends);
         Check.that(!backends.isEmpty(), "pool %s has no backend", name);
         Check.that(
-                weights == Weights.BACKEND || method == Method.WEIGHTED_ROUND_ROBIN,
+                pick.weights() != Weights.HOST || pick.method() == Method.WEIGHTED_ROUND_ROBIN,
                 "pool %s: turns of hosts are those of weighted round robin, not of %s",
                 name,
-                method);
-        Check.that(drainLimitNanos > 0, "drain limit of pool %s: %d ns", name, drainLimitNanos);
+                pick.method());
+        Check.that(
+                (pick.weights() == Weights.LOAD) == (load != null),
+                "pool %s: load weights, and no others, are read",
+                name);
+        Check.that(
+                front.kind() == FrontSettings.Kind.HTTP || pick.count() == Count.CONNECTIONS,
+                "pool %s: a front of octets counts connections",
+                name);
+        Check.that(
+                pick.method() != Method.HASH
+                        || pick.hash().table() != HashSettings.Table.PERMUTATION
+                        || pick.hash().size() > backends.size(),
+                "pool %s: a permutation table has more places than there are backends",
+                name);
+    }
+
+    /** Begins a pool. */
+    public static PoolBuilder named(String name, PickSettings pick) {
+        return new PoolBuilder(name, pick);
+    }
+
+    public Method method() {
+        return pick.method();
+    }
+
+    public Count count() {
+        return pick.count();
+    }
+
+    public Weights weights() {
+        return pick.weights();
     }
 
     /** How a backend is picked for one unit of work. */
@@ -43,7 +77,13 @@ public record PoolSettings(
         ROUND_ROBIN,
         WEIGHTED_ROUND_ROBIN,
         STRIDE,
-        LEAST_CONNECTIONS
+        RANDOM,
+        WEIGHTED_RANDOM,
+        LEAST_CONNECTIONS,
+        TWO_CHOICES,
+        JOIN_IDLE_QUEUE,
+        EXPECTED_DELAY,
+        HASH
     }
 
     /** The unit that a method spreads. */
@@ -55,6 +95,8 @@ public record PoolSettings(
     /** Whose weights count. */
     public enum Weights {
         BACKEND,
-        HOST
+        HOST,
+        /** The backends' own, times the headroom that load probes read. */
+        LOAD
     }
 }

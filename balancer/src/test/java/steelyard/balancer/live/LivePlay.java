@@ -34,7 +34,7 @@ final class LivePlay implements AutoCloseable {
 
     private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses) throws CannotStart {
         this.settings = settings;
-        balancer = Balancer.start(settings, addresses::get, pool -> 0, System::nanoTime, backend -> 0.0, decisions);
+        balancer = Balancer.start(settings, addresses::get, pool -> 0, System::nanoTime, (draw, a, b) -> 0, decisions);
     }
 
     private LivePlay begun() {
@@ -68,7 +68,7 @@ final class LivePlay implements AutoCloseable {
                         backend -> address,
                         pool -> port,
                         System::nanoTime,
-                        backend -> 0.0,
+                        (draw, a, b) -> 0,
                         new Decisions()));
     }
 

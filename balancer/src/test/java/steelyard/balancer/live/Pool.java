@@ -4,6 +4,9 @@ import java.util.List;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.settings.BackendSettings;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.FrontSettings;
+import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.RetrySettings;
@@ -51,18 +54,19 @@ final class Pool {
     }
 
     PoolSettings settings(List<BackendSettings> backends) {
-        return new PoolSettings(
-                "terns",
-                PoolSettings.Method.ROUND_ROBIN,
-                count,
-                PoolSettings.Weights.BACKEND,
-                probe,
-                null,
-                drainLimitNanos,
-                retry,
-                timeouts,
-                forwarded,
-                0,
-                backends);
+        return PoolSettings.named(
+                        "terns",
+                        PickSettings.of(PoolSettings.Method.ROUND_ROBIN).with(count))
+                .probe(probe)
+                .drain(new DrainSettings(drainLimitNanos, false))
+                .retry(retry)
+                .timeouts(timeouts)
+                .front(new FrontSettings(
+                        0,
+                        FrontSettings.Kind.HTTP,
+                        null,
+                        false,
+                        forwarded ? FrontSettings.Forwarded.SHOWN : FrontSettings.Forwarded.NOT))
+                .of(backends);
     }
 }

@@ -10,7 +10,10 @@ import steelyard.backends.behave.ServiceTime;
 import steelyard.backends.fleet.BackendSpec;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.FrontSettings;
 import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.RetrySettings;
@@ -82,19 +85,23 @@ public final class StageSettings {
     }
 
     private static PoolSettings pool(Pool pool, Cast cast) {
-        return new PoolSettings(
-                pool.name(),
-                method(pool.method()),
-                count(pool.count()),
-                weights(pool.weights()),
-                probe(pool.probe()),
-                warmUp(pool.warmUp()),
-                pool.drainLimitNanos(),
-                retry(pool.retry()),
-                timeouts(pool.timeouts()),
-                pool.forwarded(),
-                pool.frontPort(),
-                pool.backends().stream()
+        return PoolSettings.named(
+                        pool.name(),
+                        PickSettings.of(method(pool.method()))
+                                .with(count(pool.count()))
+                                .with(weights(pool.weights())))
+                .probe(probe(pool.probe()))
+                .warmUp(warmUp(pool.warmUp()))
+                .drain(new DrainSettings(pool.drainLimitNanos(), false))
+                .retry(retry(pool.retry()))
+                .timeouts(timeouts(pool.timeouts()))
+                .front(new FrontSettings(
+                        pool.frontPort(),
+                        FrontSettings.Kind.HTTP,
+                        null,
+                        false,
+                        pool.forwarded() ? FrontSettings.Forwarded.SHOWN : FrontSettings.Forwarded.NOT))
+                .of(pool.backends().stream()
                         .map(each -> new BackendSettings(
                                 each.name(), each.weight(), cast.hostNumber(each.host()), each.startsDown()))
                         .toList());

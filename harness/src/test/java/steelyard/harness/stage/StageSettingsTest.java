@@ -12,7 +12,10 @@ import steelyard.backends.behave.ServiceTime;
 import steelyard.backends.fleet.BackendSpec;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.FrontSettings;
 import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.RetrySettings;
@@ -41,32 +44,27 @@ class StageSettingsTest {
                         2,
                         List.of(new HostSettings("quay", 3), new HostSettings("pier", 4)),
                         List.of(
-                                new PoolSettings(
-                                        "seats",
-                                        PoolSettings.Method.WEIGHTED_ROUND_ROBIN,
-                                        PoolSettings.Count.CONNECTIONS,
-                                        PoolSettings.Weights.HOST,
-                                        new ProbeSettings("/afloat", 11, 12, 13, 14),
-                                        new WarmUpSettings(21, 0.2),
-                                        31,
-                                        new RetrySettings(2, 0.4, 9, Set.of(503)),
-                                        new TimeoutSettings(41, 42, 43),
-                                        true,
-                                        20_080,
-                                        List.of(new BackendSettings("fulmar", 5, 1, true))),
-                                new PoolSettings(
-                                        "cargo",
-                                        PoolSettings.Method.LEAST_CONNECTIONS,
-                                        PoolSettings.Count.REQUESTS,
-                                        PoolSettings.Weights.BACKEND,
-                                        null,
-                                        null,
-                                        32,
-                                        null,
-                                        new TimeoutSettings(44, 45, 46),
-                                        false,
-                                        0,
-                                        List.of(
+                                PoolSettings.named(
+                                                "seats",
+                                                PickSettings.of(PoolSettings.Method.WEIGHTED_ROUND_ROBIN)
+                                                        .with(PoolSettings.Count.CONNECTIONS)
+                                                        .with(PoolSettings.Weights.HOST))
+                                        .probe(new ProbeSettings("/afloat", 11, 12, 13, 14))
+                                        .warmUp(new WarmUpSettings(21, 0.2))
+                                        .drain(new DrainSettings(31, false))
+                                        .retry(new RetrySettings(2, 0.4, 9, Set.of(503)))
+                                        .timeouts(new TimeoutSettings(41, 42, 43))
+                                        .front(new FrontSettings(
+                                                20_080,
+                                                FrontSettings.Kind.HTTP,
+                                                null,
+                                                false,
+                                                FrontSettings.Forwarded.SHOWN))
+                                        .of(List.of(new BackendSettings("fulmar", 5, 1, true))),
+                                PoolSettings.named("cargo", PickSettings.of(PoolSettings.Method.LEAST_CONNECTIONS))
+                                        .drain(new DrainSettings(32, false))
+                                        .timeouts(new TimeoutSettings(44, 45, 46))
+                                        .of(List.of(
                                                 new BackendSettings("skua", 1, 0, false),
                                                 new BackendSettings("tern", 2, 0, false))))));
     }

@@ -55,7 +55,7 @@ class DetectionTest {
     /** Probes start at 0, T, 2T ...; the backend fails {@code intoPeriod} after the fourth. */
     private static long detect(ProbeSettings probe, boolean silent, long intoPeriod) {
         long origin = Long.MAX_VALUE - 5 * probe.everyNanos();
-        CoreBench bench = new CoreBench(Method.ROUND_ROBIN, new int[] {1}, probe, backend -> 0, origin);
+        CoreBench bench = new CoreBench(Method.ROUND_ROBIN, new int[] {1}, probe, (draw, a, b) -> 0, origin);
         long failsAt = origin + 3 * probe.everyNanos() + intoPeriod;
         for (int step = 0; step < 1000 && bench.transitions.isEmpty(); step++) {
             long now = bench.decider.nextDeadlineNanos();

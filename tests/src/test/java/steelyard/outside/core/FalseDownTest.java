@@ -51,7 +51,7 @@ class FalseDownTest {
 
     private static long probesToDown(int misses, double chance, SplittableRandom random) {
         ProbeSettings probe = new ProbeSettings("/afloat", CoreBench.SECOND, CoreBench.SECOND / 2, misses, 2);
-        CoreBench bench = new CoreBench(Method.ROUND_ROBIN, new int[] {1}, probe, backend -> 0.5, 0);
+        CoreBench bench = new CoreBench(Method.ROUND_ROBIN, new int[] {1}, probe, (draw, a, b) -> Long.MIN_VALUE, 0);
         long probes = 0;
         while (bench.transitions.isEmpty()) {
             long now = bench.decider.nextDeadlineNanos();

@@ -68,7 +68,7 @@ class OrdersTest {
     }
 
     private static CoreBench bench(Method method, int[] weights) {
-        return new CoreBench(method, weights, null, backend -> 0, 0);
+        return new CoreBench(method, weights, null, (draw, a, b) -> 0, 0);
     }
 
     private static int[] parse(String weights) {

@@ -33,6 +33,9 @@ public final class Decider {
     /** No backend. */
     public static final int NOBODY = Picker.NOBODY;
 
+    /** No backend yet: every one is full, and the try waits. */
+    public static final int WAITING = NOBODY - 1;
+
     private final DecisionSink sink;
     private final Orders orders;
     private final PoolDesk[] pools;
@@ -104,7 +107,7 @@ public final class Decider {
         if (settings == null) {
             return null;
         }
-        long phaseNanos = (long) (chance.probePhase(backend) * settings.everyNanos());
+        long phaseNanos = (long) (chance.unit(Chance.Draw.PROBE_PHASE, backend, 0) * settings.everyNanos());
         return new ProbeTracker(settings, startsUp, nowNanos + phaseNanos);
     }
 
@@ -163,56 +166,57 @@ public final class Decider {
     // --- work -------------------------------------------------------------------------------------------------------
 
     /**
-     * Picks a backend for one attempt and counts it in flight there.
+     * Picks a backend for one attempt and counts it in flight there. A backend that the client's connection or affinity
+     * follows is kept, at no turn, while it may be picked and was not tried yet.
      *
-     * @param attempt from 1; attempt 1 is the first try, later ones are retries, which have turns of their own
-     * @param pinned the backend that the client's connection follows, or {@link #NOBODY}; kept, at no turn, while it may
-     *     be picked and was not tried yet
-     * @param tried backends already tried for this request, in the first {@code triedCount} entries
-     * @return the backend, or {@link #NOBODY}
+     * @return the backend, {@link #NOBODY}, or {@link #WAITING}: {@link Orders#place} tells then
      */
-    public int pick(int pool, long request, int attempt, int pinned, int[] tried, int triedCount, long nowNanos) {
-        int backend = pinned;
-        if (!keeps(pinned, tried, triedCount)) {
-            backend = attempt == 1
-                    ? toBackend(pool, pools[pool].pickFirst(nowNanos))
-                    : pickAgain(pool, tried, triedCount, nowNanos);
+    public int pick(Ask ask, long nowNanos) {
+        PoolDesk pool = pools[ask.pool];
+        int backend = ask.pinned;
+        if (!keeps(ask)) {
+            backend = toBackend(ask.pool, ask.attempt == 1 ? pool.pickFirst(ask, nowNanos) : pickAgain(ask, nowNanos));
         }
-        if (attempt == 1) {
-            pools[pool].retries.firstTry();
+        if (ask.attempt == 1) {
+            pool.retries.firstTry();
         }
         if (backend == NOBODY) {
-            sink.nobody(nowNanos, pool, request, attempt);
+            sink.nobody(nowNanos, ask.pool, ask.request, ask.attempt);
             return NOBODY;
         }
-        count(backend, 1);
-        sink.picked(nowNanos, pool, backend, request, attempt, inFlight[backend]);
+        int count = ++inFlight[backend];
+        pool.began(member(backend), count, nowNanos);
+        sink.picked(nowNanos, ask.pool, backend, ask.request, ask.attempt, count);
         return backend;
     }
 
-    private boolean keeps(int pinned, int[] tried, int triedCount) {
-        if (pinned == NOBODY || !pickable(pinned)) {
-            return false;
-        }
-        for (int i = 0; i < triedCount; i++) {
-            if (tried[i] == pinned) {
-                return false;
-            }
-        }
-        return true;
+    private boolean keeps(Ask ask) {
+        return ask.pinned != NOBODY && pickable(ask.pinned) && !ask.tried(ask.pinned);
     }
 
-    private int pickAgain(int pool, int[] tried, int triedCount, long nowNanos) {
-        // The pool knows its backends by their place in it; the caller's array gets its numbers back below.
-        int first = firstOfPool[pool];
-        for (int i = 0; i < triedCount; i++) {
+    private int pickAgain(Ask ask, long nowNanos) {
+        // The pool knows its backends by their place in it; the asker's array gets its numbers back below.
+        int first = firstOfPool[ask.pool];
+        int[] tried = ask.tried();
+        int count = ask.triedCount();
+        for (int i = 0; i < count; i++) {
             tried[i] -= first;
         }
-        int member = pools[pool].pickAgain(tried, triedCount, nowNanos);
-        for (int i = 0; i < triedCount; i++) {
+        int member = pools[ask.pool].pickAgain(ask, tried, count, nowNanos);
+        for (int i = 0; i < count; i++) {
             tried[i] += first;
         }
-        return toBackend(pool, member);
+        return member;
+    }
+
+    /**
+     * A try that waits is no longer wanted.
+     *
+     * @return whether it was still waiting; otherwise its {@link Orders#place} has been given and what it was given has to
+     *     be ended
+     */
+    public boolean leave(long ticket, long nowNanos) {
+        return false;
     }
 
     private int toBackend(int pool, int member) {
@@ -229,13 +233,9 @@ public final class Decider {
         if (inFlight[backend] == 0) {
             throw new IllegalStateException("request " + request + " ended on backend " + backend + ", which has none");
         }
-        count(backend, -1);
-        sink.ended(nowNanos, backend, request, attempt, outcome, status, inFlight[backend]);
-    }
-
-    private void count(int backend, int change) {
-        inFlight[backend] += change;
-        pools[poolOf[backend]].inFlight(member(backend), inFlight[backend]);
+        int count = --inFlight[backend];
+        pools[poolOf[backend]].ended(member(backend), count, outcome == Outcome.ANSWERED, nowNanos);
+        sink.ended(nowNanos, backend, request, attempt, outcome, status, count);
     }
 
     /**
@@ -306,7 +306,7 @@ public final class Decider {
      * @param limitNanos 0 for the pool's own limit
      */
     public void drain(int backend, long limitNanos, long nowNanos) {
-        long limit = limitNanos == 0 ? pools[poolOf[backend]].settings.drainLimitNanos() : limitNanos;
+        long limit = limitNanos == 0 ? pools[poolOf[backend]].settings.drain().limitNanos() : limitNanos;
         boolean wasWarming = standings[backend].warming();
         stood(backend, standings[backend].drain(limit, nowNanos), wasWarming, nowNanos);
         reschedule(backend);

@@ -27,6 +27,18 @@ public interface DecisionSink {
     /** The standing of a backend changed in word or in whether it may be picked. */
     default void stood(Transition transition) {}
 
+    /** A try waits for a place; {@code waiting} of the pool wait now, this one included. */
+    default void waited(long nowNanos, int pool, long request, int attempt, int waiting) {}
+
+    /**
+     * What a backend's load page makes of its weight has been settled.
+     *
+     * @param number of the reading, or of the last one when it went stale
+     * @param headroomMilli thousandths of the set weight; 1000 when nothing fresh is known
+     * @param fresh false when readings are missing for so long that the set weight stands
+     */
+    default void loadRead(long nowNanos, int backend, long number, int headroomMilli, boolean fresh) {}
+
     /** The set weight of a backend or host was changed. */
     default void reweighed(long nowNanos, boolean host, int number, int weight) {}
 }

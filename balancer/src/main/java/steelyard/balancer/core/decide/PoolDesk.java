@@ -72,22 +72,30 @@ final class PoolDesk {
             case WEIGHTED_ROUND_ROBIN -> new WeightedRoundRobin(members, ramp);
             case STRIDE -> new Stride(members);
             case LEAST_CONNECTIONS -> new LeastConnections(members);
+            case RANDOM, WEIGHTED_RANDOM, TWO_CHOICES, JOIN_IDLE_QUEUE, EXPECTED_DELAY, HASH ->
+                throw new IllegalArgumentException("no picker for " + settings.method());
         };
     }
 
-    int pickFirst(long nowNanos) {
+    int pickFirst(Ask ask, long nowNanos) {
         stepRamps(nowNanos);
-        return first.pick(NONE_TRIED, 0, nowNanos);
+        return first.pick(ask.request, ask.attempt, ask.key, NONE_TRIED, 0, nowNanos);
     }
 
-    int pickAgain(int[] tried, int triedCount, long nowNanos) {
+    /** @param tried members already tried, in the first {@code triedCount} entries */
+    int pickAgain(Ask ask, int[] tried, int triedCount, long nowNanos) {
         stepRamps(nowNanos);
-        return again.pick(tried, triedCount, nowNanos);
+        return again.pick(ask.request, ask.attempt, ask.key, tried, triedCount, nowNanos);
     }
 
-    void inFlight(int member, int count) {
-        first.inFlight(member, count);
-        again.inFlight(member, count);
+    void began(int member, int count, long nowNanos) {
+        first.began(member, count, nowNanos);
+        again.began(member, count, nowNanos);
+    }
+
+    void ended(int member, int count, boolean answered, long nowNanos) {
+        first.ended(member, count, answered, nowNanos);
+        again.ended(member, count, answered, nowNanos);
     }
 
     void reweigh(int member, int weight, long nowNanos) {

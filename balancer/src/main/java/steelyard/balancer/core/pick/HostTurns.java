@@ -58,7 +58,7 @@ public final class HostTurns implements Picker, Tournament.Order {
     }
 
     @Override
-    public int pick(int[] tried, int triedCount, long nowNanos) {
+    public int pick(long request, int attempt, long key, int[] tried, int triedCount, long nowNanos) {
         for (int i = 0; i < triedCount; i++) {
             int host = hostOf[tried[i]];
             onHost[host].hide(seatOf[tried[i]]);
@@ -108,9 +108,6 @@ public final class HostTurns implements Picker, Tournament.Order {
         onHost[hostOf[member]].weigh(seatOf[member], weightMilli);
         settle(hostOf[member]);
     }
-
-    @Override
-    public void inFlight(int member, int count) {}
 
     @Override
     public boolean takesTurns() {

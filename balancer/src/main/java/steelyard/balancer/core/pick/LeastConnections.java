@@ -31,7 +31,16 @@ public final class LeastConnections extends TournamentPicker {
     }
 
     @Override
-    public void inFlight(int member, int count) {
+    public void began(int member, int count, long nowNanos) {
+        count(member, count);
+    }
+
+    @Override
+    public void ended(int member, int count, boolean answered, long nowNanos) {
+        count(member, count);
+    }
+
+    private void count(int member, int count) {
         inFlight[member] = count;
         tournament.changed(member);
     }

@@ -20,11 +20,14 @@ public interface Picker {
     /**
      * Picks a member and counts its turn.
      *
+     * @param request the request's number, by which a method that draws lots draws
+     * @param attempt from 1, likewise
+     * @param key of what the method hashes; any value for one that does not
      * @param tried members that this pick leaves out, in its first {@code triedCount} entries
      * @param nowNanos the instant, for members that warm up
      * @return the member, or {@link #NOBODY}; ties as the method's own class says
      */
-    int pick(int[] tried, int triedCount, long nowNanos);
+    int pick(long request, int attempt, long key, int[] tried, int triedCount, long nowNanos);
 
     /** A member becomes pickable. */
     void enter(int member);
@@ -39,8 +42,15 @@ public interface Picker {
      */
     void weigh(int member, long weightMilli);
 
-    /** The number of attempts in flight on a member changed. */
-    void inFlight(int member, int count);
+    /** An attempt begins on a member, whoever picked it; {@code count} are now in flight there. */
+    default void began(int member, int count, long nowNanos) {}
+
+    /**
+     * An attempt ended on a member; {@code count} are still in flight there.
+     *
+     * @param answered whether a whole answer came, of whatever status
+     */
+    default void ended(int member, int count, boolean answered, long nowNanos) {}
 
     /**
      * Whether a warming member is held back by passing turns, on the ramp that the picker was made with; otherwise the

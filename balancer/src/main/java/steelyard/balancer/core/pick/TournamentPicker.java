@@ -25,7 +25,7 @@ abstract class TournamentPicker implements Picker, Tournament.Order {
     void unseat(int member) {}
 
     @Override
-    public final int pick(int[] tried, int triedCount, long nowNanos) {
+    public final int pick(long request, int attempt, long key, int[] tried, int triedCount, long nowNanos) {
         for (int i = 0; i < triedCount; i++) {
             hide(tried[i]);
         }
@@ -47,9 +47,6 @@ abstract class TournamentPicker implements Picker, Tournament.Order {
         pickable[member] = false;
         settle(member);
     }
-
-    @Override
-    public void inFlight(int member, int count) {}
 
     /** Leaves a member out until {@link #show}, without touching its place. */
     final void hide(int member) {

@@ -32,7 +32,7 @@ public final class PoolWeights {
      * @param hostSet the set weights of all hosts; read again after each {@link #stale}
      */
     public PoolWeights(PoolSettings pool, BackendStanding[] standings, int[] set, int[] hostOf, int[] hostSet) {
-        weighs = pool.method() != PoolSettings.Method.ROUND_ROBIN;
+        weighs = pool.method() != PoolSettings.Method.ROUND_ROBIN && pool.method() != PoolSettings.Method.RANDOM;
         byHost = pool.weights() == PoolSettings.Weights.HOST;
         this.standings = standings;
         this.set = set;

@@ -5,6 +5,7 @@ import java.util.concurrent.Future;
 import java.util.concurrent.TimeUnit;
 import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.core.decide.Chance;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.DecisionSink;
@@ -87,11 +88,11 @@ public final class GuardedDecider {
     }
 
     /** @see Decider#pick */
-    public int pick(int pool, long request, int attempt, int pinned, int[] tried, int triedCount) {
+    public int pick(Ask ask) {
         synchronized (lock) {
             Decider begun = begun();
             long now = nanoClock.getAsLong();
-            int backend = begun.pick(pool, request, attempt, pinned, tried, triedCount, now);
+            int backend = begun.pick(ask, now);
             rearm(begun, now);
             return backend;
         }
@@ -205,6 +206,21 @@ public final class GuardedDecider {
         @Override
         public void dropProbe(int backend, long probe) {
             note(() -> carriedOut.dropProbe(backend, probe));
+        }
+
+        @Override
+        public void startReading(int backend, long number) {
+            note(() -> carriedOut.startReading(backend, number));
+        }
+
+        @Override
+        public void dropReading(int backend, long number) {
+            note(() -> carriedOut.dropReading(backend, number));
+        }
+
+        @Override
+        public void place(long ticket, int backend) {
+            note(() -> carriedOut.place(ticket, backend));
         }
 
         @Override

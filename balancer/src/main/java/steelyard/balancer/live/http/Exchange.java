@@ -9,8 +9,8 @@ import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.LastHttpContent;
-import java.util.Arrays;
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.settings.RetrySettings;
@@ -22,8 +22,6 @@ import steelyard.balancer.settings.RetrySettings;
  * failure that came first.
  */
 final class Exchange {
-    private static final int[] NONE = {};
-
     private final ClientHandler client;
     private final PoolFront pool;
     private final LoopConnections connections;
@@ -33,8 +31,7 @@ final class Exchange {
     private final boolean keepClient;
     private final boolean oldClient;
 
-    private int attempt = 1;
-    private int[] tried = NONE;
+    private final Ask ask = new Ask();
     private int backend = Decider.NOBODY;
     private boolean inFlight;
     private @Nullable BackendConnection connection;
@@ -73,7 +70,10 @@ final class Exchange {
     /** Makes the first attempt. */
     void begin() {
         head.headers().set(Fields.REQUEST, number);
-        backend = pool.decider().pick(pool.number(), number, attempt, client.pinned(), NONE, 0);
+        ask.pool = pool.number();
+        ask.request = number;
+        ask.pinned = client.pinned();
+        backend = pool.decider().pick(ask);
         if (backend == Decider.NOBODY) {
             client.answer(OwnAnswer.NOBODY);
         } else {
@@ -86,7 +86,7 @@ final class Exchange {
         inFlight = true;
         connected = false;
         headSent = false;
-        head.headers().set(Fields.ATTEMPT, Integer.toString(attempt));
+        head.headers().set(Fields.ATTEMPT, Integer.toString(ask.attempt));
         BackendConnection idle = connections.take(backend);
         if (idle == null) {
             connections.connect(backend, this);
@@ -152,14 +152,13 @@ final class Exchange {
     private boolean mayRetry(Outcome outcome) {
         boolean idempotent = RequestCheck.idempotent(head.method());
         return pool.decider()
-                .retry(pool.number(), number, attempt, outcome, status, idempotent, headSent, body.replayable());
+                .retry(pool.number(), number, ask.attempt, outcome, status, idempotent, headSent, body.replayable());
     }
 
     private boolean again() {
-        tried = Arrays.copyOf(tried, attempt);
-        tried[attempt - 1] = backend;
-        attempt++;
-        int next = pool.decider().pick(pool.number(), number, attempt, Decider.NOBODY, tried, tried.length);
+        ask.again(backend);
+        ask.pinned = Decider.NOBODY;
+        int next = pool.decider().pick(ask);
         if (next == Decider.NOBODY) {
             return false;
         }
@@ -175,7 +174,7 @@ final class Exchange {
 
     private void ended(Outcome outcome) {
         inFlight = false;
-        pool.decider().ended(backend, number, attempt, outcome, status);
+        pool.decider().ended(backend, number, ask.attempt, outcome, status);
     }
 
     // ---- from the client
@@ -271,7 +270,7 @@ final class Exchange {
     void answerHead(HttpResponse response) {
         status = response.status().code();
         RetrySettings retry = pool.settings().retry();
-        if (retry != null && retry.also().contains(status) && attempt <= retry.atMost()) {
+        if (retry != null && retry.also().contains(status) && ask.attempt <= retry.atMost()) {
             held = new HeldAnswer(response);
         } else {
             passOn(response);

@@ -8,6 +8,7 @@ import io.netty.handler.codec.http.HttpVersion;
 import java.net.SocketAddress;
 import java.util.Locale;
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.settings.FrontSettings;
 
 /** Makes the head that goes to the backend out of the one that came, in place. */
 final class RequestHeads {
@@ -34,7 +35,7 @@ final class RequestHeads {
             }
         }
         headers.add(HttpHeaderNames.VIA, oldClient ? pool.via10() : pool.via11());
-        if (pool.settings().forwarded()) {
+        if (pool.settings().front().forwarded() != FrontSettings.Forwarded.NOT) {
             headers.add(Fields.FORWARDED, ForwardedElement.of(client, headers.get(HttpHeaderNames.HOST)));
         }
         request.setProtocolVersion(HttpVersion.HTTP_1_1);

@@ -16,7 +16,6 @@ import steelyard.balancer.settings.ProbeSettings;
 
 /** The Decider by its trace: what it says, in order, for what it is told. */
 class DeciderTest {
-    private static final int[] NONE = {};
 
     private final Trace trace = new Trace();
 
@@ -60,10 +59,8 @@ class DeciderTest {
     void pick_retry_leavesOutWhoWasTriedAndTakesNoTurnOfFirstTries() {
         Decider decider = decider(Stand.of(Method.ROUND_ROBIN, 3));
         assertThat(pick(decider, 0, 1)).isZero();
-        int[] tried = {0, -1};
 
-        assertThat(decider.pick(0, 0, 2, Decider.NOBODY, tried, 1, 2)).isEqualTo(1);
-        assertThat(tried).containsExactly(0, -1);
+        assertThat(decider.pick(again(0, 0, 0), 2)).isEqualTo(1);
         assertThat(pick(decider, 1, 3)).isEqualTo(1);
     }
 
@@ -71,19 +68,19 @@ class DeciderTest {
     void pick_inASecondPool_usesTheNumbersOfTheInstance() {
         Decider decider = decider(Stand.of(Method.ROUND_ROBIN, 2), Stand.of(Method.ROUND_ROBIN, 2));
 
-        assertThat(decider.pick(1, 0, 1, Decider.NOBODY, NONE, 0, 1)).isEqualTo(2);
-        assertThat(decider.pick(1, 0, 2, Decider.NOBODY, new int[] {2}, 1, 1)).isEqualTo(3);
+        assertThat(decider.pick(ask(1, 0), 1)).isEqualTo(2);
+        assertThat(decider.pick(again(1, 0, 2), 1)).isEqualTo(3);
     }
 
     @Test
     void pick_pinned_staysAtNoTurnUntilItsBackendMayNotBePicked() {
         Decider decider = decider(Stand.of(Method.ROUND_ROBIN, 3));
-        assertThat(decider.pick(0, 0, 1, 2, NONE, 0, 1)).isEqualTo(2);
-        assertThat(decider.pick(0, 1, 1, 2, NONE, 0, 2)).isEqualTo(2);
+        assertThat(decider.pick(pinned(0, 2), 1)).isEqualTo(2);
+        assertThat(decider.pick(pinned(1, 2), 2)).isEqualTo(2);
         assertThat(pick(decider, 2, 3)).isZero();
         decider.drain(2, 0, 4);
 
-        assertThat(decider.pick(0, 3, 1, 2, NONE, 0, 5)).isEqualTo(1);
+        assertThat(decider.pick(pinned(3, 2), 5)).isEqualTo(1);
     }
 
     @ParameterizedTest
@@ -152,7 +149,7 @@ class DeciderTest {
         ProbeSettings probe = new ProbeSettings("/afloat", 1_000, 400, 2, 1);
         Decider decider = new Decider(
                 Stand.settings(Stand.of(Method.ROUND_ROBIN, 1).probe(probe).warmUp(500, 0.1)),
-                backend -> 0.25,
+                (draw, a, b) -> 1L << 62,
                 trace,
                 trace,
                 origin);
@@ -317,7 +314,7 @@ class DeciderTest {
         ProbeSettings probe = new ProbeSettings(null, 300, 100, 2, 2);
         Decider decider = new Decider(
                 Stand.settings(Stand.of(method, 5).probe(probe).warmUp(900, 0.1)),
-                backend -> backend / 5.0,
+                (draw, a, b) -> Math.round(a / 5.0 * (1L << 53)) << 11,
                 trace,
                 trace,
                 now);
@@ -359,8 +356,27 @@ class DeciderTest {
         return answers.toString();
     }
 
+    private static Ask ask(int pool, long request) {
+        Ask ask = new Ask();
+        ask.pool = pool;
+        ask.request = request;
+        return ask;
+    }
+
+    private static Ask again(int pool, long request, int tried) {
+        Ask ask = ask(pool, request);
+        ask.again(tried);
+        return ask;
+    }
+
+    private static Ask pinned(long request, int backend) {
+        Ask ask = ask(0, request);
+        ask.pinned = backend;
+        return ask;
+    }
+
     private static int pick(Decider decider, long request, long now) {
-        return decider.pick(0, request, 1, Decider.NOBODY, NONE, 0, now);
+        return decider.pick(ask(0, request), now);
     }
 
     private static void run(Decider decider, long until) {
@@ -370,6 +386,6 @@ class DeciderTest {
     }
 
     private Decider decider(Stand... pools) {
-        return new Decider(Stand.settings(pools), backend -> 0, trace, trace, 0);
+        return new Decider(Stand.settings(pools), (draw, a, b) -> 0, trace, trace, 0);
     }
 }

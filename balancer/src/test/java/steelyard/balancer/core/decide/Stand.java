@@ -6,14 +6,14 @@ import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
-import steelyard.balancer.settings.PoolSettings.Count;
 import steelyard.balancer.settings.PoolSettings.Method;
 import steelyard.balancer.settings.PoolSettings.Weights;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.RetrySettings;
-import steelyard.balancer.settings.TimeoutSettings;
 import steelyard.balancer.settings.WarmUpSettings;
 
 /** Settings for tests, built up pool by pool; one unit of time is a nanosecond. */
@@ -66,19 +66,12 @@ final class Stand {
     }
 
     private PoolSettings pool(String name) {
-        return new PoolSettings(
-                name,
-                method,
-                Count.REQUESTS,
-                weights,
-                probe,
-                warmUp,
-                30_000,
-                retry,
-                new TimeoutSettings(1, 1, 1),
-                false,
-                0,
-                backends);
+        return PoolSettings.named(name, PickSettings.of(method).with(weights))
+                .probe(probe)
+                .warmUp(warmUp)
+                .drain(new DrainSettings(30_000, false))
+                .retry(retry)
+                .of(backends);
     }
 
     /** An instance of these pools on two hosts of weight 8. */

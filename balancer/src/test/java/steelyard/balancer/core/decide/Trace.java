@@ -74,6 +74,21 @@ final class Trace implements DecisionSink, Orders {
     }
 
     @Override
+    public void startReading(int backend, long number) {
+        note("start reading %d of %d", number, backend);
+    }
+
+    @Override
+    public void dropReading(int backend, long number) {
+        note("drop reading %d of %d", number, backend);
+    }
+
+    @Override
+    public void place(long ticket, int backend) {
+        note("ticket %d gets %d", ticket, backend);
+    }
+
+    @Override
     public void cut(int backend) {
         note("cut everything on %d", backend);
     }

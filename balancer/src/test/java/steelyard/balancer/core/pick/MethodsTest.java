@@ -134,14 +134,14 @@ class MethodsTest {
         @Test
         void pick_fewestInFlightOverWeight_ties_inRotation() {
             Picker picker = all(new LeastConnections(3), 1, 2, 1);
-            picker.inFlight(0, 1);
-            picker.inFlight(1, 2);
-            picker.inFlight(2, 1);
+            picker.began(0, 1, 0);
+            picker.began(1, 2, 0);
+            picker.began(2, 1, 0);
             // All at 1.0: rotation.
             assertThat(order(picker, 4)).isEqualTo("ABCA");
-            picker.inFlight(1, 1);
+            picker.began(1, 1, 0);
             assertThat(order(picker, 2)).isEqualTo("BB");
-            picker.inFlight(2, 0);
+            picker.began(2, 0, 0);
             assertThat(order(picker, 2)).isEqualTo("CC");
         }
     }
@@ -172,7 +172,7 @@ class MethodsTest {
             for (int i = 0; i < 48 * 200; i++) {
                 pattern = pattern * 6364136223846793005L + 1442695040888963407L;
                 boolean toWide = pattern < 0;
-                int member = toWide ? wide.pick(NONE, 0, 0) : narrow.pick(NONE, 0, 0);
+                int member = toWide ? wide.pick(0, 1, 0, NONE, 0, 0) : narrow.pick(0, 1, 0, NONE, 0, 0);
                 int host = toWide ? member : member + 1;
                 hosts[host]++;
                 if (toWide) {
@@ -224,7 +224,7 @@ class MethodsTest {
     private static String order(Picker picker, int picks) {
         StringBuilder order = new StringBuilder();
         for (int i = 0; i < picks; i++) {
-            order.append((char) ('A' + picker.pick(NONE, 0, 0)));
+            order.append((char) ('A' + picker.pick(0, 1, 0, NONE, 0, 0)));
         }
         return order.toString();
     }

@@ -24,7 +24,7 @@ abstract class PickerContract {
 
     @Test
     void pick_nobodyPickable_saysNobody() {
-        assertThat(picker(3, Ramp.NONE).pick(NONE, 0, 0)).isEqualTo(Picker.NOBODY);
+        assertThat(picker(3, Ramp.NONE).pick(0, 1, 0, NONE, 0, 0)).isEqualTo(Picker.NOBODY);
     }
 
     @Test
@@ -33,7 +33,7 @@ abstract class PickerContract {
         picker.enter(3);
 
         for (int i = 0; i < 20; i++) {
-            assertThat(picker.pick(NONE, 0, i)).isEqualTo(3);
+            assertThat(picker.pick(0, 1, 0, NONE, 0, i)).isEqualTo(3);
         }
     }
 
@@ -80,9 +80,9 @@ abstract class PickerContract {
     void pick_triedMembers_areLeftOutOfThisPickOnly() {
         Picker picker = full(3);
         for (int i = 0; i < 10; i++) {
-            assertThat(picker.pick(new int[] {0, 2}, 2, 0)).isEqualTo(1);
+            assertThat(picker.pick(0, 1, 0, new int[] {0, 2}, 2, 0)).isEqualTo(1);
         }
-        assertThat(picker.pick(new int[] {0, 1, 2}, 3, 0)).isEqualTo(Picker.NOBODY);
+        assertThat(picker.pick(0, 1, 0, new int[] {0, 1, 2}, 3, 0)).isEqualTo(Picker.NOBODY);
 
         int[] served = serve(picker, 60, 3);
         assertThat(served[0] + served[2]).isGreaterThanOrEqualTo(38);
@@ -92,7 +92,7 @@ abstract class PickerContract {
     void pick_triedMemberThatIsNotPickable_staysOut() {
         Picker picker = full(3);
         picker.leave(0);
-        picker.pick(new int[] {0}, 1, 0);
+        picker.pick(0, 1, 0, new int[] {0}, 1, 0);
 
         assertThat(serve(picker, 30, 3)[0]).isZero();
     }
@@ -117,10 +117,10 @@ abstract class PickerContract {
                     in[member] = true;
                 }
                 case 2 -> picker.weigh(member, (1 + random.nextInt(5)) * (long) Picker.MILLI);
-                case 3 -> picker.inFlight(member, random.nextInt(6));
+                case 3 -> picker.began(member, random.nextInt(6), call);
                 default -> {
                     int[] tried = {random.nextInt(members)};
-                    int picked = picker.pick(tried, 1, call);
+                    int picked = picker.pick(0, 1, 0, tried, 1, call);
                     boolean any = false;
                     for (int each = 0; each < members; each++) {
                         any |= in[each] && each != tried[0];
@@ -137,7 +137,7 @@ abstract class PickerContract {
     static int[] serve(Picker picker, int picks, int members) {
         int[] served = new int[members];
         for (int i = 0; i < picks; i++) {
-            served[picker.pick(NONE, 0, 0)]++;
+            served[picker.pick(0, 1, 0, NONE, 0, 0)]++;
         }
         return served;
     }

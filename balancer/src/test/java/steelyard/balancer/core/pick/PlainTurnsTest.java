@@ -41,7 +41,7 @@ class PlainTurnsTest {
                 }
                 default -> {
                     int tried = random.nextInt(3) == 0 ? member : -1;
-                    int picked = picker.pick(new int[] {tried}, tried < 0 ? 0 : 1, step);
+                    int picked = picker.pick(0, 1, 0, new int[] {tried}, tried < 0 ? 0 : 1, step);
                     assertThat(picked).as("step %d", step).isEqualTo(plain.pick(plain.open(tried)));
                 }
             }
@@ -93,7 +93,7 @@ class PlainTurnsTest {
                     }
                 }
                 default -> {
-                    int picked = pools[pool].pick(new int[0], 0, step);
+                    int picked = pools[pool].pick(0, 1, 0, new int[0], 0, step);
                     int expected = plain.pick(plain.weighing(there[pool]));
                     assertThat(picked < 0 ? picked : picked + pool)
                             .as("step %d", step)

@@ -19,8 +19,8 @@ import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
-import steelyard.balancer.settings.TimeoutSettings;
 
 /**
  * Requests that are answered here, without sockets: there is nothing behind the handler that could be picked or
@@ -32,19 +32,9 @@ class RefusalsTest {
     }
 
     private static final long SECOND = 1_000_000_000L;
-    private static final PoolSettings POOL = new PoolSettings(
-            "terns",
-            PoolSettings.Method.ROUND_ROBIN,
-            PoolSettings.Count.REQUESTS,
-            PoolSettings.Weights.BACKEND,
-            null,
-            null,
-            SECOND,
-            null,
-            new TimeoutSettings(SECOND, SECOND, SECOND),
-            false,
-            0,
-            List.of(new BackendSettings("tern-1", 1, 0, false)));
+    private static final PoolSettings POOL = PoolSettings.named(
+                    "terns", PickSettings.of(PoolSettings.Method.ROUND_ROBIN))
+            .of(List.of(new BackendSettings("tern-1", 1, 0, false)));
 
     private int picked;
 
@@ -63,6 +53,15 @@ class RefusalsTest {
         public void dropProbe(int backend, long probe) {}
 
         @Override
+        public void startReading(int backend, long number) {}
+
+        @Override
+        public void dropReading(int backend, long number) {}
+
+        @Override
+        public void place(long ticket, int backend) {}
+
+        @Override
         public void cut(int backend) {}
     }
 
@@ -70,7 +69,7 @@ class RefusalsTest {
         BalancerSettings settings =
                 new BalancerSettings("steelyard", 1, List.of(new HostSettings("quay-1", 1)), List.of(POOL));
         GuardedDecider decider = new GuardedDecider(
-                settings, () -> 0, backend -> 0, new Sink(), GlobalEventExecutor.INSTANCE, new NoOrders());
+                settings, () -> 0, (draw, a, b) -> 0, new Sink(), GlobalEventExecutor.INSTANCE, new NoOrders());
         decider.begin(0);
         decider.change((core, now) -> core.withdraw(0, now));
         PoolFront front = PoolFront.of(0, POOL, decider, new RequestNumbers(), "steelyard");

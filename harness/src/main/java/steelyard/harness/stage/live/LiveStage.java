@@ -11,7 +11,6 @@ import java.util.concurrent.TimeUnit;
 import java.util.concurrent.locks.LockSupport;
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Chance;
-import steelyard.backends.behave.Stream;
 import steelyard.backends.fleet.CannotStart;
 import steelyard.backends.fleet.EmbeddedFleet;
 import steelyard.backends.fleet.Fleet;
@@ -27,6 +26,7 @@ import steelyard.harness.record.Cast;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.Agenda;
 import steelyard.harness.stage.CannotPlay;
+import steelyard.harness.stage.Draws;
 import steelyard.harness.stage.Stage;
 import steelyard.harness.stage.StageSettings;
 import steelyard.harness.traffic.OfferedRate;
@@ -102,17 +102,11 @@ public final class LiveStage implements Stage {
         BalancerSettings settings = StageSettings.balancer(drill);
         int[] ports = new int[settings.pools().size()];
         for (int pool = 0; pool < ports.length; pool++) {
-            int asked = settings.pools().get(pool).frontPort();
+            int asked = settings.pools().get(pool).front().port();
             ports[pool] = asked == 0 ? Ports.ofThisProcess().next() : asked;
         }
         Chance chance = new Chance(seed);
-        return Balancer.start(
-                settings,
-                fleet::address,
-                pool -> ports[pool],
-                clock::nanos,
-                backend -> chance.unit(Stream.PROBE_PHASE, backend, 0),
-                sink);
+        return Balancer.start(settings, fleet::address, pool -> ports[pool], clock::nanos, Draws.of(chance), sink);
     }
 
     /** Where the front of a pool listens, by the pool's number. Only while the stage is open. */

@@ -5,7 +5,7 @@ import java.util.List;
 import java.util.Set;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Reply;
-import steelyard.backends.behave.Stream;
+import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.core.decide.Outcome;
@@ -17,6 +17,7 @@ import steelyard.drills.model.Traffic;
 import steelyard.harness.record.Cast;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.record.Sample;
+import steelyard.harness.stage.Draws;
 import steelyard.harness.stage.StageSettings;
 import steelyard.harness.stage.virtual.Flights.State;
 import steelyard.harness.stage.virtual.Post.Kind;
@@ -32,7 +33,6 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
     private static final int BAD_GATEWAY = 502;
     private static final int UNAVAILABLE = 503;
     private static final int GATEWAY_TIMEOUT = 504;
-    private static final int[] NONE_TRIED = {};
 
     private final PlayListener listener;
     private final Post post;
@@ -49,6 +49,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
     private final int[] idle;
 
     private final Ordered ordered = new Ordered();
+    private final Ask ask = new Ask();
 
     VirtualBalancer(Drill drill, Chance chance, PlayListener listener, Post post) {
         this.listener = listener;
@@ -68,8 +69,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         idempotent = traffic.stream().map(VirtualBalancer::idempotent).toArray(boolean[][]::new);
         clients = new VirtualClients(listener, post, flights, drill, idleLimitNanos(pools));
         probes = new VirtualProbes(settings, post);
-        decider = new Decider(
-                settings, backend -> chance.unit(Stream.PROBE_PHASE, backend, 0), new ToListener(listener), this, 0);
+        decider = new Decider(settings, Draws.of(chance), new ToListener(listener), this, 0);
     }
 
     private static int mostAttempts(List<PoolSettings> pools) {
@@ -201,14 +201,14 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
         int attempt = flights.attempt[flight] + 1;
         boolean first = attempt == 1;
         boolean pins = first && rules[pool].pins();
-        int backend = decider.pick(
-                pool,
-                flights.request[flight],
-                attempt,
-                pins ? clients.pinned(flight) : Decider.NOBODY,
-                first ? NONE_TRIED : flights.tried[flight],
-                flights.triedCount[flight],
-                nowNanos);
+        ask.clear();
+        ask.pool = pool;
+        ask.request = flights.request[flight];
+        for (int i = 0; i < flights.triedCount[flight]; i++) {
+            ask.again(flights.tried[flight][i]);
+        }
+        ask.pinned = pins ? clients.pinned(flight) : Decider.NOBODY;
+        int backend = decider.pick(ask, nowNanos);
         if (backend == Decider.NOBODY) {
             return false;
         }
@@ -376,6 +376,21 @@ final class VirtualBalancer implements VirtualBackends.Hearer, Orders {
     @Override
     public void dropProbe(int backend, long probe) {
         // What it brings is ignored by its number.
+    }
+
+    @Override
+    public void startReading(int backend, long number) {
+        throw new IllegalStateException("no pool here reads load");
+    }
+
+    @Override
+    public void dropReading(int backend, long number) {
+        throw new IllegalStateException("no pool here reads load");
+    }
+
+    @Override
+    public void place(long ticket, int backend) {
+        throw new IllegalStateException("nobody waits here");
     }
 
     @Override
