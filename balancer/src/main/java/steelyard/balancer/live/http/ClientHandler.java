@@ -1,27 +1,13 @@
 package steelyard.balancer.live.http;
 
-import io.netty.buffer.ByteBuf;
-import io.netty.buffer.Unpooled;
 import io.netty.channel.Channel;
-import io.netty.channel.ChannelFutureListener;
 import io.netty.channel.ChannelHandlerContext;
 import io.netty.channel.ChannelInboundHandlerAdapter;
-import io.netty.channel.ChannelOption;
-import io.netty.channel.socket.DuplexChannel;
-import io.netty.handler.codec.http.DefaultFullHttpResponse;
-import io.netty.handler.codec.http.EmptyHttpHeaders;
 import io.netty.handler.codec.http.HttpContent;
-import io.netty.handler.codec.http.HttpHeaderNames;
-import io.netty.handler.codec.http.HttpHeaderValues;
-import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpRequest;
-import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.HttpUtil;
-import io.netty.handler.codec.http.LastHttpContent;
 import io.netty.util.ReferenceCountUtil;
-import java.util.ArrayDeque;
-import java.util.concurrent.TimeUnit;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.live.tcp.Deadline;
@@ -33,27 +19,25 @@ import steelyard.balancer.live.tcp.Deadline;
  * sends nothing ahead is always read, so that its leaving is seen at once.
  */
 final class ClientHandler extends ChannelInboundHandlerAdapter {
-    /** How long a client may take to read the last answer and close, once nothing more is taken from it. */
-    private static final long LINGER_NANOS = TimeUnit.SECONDS.toNanos(2);
-
     private final PoolFront pool;
     private final LoopConnections connections;
-    private final ClientEncoder encoder;
     private final Channel channel;
+    private final ClientOutput output;
     private final Deadline deadline;
-    private final ArrayDeque<HttpObject> ahead = new ArrayDeque<>();
+    private final ClientEnding ending;
+    private final SentAhead ahead = new SentAhead();
     private @Nullable Exchange exchange;
     private int pinned = Decider.NOBODY;
-    private @Nullable HttpResponse heldHead;
-    private boolean closing;
     private boolean catchingUp;
 
     ClientHandler(PoolFront pool, LoopConnections connections, ClientEncoder encoder, Channel channel) {
         this.pool = pool;
         this.connections = connections;
-        this.encoder = encoder;
         this.channel = channel;
+        this.output = new ClientOutput(channel, encoder, pool.balancer());
         this.deadline = new Deadline(channel.eventLoop(), channel::close);
+        this.ending = new ClientEnding(
+                channel, output, deadline, pool.settings().timeouts().idleNanos());
     }
 
     // ---- from the client
@@ -66,10 +50,10 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     @Override
     public void channelRead(ChannelHandlerContext context, Object message) {
         HttpObject part = (HttpObject) message;
-        if (closing) {
+        if (ending.begun()) {
             ReferenceCountUtil.release(message);
         } else if (!ahead.isEmpty() || waitsItsTurn(part)) {
-            ahead.addLast(part);
+            ahead.add(part);
             updateReading();
         } else {
             accept(part);
@@ -97,7 +81,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     private void begin(HttpRequest request) {
         deadline.clear();
-        encoder.answersHead(HttpMethod.HEAD.equals(request.method()));
+        output.answers(request);
         boolean oldClient = request.protocolVersion().minorVersion() == 0;
         boolean keep = !oldClient && HttpUtil.isKeepAlive(request);
         boolean content = request.decoderResult().isSuccess() && RequestCheck.hasContent(request);
@@ -105,7 +89,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         if (here == null) {
             here = RequestHeads.prepare(request, pool, channel.remoteAddress());
             if (here != null && here.status().code() != 400 && keep && !content) {
-                writeOwn(here, false);
+                output.own(here, false);
                 answered(true);
                 return;
             }
@@ -148,9 +132,8 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     @Override
     public void channelInactive(ChannelHandlerContext context) {
-        closing = true;
-        deadline.stop();
-        dropAhead();
+        ending.gone();
+        ahead.drop();
         Exchange running = exchange;
         exchange = null;
         if (running != null) {
@@ -165,7 +148,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     /** Reads on while nothing was sent ahead and what comes can be passed on. */
     void updateReading() {
-        boolean reading = closing
+        boolean reading = ending.begun()
                 || ahead.isEmpty() && (exchange == null || exchange.requestComplete() || exchange.takesContent());
         if (channel.config().isAutoRead() != reading) {
             channel.config().setAutoRead(reading);
@@ -186,45 +169,8 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     // ---- towards the client
 
-    boolean writable() {
-        return channel.isWritable();
-    }
-
-    /** The head of an answer; it is written with what comes next, at the latest at the next flush. */
-    void passHead(HttpResponse response, boolean close) {
-        if (close) {
-            response.headers().set(HttpHeaderNames.CONNECTION, HttpHeaderValues.CLOSE);
-        }
-        heldHead = response;
-    }
-
-    void write(HttpObject message) {
-        HttpResponse head = heldHead;
-        if (head != null && message instanceof LastHttpContent last) {
-            heldHead = null;
-            channel.write(whole(head, last.content()), channel.voidPromise());
-        } else {
-            writeHeldHead();
-            channel.write(message, channel.voidPromise());
-        }
-    }
-
-    private static HttpResponse whole(HttpResponse head, ByteBuf content) {
-        return new DefaultFullHttpResponse(
-                head.protocolVersion(), head.status(), content, head.headers(), EmptyHttpHeaders.INSTANCE);
-    }
-
-    private void writeHeldHead() {
-        HttpResponse head = heldHead;
-        if (head != null) {
-            heldHead = null;
-            channel.write(head, channel.voidPromise());
-        }
-    }
-
-    void flush() {
-        writeHeldHead();
-        channel.flush();
+    ClientOutput output() {
+        return output;
     }
 
     /** Ends the running exchange with an answer of our own; the connection stays where the request was whole. */
@@ -235,19 +181,14 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         }
         boolean keep = running.keepsClient();
         running.drop();
-        writeOwn(answer, !keep);
+        output.own(answer, !keep);
         answered(keep);
     }
 
     private void answerAndClose(OwnAnswer answer) {
-        writeOwn(answer, true);
+        output.own(answer, true);
         exchange = null;
         closeGently();
-    }
-
-    private void writeOwn(OwnAnswer answer, boolean close) {
-        channel.writeAndFlush(
-                OwnAnswers.make(answer, pool.balancer(), !encoder.answersHead(), close), channel.voidPromise());
     }
 
     /** The answer was written to its end. */
@@ -258,8 +199,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
             deadline.in(pool.settings().timeouts().idleNanos());
             catchUp();
         } else if (whole && ahead.isEmpty()) {
-            closing = true;
-            closeAfterFlush();
+            ending.afterFlush();
         } else {
             closeGently();
         }
@@ -271,12 +211,12 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
             return;
         }
         catchingUp = true;
-        while (!closing && !ahead.isEmpty() && !waitsItsTurn(ahead.getFirst())) {
-            accept(ahead.removeFirst());
+        while (!ending.begun() && !ahead.isEmpty() && !waitsItsTurn(ahead.first())) {
+            accept(ahead.take());
         }
         catchingUp = false;
-        if (closing) {
-            dropAhead();
+        if (ending.begun()) {
+            ahead.drop();
         } else {
             updateReading();
             if (exchange != null) {
@@ -292,39 +232,11 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
      */
     void truncate(boolean byReset) {
         exchange = null;
-        closing = true;
-        if (byReset) {
-            channel.config().setOption(ChannelOption.SO_LINGER, 0);
-            channel.close();
-        } else {
-            closeAfterFlush();
-        }
+        ending.truncate(byReset);
     }
 
-    private void closeAfterFlush() {
-        deadline.in(pool.settings().timeouts().idleNanos());
-        writeHeldHead();
-        channel.writeAndFlush(Unpooled.EMPTY_BUFFER).addListener(ChannelFutureListener.CLOSE);
-    }
-
-    /**
-     * Says that nothing more comes, then reads and drops until the client closes too: closing at once would answer what
-     * it still sends with a reset, and that could destroy the last answer (RFC 9112, 9.6).
-     */
     private void closeGently() {
-        closing = true;
-        dropAhead();
-        updateReading();
-        if (!(channel instanceof DuplexChannel duplex)) {
-            closeAfterFlush();
-            return;
-        }
-        deadline.in(LINGER_NANOS);
-        channel.writeAndFlush(Unpooled.EMPTY_BUFFER).addListener(done -> duplex.shutdownOutput());
-    }
-
-    private void dropAhead() {
-        ahead.forEach(ReferenceCountUtil::release);
-        ahead.clear();
+        ahead.drop();
+        ending.gently();
     }
 }

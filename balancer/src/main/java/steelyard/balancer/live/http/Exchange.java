@@ -5,48 +5,32 @@ import io.netty.handler.codec.http.DefaultFullHttpRequest;
 import io.netty.handler.codec.http.DefaultLastHttpContent;
 import io.netty.handler.codec.http.EmptyHttpHeaders;
 import io.netty.handler.codec.http.HttpContent;
-import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.LastHttpContent;
 import org.jspecify.annotations.Nullable;
-import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.settings.RetrySettings;
 
-/**
- * One request of a client and the attempts at it, one after the other.
- *
- * <p>Every backend that was picked is reported as ended exactly once: with the last byte of its answer, or with the
- * failure that came first.
- */
+/** One request of a client and the attempts at it, one after the other. */
 final class Exchange {
     private final ClientHandler client;
     private final PoolFront pool;
     private final LoopConnections connections;
     private final HttpRequest head;
     private final RequestBody body;
-    private final long number;
+    private final Attempts attempts;
+    private final AnswerPath answer;
     private final boolean keepClient;
-    private final boolean oldClient;
 
-    private final Ask ask = new Ask();
-    private int backend = Decider.NOBODY;
-    private boolean inFlight;
     private @Nullable BackendConnection connection;
     private boolean connected;
     private boolean headSent;
 
-    private @Nullable HeldAnswer held;
-    private int status;
-    private boolean passedOn;
-    private boolean closesClient;
-    private boolean endShownByClosing;
-
     /**
      * @param head prepared for the backend
-     * @param keepClient whether the client asked for its connection to stay open
+     * @param keepClient whether the client's connection is to stay open
      */
     Exchange(
             ClientHandler client,
@@ -60,20 +44,18 @@ final class Exchange {
         this.connections = connections;
         this.head = head;
         this.body = new RequestBody(pool.retries(), RequestCheck.hasContent(head));
-        this.number = pool.numbers().of(head.headers());
-        this.keepClient = keepClient;
-        this.oldClient = oldClient;
+        long number = pool.numbers().of(head.headers());
+        head.headers().set(Fields.REQUEST, number);
+        this.attempts = new Attempts(pool, head.method(), number);
+        this.answer = new AnswerPath(pool, client.output(), head.method(), oldClient);
+        this.keepClient = keepClient && !oldClient;
     }
 
     // ---- attempts
 
     /** Makes the first attempt. */
     void begin() {
-        head.headers().set(Fields.REQUEST, number);
-        ask.pool = pool.number();
-        ask.request = number;
-        ask.pinned = client.pinned();
-        backend = pool.decider().pick(ask);
+        int backend = attempts.pick(client.pinned());
         if (backend == Decider.NOBODY) {
             client.answer(OwnAnswer.NOBODY);
         } else {
@@ -83,13 +65,12 @@ final class Exchange {
     }
 
     private void attempt() {
-        inFlight = true;
         connected = false;
         headSent = false;
-        head.headers().set(Fields.ATTEMPT, Integer.toString(ask.attempt));
-        BackendConnection idle = connections.take(backend);
+        head.headers().set(Fields.ATTEMPT, Integer.toString(attempts.attempt()));
+        BackendConnection idle = connections.take(attempts.backend());
         if (idle == null) {
-            connections.connect(backend, this);
+            connections.connect(attempts.backend(), this);
         } else {
             send(idle);
         }
@@ -129,52 +110,35 @@ final class Exchange {
     }
 
     /** The attempt failed; its connection is already gone. */
-    void failed(Outcome outcome, OwnAnswer answer) {
+    void failed(Outcome outcome, OwnAnswer own) {
         connection = null;
         connected = false;
-        if (inFlight) {
-            ended(outcome);
-        }
-        if (passedOn) {
+        attempts.ended(outcome);
+        if (answer.passedOn()) {
             body.drop();
-            client.truncate(endShownByClosing);
+            client.truncate(answer.endShownByClosing());
             return;
         }
-        if (held != null) {
-            held.drop();
-            held = null;
-        }
-        if (!pool.retries() || !mayRetry(outcome) || !again()) {
-            client.answer(answer);
+        answer.drop();
+        if (!mayRetry(outcome) || !again()) {
+            client.answer(own);
         }
     }
 
     private boolean mayRetry(Outcome outcome) {
-        boolean idempotent = RequestCheck.idempotent(head.method());
-        return pool.decider()
-                .retry(pool.number(), number, ask.attempt, outcome, status, idempotent, headSent, body.replayable());
+        return attempts.mayRetry(outcome, headSent, body.replayable());
     }
 
     private boolean again() {
-        ask.again(backend);
-        ask.pinned = Decider.NOBODY;
-        int next = pool.decider().pick(ask);
-        if (next == Decider.NOBODY) {
+        if (!attempts.pickAnother()) {
             return false;
         }
-        backend = next;
-        status = 0;
         attempt();
         if (connected) {
             flushRequest();
             client.updateReading();
         }
         return true;
-    }
-
-    private void ended(Outcome outcome) {
-        inFlight = false;
-        pool.decider().ended(backend, number, ask.attempt, outcome, status);
     }
 
     // ---- from the client
@@ -185,12 +149,12 @@ final class Exchange {
 
     /** Whether the client's connection may stay open after an answer that is given now. */
     boolean keepsClient() {
-        return keepClient && !oldClient && body.complete();
+        return keepClient && body.complete();
     }
 
     /** Whether the client got the head of an answer. */
     boolean passedOn() {
-        return passedOn;
+        return answer.passedOn();
     }
 
     /** Whether more content of the request can be taken now. */
@@ -225,21 +189,19 @@ final class Exchange {
         if (left != null) {
             left.abandon();
         }
-        if (inFlight) {
-            ended(Outcome.ABANDONED);
-        }
+        attempts.ended(Outcome.ABANDONED);
         drop();
     }
 
     /** Whether the silence is the client's: it does not take the answer, or owes content that could be passed on. */
     boolean awaitsClient() {
-        return passedOn ? !client.writable() : !body.complete() && takesContent();
+        return answer.passedOn() ? !client.output().writable() : !body.complete() && takesContent();
     }
 
     void clientStalled() {
         abandon();
-        if (passedOn) {
-            client.truncate(endShownByClosing);
+        if (answer.passedOn()) {
+            client.truncate(answer.endShownByClosing());
         } else {
             client.answer(OwnAnswer.SLOW_CLIENT);
         }
@@ -260,91 +222,60 @@ final class Exchange {
     }
 
     void interim(HttpResponse response) {
-        if (!oldClient) {
-            AnswerHeads.prepareInterim(response, pool);
-            client.write(response);
-            client.write(LastHttpContent.EMPTY_LAST_CONTENT);
-        }
+        answer.interim(response);
     }
 
     void answerHead(HttpResponse response) {
-        status = response.status().code();
+        int status = response.status().code();
+        attempts.status(status);
         RetrySettings retry = pool.settings().retry();
-        if (retry != null && retry.also().contains(status) && ask.attempt <= retry.atMost()) {
-            held = new HeldAnswer(response);
+        if (retry != null && retry.also().contains(status) && attempts.attempt() <= retry.atMost()) {
+            answer.hold(response);
         } else {
-            passOn(response);
+            answer.pass(response, closesClient());
         }
     }
 
-    private void passOn(HttpResponse response) {
-        boolean empty = HttpMethod.HEAD.equals(head.method()) || status == 204 || status == 304;
-        endShownByClosing = AnswerHeads.prepare(response, pool, empty, oldClient);
-        closesClient =
-                !keepClient || oldClient || !body.complete() || pool.decider().saysClose(backend);
-        passedOn = true;
-        client.passHead(response, closesClient);
+    private boolean closesClient() {
+        return !keepsClient() || pool.decider().saysClose(attempts.backend());
     }
 
     void answerContent(HttpContent piece) {
         HttpContent bare = withoutTrailers(piece);
-        boolean last = bare instanceof LastHttpContent;
-        if (held != null) {
-            hold(held, bare, last);
-            return;
-        }
-        client.write(bare);
-        if (last) {
-            ended(Outcome.ANSWERED);
-        } else if (connection != null && !client.writable()) {
+        boolean tooLargeToHold = answer.content(bare);
+        if (bare instanceof LastHttpContent) {
+            attempts.ended(Outcome.ANSWERED);
+        } else if (tooLargeToHold) {
+            answer.release(closesClient());
+        } else if (connection != null && !answer.holds() && !client.output().writable()) {
             connection.read(false);
         }
     }
 
-    private void hold(HeldAnswer answer, HttpContent piece, boolean last) {
-        answer.add(piece);
-        if (last) {
-            ended(Outcome.ANSWERED);
-        } else if (answer.full()) {
-            passHeld(answer);
-        }
-    }
-
-    private void passHeld(HeldAnswer answer) {
-        held = null;
-        passOn(answer.head());
-        answer.pieces().forEach(client::write);
-    }
-
     void flushAnswer() {
-        client.flush();
+        client.output().flush();
     }
 
     /** The answer is whole and the connection went back or was closed. */
     void settled() {
         connection = null;
         connected = false;
-        HeldAnswer answer = held;
-        if (answer != null) {
-            if (mayRetry(Outcome.ANSWERED) && again()) {
-                answer.drop();
-                held = null;
-                return;
-            }
-            passHeld(answer);
+        if (answer.holds() && mayRetry(Outcome.ANSWERED) && again()) {
+            answer.drop();
+            return;
+        }
+        if (answer.holds()) {
+            answer.release(closesClient());
         }
         drop();
-        client.flush();
-        client.answered(!closesClient);
+        client.output().flush();
+        client.answered(!answer.closesClient());
     }
 
     /** Gives back all that is kept. */
     void drop() {
         body.drop();
-        if (held != null) {
-            held.drop();
-            held = null;
-        }
+        answer.drop();
     }
 
     /** Trailer fields are dropped, as RFC 9112, 7.1.2, allows: none can then be taken for a header field. */
