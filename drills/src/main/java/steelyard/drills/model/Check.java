@@ -1,12 +1,13 @@
 package steelyard.drills.model;
 
 import java.util.Locale;
+import org.jspecify.annotations.Nullable;
 
 /** Checks of the records of this package. */
 final class Check {
     private Check() {}
 
-    static void that(boolean holds, String message, Object... values) {
+    static void that(boolean holds, String message, @Nullable Object... values) {
         if (!holds) {
             throw new IllegalArgumentException(String.format(Locale.ROOT, message, values));
         }

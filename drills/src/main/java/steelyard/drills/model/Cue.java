@@ -1,6 +1,7 @@
 package steelyard.drills.model;
 
 import java.util.Objects;
+import org.jspecify.annotations.Nullable;
 
 /**
  * A timed action of a drill, or the same action sent by a person.
@@ -33,11 +34,14 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
         REVIVE("revive", Side.BACKEND),
         FAIL_PROBE("fail-probe", Side.BACKEND),
         FLAP_PROBE("flap-probe", Side.BACKEND),
+        LOAD("load", Side.BACKEND),
+        FILL("fill", Side.BACKEND),
         HEAL("heal", Side.BACKEND),
         REWEIGH("reweigh", Side.BALANCER),
         DRAIN("drain", Side.BALANCER),
         ADMIT("admit", Side.BALANCER),
         WITHDRAW("withdraw", Side.BALANCER),
+        RETUNE("retune", Side.BALANCER),
         SURGE("surge", Side.TRAFFIC);
 
         private final String word;
@@ -60,8 +64,8 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
         /** Whether {@code for:} may end it: it is a fault, or a surge. */
         public boolean canEnd() {
             return switch (this) {
-                case SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, KILL, SURGE -> true;
-                case REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW -> false;
+                case SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, LOAD, FILL, KILL, SURGE -> true;
+                case REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE -> false;
             };
         }
     }
@@ -85,6 +89,9 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
      * @param periodNanos of {@code flap-probe}: one bad and one good half
      * @param weight of {@code reweigh}
      * @param limitNanos of {@code drain}; 0 for the pool's own
+     * @param gauge of {@code load}: the gauge that is set, else null
+     * @param to of {@code load} and {@code fill}: what the gauge is set to, from 0 to 1
+     * @param retune of {@code retune}: what changes, else null
      */
     public record Settings(
             double factor,
@@ -95,10 +102,13 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
             boolean probes,
             long periodNanos,
             int weight,
-            long limitNanos) {
+            long limitNanos,
+            @Nullable String gauge,
+            double to,
+            @Nullable Retune retune) {
 
         /** Nothing beside the target. */
-        public static final Settings NONE = new Settings(1, 0, 1, 500, false, false, 0, 0, 0);
+        public static final Settings NONE = new Settings(1, 0, 1, 500, false, false, 0, 0, 0, null, 0, null);
 
         public Settings {
             Check.that(factor >= 0, "factor cannot be negative: %s", factor);
@@ -108,6 +118,21 @@ public record Cue(String name, long atNanos, Kind kind, Target target, Settings 
             Check.notNegative(periodNanos, "period");
             Check.notNegative(weight, "weight");
             Check.notNegative(limitNanos, "limit");
+            Check.share(to, "to");
+        }
+
+        /** Of a cue that neither sets a gauge nor retunes. */
+        public Settings(
+                double factor,
+                long plusNanos,
+                double share,
+                int status,
+                boolean afterWork,
+                boolean probes,
+                long periodNanos,
+                int weight,
+                long limitNanos) {
+            this(factor, plusNanos, share, status, afterWork, probes, periodNanos, weight, limitNanos, null, 0, null);
         }
     }
 }

@@ -15,7 +15,9 @@ public enum Measure implements Worded {
     RETRY_LOAD("retry-load", Unit.NUMBER),
     PEAK_IN_FLIGHT("peak-in-flight", Unit.COUNT),
     PEAK_UTILISATION("peak-utilisation", Unit.SHARE),
-    FAIRNESS("fairness", Unit.NUMBER);
+    FAIRNESS("fairness", Unit.NUMBER),
+    WEIGHT_LAG("weight-lag", Unit.DURATION),
+    SWING("swing", Unit.SHARE);
 
     private final String word;
     private final Unit unit;
@@ -47,7 +49,9 @@ public enum Measure implements Worded {
                     RETRY_LOAD,
                     PEAK_IN_FLIGHT,
                     PEAK_UTILISATION,
-                    FAIRNESS -> false;
+                    FAIRNESS,
+                    WEIGHT_LAG,
+                    SWING -> false;
         };
     }
 

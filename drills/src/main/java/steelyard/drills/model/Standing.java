@@ -5,6 +5,7 @@ public enum Standing implements Worded {
     WITHDRAWN("withdrawn"),
     DRAINING("draining"),
     DOWN("down"),
+    BENCHED("benched"),
     WARMING("warming"),
     UP("up");
 

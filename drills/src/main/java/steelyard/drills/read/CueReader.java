@@ -123,6 +123,9 @@ final class CueReader {
             case REWEIGH -> List.of("weight");
             case DRAIN -> List.of("limit");
             case SURGE -> List.of("factor");
+            case LOAD -> List.of("gauge", "to");
+            case FILL -> List.of("to");
+            case RETUNE -> List.of("probe", "drain", "method");
             case HANG, REFUSE, KILL, REVIVE, FAIL_PROBE, HEAL, ADMIT, WITHDRAW -> List.of();
         };
     }

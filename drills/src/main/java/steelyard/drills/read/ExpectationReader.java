@@ -110,8 +110,16 @@ final class ExpectationReader {
             case LATENCY -> List.of("quantile");
             case DETECTED_IN -> List.of("until");
             case STANDING_CHANGES -> List.of("shown");
-            case SHARE, SHIFTED_IN, SETTLED_IN, DRAINED_IN, CUT, PEAK_IN_FLIGHT, PEAK_UTILISATION, FAIRNESS ->
-                List.of();
+            case SHARE,
+                    SHIFTED_IN,
+                    SETTLED_IN,
+                    DRAINED_IN,
+                    CUT,
+                    PEAK_IN_FLIGHT,
+                    PEAK_UTILISATION,
+                    FAIRNESS,
+                    WEIGHT_LAG,
+                    SWING -> List.of();
         };
     }
 

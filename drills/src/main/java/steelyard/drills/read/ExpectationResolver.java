@@ -112,13 +112,24 @@ final class ExpectationResolver {
                     STANDING_CHANGES,
                     PEAK_IN_FLIGHT,
                     PEAK_UTILISATION,
-                    FAIRNESS -> false;
+                    FAIRNESS,
+                    WEIGHT_LAG,
+                    SWING -> false;
         };
     }
 
     private void checkTraffic(ExpectationDraft draft, Target target) {
         boolean needsTraffic = switch (draft.measure()) {
-            case FAILED, LATENCY, LONGEST_OUTAGE, RETRY_LOAD, SHARE, SHIFTED_IN, SETTLED_IN, FAIRNESS -> true;
+            case FAILED,
+                    LATENCY,
+                    LONGEST_OUTAGE,
+                    RETRY_LOAD,
+                    SHARE,
+                    SHIFTED_IN,
+                    SETTLED_IN,
+                    FAIRNESS,
+                    WEIGHT_LAG,
+                    SWING -> true;
             case DETECTED_IN, DRAINED_IN, CUT, STANDING_CHANGES, PEAK_IN_FLIGHT, PEAK_UTILISATION -> false;
         };
         Set<Pool> pools = roster.poolsOf(target);

@@ -46,7 +46,9 @@ final class Measurable {
                     RETRY_LOAD,
                     PEAK_IN_FLIGHT,
                     PEAK_UTILISATION,
-                    FAIRNESS -> {}
+                    FAIRNESS,
+                    WEIGHT_LAG,
+                    SWING -> {}
         }
     }
 
@@ -127,7 +129,20 @@ final class Measurable {
         return switch (cue.kind()) {
             case SLOW, FAIL -> cue.settings().probes() || anyQueues(cue.target());
             case SURGE -> anyQueues(cue.target());
-            case HANG, REFUSE, KILL, REVIVE, FAIL_PROBE, FLAP_PROBE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW -> true;
+            case HANG,
+                    REFUSE,
+                    KILL,
+                    REVIVE,
+                    FAIL_PROBE,
+                    FLAP_PROBE,
+                    LOAD,
+                    FILL,
+                    HEAL,
+                    REWEIGH,
+                    DRAIN,
+                    ADMIT,
+                    WITHDRAW,
+                    RETUNE -> true;
         };
     }
 

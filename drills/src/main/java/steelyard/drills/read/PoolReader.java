@@ -7,11 +7,17 @@ import java.util.Set;
 import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Backend;
+import steelyard.drills.model.Drain;
+import steelyard.drills.model.Forwarded;
+import steelyard.drills.model.Front;
+import steelyard.drills.model.Health;
+import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
 import steelyard.drills.model.Retry;
 import steelyard.drills.model.Timeouts;
 import steelyard.drills.model.WarmUp;
+import steelyard.drills.model.Wire;
 
 /** Reads one pool. */
 final class PoolReader {
@@ -64,19 +70,16 @@ final class PoolReader {
         List<Backend> list = ofPool.backends();
         return list.isEmpty()
                 ? null
-                : new Pool(
-                        entry.key(),
-                        method,
-                        count,
-                        weights,
-                        probe,
-                        warmUp,
-                        drain,
-                        retry,
-                        timeouts,
-                        forwarded,
-                        port,
-                        list);
+                : Pool.with(entry.key(), Picking.by(method).with(count).with(weights))
+                        .health(new Health(probe, warmUp, null, null))
+                        .drain(new Drain(drain, false))
+                        .retry(retry)
+                        .timeouts(timeouts)
+                        .wire(new Wire(
+                                new Front(port, Front.Kind.HTTP, null),
+                                forwarded ? Forwarded.ADDED : Forwarded.NOT_ADDED,
+                                false))
+                        .of(list);
     }
 
     private int port(Fields front, String pool) {

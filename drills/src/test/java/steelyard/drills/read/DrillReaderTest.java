@@ -18,8 +18,10 @@ import steelyard.drills.model.Cause;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Expectation;
+import steelyard.drills.model.Forwarded;
 import steelyard.drills.model.Host;
 import steelyard.drills.model.Measure;
+import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
 import steelyard.drills.model.Retry;
@@ -64,19 +66,8 @@ class DrillReaderTest {
         assertThat(drill.stage().connections()).isEqualTo(4_096);
         assertThat(drill.stage().hosts()).containsExactly(new Host("fulmar", 1, null), new Host("gannet", 1, null));
         assertThat(drill.stage().pools())
-                .containsExactly(new Pool(
-                        "seats",
-                        Pool.Method.ROUND_ROBIN,
-                        Pool.Count.REQUESTS,
-                        Pool.Weights.BACKEND,
-                        null,
-                        null,
-                        30 * S,
-                        null,
-                        new Timeouts(S, 10 * S, 60 * S),
-                        false,
-                        0,
-                        List.of(
+                .containsExactly(Pool.with("seats", Picking.by(Pool.Method.ROUND_ROBIN))
+                        .of(List.of(
                                 new Backend("fulmar", "fulmar", 1, "fulmar", false, serves),
                                 new Backend("gannet", "gannet", 1, "gannet", false, serves))));
         assertThat(drill.traffic())
@@ -121,12 +112,12 @@ class DrillReaderTest {
         Pool seats = stage.pool("seats");
         assertThat(seats.probe()).isEqualTo(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 4, 1));
         assertThat(seats.warmUp()).isEqualTo(new WarmUp(90 * S, 0.05));
-        assertThat(seats.drainLimitNanos()).isEqualTo(10 * S);
+        assertThat(seats.drain().limitNanos()).isEqualTo(10 * S);
         assertThat(seats.retry()).isEqualTo(new Retry(2, 0.25, 7, Set.of(502, 503)));
         assertThat(seats.timeouts()).isEqualTo(new Timeouts(2 * S, 3 * S, 30 * S));
         assertThat(seats.count()).isEqualTo(Pool.Count.CONNECTIONS);
-        assertThat(seats.forwarded()).isTrue();
-        assertThat(seats.frontPort()).isEqualTo(18080);
+        assertThat(seats.wire().forwarded()).isEqualTo(Forwarded.ADDED);
+        assertThat(seats.wire().front().port()).isEqualTo(18080);
         assertThat(stage.pool("cargo").probe()).isEqualTo(new Probe(Probe.Kind.TCP, null, S, 400 * MS, 3, 2));
         assertThat(stage.pool("cargo").warmUp()).isEqualTo(new WarmUp(5 * S, 0.1));
     }

@@ -67,18 +67,6 @@ final class FirstSteps {
 
     /** The port that a drill asks for is kept for the true play. */
     private static Pool onAnyPort(Pool pool) {
-        return new Pool(
-                pool.name(),
-                pool.method(),
-                pool.count(),
-                pool.weights(),
-                pool.probe(),
-                pool.warmUp(),
-                pool.drainLimitNanos(),
-                pool.retry(),
-                pool.timeouts(),
-                pool.forwarded(),
-                0,
-                pool.backends());
+        return pool.like().wire(pool.wire().with(pool.wire().front().on(0))).of(pool.backends());
     }
 }

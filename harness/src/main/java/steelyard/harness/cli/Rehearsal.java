@@ -123,8 +123,8 @@ final class Rehearsal {
     /** A port that the drill asked for is shown where it did. */
     private String line(String problem) {
         for (Pool pool : drill.stage().pools()) {
-            String port = "port " + pool.frontPort();
-            if (pool.frontPort() != 0 && problem.startsWith("the front of pool " + pool.name() + " ")) {
+            String port = "port " + pool.wire().front().port();
+            if (pool.wire().front().port() != 0 && problem.startsWith("the front of pool " + pool.name() + " ")) {
                 String why = problem.substring(problem.indexOf(port));
                 int end = why.indexOf(": ");
                 return source.places()

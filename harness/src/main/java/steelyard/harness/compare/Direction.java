@@ -11,7 +11,8 @@ import steelyard.drills.model.Measure;
  * <table>
  * <caption>The better side of measures without a bound</caption>
  * <tr><td>less</td><td>failed, longest-outage, latency, detected-in, shifted-in, settled-in, drained-in, cut,
- * standing-changes, retry-load, peak-in-flight, peak-utilisation</td></tr>
+ * standing-changes, retry-load, peak-in-flight, peak-utilisation,
+ * weight-lag, swing</td></tr>
  * <tr><td>more</td><td>fairness</td></tr>
  * <tr><td>none</td><td>share</td></tr>
  * </table>
@@ -73,7 +74,9 @@ public record Direction(Side side, double middle) {
                     STANDING_CHANGES,
                     RETRY_LOAD,
                     PEAK_IN_FLIGHT,
-                    PEAK_UTILISATION -> LESS;
+                    PEAK_UTILISATION,
+                    WEIGHT_LAG,
+                    SWING -> LESS;
             case FAIRNESS -> MORE;
             case SHARE -> NONE;
         };

@@ -25,7 +25,7 @@ final class Changes {
             case FAIL_PROBE -> new Change.FailProbe();
             case FLAP_PROBE -> new Change.FlapProbe(settings.periodNanos());
             case HEAL -> Change.Heal.all();
-            case REWEIGH, DRAIN, ADMIT, WITHDRAW, SURGE -> throw notOnBackends(cue.kind());
+            case LOAD, FILL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> throw notOnBackends(cue.kind());
         };
     }
 
@@ -39,7 +39,7 @@ final class Changes {
             case FAIL_PROBE -> new Change.Heal(Change.Kind.FAIL_PROBE);
             case FLAP_PROBE -> new Change.Heal(Change.Kind.FLAP_PROBE);
             case KILL -> new Change.Revive();
-            case REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, SURGE -> throw notOnBackends(kind);
+            case LOAD, FILL, REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> throw notOnBackends(kind);
         };
     }
 

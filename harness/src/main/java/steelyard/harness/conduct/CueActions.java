@@ -41,13 +41,14 @@ final class CueActions {
     /** Carries a cue out; {@code number} tells it from all others of the play. */
     void carryOut(Cue cue, int number, long atNanos, Hands hands) {
         switch (cue.kind()) {
-            case SLOW, FAIL, HANG, REFUSE, KILL, REVIVE, FAIL_PROBE, FLAP_PROBE, HEAL ->
+            case SLOW, FAIL, HANG, REFUSE, KILL, REVIVE, FAIL_PROBE, FLAP_PROBE, LOAD, FILL, HEAL ->
                 change(cue, number, Changes.of(cue), hands);
             case REWEIGH -> reweigh(cue.target(), cue.settings().weight(), hands);
             case DRAIN ->
                 backends(cue).forEach(each -> hands.drain(each, cue.settings().limitNanos()));
             case ADMIT -> backends(cue).forEach(hands::admit);
             case WITHDRAW -> backends(cue).forEach(hands::withdraw);
+            case RETUNE -> throw new IllegalArgumentException("no stage can retune a pool");
             case SURGE -> surge(cue, number, atNanos);
         }
     }

@@ -28,8 +28,9 @@ final class Terms {
                 ofMember[Cue.Kind.KILL.ordinal()] = kill;
             }
             case REVIVE -> revived(ofMember);
-            case SLOW, FAIL, HANG, REFUSE, KILL, FAIL_PROBE, FLAP_PROBE, SURGE -> ofMember[kind.ordinal()] = number;
-            case REWEIGH, DRAIN, ADMIT, WITHDRAW -> {
+            case SLOW, FAIL, HANG, REFUSE, KILL, FAIL_PROBE, FLAP_PROBE, LOAD, FILL, SURGE ->
+                ofMember[kind.ordinal()] = number;
+            case REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE -> {
                 // Never ended by time.
             }
         }

@@ -50,7 +50,16 @@ final class ExpectationWords {
             case DETECTED_IN ->
                 options.until() == null ? "" : " as " + options.until().word();
             case STANDING_CHANGES -> options.shown() ? " shown" : "";
-            case SHARE, SHIFTED_IN, SETTLED_IN, DRAINED_IN, CUT, PEAK_IN_FLIGHT, PEAK_UTILISATION, FAIRNESS -> "";
+            case SHARE,
+                    SHIFTED_IN,
+                    SETTLED_IN,
+                    DRAINED_IN,
+                    CUT,
+                    PEAK_IN_FLIGHT,
+                    PEAK_UTILISATION,
+                    FAIRNESS,
+                    WEIGHT_LAG,
+                    SWING -> "";
         };
     }
 

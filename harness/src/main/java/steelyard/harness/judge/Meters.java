@@ -55,6 +55,9 @@ final class Meters {
                         cast.backends().size());
             case RETRY_LOAD -> new RetryLoad(window, pools(expectation), options.worstNanos());
             case PEAK_IN_FLIGHT -> new PeakInFlight(window, backends(members), expectation.of() == null);
+            case WEIGHT_LAG, SWING ->
+                throw new IllegalArgumentException(
+                        "no meter reads " + expectation.measure().word());
             case PEAK_UTILISATION -> new PeakUtilisation(window, members, cast);
         };
     }

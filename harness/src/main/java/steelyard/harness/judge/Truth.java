@@ -65,7 +65,7 @@ final class Truth {
             case HANG -> hanging[backend] = true;
             case REVIVE -> revive(backend);
             case HEAL -> heal(backend);
-            case SLOW, FAIL, FAIL_PROBE, FLAP_PROBE, REWEIGH, DRAIN, ADMIT, WITHDRAW, SURGE -> {}
+            case SLOW, FAIL, FAIL_PROBE, FLAP_PROBE, REWEIGH, DRAIN, ADMIT, WITHDRAW, LOAD, FILL, RETUNE, SURGE -> {}
         }
     }
 
@@ -74,7 +74,20 @@ final class Truth {
             case KILL -> revive(backend);
             case REFUSE -> refusing[backend] = false;
             case HANG -> hanging[backend] = false;
-            case SLOW, FAIL, FAIL_PROBE, FLAP_PROBE, REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, SURGE -> {}
+            case SLOW,
+                    FAIL,
+                    FAIL_PROBE,
+                    FLAP_PROBE,
+                    REVIVE,
+                    HEAL,
+                    REWEIGH,
+                    DRAIN,
+                    ADMIT,
+                    WITHDRAW,
+                    LOAD,
+                    FILL,
+                    RETUNE,
+                    SURGE -> {}
         }
     }
 

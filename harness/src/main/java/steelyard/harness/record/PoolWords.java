@@ -3,6 +3,7 @@ package steelyard.harness.record;
 import java.util.LinkedHashMap;
 import java.util.Map;
 import java.util.stream.Collectors;
+import steelyard.drills.model.Forwarded;
 import steelyard.drills.model.Measure.Unit;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
@@ -19,16 +20,24 @@ final class PoolWords {
         Map<String, String> words = new LinkedHashMap<>();
         words.put("probe", pool.probe() == null ? "none" : probe(pool.probe()));
         words.put("warm-up", pool.warmUp() == null ? "none" : warmUp(pool.warmUp()));
-        words.put("drain", "cut after " + Wording.duration(pool.drainLimitNanos()));
+        words.put("drain", "cut after " + Wording.duration(pool.drain().limitNanos()));
         words.put("retry", pool.retry() == null ? "none" : retry(pool.retry()));
         words.put("timeouts", timeouts(pool.timeouts()));
-        words.put("forwarded", pool.forwarded() ? "added" : "not added");
+        words.put("forwarded", forwarded(pool.wire().forwarded()));
         if (pool.backends().stream().map(each -> each.serves()).distinct().count() == 1) {
             words.put("serves", serves(pool.backends().get(0).serves()));
         } else {
             pool.backends().forEach(each -> words.put("serves, " + each.name(), serves(each.serves())));
         }
         return words;
+    }
+
+    private static String forwarded(Forwarded forwarded) {
+        return switch (forwarded) {
+            case ADDED -> "added";
+            case NOT_ADDED -> "not added";
+            case HIDDEN -> "added, addresses hidden";
+        };
     }
 
     private static String probe(Probe probe) {

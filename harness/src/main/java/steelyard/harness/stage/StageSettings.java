@@ -3,30 +3,18 @@ package steelyard.harness.stage;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
-import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.BehaviourSettings;
 import steelyard.backends.behave.BehaviourSettings.ProbeWork;
 import steelyard.backends.behave.ServiceTime;
 import steelyard.backends.fleet.BackendSpec;
-import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
-import steelyard.balancer.settings.DrainSettings;
-import steelyard.balancer.settings.FrontSettings;
 import steelyard.balancer.settings.HostSettings;
-import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
-import steelyard.balancer.settings.ProbeSettings;
-import steelyard.balancer.settings.RetrySettings;
-import steelyard.balancer.settings.TimeoutSettings;
-import steelyard.balancer.settings.WarmUpSettings;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
-import steelyard.drills.model.Retry;
 import steelyard.drills.model.Serves;
-import steelyard.drills.model.Timeouts;
-import steelyard.drills.model.WarmUp;
 import steelyard.harness.record.Cast;
 
 /** A drill's stage in the words of the balancer and of the backends. Numbers are those of the {@link Cast}. */
@@ -42,7 +30,7 @@ public final class StageSettings {
                 .map(host -> new HostSettings(host.name(), host.weight()))
                 .toList();
         List<PoolSettings> pools =
-                cast.pools().stream().map(pool -> pool(pool, cast)).toList();
+                cast.pools().stream().map(pool -> PoolTerms.of(pool, cast)).toList();
         return new BalancerSettings("steelyard", drill.stage().loops(), hosts, pools);
     }
 
@@ -81,71 +69,9 @@ public final class StageSettings {
             case FIXED -> new ServiceTime.Fixed(time.firstNanos());
             case EXPONENTIAL -> new ServiceTime.Exponential(time.firstNanos());
             case LOGNORMAL -> new ServiceTime.Lognormal(time.firstNanos(), time.p99Nanos());
+            case GAMMA, TRACE ->
+                throw new IllegalArgumentException(
+                        "no backend serves by " + time.law().word());
         };
-    }
-
-    private static PoolSettings pool(Pool pool, Cast cast) {
-        return PoolSettings.named(
-                        pool.name(),
-                        PickSettings.of(method(pool.method()))
-                                .with(count(pool.count()))
-                                .with(weights(pool.weights())))
-                .probe(probe(pool.probe()))
-                .warmUp(warmUp(pool.warmUp()))
-                .drain(new DrainSettings(pool.drainLimitNanos(), false))
-                .retry(retry(pool.retry()))
-                .timeouts(timeouts(pool.timeouts()))
-                .front(new FrontSettings(
-                        pool.frontPort(),
-                        FrontSettings.Kind.HTTP,
-                        null,
-                        false,
-                        pool.forwarded() ? FrontSettings.Forwarded.SHOWN : FrontSettings.Forwarded.NOT))
-                .of(pool.backends().stream()
-                        .map(each -> new BackendSettings(
-                                each.name(), each.weight(), cast.hostNumber(each.host()), each.startsDown()))
-                        .toList());
-    }
-
-    private static PoolSettings.Method method(Pool.Method method) {
-        return switch (method) {
-            case ROUND_ROBIN -> PoolSettings.Method.ROUND_ROBIN;
-            case WEIGHTED_ROUND_ROBIN -> PoolSettings.Method.WEIGHTED_ROUND_ROBIN;
-            case STRIDE -> PoolSettings.Method.STRIDE;
-            case LEAST_CONNECTIONS -> PoolSettings.Method.LEAST_CONNECTIONS;
-        };
-    }
-
-    private static PoolSettings.Count count(Pool.Count count) {
-        return switch (count) {
-            case REQUESTS -> PoolSettings.Count.REQUESTS;
-            case CONNECTIONS -> PoolSettings.Count.CONNECTIONS;
-        };
-    }
-
-    private static PoolSettings.Weights weights(Pool.Weights weights) {
-        return switch (weights) {
-            case BACKEND -> PoolSettings.Weights.BACKEND;
-            case HOST -> PoolSettings.Weights.HOST;
-        };
-    }
-
-    private static @Nullable ProbeSettings probe(@Nullable Probe probe) {
-        return probe == null
-                ? null
-                : new ProbeSettings(
-                        probe.path(), probe.everyNanos(), probe.withinNanos(), probe.misses(), probe.passes());
-    }
-
-    private static @Nullable WarmUpSettings warmUp(@Nullable WarmUp warmUp) {
-        return warmUp == null ? null : new WarmUpSettings(warmUp.rampNanos(), warmUp.floor());
-    }
-
-    private static @Nullable RetrySettings retry(@Nullable Retry retry) {
-        return retry == null ? null : new RetrySettings(retry.atMost(), retry.budget(), retry.bucket(), retry.also());
-    }
-
-    private static TimeoutSettings timeouts(Timeouts timeouts) {
-        return new TimeoutSettings(timeouts.connectNanos(), timeouts.firstByteNanos(), timeouts.idleNanos());
     }
 }

@@ -5,11 +5,13 @@ import java.util.List;
 import java.util.Set;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Cue;
+import steelyard.drills.model.Drain;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Expectation;
+import steelyard.drills.model.Health;
 import steelyard.drills.model.Host;
+import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
-import steelyard.drills.model.Pool.Count;
 import steelyard.drills.model.Pool.Method;
 import steelyard.drills.model.Pool.Weights;
 import steelyard.drills.model.Probe;
@@ -100,18 +102,12 @@ public final class TestDrill {
     }
 
     private Pool pool(String name, List<Backend> backends) {
-        return new Pool(
-                name,
-                Method.WEIGHTED_ROUND_ROBIN,
-                Count.REQUESTS,
-                weights,
-                new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 3, 2),
-                new WarmUp(5 * S, 0.1),
-                10 * S,
-                null,
-                new Timeouts(S, 30 * S, 60 * S),
-                false,
-                0,
-                backends);
+        return Pool.with(name, Picking.by(Method.WEIGHTED_ROUND_ROBIN).with(weights))
+                .health(Health.NONE
+                        .with(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 3, 2))
+                        .with(new WarmUp(5 * S, 0.1)))
+                .drain(new Drain(10 * S, false))
+                .timeouts(new Timeouts(S, 30 * S, 60 * S))
+                .of(backends);
     }
 }

@@ -22,8 +22,13 @@ import steelyard.balancer.settings.RetrySettings;
 import steelyard.balancer.settings.TimeoutSettings;
 import steelyard.balancer.settings.WarmUpSettings;
 import steelyard.drills.model.Backend;
+import steelyard.drills.model.Drain;
 import steelyard.drills.model.Drill;
+import steelyard.drills.model.Forwarded;
+import steelyard.drills.model.Front;
+import steelyard.drills.model.Health;
 import steelyard.drills.model.Host;
+import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
 import steelyard.drills.model.Retry;
@@ -32,6 +37,7 @@ import steelyard.drills.model.Stage;
 import steelyard.drills.model.Timeouts;
 import steelyard.drills.model.Traffic;
 import steelyard.drills.model.WarmUp;
+import steelyard.drills.model.Wire;
 
 class StageSettingsTest {
     private static final Drill DRILL = drill();
@@ -92,38 +98,29 @@ class StageSettingsTest {
     }
 
     private static Drill drill() {
-        Pool seats = new Pool(
-                "seats",
-                Pool.Method.WEIGHTED_ROUND_ROBIN,
-                Pool.Count.CONNECTIONS,
-                Pool.Weights.HOST,
-                new Probe(Probe.Kind.HTTP, "/afloat", 11, 12, 13, 14),
-                new WarmUp(21, 0.2),
-                31,
-                new Retry(2, 0.4, 9, Set.of(503)),
-                new Timeouts(41, 42, 43),
-                true,
-                20_080,
-                List.of(new Backend(
+        Pool seats = Pool.with(
+                        "seats",
+                        Picking.by(Pool.Method.WEIGHTED_ROUND_ROBIN)
+                                .with(Pool.Count.CONNECTIONS)
+                                .with(Pool.Weights.HOST))
+                .health(Health.NONE
+                        .with(new Probe(Probe.Kind.HTTP, "/afloat", 11, 12, 13, 14))
+                        .with(new WarmUp(21, 0.2)))
+                .drain(new Drain(31, false))
+                .retry(new Retry(2, 0.4, 9, Set.of(503)))
+                .timeouts(new Timeouts(41, 42, 43))
+                .wire(new Wire(new Front(20_080, Front.Kind.HTTP, null), Forwarded.ADDED, false))
+                .of(List.of(new Backend(
                         "fulmar",
                         "fulmar",
                         5,
                         "pier",
                         true,
                         new Serves(6, 7, Serves.Time.lognormal(8, 9), 10, true, 0.25, "answers"))));
-        Pool cargo = new Pool(
-                "cargo",
-                Pool.Method.LEAST_CONNECTIONS,
-                Pool.Count.REQUESTS,
-                Pool.Weights.BACKEND,
-                null,
-                null,
-                32,
-                null,
-                new Timeouts(44, 45, 46),
-                false,
-                0,
-                List.of(
+        Pool cargo = Pool.with("cargo", Picking.by(Pool.Method.LEAST_CONNECTIONS))
+                .drain(new Drain(32, false))
+                .timeouts(new Timeouts(44, 45, 46))
+                .of(List.of(
                         new Backend("skua", "skua", 1, "quay", false, plain(Serves.Time.fixed(8))),
                         new Backend("tern", "tern", 2, "quay", false, plain(Serves.Time.exponential(8)))));
         Stage stage = new Stage(
