@@ -7,6 +7,8 @@ import java.util.Locale;
 import java.util.Map;
 import java.util.stream.Collectors;
 import steelyard.drills.model.Cause;
+import steelyard.harness.record.PlayBoard;
+import steelyard.harness.record.Wording;
 
 /** Numbers as they are shown while a play runs: of a steady width, the same in every locale. */
 final class Figures {
@@ -39,6 +41,15 @@ final class Figures {
     /** {@code 12}, or {@code 3.4} for what is no whole number. */
     static String weight(double weight) {
         return String.format(Locale.ROOT, Math.abs(weight - Math.rint(weight)) < 0.05 ? "%.0f" : "%.1f", weight);
+    }
+
+    /** What the balancer has to live with, where it has: {@code , 12 waiting, 1 backend without a fresh reading}. */
+    static String balancer(PlayBoard.Figures figures) {
+        String waiting = figures.waiting() == 0 ? "" : ", " + count(figures.waiting()) + " waiting";
+        String unread = figures.unread() == 0
+                ? ""
+                : ", " + Wording.count(figures.unread(), "backend", "backends") + " without a fresh reading";
+        return waiting + unread;
     }
 
     /** {@code reset 23, refused 8}, the most first. */

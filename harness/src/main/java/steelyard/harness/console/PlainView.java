@@ -8,6 +8,7 @@ import java.util.concurrent.atomic.AtomicBoolean;
 import steelyard.balancer.core.standing.Transition;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
+import steelyard.harness.record.Guidance;
 import steelyard.harness.record.PlayBoard;
 import steelyard.harness.record.Words;
 
@@ -19,6 +20,7 @@ final class PlainView implements View {
     private final Drill drill;
     private final PlayBoard board;
     private final PrintWriter out;
+    private final Guidance guidance;
     private final Queue<String> events = new ConcurrentLinkedQueue<>();
     private final Ticker ticker = new Ticker(this::show);
     private final AtomicBoolean closed = new AtomicBoolean();
@@ -30,6 +32,7 @@ final class PlainView implements View {
         this.drill = drill;
         this.board = board;
         this.out = out;
+        guidance = new Guidance(drill.stage().backends().size());
     }
 
     @Override
@@ -56,6 +59,19 @@ final class PlainView implements View {
                 change.atNanos(),
                 name + ": " + Words.of(change.from()) + " to " + Words.of(change.to()) + ", "
                         + Words.of(change.cause())));
+    }
+
+    @Override
+    public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        if (guidance.changes(backend, fresh)) {
+            String name = drill.stage().backends().get(backend).name();
+            events.add(line(
+                    atNanos,
+                    name + ": "
+                            + (fresh
+                                    ? "weight goes by load again"
+                                    : "no fresh reading of its load, so the set weight stands")));
+        }
     }
 
     @Override
@@ -88,7 +104,7 @@ final class PlainView implements View {
                 .count();
         return Figures.count(figures.offeredLastSecond()) + "/s, " + Figures.count(figures.good()) + " good, failed "
                 + failed + ", pickable " + pickable + " of "
-                + figures.backends().size();
+                + figures.backends().size() + Figures.balancer(figures);
     }
 
     private static String line(long atNanos, String text) {

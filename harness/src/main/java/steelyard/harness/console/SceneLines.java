@@ -54,8 +54,7 @@ final class SceneLines {
                 scene.next() == null
                         ? ""
                         : at(scene.next().atNanos(), scene.next().text())));
-        lines.add(plain("rate    " + Figures.count(figures.offeredLastSecond()) + "/s, " + Figures.count(figures.good())
-                + " good so far"));
+        lines.add(plain("rate    " + rate(figures)));
         lines.add(failures(figures));
         if (height - lines.size() >= 2) {
             backends(figures.backends(), lines);
@@ -68,6 +67,11 @@ final class SceneLines {
             lines.add(plain(HINT));
         }
         return List.copyOf(lines.subList(0, Math.min(lines.size(), height)));
+    }
+
+    private static String rate(PlayBoard.Figures figures) {
+        return Figures.count(figures.offeredLastSecond()) + "/s, " + Figures.count(figures.good()) + " good so far"
+                + Figures.balancer(figures);
     }
 
     /** On a very low terminal a line about the backends is worth more than what is next, goes on or was played. */

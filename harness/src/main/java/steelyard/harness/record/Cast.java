@@ -3,6 +3,7 @@ package steelyard.harness.record;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.stream.IntStream;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Host;
@@ -59,6 +60,18 @@ public final class Cast {
     /** By traffic stream: the number of the pool that it goes to. */
     public int[] poolsOfTraffic() {
         return poolsOfTraffic.clone();
+    }
+
+    /** Backends of pools whose weights go by load, in stage order. */
+    public int[] loaded() {
+        return IntStream.range(0, backends.size())
+                .filter(backend -> weighsByLoad(poolOf[backend]))
+                .toArray();
+    }
+
+    /** Whether the weights of a pool go by what its load probes read. */
+    public boolean weighsByLoad(int pool) {
+        return pools.get(pool).weights().word().equals("load");
     }
 
     /** The number of the host that a backend stands on. */

@@ -5,6 +5,7 @@ import java.util.Arrays;
 import java.util.EnumMap;
 import java.util.List;
 import java.util.Map;
+import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.standing.Standing;
 import steelyard.drills.model.Cause;
@@ -28,12 +29,14 @@ public final class PlayBoard implements PlayListener {
     private final Ring[] pickedOf;
     private long offered;
     private long good;
+    private final Guidance guidance;
     private @Nullable Played lastCue;
     private volatile Figures now;
 
     public PlayBoard(Cast cast) {
         this.cast = cast;
         backends = cast.backends().size();
+        guidance = new Guidance(backends);
         offeredOf = new Ring();
         failedOf = new Ring();
         pickedOf = new Ring[backends];
@@ -69,6 +72,11 @@ public final class PlayBoard implements PlayListener {
     }
 
     @Override
+    public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        guidance.changes(backend, fresh);
+    }
+
+    @Override
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
         lastCue = new Played(atNanos, cue, by);
     }
@@ -94,6 +102,8 @@ public final class PlayBoard implements PlayListener {
                 failedBy(),
                 last.offeredLastSecond(),
                 last.failedLastSecond(),
+                0,
+                last.unread(),
                 last.backends(),
                 lastCue);
     }
@@ -117,7 +127,19 @@ public final class PlayBoard implements PlayListener {
                     sample.inFlight[b],
                     sample.waiting[b]));
         }
-        return new Figures(atNanos, ended, offered, good, failedBy(), offeredOf.sum, failedOf.sum, each, lastCue);
+        long waiting = IntStream.of(sample.waitingForBackend).sum();
+        return new Figures(
+                atNanos,
+                ended,
+                offered,
+                good,
+                failedBy(),
+                offeredOf.sum,
+                failedOf.sum,
+                waiting,
+                guidance.lost(),
+                each,
+                lastCue);
     }
 
     private Map<Cause, Long> failedBy() {
@@ -135,6 +157,8 @@ public final class PlayBoard implements PlayListener {
      *
      * @param failedBy causes that occurred, in the order of the causes
      * @param offeredLastSecond requests due in the last second; by when they failed for the failed ones
+     * @param waiting in the balancer for a backend to be free
+     * @param unread backends whose weights should go by load, and go by what was set for want of readings
      * @param backends in stage order
      * @param lastCue the last cue applied, or null
      */
@@ -146,6 +170,8 @@ public final class PlayBoard implements PlayListener {
             Map<Cause, Long> failedBy,
             long offeredLastSecond,
             long failedLastSecond,
+            long waiting,
+            int unread,
             List<BackendFigures> backends,
             @Nullable Played lastCue) {
 

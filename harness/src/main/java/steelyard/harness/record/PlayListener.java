@@ -55,6 +55,18 @@ public interface PlayListener {
     /** A probe counted. */
     default void probed(long atNanos, int backend, long probe, boolean passed) {}
 
+    /**
+     * The balancer counted a reading of a backend's load, or found that it has none to go by.
+     *
+     * @param number of the reading, counted by the backend
+     * @param headroomMilli in thousandths: what the backend's weight is multiplied by from now on
+     * @param fresh false where the weight goes back to the one that was set, since readings fail to come
+     */
+    default void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {}
+
+    /** No backend could take a request now, so it waits in the balancer; {@code waiting} in its pool count this one. */
+    default void waited(long atNanos, int pool, long request, int waiting) {}
+
     /** A standing changed. */
     default void stood(Transition transition) {}
 

@@ -19,6 +19,8 @@ public final class Recorder implements PlayListener {
     private final RowFile slices;
     private final RowFile standing;
     private final RowFile cues;
+    private final @Nullable RowFile readings;
+    private final Guidance guidance;
     private final LatencyLog latency;
     private final SliceBook book;
     private long flushedNanos;
@@ -39,6 +41,12 @@ public final class Recorder implements PlayListener {
         standing.write();
         cues.row().append("due,at,cue,action,by");
         cues.write();
+        guidance = new Guidance(cast.backends().size());
+        readings = cast.loaded().length == 0 ? null : new RowFile(folder.file(RunFolder.READINGS), trouble);
+        if (readings != null) {
+            readings.row().append("at,backend,reading,headroom,fresh");
+            readings.write();
+        }
         SliceTable table = new SliceTable(slices, cast);
         book = new SliceBook(cast, slice -> {
             table.write(slice);
@@ -75,6 +83,18 @@ public final class Recorder implements PlayListener {
     }
 
     @Override
+    public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        if (!guidance.changes(backend, fresh) || readings == null) {
+            return;
+        }
+        StringBuilder row = Fixed.seconds(readings.row(), atNanos).append(',');
+        Csv.field(row, cast.backends().get(backend).name());
+        row.append(',').append(number).append(',');
+        Fixed.decimals(row, headroomMilli / 1e3, 3).append(',').append(fresh);
+        readings.write();
+    }
+
+    @Override
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
         StringBuilder row = Fixed.seconds(cues.row(), dueNanos).append(',');
         Fixed.seconds(row, atNanos).append(',');
@@ -104,6 +124,9 @@ public final class Recorder implements PlayListener {
         slices.close();
         standing.close();
         cues.close();
+        if (readings != null) {
+            readings.close();
+        }
         latency.close();
     }
 
@@ -134,6 +157,9 @@ public final class Recorder implements PlayListener {
         slices.flush();
         standing.flush();
         cues.flush();
+        if (readings != null) {
+            readings.flush();
+        }
     }
 
     private void replace(String name, String text) {

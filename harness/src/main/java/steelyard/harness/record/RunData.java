@@ -12,6 +12,7 @@ import org.jspecify.annotations.Nullable;
  * @param drill title of the drill
  * @param ended {@code complete}, {@code interrupted}, or {@code playing} for a play that was killed
  * @param standings of a forecast: changes over plays, each at the median of its instants
+ * @param readings when weights ceased to go by load for want of readings, and when they did again; in order of time
  * @param forecast what only a forecast has; null for a rehearsal
  * @param machine what {@code machine.json} says, in its order; empty when it is not there
  */
@@ -36,6 +37,7 @@ public record RunData(
         Slices slices,
         List<StandingRow> standings,
         List<CueRow> cues,
+        List<ReadingRow> readings,
         @Nullable ForecastRow forecast) {
 
     /** The columns of {@code slices.csv} that each backend has, behind its name and a colon. */
@@ -190,6 +192,15 @@ public record RunData(
             this(at, backend, from, to, cause, pickable, at, at, 1);
         }
     }
+
+    /**
+     * A change of what a weight goes by.
+     *
+     * @param reading its number
+     * @param headroom what the set weight is multiplied by from then on
+     * @param fresh whether it goes by readings again, else by what was set
+     */
+    public record ReadingRow(double at, String backend, long reading, double headroom, boolean fresh) {}
 
     /** A cue that was applied; {@code by} is {@code drill}, {@code hand} or {@code end}. */
     public record CueRow(double due, double at, String cue, String action, String by) {}

@@ -13,6 +13,9 @@ public final class RunFolder {
     public static final String SLICES = "slices.csv";
     public static final String STANDING = "standing.csv";
     public static final String CUES = "cues.csv";
+    /** Where weights go by load: when they ceased to and began again, for want of readings. */
+    public static final String READINGS = "readings.csv";
+
     public static final String LATENCY = "latency.hlog";
     public static final String MACHINE = "machine.json";
     public static final String VERDICT = "verdict.json";

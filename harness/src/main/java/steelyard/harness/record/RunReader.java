@@ -19,6 +19,7 @@ import steelyard.harness.record.RunData.ForecastRow;
 import steelyard.harness.record.RunData.GroupRow;
 import steelyard.harness.record.RunData.HostRow;
 import steelyard.harness.record.RunData.PoolRow;
+import steelyard.harness.record.RunData.ReadingRow;
 import steelyard.harness.record.RunData.StandingRow;
 import steelyard.harness.record.RunData.VerdictRow;
 
@@ -68,6 +69,7 @@ final class RunReader {
                 slices(),
                 rows(RunFolder.STANDING).stream().map(RunReader::standing).toList(),
                 rows(RunFolder.CUES).stream().map(RunReader::cue).toList(),
+                rows(RunFolder.READINGS).stream().map(RunReader::reading).toList(),
                 forecast(run.path("forecast")));
     }
 
@@ -143,6 +145,15 @@ final class RunReader {
     private static CueRow cue(List<String> row) {
         return new CueRow(
                 Double.parseDouble(row.get(0)), Double.parseDouble(row.get(1)), row.get(2), row.get(3), row.get(4));
+    }
+
+    private static ReadingRow reading(List<String> row) {
+        return new ReadingRow(
+                Double.parseDouble(row.get(0)),
+                row.get(1),
+                Long.parseLong(row.get(2)),
+                Double.parseDouble(row.get(3)),
+                Boolean.parseBoolean(row.get(4)));
     }
 
     private Map<String, String> machine() throws FolderRefused {

@@ -37,7 +37,9 @@ public final class Slice {
     final double[] weight;
     final double[] entitled;
     final double[] utilisation;
+    final double[] headroom;
     final int[] waiting;
+    final int[] waitingForBackend;
 
     /** Requests told as due within this slice that have not ended, and the number of the first of them. */
     int open;
@@ -54,7 +56,9 @@ public final class Slice {
         weight = new double[backends];
         entitled = new double[backends];
         utilisation = new double[backends];
+        headroom = new double[backends];
         waiting = new int[backends];
+        waitingForBackend = new int[pools];
     }
 
     void reset(long newIndex, long newFirstTold) {
@@ -146,6 +150,16 @@ public final class Slice {
     /** Busy share of the workers over the slice, from 0 to 1. */
     public double utilisation(int backend) {
         return utilisation[backend];
+    }
+
+    /** What the set weight is multiplied by for the backend's load, from 0 to 1. */
+    public double headroom(int backend) {
+        return headroom[backend];
+    }
+
+    /** Requests of a pool that wait in the balancer for a backend to be free. */
+    public int waitingForBackend(int pool) {
+        return waitingForBackend[pool];
     }
 
     /** Requests waiting in the backend's own queue. */

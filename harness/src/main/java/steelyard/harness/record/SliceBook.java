@@ -47,7 +47,7 @@ public final class SliceBook implements PlayListener {
         workers = cast.backends().stream().mapToInt(b -> b.serves().workers()).toArray();
         pools = cast.pools().size();
         poolOfTraffic = cast.poolsOfTraffic();
-        last = new Sample(backends);
+        last = new Sample(backends, pools);
         busyBefore = new long[backends];
         for (int b = 0; b < backends; b++) {
             last.standing[b] = cast.backends().get(b).startsDown() ? Standing.DOWN : Standing.UP;
@@ -156,16 +156,20 @@ public final class SliceBook implements PlayListener {
         System.arraycopy(sample.standing, 0, slice.standing, 0, backends);
         System.arraycopy(sample.effectiveWeight, 0, slice.weight, 0, backends);
         System.arraycopy(sample.entitledShare, 0, slice.entitled, 0, backends);
+        System.arraycopy(sample.headroom, 0, slice.headroom, 0, backends);
         System.arraycopy(sample.waiting, 0, slice.waiting, 0, backends);
+        System.arraycopy(sample.waitingForBackend, 0, slice.waitingForBackend, 0, pools);
     }
 
-    private static void copy(Sample from, Sample to) {
+    private void copy(Sample from, Sample to) {
         int n = from.inFlight.length;
         System.arraycopy(from.inFlight, 0, to.inFlight, 0, n);
         System.arraycopy(from.standing, 0, to.standing, 0, n);
         System.arraycopy(from.effectiveWeight, 0, to.effectiveWeight, 0, n);
         System.arraycopy(from.entitledShare, 0, to.entitledShare, 0, n);
+        System.arraycopy(from.headroom, 0, to.headroom, 0, n);
         System.arraycopy(from.waiting, 0, to.waiting, 0, n);
+        System.arraycopy(from.waitingForBackend, 0, to.waitingForBackend, 0, pools);
     }
 
     /** The open slice of that index; those up to it are opened. Not below {@code base}. */

@@ -10,14 +10,16 @@ final class SliceTable {
 
     private final RowFile rows;
     private final int backends;
-    private final int pools;
+    private final List<PoolColumn> pools;
+    /** Backends whose weights go by their load: these have a column for the headroom too. */
+    private final int[] loaded;
 
-    /** Requests by pool have columns of their own where there are several pools. */
     SliceTable(RowFile rows, Cast cast) {
         this.rows = rows;
         List<Backend> backends = cast.backends();
         this.backends = backends.size();
-        pools = cast.pools().size() > 1 ? cast.pools().size() : 0;
+        pools = PoolColumn.of(cast);
+        loaded = cast.loaded();
         StringBuilder head = rows.row().append("slice,from,offered,ok,failed");
         for (Cause cause : CAUSES) {
             head.append(',').append(cause.word());
@@ -28,10 +30,9 @@ final class SliceTable {
                 Csv.field(head.append(','), backend.name() + ":" + column);
             }
         }
-        for (int pool = 0; pool < pools; pool++) {
-            String name = "pool " + cast.pools().get(pool).name();
-            Csv.field(head.append(','), name + ":offered");
-            Csv.field(head.append(','), name + ":failed");
+        pools.forEach(each -> Csv.field(head.append(','), each.name()));
+        for (int backend : loaded) {
+            Csv.field(head.append(','), backends.get(backend).name() + ":headroom");
         }
         rows.write();
     }
@@ -53,8 +54,11 @@ final class SliceTable {
         for (int b = 0; b < backends; b++) {
             backend(row, slice, b);
         }
-        for (int pool = 0; pool < pools; pool++) {
-            row.append(',').append(slice.offeredTo(pool)).append(',').append(slice.failedOf(pool));
+        for (PoolColumn each : pools) {
+            Fixed.trimmed(row.append(','), each.value().applyAsDouble(slice), each.decimals());
+        }
+        for (int backend : loaded) {
+            Fixed.decimals(row.append(','), slice.headroom(backend), 4);
         }
         rows.write();
     }

@@ -85,6 +85,20 @@ public final class Tee implements PlayListener {
     }
 
     @Override
+    public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        for (PlayListener each : listeners) {
+            each.loadRead(atNanos, backend, number, headroomMilli, fresh);
+        }
+    }
+
+    @Override
+    public void waited(long atNanos, int pool, long request, int waiting) {
+        for (PlayListener each : listeners) {
+            each.waited(atNanos, pool, request, waiting);
+        }
+    }
+
+    @Override
     public void stood(Transition transition) {
         for (PlayListener each : listeners) {
             each.stood(transition);

@@ -71,6 +71,8 @@ final class Boards {
                 failures,
                 893,
                 3,
+                0,
+                0,
                 backends,
                 new PlayBoard.Played(15 * SECOND, played, PlayListener.By.DRILL));
     }

@@ -61,6 +61,16 @@ final class BalancerAccount implements DecisionSink {
     }
 
     @Override
+    public void waited(long nowNanos, int pool, long request, int attempt, int waiting) {
+        tell(nowNanos, (to, at) -> to.waited(at, pool, request, waiting));
+    }
+
+    @Override
+    public void loadRead(long nowNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        tell(nowNanos, (to, at) -> to.loadRead(at, backend, number, headroomMilli, fresh));
+    }
+
+    @Override
     public void stood(Transition change) {
         tell(
                 change.atNanos(),

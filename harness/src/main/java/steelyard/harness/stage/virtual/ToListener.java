@@ -34,6 +34,16 @@ record ToListener(PlayListener listener) implements DecisionSink {
     }
 
     @Override
+    public void waited(long nowNanos, int pool, long request, int attempt, int waiting) {
+        listener.waited(nowNanos, pool, request, waiting);
+    }
+
+    @Override
+    public void loadRead(long nowNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        listener.loadRead(nowNanos, backend, number, headroomMilli, fresh);
+    }
+
+    @Override
     public void stood(Transition transition) {
         listener.stood(transition);
     }
