@@ -2,16 +2,13 @@ package steelyard.harness.stage.virtual;
 
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Chance;
-import steelyard.backends.behave.Change;
 import steelyard.backends.behave.Figures;
 import steelyard.backends.fleet.BackendSpec;
-import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.record.Sample;
 import steelyard.harness.stage.Agenda;
 import steelyard.harness.stage.CannotPlay;
-import steelyard.harness.stage.Hands;
 import steelyard.harness.stage.Stage;
 import steelyard.harness.stage.StageSettings;
 
@@ -21,7 +18,7 @@ import steelyard.harness.stage.StageSettings;
  * <p>The same drill, seed and transport give the same account, to the last number, on any machine. One thread; {@link
  * #interrupt} from any.
  */
-public final class VirtualStage implements Stage, Hands {
+public final class VirtualStage implements Stage {
     private static final long SLICE_NANOS = 100_000_000;
     private static final int MOST_AT_ONCE = 1_000;
 
@@ -35,7 +32,8 @@ public final class VirtualStage implements Stage, Hands {
     private long nextSliceNanos;
 
     /** What there is once a listener is known. */
-    private record Listening(PlayListener listener, Post post, VirtualBackends backends, VirtualBalancer balancer) {}
+    private record Listening(
+            PlayListener listener, Post post, VirtualBackends backends, VirtualBalancer balancer, VirtualHands hands) {}
 
     /** @param seed of every draw of balancer and backends; the agenda should be of the same */
     public VirtualStage(Drill drill, long seed, Transport transport) {
@@ -63,7 +61,7 @@ public final class VirtualStage implements Stage, Hands {
                         .toList(),
                 chance,
                 balancer);
-        opened = new Listening(listener, post, backends, balancer);
+        opened = new Listening(listener, post, backends, balancer, new VirtualHands(listener, backends, balancer));
     }
 
     @Override
@@ -91,7 +89,7 @@ public final class VirtualStage implements Stage, Hands {
         nowNanos = Math.min(
                 Math.min(Math.min(agendaNanos, postNanos), Math.min(backendNanos, balancerNanos)), nextSliceNanos);
         if (agendaNanos == nowNanos) {
-            agenda.poll(nowNanos, this, MOST_AT_ONCE);
+            agenda.poll(nowNanos, stage.hands.at(nowNanos), MOST_AT_ONCE);
         } else if (postNanos == nowNanos) {
             stage.balancer.deliver(post, stage.backends, nowNanos);
         } else if (backendNanos == nowNanos) {
@@ -138,47 +136,5 @@ public final class VirtualStage implements Stage, Hands {
             throw new IllegalStateException("the stage is not open");
         }
         return stage;
-    }
-
-    // --- hands of the agenda ----------------------------------------------------------------------------------------
-
-    @Override
-    public void send(long request, long dueNanos, int traffic, int kind, int client) {
-        opened().balancer.send(request, dueNanos, traffic, kind, client, nowNanos);
-    }
-
-    @Override
-    public void change(int backend, Change change) {
-        opened().backends.apply(backend, change, nowNanos);
-    }
-
-    @Override
-    public void drain(int backend, long limitNanos) {
-        opened().balancer.drain(backend, limitNanos, nowNanos);
-    }
-
-    @Override
-    public void admit(int backend) {
-        opened().balancer.admit(backend, nowNanos);
-    }
-
-    @Override
-    public void withdraw(int backend) {
-        opened().balancer.withdraw(backend, nowNanos);
-    }
-
-    @Override
-    public void reweigh(int backend, int weight) {
-        opened().balancer.reweigh(backend, weight, nowNanos);
-    }
-
-    @Override
-    public void reweighHost(int host, int weight) {
-        opened().balancer.reweighHost(host, weight, nowNanos);
-    }
-
-    @Override
-    public void applied(long dueNanos, Cue cue, PlayListener.By by) {
-        opened().listener.cueApplied(nowNanos, dueNanos, cue, by);
     }
 }
