@@ -1,11 +1,9 @@
 package steelyard.backends.behave;
 
-import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.BehaviourSettings.ProbeWork;
-import steelyard.backends.behave.Change.Fail;
 import steelyard.backends.behave.Change.Kind;
-import steelyard.backends.behave.Change.When;
 import steelyard.backends.behave.Places.State;
+import steelyard.backends.behave.Places.Task;
 
 /**
  * The queue that a backend is. A request takes a free worker, else waits in order of arrival, else is turned away.
@@ -15,7 +13,7 @@ import steelyard.backends.behave.Places.State;
  * order of time, replies do not depend on how often or how late {@link #poll} is called. At one instant, planned
  * finishes come before what the call brings.
  *
- * <p>A driver calls {@link #arrive}, {@link #probe} and {@link #apply} as things happen, and {@link #poll} at
+ * <p>A driver calls {@link #arrive}, {@link #probe}, {@link #read} and {@link #apply} as things happen, and {@link #poll} at
  * {@link #nextDeadlineNanos}; plans come out of the sink. Instants are compared by subtraction, so the clock may start
  * anywhere; a {@code nowNanos} before that of an earlier call counts as that one.
  *
@@ -29,20 +27,12 @@ public final class Behaviour {
     /** What {@link #arrive} returns for a request that is over already. */
     public static final int NOWHERE = Places.NOWHERE;
 
-    /** Sets the draws for lost probes apart from those for faults, whose second key is the bare number below 0. */
-    private static final long OF_LOSS = 1L << 32;
-
-    private static final int OK = 200;
-    private static final int UNAVAILABLE = 503;
-
     private final BehaviourSettings settings;
-    private final Chance chance;
-    private final int probeKey;
     private final Places places = new Places();
-    private final WaitingLine line = new WaitingLine();
-    private final FinishHeap finishes = new FinishHeap();
-    private final Faults faults = new Faults();
+    private final Faults faults;
     private final Tally tally;
+    private final Work work;
+    private final WorkQueue queue;
     private long latestNanos;
 
     /**
@@ -55,12 +45,12 @@ public final class Behaviour {
         if (backend < 0) {
             throw new IllegalArgumentException("backend number must be 0 or more, but is " + backend);
         }
+        GaugeBoard gauges = new GaugeBoard(settings.load());
         this.settings = settings;
-        this.chance = chance;
-        // Attempts are counted from 1 (0: not told), so a key below 0 keeps the draws of probes apart from those of
-        // requests.
-        this.probeKey = -1 - backend;
-        this.tally = new Tally(startNanos);
+        this.faults = new Faults(gauges);
+        this.tally = new Tally(startNanos, settings.workers(), settings.load() != null);
+        this.work = new Work(backend, settings, chance, faults, places);
+        this.queue = new WorkQueue(settings, places, work, faults, gauges, tally);
         this.latestNanos = startNanos;
     }
 
@@ -75,8 +65,8 @@ public final class Behaviour {
     public int arrive(long token, long request, int attempt, long extraNanos, long nowNanos, ReplySink sink) {
         long now = poll(nowNanos, sink);
         tally.received++;
-        int place = places.take(token, request, attempt, false, extraNanos, now);
-        admit(place, now, sink);
+        int place = places.take(token, request, attempt, Task.REQUEST, extraNanos, now);
+        queue.admit(place, now, sink);
         return places.holds(place, token) ? place : NOWHERE;
     }
 
@@ -90,14 +80,36 @@ public final class Behaviour {
     public void probe(long token, long probe, long nowNanos, ReplySink sink) {
         long now = poll(nowNanos, sink);
         tally.probes++;
-        int place = places.take(token, probe, 0, true, 0, now);
-        if (!faults.killed() && loses(probe)) {
-            end(place, Reply.SILENCE, 0, now, sink);
+        int place = places.take(token, probe, 0, Task.PROBE, 0, now);
+        if (!faults.killed() && work.losesProbe(probe)) {
+            queue.lose(place, now, sink);
         } else if (settings.probeWork() == ProbeWork.QUEUED || faults.killed() || faults.hanging()) {
-            admit(place, now, sink);
+            queue.admit(place, now, sink);
         } else {
-            startFreeProbe(place, now);
-            finishUpTo(now, sink);
+            queue.startFree(place, work.freeProbeNanos(place), now, sink);
+        }
+    }
+
+    /**
+     * A reading of the load page was asked for. One that costs nothing is answered at once, past the queue; else it waits its
+     * turn and holds a worker for its cost, which a fault slows like any work. It shows the gauges of the instant at which it is
+     * answered, its own work included.
+     *
+     * @param token handed back with the reply
+     * @param reading number of the reading at this backend
+     * @throws IllegalStateException if the backend has no load page
+     */
+    public void read(long token, long reading, long nowNanos, ReplySink sink) {
+        if (settings.load() == null) {
+            throw new IllegalStateException("a backend without a load page was read");
+        }
+        long now = poll(nowNanos, sink);
+        tally.readings++;
+        int place = places.take(token, reading, 0, Task.READING, 0, now);
+        if (work.readingNanos() > 0 || faults.killed() || faults.hanging()) {
+            queue.admit(place, now, sink);
+        } else {
+            queue.startFree(place, 0, now, sink);
         }
     }
 
@@ -110,10 +122,10 @@ public final class Behaviour {
             sink.listening(faults.listening(), now);
         }
         if (change.kind() == Kind.KILL) {
-            loseAll(now, sink);
+            queue.loseAll(now, sink);
             sink.connectionsReset(now);
         } else if (change.kind() == Kind.HANG) {
-            emptyLine(Reply.SILENCE, now, sink);
+            queue.emptyLine(Reply.SILENCE, now, sink);
         }
     }
 
@@ -140,13 +152,13 @@ public final class Behaviour {
         if (nowNanos - latestNanos > 0) {
             latestNanos = nowNanos;
         }
-        finishUpTo(latestNanos, sink);
+        queue.finishUpTo(latestNanos, sink);
         return latestNanos;
     }
 
     /** Whether anything is planned. */
     public boolean hasDeadline() {
-        return !finishes.isEmpty();
+        return queue.hasPlans();
     }
 
     /**
@@ -155,10 +167,10 @@ public final class Behaviour {
      * @throws IllegalStateException if nothing is planned
      */
     public long nextDeadlineNanos() {
-        if (finishes.isEmpty()) {
+        if (!queue.hasPlans()) {
             throw new IllegalStateException("nothing is planned");
         }
-        return finishes.firstNanos();
+        return queue.firstNanos();
     }
 
     /** Whether new connections are accepted. */
@@ -178,7 +190,7 @@ public final class Behaviour {
         long waitSoFarNanos = 0;
         long serviceSoFarNanos = 0;
         for (int place = 0; place < places.used(); place++) {
-            if (places.probe[place]) {
+            if (places.task[place] != Task.REQUEST) {
                 continue;
             }
             if (places.state[place] == State.WAITING) {
@@ -187,153 +199,6 @@ public final class Behaviour {
                 serviceSoFarNanos += now - places.startedNanos[place];
             }
         }
-        return tally.figures(now, waitSoFarNanos, serviceSoFarNanos, settings.workers());
-    }
-
-    /** Whether chance loses a probe: by the backend's number and the probe's. */
-    private boolean loses(long probe) {
-        return settings.probeLoss() > 0 && chance.unit(Stream.FAULT, probe, OF_LOSS - probeKey) < settings.probeLoss();
-    }
-
-    private void admit(int place, long now, ReplySink sink) {
-        if (faults.killed()) {
-            end(place, Reply.LOST, 0, now, sink);
-        } else if (faults.hanging()) {
-            end(place, Reply.SILENCE, 0, now, sink);
-        } else if (tally.busyWorkers() < settings.workers()) {
-            start(place, now);
-            finishUpTo(now, sink);
-        } else if (line.size() < settings.queue()) {
-            joinLine(place, now);
-        } else {
-            end(place, Reply.TURNED_AWAY, UNAVAILABLE, now, sink);
-        }
-    }
-
-    private void finishUpTo(long now, ReplySink sink) {
-        while (!finishes.isEmpty() && finishes.firstNanos() - now <= 0) {
-            long finishNanos = finishes.firstNanos();
-            int place = finishes.remove();
-            boolean freesWorker = places.holdsWorker[place];
-            finish(place, finishNanos, sink);
-            if (freesWorker && !line.isEmpty()) {
-                start(leaveLine(finishNanos), finishNanos);
-            }
-        }
-    }
-
-    private void start(int place, long atNanos) {
-        tally.advanceTo(atNanos);
-        tally.workerTaken();
-        if (!places.probe[place]) {
-            tally.startedService();
-        }
-        places.holdsWorker[place] = true;
-        long number = places.number[place];
-        long key = drawKey(place);
-        Fail fail = faults.failing(chance, places.probe[place], number, key);
-        long workNanos = fail != null && fail.when() == When.AT_ONCE
-                ? 0
-                : faults.slowed(demandNanos(place) + places.extraNanos[place]);
-        plan(place, fail, atNanos, workNanos);
-    }
-
-    private void startFreeProbe(int place, long now) {
-        Fail fail = faults.failing(chance, true, places.number[place], drawKey(place));
-        long lateNanos = 0;
-        if (faults.slowsFreeProbes()) {
-            long demandNanos = demandNanos(place);
-            lateNanos = Math.max(0, faults.slowed(demandNanos) - demandNanos);
-        }
-        plan(place, fail, now, lateNanos);
-    }
-
-    private void plan(int place, @Nullable Fail fail, long atNanos, long workNanos) {
-        places.state[place] = State.STARTED;
-        places.startedNanos[place] = atNanos;
-        places.faultStatus[place] = fail == null ? 0 : fail.status();
-        finishes.add(place, atNanos + workNanos);
-    }
-
-    private void finish(int place, long atNanos, ReplySink sink) {
-        int status = places.faultStatus[place];
-        if (places.probe[place] && status == 0 && faults.failsProbes(atNanos)) {
-            status = UNAVAILABLE;
-        }
-        leaveWorker(place, atNanos);
-        if (places.abandoned[place]) {
-            end(place, Reply.DROPPED, 0, atNanos, sink);
-        } else if (status != 0) {
-            end(place, Reply.FAULT, status, atNanos, sink);
-        } else {
-            end(place, Reply.ANSWER, places.probe[place] ? OK : settings.status(), atNanos, sink);
-        }
-    }
-
-    private void loseAll(long now, ReplySink sink) {
-        while (!finishes.isEmpty()) {
-            int place = finishes.remove();
-            leaveWorker(place, now);
-            end(place, Reply.LOST, 0, now, sink);
-        }
-        emptyLine(Reply.LOST, now, sink);
-    }
-
-    private void emptyLine(Reply reply, long now, ReplySink sink) {
-        while (!line.isEmpty()) {
-            end(leaveLine(now), reply, 0, now, sink);
-        }
-    }
-
-    private void joinLine(int place, long now) {
-        tally.advanceTo(now);
-        line.add(place);
-        if (!places.probe[place]) {
-            tally.joinedLine();
-        }
-    }
-
-    private int leaveLine(long atNanos) {
-        tally.advanceTo(atNanos);
-        int place = line.remove();
-        if (!places.probe[place]) {
-            tally.leftLine(atNanos - places.arrivedNanos[place]);
-        }
-        return place;
-    }
-
-    private void leaveWorker(int place, long atNanos) {
-        if (!places.holdsWorker[place]) {
-            return;
-        }
-        tally.advanceTo(atNanos);
-        tally.workerFreed();
-        if (!places.probe[place]) {
-            tally.endedService(atNanos - places.startedNanos[place]);
-        }
-    }
-
-    private void end(int place, Reply reply, int status, long atNanos, ReplySink sink) {
-        long token = places.token[place];
-        long number = places.number[place];
-        int attempt = places.attempt[place];
-        boolean probe = places.probe[place];
-        places.free(place);
-        if (probe) {
-            tally.probeEnded(reply, status);
-            sink.probeReply(token, number, reply, status, atNanos);
-        } else {
-            tally.ended(reply);
-            int bodyBytes = reply == Reply.ANSWER ? settings.bodyBytes() : 0;
-            sink.reply(token, number, attempt, reply, status, bodyBytes, atNanos);
-        }
-    }
-
-    private long demandNanos(int place) {
-        return settings.time().demandNanos(chance, places.number[place], drawKey(place));
-    }
-
-    private int drawKey(int place) {
-        return places.probe[place] ? probeKey : places.attempt[place];
+        return tally.figures(now, waitSoFarNanos, serviceSoFarNanos);
     }
 }

@@ -1,6 +1,7 @@
 package steelyard.backends.behave;
 
 import java.util.Objects;
+import org.jspecify.annotations.Nullable;
 
 /**
  * How a healthy backend serves. Immutable.
@@ -12,9 +13,19 @@ import java.util.Objects;
  * @param probeLoss chance of each probe to be read and never answered, 0..1
  * @param status the status of a good answer, 200..599
  * @param bodyBytes the size of its body, 0..16 MiB
+ * @param cold how its caches fill again after a revive, or null if it has none worth mentioning
+ * @param load its load page, or null if it has none
  */
 public record BehaviourSettings(
-        int workers, int queue, ServiceTime time, ProbeWork probeWork, double probeLoss, int status, int bodyBytes) {
+        int workers,
+        int queue,
+        ServiceTime time,
+        ProbeWork probeWork,
+        double probeLoss,
+        int status,
+        int bodyBytes,
+        @Nullable Cold cold,
+        @Nullable LoadPage load) {
 
     private static final int MOST_BODY_BYTES = 16 << 20;
     private static final int USUAL_BODY_BYTES = 32;
@@ -42,21 +53,41 @@ public record BehaviourSettings(
                 bodyBytes);
     }
 
+    /** No caches and no load page. */
+    public BehaviourSettings(
+            int workers,
+            int queue,
+            ServiceTime time,
+            ProbeWork probeWork,
+            double probeLoss,
+            int status,
+            int bodyBytes) {
+        this(workers, queue, time, probeWork, probeLoss, status, bodyBytes, null, null);
+    }
+
     /** Free probes, and a short answer with status 200. */
     public static BehaviourSettings of(int workers, int queue, ServiceTime time) {
         return new BehaviourSettings(workers, queue, time, ProbeWork.FREE, 0, 200, USUAL_BODY_BYTES);
     }
 
     public BehaviourSettings withProbeWork(ProbeWork set) {
-        return new BehaviourSettings(workers, queue, time, set, probeLoss, status, bodyBytes);
+        return new BehaviourSettings(workers, queue, time, set, probeLoss, status, bodyBytes, cold, load);
     }
 
     public BehaviourSettings withProbeLoss(double set) {
-        return new BehaviourSettings(workers, queue, time, probeWork, set, status, bodyBytes);
+        return new BehaviourSettings(workers, queue, time, probeWork, set, status, bodyBytes, cold, load);
     }
 
     public BehaviourSettings withAnswer(int setStatus, int setBodyBytes) {
-        return new BehaviourSettings(workers, queue, time, probeWork, probeLoss, setStatus, setBodyBytes);
+        return new BehaviourSettings(workers, queue, time, probeWork, probeLoss, setStatus, setBodyBytes, cold, load);
+    }
+
+    public BehaviourSettings withCold(@Nullable Cold set) {
+        return new BehaviourSettings(workers, queue, time, probeWork, probeLoss, status, bodyBytes, set, load);
+    }
+
+    public BehaviourSettings withLoad(@Nullable LoadPage set) {
+        return new BehaviourSettings(workers, queue, time, probeWork, probeLoss, status, bodyBytes, cold, set);
     }
 
     static void requireStatus(int status) {

@@ -21,6 +21,8 @@ public sealed interface Change {
         REVIVE,
         FAIL_PROBE,
         FLAP_PROBE,
+        LOAD,
+        FILL,
         HEAL
     }
 
@@ -115,7 +117,7 @@ public sealed interface Change {
     }
 
     /**
-     * A killed backend starts again at its old address: empty, and without any fault, whether that was set before the
+     * A killed backend starts again at its old address: empty, with cold caches, and without any fault, whether that was set before the
      * kill or since. A running one is left as it is.
      */
     record Revive() implements Change {
@@ -153,9 +155,45 @@ public sealed interface Change {
     }
 
     /**
+     * A gauge of the load page reads this value, whatever is served, until the fault ends. Set again, each gauge keeps the
+     * value last set for it; the end is that of all of them.
+     *
+     * @param gauge any name that a gauge may have, cpu included; one that the backend has not is shown while this lasts
+     * @param to 0..1
+     */
+    record Load(String gauge, double to) implements Change {
+        public Load {
+            Gauge.requireName(gauge);
+            Gauge.requireShare("gauge " + gauge, to);
+        }
+
+        @Override
+        public Kind kind() {
+            return Kind.LOAD;
+        }
+    }
+
+    /**
+     * The disk is this full: the gauge {@link Gauge#DISK} of the load page reads it.
+     *
+     * @param to 0..1
+     */
+    record Fill(double to) implements Change {
+        public Fill {
+            Gauge.requireShare("fill", to);
+        }
+
+        @Override
+        public Kind kind() {
+            return Kind.FILL;
+        }
+    }
+
+    /**
      * Ends one fault, or with null every fault; never a kill, which only {@link Revive} ends.
      *
-     * @param fault the kind to end, one of SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, or null for all of them
+     * @param fault the kind to end, one of SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, LOAD, FILL, or
+     *     null for all of them
      */
     record Heal(@Nullable Kind fault) implements Change {
         public Heal {

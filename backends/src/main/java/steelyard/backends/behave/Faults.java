@@ -2,14 +2,17 @@ package steelyard.backends.behave;
 
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Change.Fail;
+import steelyard.backends.behave.Change.Fill;
 import steelyard.backends.behave.Change.FlapProbe;
 import steelyard.backends.behave.Change.Heal;
 import steelyard.backends.behave.Change.Kind;
+import steelyard.backends.behave.Change.Load;
 import steelyard.backends.behave.Change.Slow;
 
 /** Which faults are in force, and what each asks of new work and of probes. */
 final class Faults {
 
+    private final GaugeBoard gauges;
     private boolean killed;
     private boolean hanging;
     private boolean refusing;
@@ -18,6 +21,12 @@ final class Faults {
     private @Nullable Fail fail;
     private @Nullable FlapProbe flap;
     private long flapSinceNanos;
+    private boolean revived;
+    private long revivedNanos;
+
+    Faults(GaugeBoard gauges) {
+        this.gauges = gauges;
+    }
 
     void apply(Change change, long nowNanos) {
         switch (change.kind()) {
@@ -26,12 +35,14 @@ final class Faults {
             case HANG -> hanging = true;
             case REFUSE -> refusing = true;
             case KILL -> killed = true;
-            case REVIVE -> revive();
+            case REVIVE -> revive(nowNanos);
             case FAIL_PROBE -> failingProbes = true;
             case FLAP_PROBE -> {
                 flap = (FlapProbe) change;
                 flapSinceNanos = nowNanos;
             }
+            case LOAD -> gauges.load((Load) change);
+            case FILL -> gauges.fill((Fill) change);
             case HEAL -> heal(((Heal) change).fault());
         }
     }
@@ -46,6 +57,16 @@ final class Faults {
 
     boolean listening() {
         return !killed && !refusing;
+    }
+
+    /** Whether it ever came back from a kill. */
+    boolean revived() {
+        return revived;
+    }
+
+    /** When it last came back from a kill. */
+    long revivedNanos() {
+        return revivedNanos;
     }
 
     /** What {@code demandNanos} of new work becomes. */
@@ -76,9 +97,11 @@ final class Faults {
         return sinceNanos % periodNanos < periodNanos / 2;
     }
 
-    private void revive() {
+    private void revive(long nowNanos) {
         if (killed) {
             killed = false;
+            revived = true;
+            revivedNanos = nowNanos;
             heal(null);
         }
     }
@@ -97,6 +120,8 @@ final class Faults {
             case REFUSE -> refusing = false;
             case FAIL_PROBE -> failingProbes = false;
             case FLAP_PROBE -> flap = null;
+            case LOAD -> gauges.endLoads();
+            case FILL -> gauges.endFill();
             case KILL, REVIVE, HEAL -> {
                 // Not faults that a heal ends: a dead process stays dead.
             }

@@ -5,8 +5,8 @@ package steelyard.backends.behave;
  *
  * <p>At every instant {@code received = answered + turnedAway + failed + unanswered + lost + dropped + inService +
  * waiting}, and, by Little's law on a path cut at its end, {@code waitNanos + serviceNanos = heldIntegralNanos}, exactly:
- * the two sides are kept separately, one a request and one over time. Probes are counted apart and appear otherwise
- * only in {@code busyWorkerNanos}.
+ * the two sides are kept separately, one a request and one over time. Probes and readings of the load page are
+ * counted apart and appear otherwise only in {@code busyWorkerNanos}.
  *
  * @param atNanos the instant
  * @param received requests read
@@ -23,10 +23,14 @@ package steelyard.backends.behave;
  * @param waitNanos sum over requests of the time spent waiting, up to now for those that still wait
  * @param serviceNanos sum over requests of the time spent in service, up to now for those still in it
  * @param heldIntegralNanos integral over time of the number in service and waiting
- * @param busyWorkerNanos integral over time of the number of busy workers, those of queued probes included
+ * @param busyWorkerNanos integral over time of the number of busy workers, those of probes and readings included
  * @param workers workers there are
  * @param probes probes read
  * @param probesFailed probes answered outside 200..299, met with silence or lost
+ * @param readings readings of the load page asked for
+ * @param readingsFailed those that were not answered with the page
+ * @param tunnelled upgraded connections ever; the behaviour knows of none, whoever carries out its plans counts them
+ * @param tunnels those that are open now
  */
 public record Figures(
         long atNanos,
@@ -47,7 +51,11 @@ public record Figures(
         long busyWorkerNanos,
         int workers,
         long probes,
-        long probesFailed) {
+        long probesFailed,
+        long readings,
+        long readingsFailed,
+        long tunnelled,
+        int tunnels) {
 
     /**
      * Busy share of the workers since an earlier snapshot of the same behaviour, 0..1.
@@ -61,5 +69,33 @@ public record Figures(
                     "utilisation needs a span of time above 0, but it is " + spanNanos + " ns");
         }
         return (double) (busyWorkerNanos - earlier.busyWorkerNanos) / spanNanos / workers;
+    }
+
+    /** The same with the upgraded connections, which their carrier knows. */
+    public Figures withTunnels(long ever, int open) {
+        return new Figures(
+                atNanos,
+                received,
+                answered,
+                turnedAway,
+                failed,
+                unanswered,
+                lost,
+                abandoned,
+                dropped,
+                inService,
+                waiting,
+                peak,
+                waitNanos,
+                serviceNanos,
+                heldIntegralNanos,
+                busyWorkerNanos,
+                workers,
+                probes,
+                probesFailed,
+                readings,
+                readingsFailed,
+                ever,
+                open);
     }
 }

@@ -3,7 +3,7 @@ package steelyard.backends.behave;
 import java.util.Arrays;
 
 /**
- * What is known of the requests and probes that a behaviour holds, in columns instead of objects: a place is an index
+ * What is known of the requests, probes and readings that a behaviour holds, in columns instead of objects: a place is an index
  * into all of them. Places are reused, the last freed first, and the columns grow to the most ever held, so that holding
  * a request allocates nothing once a play is under way.
  */
@@ -16,19 +16,27 @@ final class Places {
     enum State {
         FREE,
         WAITING,
-        /** Has a worker, or is a late free probe, which needs none. */
+        /** Has a worker, or is free work under way, which needs none. */
         STARTED
+    }
+
+    /** Who asks for it. */
+    enum Task {
+        REQUEST,
+        PROBE,
+        /** A reading of the load page. */
+        READING
     }
 
     private static final int FIRST_CAPACITY = 16;
 
     State[] state = newStates(FIRST_CAPACITY);
     long[] token = new long[FIRST_CAPACITY];
-    /** Request number, or probe number. */
+    /** Number of the request, the probe or the reading. */
     long[] number = new long[FIRST_CAPACITY];
 
     int[] attempt = new int[FIRST_CAPACITY];
-    boolean[] probe = new boolean[FIRST_CAPACITY];
+    Task[] task = newTasks(FIRST_CAPACITY);
     boolean[] holdsWorker = new boolean[FIRST_CAPACITY];
     boolean[] abandoned = new boolean[FIRST_CAPACITY];
     /** Work asked for on top of the drawn demand. */
@@ -44,13 +52,13 @@ final class Places {
     private int used;
 
     /** A place with the given facts and every other one cleared. */
-    int take(long withToken, long withNumber, int withAttempt, boolean isProbe, long withExtraNanos, long nowNanos) {
+    int take(long withToken, long withNumber, int withAttempt, Task ofTask, long withExtraNanos, long nowNanos) {
         int place = freedCount > 0 ? freed[--freedCount] : fresh();
         state[place] = State.WAITING;
         token[place] = withToken;
         number[place] = withNumber;
         attempt[place] = withAttempt;
-        probe[place] = isProbe;
+        task[place] = ofTask;
         holdsWorker[place] = false;
         abandoned[place] = false;
         extraNanos[place] = withExtraNanos;
@@ -88,7 +96,8 @@ final class Places {
         token = Arrays.copyOf(token, capacity);
         number = Arrays.copyOf(number, capacity);
         attempt = Arrays.copyOf(attempt, capacity);
-        probe = Arrays.copyOf(probe, capacity);
+        task = Arrays.copyOf(task, capacity);
+        Arrays.fill(task, old, capacity, Task.REQUEST);
         holdsWorker = Arrays.copyOf(holdsWorker, capacity);
         abandoned = Arrays.copyOf(abandoned, capacity);
         extraNanos = Arrays.copyOf(extraNanos, capacity);
@@ -102,5 +111,11 @@ final class Places {
         State[] states = new State[capacity];
         Arrays.fill(states, State.FREE);
         return states;
+    }
+
+    private static Task[] newTasks(int capacity) {
+        Task[] tasks = new Task[capacity];
+        Arrays.fill(tasks, Task.REQUEST);
+        return tasks;
     }
 }

@@ -1,5 +1,7 @@
 package steelyard.backends.behave;
 
+import java.util.Map;
+
 /**
  * Takes the plans of a {@link Behaviour} and carries them out, on sockets or on an event queue.
  *
@@ -24,6 +26,14 @@ public interface ReplySink {
      * @param token as given with the probe
      */
     void probeReply(long token, long probe, Reply reply, int status, long atNanos);
+
+    /**
+     * The end of one reading of the load page. {@code reply} and {@code status} read as for a request.
+     *
+     * @param token as given with the reading
+     * @param gauges what the page shows at that instant, by name, each 0..1, cpu first; empty unless ANSWER. Immutable
+     */
+    void readingReply(long token, long reading, Reply reply, int status, Map<String, Double> gauges, long atNanos);
 
     /** From now on new connections are accepted ({@code open}) or refused. Called only when that changes. */
     void listening(boolean open, long atNanos);

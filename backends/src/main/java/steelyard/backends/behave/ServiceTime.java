@@ -1,9 +1,13 @@
 package steelyard.backends.behave;
 
+import java.util.Arrays;
+import java.util.Objects;
+import org.jspecify.annotations.Nullable;
+
 /**
  * How much work a request asks of a backend, as nanoseconds of one worker.
  *
- * <p>The demand is drawn by request and attempt alone, so one request asks the same of whichever backend it meets.
+ * <p>The demand depends on request and attempt alone, so one request asks the same of whichever backend it meets.
  * Demands are whole nanoseconds, at least 0 and at most {@link #LONGEST_NANOS}. Immutable, any thread.
  */
 public sealed interface ServiceTime {
@@ -15,12 +19,14 @@ public sealed interface ServiceTime {
     enum Kind {
         FIXED,
         EXPONENTIAL,
-        LOGNORMAL
+        LOGNORMAL,
+        GAMMA,
+        TRACE
     }
 
     Kind kind();
 
-    /** The demand of one attempt of one request, from the draw (SERVICE, request, attempt). */
+    /** The demand of one attempt of one request, from draws of the key (SERVICE, request, attempt). */
     long demandNanos(Chance chance, long request, int attempt);
 
     /** The mean of the law. */
@@ -131,6 +137,112 @@ public sealed interface ServiceTime {
         @Override
         public double squaredVariation() {
             return StrictMath.expm1(sigma * sigma);
+        }
+    }
+
+    /**
+     * Gamma: from mostly short (shape below 1) over exponential (1) to narrow round its mean (large shapes). With a whole shape
+     * k it is Erlang's law of k phases.
+     *
+     * @param averageNanos its mean
+     * @param shape above 0; the variance over the squared mean is 1 / shape
+     */
+    record Gamma(long averageNanos, double shape) implements ServiceTime {
+        public Gamma {
+            requireTime("gamma", averageNanos);
+            if (!(shape > 0) || Double.isInfinite(shape)) {
+                throw new IllegalArgumentException("gamma needs a shape above 0, but got " + shape);
+            }
+        }
+
+        @Override
+        public Kind kind() {
+            return Kind.GAMMA;
+        }
+
+        @Override
+        public long demandNanos(Chance chance, long request, int attempt) {
+            return toNanos(averageNanos / shape * GammaDraws.draw(shape, chance, request, attempt));
+        }
+
+        @Override
+        public double meanNanos() {
+            return averageNanos;
+        }
+
+        @Override
+        public double squaredVariation() {
+            return 1 / shape;
+        }
+    }
+
+    /** Which value of a trace a request takes. */
+    enum Order {
+        /** Any, each with the same chance, drawn by request and attempt. */
+        SAMPLED,
+        /** That of its number, from the start again after the last: every attempt of a request takes the same. */
+        REPLAYED
+    }
+
+    /** Times that were measured somewhere, at least one. The array is copied on the way in and on the way out. */
+    record Trace(long[] nanos, Order order) implements ServiceTime {
+        public Trace {
+            Objects.requireNonNull(order);
+            nanos = nanos.clone();
+            if (nanos.length == 0) {
+                throw new IllegalArgumentException("a trace needs one time or more, but has none");
+            }
+            for (long one : nanos) {
+                requireTime("traced", one);
+            }
+        }
+
+        @Override
+        public Kind kind() {
+            return Kind.TRACE;
+        }
+
+        @Override
+        public long[] nanos() {
+            return nanos.clone();
+        }
+
+        @Override
+        public long demandNanos(Chance chance, long request, int attempt) {
+            return switch (order) {
+                case SAMPLED -> nanos[(int) (nanos.length * chance.unit(Stream.SERVICE, request, attempt))];
+                case REPLAYED -> nanos[(int) Math.floorMod(request, (long) nanos.length)];
+            };
+        }
+
+        @Override
+        public double meanNanos() {
+            return Arrays.stream(nanos).average().orElseThrow();
+        }
+
+        @Override
+        public double squaredVariation() {
+            double mean = meanNanos();
+            double variance = Arrays.stream(nanos)
+                    .mapToDouble(one -> (one - mean) * (one - mean))
+                    .average()
+                    .orElseThrow();
+            return mean == 0 ? 0 : variance / (mean * mean);
+        }
+
+        @Override
+        public boolean equals(@Nullable Object other) {
+            return other instanceof Trace that && order == that.order && Arrays.equals(nanos, that.nanos);
+        }
+
+        @Override
+        public int hashCode() {
+            return 31 * Arrays.hashCode(nanos) + order.hashCode();
+        }
+
+        @Override
+        public String toString() {
+            return "Trace[" + nanos.length + " times, " + order + "]";
         }
     }
 

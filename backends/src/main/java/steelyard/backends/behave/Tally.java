@@ -1,5 +1,7 @@
 package steelyard.backends.behave;
 
+import org.jspecify.annotations.Nullable;
+
 /**
  * The books of a behaviour. Two sides are kept apart so that they can be held against each other: sums of what each
  * request spent, and integrals over time of how many there were. All whole nanoseconds; sums of differences only, so the
@@ -17,7 +19,11 @@ final class Tally {
     long dropped;
     long probes;
     long probesFailed;
+    long readings;
+    long readingsFailed;
 
+    private final int workers;
+    private final @Nullable BusyHistory history;
     private int inService;
     private int waiting;
     private int busyWorkers;
@@ -28,12 +34,28 @@ final class Tally {
     private long busyWorkerNanos;
     private long lastNanos;
 
-    Tally(long startNanos) {
-        lastNanos = startNanos;
+    /** @param lastSecond whether {@link #busyShare} will be asked for, which costs the keeping of a history */
+    Tally(long startNanos, int workers, boolean lastSecond) {
+        this.lastNanos = startNanos;
+        this.workers = workers;
+        this.history = lastSecond ? new BusyHistory() : null;
     }
 
     int busyWorkers() {
         return busyWorkers;
+    }
+
+    /** Requests in service and waiting. */
+    int held() {
+        return inService + waiting;
+    }
+
+    /** Busy share of the workers over the second that ends now, 0..1; before the start none was busy. */
+    double busyShare(long nowNanos) {
+        if (history == null) {
+            throw new IllegalStateException("no history was asked for");
+        }
+        return (double) history.lastSecondNanos(nowNanos) / BusyHistory.SPAN_NANOS / workers;
     }
 
     /** Brings the integrals up to an instant; every change of a number below is preceded by this. */
@@ -46,10 +68,12 @@ final class Tally {
 
     void workerTaken() {
         busyWorkers++;
+        busyChanged();
     }
 
     void workerFreed() {
         busyWorkers--;
+        busyChanged();
     }
 
     void joinedLine() {
@@ -89,7 +113,13 @@ final class Tally {
         }
     }
 
-    Figures figures(long atNanos, long waitSoFarNanos, long serviceSoFarNanos, int workers) {
+    void readingEnded(Reply reply) {
+        if (reply != Reply.ANSWER) {
+            readingsFailed++;
+        }
+    }
+
+    Figures figures(long atNanos, long waitSoFarNanos, long serviceSoFarNanos) {
         return new Figures(
                 atNanos,
                 received,
@@ -109,6 +139,16 @@ final class Tally {
                 busyWorkerNanos,
                 workers,
                 probes,
-                probesFailed);
+                probesFailed,
+                readings,
+                readingsFailed,
+                0,
+                0);
+    }
+
+    private void busyChanged() {
+        if (history != null) {
+            history.changed(lastNanos, busyWorkers);
+        }
     }
 }

@@ -130,7 +130,8 @@ public final class EmbeddedFleet implements Fleet {
             throws CannotStart {
         InetSocketAddress address =
                 new InetSocketAddress("127.0.0.1", Ports.ofThisProcess().next());
-        StubSettings settings = new StubSettings(backend, address, spec.behaviour(), seed, spec.probePath(), answers);
+        StubSettings settings =
+                new StubSettings(backend, address, spec.behaviour(), seed, spec.probePath(), spec.loadPath(), answers);
         List<Throwable> failures = new ArrayList<>();
         Stub stub = await(Stub.start(settings, transport, on.next(), clock, listener), failures);
         if (stub == null) {

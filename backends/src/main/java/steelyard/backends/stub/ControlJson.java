@@ -33,6 +33,8 @@ final class ControlJson {
         @JsonSubTypes.Type(value = Change.Revive.class, name = "REVIVE"),
         @JsonSubTypes.Type(value = Change.FailProbe.class, name = "FAIL_PROBE"),
         @JsonSubTypes.Type(value = Change.FlapProbe.class, name = "FLAP_PROBE"),
+        @JsonSubTypes.Type(value = Change.Load.class, name = "LOAD"),
+        @JsonSubTypes.Type(value = Change.Fill.class, name = "FILL"),
         @JsonSubTypes.Type(value = Change.Heal.class, name = "HEAL")
     })
     private interface KindFirst {}

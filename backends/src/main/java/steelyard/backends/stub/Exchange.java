@@ -7,10 +7,18 @@ import steelyard.backends.behave.Behaviour;
 /** One request on one connection, from its head to the last byte of its answer. */
 final class Exchange {
 
+    /** What is asked for. Only requests are traffic. */
+    enum Kind {
+        REQUEST,
+        PROBE,
+        /** A reading of the load page. */
+        READING
+    }
+
     final Connection connection;
     final long token;
-    final boolean probe;
-    /** Number of the request, or of the probe. */
+    final Kind kind;
+    /** Number of the request, the probe or the reading. */
     final long request;
 
     final int attempt;
@@ -38,14 +46,14 @@ final class Exchange {
     Exchange(
             Connection connection,
             long token,
-            boolean probe,
+            Kind kind,
             long request,
             int attempt,
             boolean headOnly,
             boolean keepAlive) {
         this.connection = connection;
         this.token = token;
-        this.probe = probe;
+        this.kind = kind;
         this.request = request;
         this.attempt = attempt;
         this.headOnly = headOnly;

@@ -13,12 +13,14 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import java.util.function.LongSupplier;
+import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Behaviour;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Change;
 import steelyard.backends.behave.Figures;
 import steelyard.backends.behave.Reply;
 import steelyard.backends.behave.ReplySink;
+import steelyard.backends.stub.Exchange.Kind;
 
 /**
  * Drives a behaviour from one event loop and carries out its plans: requests in, replies out, one timer for the next
@@ -38,7 +40,9 @@ final class PlanRunner implements ReplySink {
     private final LongObjectMap<Exchange> held = new LongObjectHashMap<>();
 
     private long tokens;
+    private @Nullable LoadText loadText;
     private long probes;
+    private long readings;
     private long unnumbered;
     private long bodyBytes;
 
@@ -88,19 +92,13 @@ final class PlanRunner implements ReplySink {
 
     /** The head of a request was read. */
     Exchange begin(Connection connection, HttpRequest head) {
-        boolean probe = RequestHeads.asksFor(head.uri(), settings.probePath());
-        long number = RequestHeads.number(head, probe ? StubHeaders.PROBE : StubHeaders.REQUEST);
-        if (number < 0) {
-            number = probe ? probes : --unnumbered;
-        }
-        if (probe) {
-            probes++;
-        }
+        Kind kind = kind(head);
+        long number = numberOf(head, kind);
         int attempt = (int) Math.max(0, Math.min(Integer.MAX_VALUE, RequestHeads.number(head, StubHeaders.ATTEMPT)));
         boolean headOnly = HttpMethod.HEAD.equals(head.method());
         Exchange exchange =
-                new Exchange(connection, tokens++, probe, number, attempt, headOnly, HttpUtil.isKeepAlive(head));
-        if (!probe) {
+                new Exchange(connection, tokens++, kind, number, attempt, headOnly, HttpUtil.isKeepAlive(head));
+        if (kind == Kind.REQUEST) {
             exchange.head = settings.answers() == null ? null : head;
             listener.received(settings.backend(), number, attempt, clock.getAsLong());
         }
@@ -109,7 +107,7 @@ final class PlanRunner implements ReplySink {
 
     /** A message that is no HTTP request: it is answered, but is neither traffic nor a probe. */
     Exchange malformed(Connection connection) {
-        Exchange exchange = new Exchange(connection, tokens++, false, --unnumbered, 0, false, false);
+        Exchange exchange = new Exchange(connection, tokens++, Kind.REQUEST, --unnumbered, 0, false, false);
         exchange.over = true;
         return exchange;
     }
@@ -117,12 +115,14 @@ final class PlanRunner implements ReplySink {
     /** A request was read to its end. */
     void arrive(Exchange exchange, byte[] body) {
         held.put(exchange.token, exchange);
-        if (exchange.probe) {
-            behaviour.probe(exchange.token, exchange.request, clock.getAsLong(), this);
-        } else {
-            long extraNanos = findAnswer(exchange, body);
-            exchange.place = behaviour.arrive(
-                    exchange.token, exchange.request, exchange.attempt, extraNanos, clock.getAsLong(), this);
+        switch (exchange.kind) {
+            case PROBE -> behaviour.probe(exchange.token, exchange.request, clock.getAsLong(), this);
+            case READING -> behaviour.read(exchange.token, exchange.request, clock.getAsLong(), this);
+            case REQUEST -> {
+                long extraNanos = findAnswer(exchange, body);
+                exchange.place = behaviour.arrive(
+                        exchange.token, exchange.request, exchange.attempt, extraNanos, clock.getAsLong(), this);
+            }
         }
         arm();
     }
@@ -153,7 +153,7 @@ final class PlanRunner implements ReplySink {
     void end(Exchange exchange, boolean inFull, int status, long atNanos) {
         if (!exchange.over) {
             exchange.over = true;
-            if (!exchange.probe) {
+            if (exchange.kind == Kind.REQUEST) {
                 listener.ended(settings.backend(), exchange.request, exchange.attempt, inFull, status, atNanos);
             }
         }
@@ -191,6 +191,18 @@ final class PlanRunner implements ReplySink {
     }
 
     @Override
+    public void readingReply(
+            long token, long reading, Reply reply, int status, Map<String, Double> gauges, long atNanos) {
+        Exchange exchange = held.get(token);
+        if (exchange != null && reply == Reply.ANSWER) {
+            held.remove(token);
+            exchange.connection.reply(exchange, replies.page(loadPage(gauges), exchange.headOnly));
+        } else {
+            finish(token, reply, status);
+        }
+    }
+
+    @Override
     public void listening(boolean open, long atNanos) {
         if (open) {
             door.open();
@@ -224,12 +236,40 @@ final class PlanRunner implements ReplySink {
     }
 
     private FullHttpResponse answer(Exchange exchange, int status) {
-        if (exchange.probe) {
+        if (exchange.kind == Kind.PROBE) {
             return replies.shortText(status, exchange.headOnly);
         }
         return exchange.answer == null
                 ? replies.plain(status, exchange.headOnly)
                 : replies.mapped(exchange.answer, exchange.headOnly);
+    }
+
+    private byte[] loadPage(Map<String, Double> gauges) {
+        LoadText text = loadText == null ? loadText = new LoadText() : loadText;
+        return text.page(gauges);
+    }
+
+    private Kind kind(HttpRequest head) {
+        if (RequestHeads.asksFor(head.uri(), settings.probePath())) {
+            return Kind.PROBE;
+        }
+        return RequestHeads.asksFor(head.uri(), settings.loadPath()) ? Kind.READING : Kind.REQUEST;
+    }
+
+    /** The number that the head carries, else a running one; those of requests without one are below 0. */
+    private long numberOf(HttpRequest head, Kind kind) {
+        return switch (kind) {
+            case PROBE -> {
+                long carried = RequestHeads.number(head, StubHeaders.PROBE);
+                probes++;
+                yield carried < 0 ? probes - 1 : carried;
+            }
+            case READING -> readings++;
+            case REQUEST -> {
+                long carried = RequestHeads.number(head, StubHeaders.REQUEST);
+                yield carried < 0 ? --unnumbered : carried;
+            }
+        };
     }
 
     private long findAnswer(Exchange exchange, byte[] body) {

@@ -46,6 +46,13 @@ final class Replies {
         return text(status, Unpooled.wrappedBuffer(text.getBytes(StandardCharsets.US_ASCII)), headOnly);
     }
 
+    /** The load page. */
+    FullHttpResponse page(byte[] text, boolean headOnly) {
+        FullHttpResponse reply = text(HttpResponseStatus.OK.code(), Unpooled.wrappedBuffer(text), headOnly);
+        reply.headers().set(HttpHeaderNames.CONTENT_TYPE, LoadText.OPEN_METRICS);
+        return reply;
+    }
+
     /**
      * What a mapping answers: its header fields as they stand, its body framed by its true length, or in chunks where the
      * mapping names that transfer coding.

@@ -13,6 +13,8 @@ import steelyard.backends.behave.BehaviourSettings;
  * @param behaviour how it serves
  * @param seed of its draws
  * @param probePath path, perhaps with a query, that is a probe and not traffic, or null for none
+ * @param loadPath path that is a reading of the load page and not traffic, or null for none; only with a behaviour that has
+ *     a load page
  * @param answers where its answers come from, or null for the plain answer of the behaviour
  */
 public record StubSettings(
@@ -21,6 +23,7 @@ public record StubSettings(
         BehaviourSettings behaviour,
         long seed,
         @Nullable String probePath,
+        @Nullable String loadPath,
         @Nullable Answers answers) {
     public StubSettings {
         Objects.requireNonNull(address);
@@ -31,5 +34,19 @@ public record StubSettings(
         if (address.isUnresolved() || address.getPort() == 0) {
             throw new IllegalArgumentException("a stub needs an address with a port, but got " + address);
         }
+        if (loadPath != null && behaviour.load() == null) {
+            throw new IllegalArgumentException("a load path needs a behaviour with a load page, but got " + loadPath);
+        }
+    }
+
+    /** Without a load page. */
+    public StubSettings(
+            int backend,
+            InetSocketAddress address,
+            BehaviourSettings behaviour,
+            long seed,
+            @Nullable String probePath,
+            @Nullable Answers answers) {
+        this(backend, address, behaviour, seed, probePath, null, answers);
     }
 }

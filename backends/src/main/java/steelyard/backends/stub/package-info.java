@@ -2,7 +2,8 @@
  * A backend on the wire: an HTTP/1.1 server on a loopback port that carries out the reply plans of a behaviour, so that
  * faults are true on the socket.
  *
- * <p>Allowed dependencies: {@code steelyard.backends.behave}, Netty, Jackson (control front), WireMock's engine (mapping
+ * <p>Allowed dependencies: {@code steelyard.backends.behave}, Netty, Jackson (control front), Micrometer (load
+ * page), WireMock's engine (mapping
  * files, loaded only when they are asked for).
  *
  * <p>Thread rule: a stub lives on one event loop and its behaviour, listener and sockets are touched there only;

@@ -48,7 +48,11 @@ class BehaviourInvariantsTest {
         long origin = steps.get(0).atNanos();
         Trace trace = new Trace(origin);
         BehaviourSettings settings = BehaviourSettings.of(
-                        (int) (1 + seed % 4), (int) (seed % 7), new ServiceTime.Exponential(60_000))
+                        (int) (1 + seed % 4),
+                        (int) (seed % 7),
+                        seed < 5 ? new ServiceTime.Exponential(60_000) : new ServiceTime.Gamma(60_000, 2))
+                .withCold(new Cold(3, 500_000))
+                .withLoad(new LoadPage(seed % 3 * 20_000, List.of(new Gauge("memory", 0.1, 0.05))))
                 .withProbeWork(seed % 2 == 0 ? ProbeWork.FREE : ProbeWork.QUEUED);
         Behaviour behaviour = new Behaviour(0, settings, new Chance(seed), origin);
         int[] places = new int[STEPS];
@@ -76,7 +80,9 @@ class BehaviourInvariantsTest {
             places[number] = behaviour.arrive(number, number, number % 3, 0, at, trace);
         } else if (step.what() < 88) {
             behaviour.probe(-1 - number, number, at, trace);
-        } else if (step.what() < 94) {
+        } else if (step.what() < 91) {
+            behaviour.read(-1 - number, number, at, trace);
+        } else if (step.what() < 95) {
             int earlier = Math.max(0, number - 2);
             behaviour.abandon(places[earlier], earlier, at, trace);
         } else {
@@ -86,7 +92,7 @@ class BehaviourInvariantsTest {
     }
 
     private static Change change(int number) {
-        return switch (number % 12) {
+        return switch (number % 14) {
             case 0 -> new Change.Slow(2.5, 1_000, number % 2 == 0);
             case 1 -> new Change.Fail(0.5, 500, Change.When.AT_ONCE, true);
             case 2 -> new Change.Fail(0.5, 503, Change.When.AFTER_WORK, false);
@@ -95,7 +101,9 @@ class BehaviourInvariantsTest {
             case 5 -> new Change.Kill();
             case 6 -> new Change.FailProbe();
             case 7 -> new Change.FlapProbe(100_000);
-            case 8, 9 -> new Change.Revive();
+            case 8 -> new Change.Load("memory", 0.5);
+            case 9 -> new Change.Fill(0.9);
+            case 10, 11 -> new Change.Revive();
             default -> Change.Heal.all();
         };
     }
@@ -107,6 +115,7 @@ class BehaviourInvariantsTest {
         assertThat(f.waitNanos() + f.serviceNanos()).isEqualTo(f.heldIntegralNanos());
         assertThat(f.busyWorkerNanos()).isGreaterThanOrEqualTo(f.serviceNanos());
         assertThat(f.inService()).isBetween(0, f.workers());
+        assertThat(f.readingsFailed()).isLessThanOrEqualTo(f.readings());
         assertThat(f.dropped()).isLessThanOrEqualTo(f.abandoned());
     }
 }

@@ -26,48 +26,6 @@ class BehaviourTest {
     private static final BehaviourSettings ONE_WORKER_ONE_WAITS =
             BehaviourSettings.of(1, 1, new ServiceTime.Fixed(10 * MILLI));
 
-    /** A behaviour, its trace, and a clock that starts at an origin. */
-    private static final class Play {
-        final long origin;
-        final Trace trace;
-        final Behaviour behaviour;
-        private long tokens;
-
-        Play(BehaviourSettings settings, long origin) {
-            this.origin = origin;
-            this.trace = new Trace(origin);
-            this.behaviour = new Behaviour(3, settings, new Chance(7), origin);
-        }
-
-        int arrive(long request, long atMillis) {
-            return behaviour.arrive(tokens++, request, 0, 0, at(atMillis), trace);
-        }
-
-        void probe(long probe, long atMillis) {
-            behaviour.probe(-1 - probe, probe, at(atMillis), trace);
-        }
-
-        void apply(Change change, long atMillis) {
-            behaviour.apply(change, at(atMillis), trace);
-        }
-
-        void poll(long atMillis) {
-            behaviour.poll(at(atMillis), trace);
-        }
-
-        Figures figures(long atMillis) {
-            return behaviour.figures(at(atMillis), trace);
-        }
-
-        long at(long millis) {
-            return origin + millis * MILLI;
-        }
-
-        void planned(String... lines) {
-            assertThat(trace.lines).containsExactly(lines);
-        }
-    }
-
     private static Play play() {
         return new Play(ONE_WORKER_ONE_WAITS, 0);
     }

@@ -49,7 +49,16 @@ class ChanceTest {
     @Test
     void streams_numbersAreFixed() {
         assertThat(Arrays.stream(Stream.values()).map(stream -> stream + "=" + stream.number()))
-                .containsExactly("ARRIVALS=1", "MIX=2", "CLIENT=3", "SERVICE=4", "PICK=5", "FAULT=6", "PROBE_PHASE=7");
+                .containsExactly(
+                        "ARRIVALS=1",
+                        "MIX=2",
+                        "CLIENT=3",
+                        "SERVICE=4",
+                        "PICK=5",
+                        "FAULT=6",
+                        "PROBE_PHASE=7",
+                        "PROBE_JITTER=8",
+                        "READING_PHASE=9");
     }
 
     @Test

@@ -60,14 +60,14 @@ class HoldingTest {
         Places places = new Places();
         int[] taken = new int[40];
         for (int i = 0; i < taken.length; i++) {
-            taken[i] = places.take(100 + i, i, 0, false, 0, 0);
+            taken[i] = places.take(100 + i, i, 0, Places.Task.REQUEST, 0, 0);
         }
         places.abandoned[taken[7]] = true;
         places.faultStatus[taken[7]] = 500;
         places.free(taken[7]);
         assertThat(places.holds(taken[7], 107)).isFalse();
         assertThat(places.holds(taken[8], 108)).isTrue();
-        int again = places.take(1, 2, 3, false, 4, 5);
+        int again = places.take(1, 2, 3, Places.Task.PROBE, 4, 5);
         assertThat(again).isEqualTo(taken[7]);
         assertThat(places.abandoned[again]).isFalse();
         assertThat(places.faultStatus[again]).isZero();

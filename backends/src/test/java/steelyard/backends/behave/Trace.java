@@ -2,6 +2,7 @@ package steelyard.backends.behave;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Map;
 
 /** Writes down what a behaviour plans, one line a plan, instants counted from an origin in milliseconds. */
 final class Trace implements ReplySink {
@@ -23,6 +24,12 @@ final class Trace implements ReplySink {
     @Override
     public void probeReply(long token, long probe, Reply reply, int status, long atNanos) {
         lines.add(at(atNanos) + " probe " + probe + " " + reply + " " + status);
+    }
+
+    @Override
+    public void readingReply(
+            long token, long reading, Reply reply, int status, Map<String, Double> gauges, long atNanos) {
+        lines.add(at(atNanos) + " reading " + reading + " " + reply + " " + status + " " + gauges);
     }
 
     @Override

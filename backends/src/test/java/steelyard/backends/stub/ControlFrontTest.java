@@ -88,7 +88,14 @@ class ControlFrontTest {
     }
 
     @ParameterizedTest
-    @ValueSource(strings = {"{", "{\"kind\":\"MELT\"}", "null", "{\"kind\":\"FLAP_PROBE\",\"periodNanos\":0}"})
+    @ValueSource(
+            strings = {
+                "{",
+                "{\"kind\":\"MELT\"}",
+                "null",
+                "{\"kind\":\"FLAP_PROBE\",\"periodNanos\":0}",
+                "{\"kind\":\"LOAD\",\"gauge\":\"memory\",\"to\":1.5}"
+            })
     void badChange_is400WithTheReason(String json) throws Exception {
         try (RawClient client = new RawClient(front.address())) {
             client.send("POST /change HTTP/1.1\r\nHost: x\r\nAuthorization: Bearer " + TOKEN + "\r\nContent-Length: "
@@ -117,6 +124,8 @@ class ControlFrontTest {
                 new Change.Revive(),
                 new Change.FailProbe(),
                 new Change.FlapProbe(4_000),
+                new Change.Load("memory", 0.9),
+                new Change.Fill(0.95),
                 new Change.Heal(Change.Kind.SLOW),
                 Change.Heal.all());
     }
@@ -134,8 +143,30 @@ class ControlFrontTest {
 
     @Test
     void figures_writtenAndRead_areTheSame() {
-        Figures figures =
-                new Figures(Long.MIN_VALUE, 2, 3, 4, 5, 6, 7, 8, 9, 10, 11, 12, 13, 14, 15, Long.MAX_VALUE, 17, 18, 19);
+        Figures figures = new Figures(
+                Long.MIN_VALUE,
+                2,
+                3,
+                4,
+                5,
+                6,
+                7,
+                8,
+                9,
+                10,
+                11,
+                12,
+                13,
+                14,
+                15,
+                Long.MAX_VALUE,
+                17,
+                18,
+                19,
+                20,
+                21,
+                22,
+                23);
         assertThat(ControlJson.readFigures(ControlJson.write(figures))).isEqualTo(figures);
     }
 

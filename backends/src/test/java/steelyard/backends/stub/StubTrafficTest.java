@@ -8,6 +8,7 @@ import java.net.InetSocketAddress;
 import java.net.ServerSocket;
 import java.time.Duration;
 import java.util.List;
+import java.util.Map;
 import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
@@ -212,6 +213,10 @@ class StubTrafficTest {
 
         @Override
         public void probeReply(long token, long probe, Reply reply, int status, long atNanos) {}
+
+        @Override
+        public void readingReply(
+                long token, long reading, Reply reply, int status, Map<String, Double> gauges, long atNanos) {}
 
         @Override
         public void listening(boolean open, long atNanos) {}

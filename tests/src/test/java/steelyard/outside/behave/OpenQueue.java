@@ -2,6 +2,7 @@ package steelyard.outside.behave;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import java.util.Map;
 import steelyard.backends.behave.Behaviour;
 import steelyard.backends.behave.BehaviourSettings;
 import steelyard.backends.behave.Chance;
@@ -85,6 +86,11 @@ final class OpenQueue implements ReplySink {
     @Override
     public void probeReply(long token, long probe, Reply reply, int status, long at) {
         throw new AssertionError("nobody probes here");
+    }
+
+    @Override
+    public void readingReply(long token, long reading, Reply reply, int status, Map<String, Double> gauges, long at) {
+        throw new AssertionError("nobody reads here");
     }
 
     @Override

@@ -1,6 +1,7 @@
 package steelyard.harness.stage.virtual;
 
 import java.util.List;
+import java.util.Map;
 import steelyard.backends.behave.Behaviour;
 import steelyard.backends.behave.BehaviourSettings;
 import steelyard.backends.behave.Chance;
@@ -69,7 +70,7 @@ final class VirtualBackends {
         switch (change.kind()) {
             case KILL -> killed[backend] = true;
             case REVIVE -> killed[backend] = false;
-            case SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, HEAL -> {
+            case SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, LOAD, FILL, HEAL -> {
                 // None of these takes its connections away.
             }
         }
@@ -106,6 +107,12 @@ final class VirtualBackends {
         @Override
         public void probeReply(long token, long probe, Reply reply, int status, long atNanos) {
             hearer.probeReplied(backend, probe, reply, status, atNanos);
+        }
+
+        @Override
+        public void readingReply(
+                long token, long reading, Reply reply, int status, Map<String, Double> gauges, long atNanos) {
+            // No load page is read here.
         }
 
         @Override
