@@ -2,8 +2,10 @@ package steelyard.harness.forecast;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.function.ToDoubleFunction;
 import steelyard.drills.model.Cause;
 import steelyard.harness.record.Cast;
+import steelyard.harness.record.PoolColumn;
 import steelyard.harness.record.Slice;
 
 /**
@@ -34,10 +36,18 @@ final class BandColumns {
     static final List<String> OF_GROUP = List.of("picked", "in-flight", "weight", "entitled", "utilisation", "waiting");
 
     private final List<Group> groups;
+    private final List<Extra> extras = new ArrayList<>();
     private final int[] workers;
+
+    /** A column that only some stages have; they come behind all others. */
+    private record Extra(String name, ToDoubleFunction<Slice> value) {}
 
     BandColumns(Cast cast) {
         groups = Group.of(cast);
+        PoolColumn.of(cast).forEach(each -> extras.add(new Extra(each.name(), each.value())));
+        groups.stream().filter(each -> weighsByLoad(each, cast)).forEach(each -> {
+            extras.add(new Extra(each.name() + ":headroom", slice -> headroom(slice, each)));
+        });
         workers = cast.backends().stream()
                 .mapToInt(each -> each.serves().workers())
                 .toArray();
@@ -48,11 +58,29 @@ final class BandColumns {
     }
 
     int count() {
-        return REQUESTS + groups.size() * OF_GROUP.size();
+        return ofExtra(extras.size());
     }
 
     int ofGroup(int group, int column) {
         return REQUESTS + group * OF_GROUP.size() + column;
+    }
+
+    int ofExtra(int extra) {
+        return REQUESTS + groups.size() * OF_GROUP.size() + extra;
+    }
+
+    /** The names of the columns that only some stages have, in order. */
+    List<String> extras() {
+        return extras.stream().map(Extra::name).toList();
+    }
+
+    private static boolean weighsByLoad(Group group, Cast cast) {
+        return cast.weighsByLoad(cast.poolNumber(group.pool()));
+    }
+
+    /** The mean of the members. */
+    private static double headroom(Slice slice, Group group) {
+        return group.members().stream().mapToDouble(slice::headroom).average().orElse(1);
     }
 
     /** The names of the columns of requests, in order from place 0. */
@@ -80,6 +108,9 @@ final class BandColumns {
         values[RETRIES] = slice.retries();
         for (int group = 0; group < groups.size(); group++) {
             fill(slice, group, values);
+        }
+        for (int extra = 0; extra < extras.size(); extra++) {
+            values[ofExtra(extra)] = (float) extras.get(extra).value().applyAsDouble(slice);
         }
     }
 

@@ -132,6 +132,17 @@ public final class Bands {
         return band((play, slice) -> value(play, place, slice));
     }
 
+    /** The names of the columns that only some stages have. */
+    List<String> extras() {
+        return columns.extras();
+    }
+
+    /** The bands of one of them, by its place in {@link #extras}. */
+    Band ofExtra(int extra) {
+        int place = columns.ofExtra(extra);
+        return band((play, slice) -> value(play, place, slice));
+    }
+
     /** The bands of the share that a group had of its pool's attempts; a slice without attempts has none. */
     Band share(int group) {
         String pool = groups().get(group).pool();

@@ -13,7 +13,8 @@ import steelyard.harness.record.Words;
  *
  * <p>First come the columns of a rehearsal, in their order, with medians over plays; {@code NAME:standing} is the one
  * that most plays had. A name is that of a backend, or of a group of backends. Behind these, {@code NAME:share} is the
- * share of its pool's attempts and {@code NAME:standing-share} the share of plays with that standing. Then each column
+ * share of its pool's attempts and {@code NAME:standing-share} the share of plays with that standing, followed by the
+ * columns that a rehearsal has of pools and of headroom. Then each column
  * of numbers comes again three times: {@code COLUMN:low} and {@code COLUMN:high} are its 5 % and 95 % quantiles over
  * plays, {@code COLUMN:mean} its mean.
  */
@@ -43,6 +44,9 @@ final class SliceFile {
         }
         for (int group = 0; group < bands.groups().size(); group++) {
             shares(text, group);
+        }
+        for (int extra = 0; extra < bands.extras().size(); extra++) {
+            median(text, bands.extras().get(extra), bands.ofExtra(extra));
         }
         for (Named each : List.copyOf(banded)) {
             numbers(text, each.name() + ":low", each.band().low);

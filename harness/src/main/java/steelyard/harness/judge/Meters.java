@@ -55,9 +55,8 @@ final class Meters {
                         cast.backends().size());
             case RETRY_LOAD -> new RetryLoad(window, pools(expectation), options.worstNanos());
             case PEAK_IN_FLIGHT -> new PeakInFlight(window, backends(members), expectation.of() == null);
-            case WEIGHT_LAG, SWING ->
-                throw new IllegalArgumentException(
-                        "no meter reads " + expectation.measure().word());
+            case WEIGHT_LAG -> new WeightLag(window, members, cast);
+            case SWING -> new Swing(window, members, cast);
             case PEAK_UTILISATION -> new PeakUtilisation(window, members, cast);
         };
     }

@@ -89,6 +89,9 @@ final class SettledIn extends SinceCue {
         if (cast().pools().get(pool).weights() == Weights.HOST) {
             return Reading.notMeasured("under host weights a pool alone has no due shares; use share");
         }
+        if (cast().weighsByLoad(pool)) {
+            return Reading.notMeasured("weights by load move what is due; use share or swing");
+        }
         return pools[member].read(cast().pools().get(pool).name());
     }
 

@@ -10,6 +10,7 @@ import steelyard.drills.model.Expectation.Bound;
 import steelyard.drills.model.Expectation.Options;
 import steelyard.drills.model.Measure;
 import steelyard.drills.model.Pool;
+import steelyard.drills.model.Pool.Weights;
 import steelyard.drills.model.Target;
 
 /** The measures that every play is given, whatever its drill expects: over the whole play, bound by nothing. */
@@ -46,14 +47,24 @@ final class StandardSet {
             add(Measure.PEAK_UTILISATION, target(backend), Options.DEFAULT);
         }
         for (Pool pool : drill.stage().pools()) {
-            List<String> names = pool.backends().stream().map(Backend::name).toList();
-            add(Measure.FAIRNESS, new Target(Target.Kind.POOL, pool.name(), names), Options.DEFAULT);
+            add(Measure.FAIRNESS, target(pool), Options.DEFAULT);
+        }
+        for (Pool pool : drill.stage().pools()) {
+            if (pool.weights() == Weights.LOAD) {
+                add(Measure.WEIGHT_LAG, target(pool), Options.DEFAULT);
+                add(Measure.SWING, target(pool), Options.DEFAULT);
+            }
         }
         add(Measure.CUT, null, Options.DEFAULT);
     }
 
     private void add(Measure measure, @Nullable Target of, Options options) {
         set.add(new Expectation(measure, of, null, 0, drill.lastsNanos(), null, options, ANYTHING));
+    }
+
+    private static Target target(Pool pool) {
+        List<String> names = pool.backends().stream().map(Backend::name).toList();
+        return new Target(Target.Kind.POOL, pool.name(), names);
     }
 
     private static Target target(Backend backend) {

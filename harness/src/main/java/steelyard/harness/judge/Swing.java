@@ -26,16 +26,15 @@ final class Swing extends Meter {
     private final double[] least;
     private final double[] most;
 
-    /** @param periodNanos of the load probes by pool, 0 where a pool reads no load */
-    Swing(Window window, int[] members, long[] periodNanos, Cast cast) {
+    Swing(Window window, int[] members, Cast cast) {
         this.window = window;
         this.cast = cast;
         this.members = members;
         int pools = cast.pools().size();
         int backends = cast.backends().size();
-        this.periodNanos = new long[pools];
+        periodNanos = new long[pools];
         for (int pool : IntStream.of(members).map(cast::poolOf).distinct().toArray()) {
-            this.periodNanos[pool] = periodNanos[pool];
+            periodNanos[pool] = cast.loadPeriodNanos(pool);
         }
         period = new long[pools];
         measured = new int[pools];

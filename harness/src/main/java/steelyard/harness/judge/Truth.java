@@ -4,7 +4,6 @@ import java.util.Arrays;
 import steelyard.balancer.core.standing.Standing;
 import steelyard.balancer.core.standing.Transition;
 import steelyard.drills.model.Cue;
-import steelyard.drills.model.Pool.Method;
 import steelyard.harness.record.Cast;
 import steelyard.harness.record.PlayListener.By;
 
@@ -33,8 +32,25 @@ final class Truth {
 
     /** The weight that a backend should be served by now; 0 for one that is not admitted or cannot serve. */
     int weight(int backend) {
-        boolean serves = !outByHand[backend] && !killed[backend] && !refusing[backend] && !hanging[backend];
-        return serves ? weight[backend] : 0;
+        boolean asked = cast.backends().get(backend).tier() == 1 || tooFewOfTierOne(cast.poolOf(backend));
+        return asked && serves(backend) ? weight[backend] : 0;
+    }
+
+    private boolean serves(int backend) {
+        return !outByHand[backend] && !killed[backend] && !refusing[backend] && !hanging[backend];
+    }
+
+    /** Backends of tier 2 stand by while a set share of tier 1 is there. */
+    private boolean tooFewOfTierOne(int pool) {
+        int all = 0;
+        int serving = 0;
+        for (int backend = 0; backend < weight.length; backend++) {
+            if (cast.poolOf(backend) == pool && cast.backends().get(backend).tier() == 1) {
+                all++;
+                serving += serves(backend) ? 1 : 0;
+            }
+        }
+        return serving < cast.pools().get(pool).reserve().standby() * all;
     }
 
     void stood(Transition transition) {
@@ -105,6 +121,6 @@ final class Truth {
     }
 
     private boolean weighs(int backend) {
-        return cast.pools().get(cast.poolOf(backend)).method() != Method.ROUND_ROBIN;
+        return cast.pools().get(cast.poolOf(backend)).method().weighs();
     }
 }

@@ -23,7 +23,6 @@ final class WeightLag extends Meter {
 
     private final Cast cast;
     private final int[] members;
-    private final long[] periodNanos;
     private final int[] workers;
     private final long firstSlice;
     private final double[][] weight;
@@ -33,11 +32,9 @@ final class WeightLag extends Meter {
     private long lastSampleNanos;
     private int known;
 
-    /** @param periodNanos of the load probes by member, 0 where a member's pool reads no load */
-    WeightLag(Window window, int[] members, long[] periodNanos, Cast cast) {
+    WeightLag(Window window, int[] members, Cast cast) {
         this.cast = cast;
         this.members = members;
-        this.periodNanos = periodNanos;
         workers = Arrays.stream(members)
                 .map(backend -> cast.backends().get(backend).serves().workers())
                 .toArray();
@@ -101,7 +98,8 @@ final class WeightLag extends Meter {
 
     private Reading read(int member) {
         String name = cast.backends().get(members[member]).name();
-        if (periodNanos[member] == 0) {
+        long periodNanos = cast.loadPeriodNanos(cast.poolOf(members[member]));
+        if (periodNanos == 0) {
             return Reading.notMeasured("nothing reads the load of " + name);
         }
         if (constant(weight[member])) {
@@ -110,7 +108,7 @@ final class WeightLag extends Meter {
         if (constant(busy[member])) {
             return Reading.notMeasured("the utilisation of " + name + " never changed");
         }
-        int most = (int) Math.min(PERIODS * periodNanos[member] / Slice.NANOS, known / 2);
+        int most = (int) Math.min(PERIODS * periodNanos / Slice.NANOS, known / 2);
         int lag = 0;
         double least = 0;
         for (int shift = 0; shift <= most; shift++) {

@@ -7,7 +7,10 @@ import java.util.stream.IntStream;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Host;
+import steelyard.drills.model.InFlight;
+import steelyard.drills.model.LoadProbe;
 import steelyard.drills.model.Pool;
+import steelyard.drills.model.Pool.Weights;
 import steelyard.drills.model.Target;
 
 /** Who is on the stage, by number: pools, hosts and backends in list order, backends pool after pool. */
@@ -71,7 +74,19 @@ public final class Cast {
 
     /** Whether the weights of a pool go by what its load probes read. */
     public boolean weighsByLoad(int pool) {
-        return pools.get(pool).weights().word().equals("load");
+        return pools.get(pool).weights() == Weights.LOAD;
+    }
+
+    /** From one load probe of a pool's backends to the next; 0 where nothing reads their load. */
+    public long loadPeriodNanos(int pool) {
+        LoadProbe load = pools.get(pool).health().load();
+        return load == null ? 0 : load.everyNanos();
+    }
+
+    /** Whether requests of a pool may wait in the balancer for a backend to be free. */
+    public boolean letsWait(int pool) {
+        InFlight inFlight = pools.get(pool).inFlight();
+        return inFlight != null && inFlight.waiting() > 0;
     }
 
     /** The number of the host that a backend stands on. */

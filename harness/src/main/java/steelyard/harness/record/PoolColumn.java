@@ -12,7 +12,7 @@ import java.util.function.ToDoubleFunction;
  */
 public record PoolColumn(String name, ToDoubleFunction<Slice> value, int decimals) {
 
-    /** Those that a stage has: requests where there are several pools. */
+    /** Those that a stage has: requests where there are several pools, what waits where a pool lets requests wait. */
     public static List<PoolColumn> of(Cast cast) {
         List<PoolColumn> columns = new ArrayList<>();
         for (int each = 0; each < cast.pools().size(); each++) {
@@ -20,6 +20,9 @@ public record PoolColumn(String name, ToDoubleFunction<Slice> value, int decimal
             if (cast.pools().size() > 1) {
                 columns.add(new PoolColumn(name(cast, pool, "offered"), slice -> slice.offeredTo(pool), 0));
                 columns.add(new PoolColumn(name(cast, pool, "failed"), slice -> slice.failedOf(pool), 0));
+            }
+            if (cast.letsWait(pool)) {
+                columns.add(new PoolColumn(name(cast, pool, "waiting"), slice -> slice.waitingForBackend(pool), 0));
             }
         }
         return columns;

@@ -3,6 +3,7 @@ package steelyard.harness.record;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drain;
@@ -10,6 +11,8 @@ import steelyard.drills.model.Drill;
 import steelyard.drills.model.Expectation;
 import steelyard.drills.model.Health;
 import steelyard.drills.model.Host;
+import steelyard.drills.model.InFlight;
+import steelyard.drills.model.LoadProbe;
 import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Pool.Method;
@@ -37,6 +40,8 @@ public final class TestDrill {
     private final List<Expectation> expectations = new ArrayList<>();
     private Weights weights = Weights.BACKEND;
     private long lastsNanos = 10 * S;
+    private @Nullable LoadProbe load;
+    private @Nullable InFlight inFlight;
 
     public TestDrill lasts(long nanos) {
         lastsNanos = nanos;
@@ -45,6 +50,19 @@ public final class TestDrill {
 
     public TestDrill weights(Weights how) {
         weights = how;
+        return this;
+    }
+
+    /** Pool seats weighs by load, read that often. */
+    public TestDrill load(long everyNanos) {
+        LoadProbe usual = LoadProbe.USUAL;
+        load = new LoadProbe(usual.path(), everyNanos, everyNanos, 3 * everyNanos, usual.floor(), 0, usual.gauges());
+        return this;
+    }
+
+    /** Requests of pool seats wait, at most so many, when each of its backends has one in flight. */
+    public TestDrill waiting(int most) {
+        inFlight = new InFlight(1, most, S);
         return this;
     }
 
@@ -102,10 +120,13 @@ public final class TestDrill {
     }
 
     private Pool pool(String name, List<Backend> backends) {
-        return Pool.with(name, Picking.by(Method.WEIGHTED_ROUND_ROBIN).with(weights))
-                .health(Health.NONE
-                        .with(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 3, 2))
-                        .with(new WarmUp(5 * S, 0.1)))
+        boolean byLoad = load != null && name.equals("seats");
+        Health health = Health.NONE
+                .with(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 3, 2))
+                .with(new WarmUp(5 * S, 0.1));
+        return Pool.with(name, Picking.by(Method.WEIGHTED_ROUND_ROBIN).with(byLoad ? Weights.LOAD : weights))
+                .health(byLoad ? health.with(load) : health)
+                .inFlight(name.equals("seats") ? inFlight : null)
                 .drain(new Drain(10 * S, false))
                 .timeouts(new Timeouts(S, 30 * S, 60 * S))
                 .of(backends);
