@@ -88,7 +88,10 @@ class ForwardingTest {
                 LivePlay play = LivePlay.of(Pool::forwarding, backend.address())) {
             play.ask("GET / HTTP/1.1\r\nHost: a.example:81\r\nForwarded: for=192.0.2.43\r\n\r\n");
             assertThat(captured())
-                    .containsSubsequence("for=192.0.2.43\r\n", "for=127.0.0.1;host=\"a.example:81\";proto=http\r\n");
+                    .containsSubsequence(
+                            "for=192.0.2.43\r\n",
+                            "for=127.0.0.1;by=\"127.0.0.1:" + play.front().getPort()
+                                    + "\";host=\"a.example:81\";proto=http\r\n");
         }
     }
 

@@ -5,7 +5,6 @@ import io.netty.channel.ChannelFutureListener;
 import io.netty.channel.ChannelOption;
 import io.netty.channel.socket.DuplexChannel;
 import java.util.concurrent.TimeUnit;
-import steelyard.balancer.live.tcp.Deadline;
 
 /** The ways in which a client connection ends from this side. Once one has begun, nothing more is taken from the client. */
 final class ClientEnding {
@@ -14,18 +13,15 @@ final class ClientEnding {
 
     private final Channel channel;
     private final ClientOutput output;
-    private final Deadline deadline;
+    private final ClientClock clock;
     private final long idleNanos;
     private boolean begun;
 
-    /**
-     * @param deadline closes the connection when it passes
-     * @param idleNanos how long what was written may take to leave
-     */
-    ClientEnding(Channel channel, ClientOutput output, Deadline deadline, long idleNanos) {
+    /** @param idleNanos how long what was written may take to leave */
+    ClientEnding(Channel channel, ClientOutput output, ClientClock clock, long idleNanos) {
         this.channel = channel;
         this.output = output;
-        this.deadline = deadline;
+        this.clock = clock;
         this.idleNanos = idleNanos;
     }
 
@@ -36,13 +32,13 @@ final class ClientEnding {
     /** The client is gone. */
     void gone() {
         begun = true;
-        deadline.stop();
+        clock.stop();
     }
 
     /** Closes as soon as all that was written is out; for a client that has sent nothing which was not read. */
     void afterFlush() {
         begun = true;
-        deadline.in(idleNanos);
+        clock.end(idleNanos);
         output.drained().addListener(ChannelFutureListener.CLOSE);
     }
 
@@ -57,7 +53,7 @@ final class ClientEnding {
             afterFlush();
             return;
         }
-        deadline.in(LINGER_NANOS);
+        clock.end(LINGER_NANOS);
         output.drained().addListener(done -> duplex.shutdownOutput());
     }
 

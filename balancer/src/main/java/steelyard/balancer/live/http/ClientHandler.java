@@ -10,7 +10,6 @@ import io.netty.handler.codec.http.HttpUtil;
 import io.netty.util.ReferenceCountUtil;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Decider;
-import steelyard.balancer.live.tcp.Deadline;
 
 /**
  * One client connection: takes its requests one after the other, and answers in their order.
@@ -23,28 +22,36 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     private final LoopConnections connections;
     private final Channel channel;
     private final ClientOutput output;
-    private final Deadline deadline;
+    private final RequestDecoder decoder;
+    private final ClientClock clock;
     private final ClientEnding ending;
     private final SentAhead ahead = new SentAhead();
     private @Nullable Exchange exchange;
     private int pinned = Decider.NOBODY;
     private boolean catchingUp;
 
-    ClientHandler(PoolFront pool, LoopConnections connections, ClientEncoder encoder, Channel channel) {
+    /** @param decoder what the requests of this connection come from */
+    ClientHandler(
+            PoolFront pool,
+            LoopConnections connections,
+            RequestDecoder decoder,
+            ClientEncoder encoder,
+            Channel channel) {
         this.pool = pool;
         this.connections = connections;
         this.channel = channel;
         this.output = new ClientOutput(channel, encoder, pool.balancer());
-        this.deadline = new Deadline(channel.eventLoop(), channel::close);
+        this.decoder = decoder;
+        this.clock = new ClientClock(channel.eventLoop(), pool.settings().timeouts(), this::timePassed);
         this.ending = new ClientEnding(
-                channel, output, deadline, pool.settings().timeouts().idleNanos());
+                channel, output, clock, pool.settings().timeouts().idleNanos());
     }
 
     // ---- from the client
 
     @Override
     public void channelActive(ChannelHandlerContext context) {
-        deadline.in(pool.settings().timeouts().idleNanos());
+        clock.idle();
     }
 
     @Override
@@ -72,22 +79,23 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
             ReferenceCountUtil.release(part); // the empty end of a request without content
         } else if (part.decoderResult().isFailure()) {
             ReferenceCountUtil.release(part);
-            contentFaulty(exchange);
+            contentFaulty(exchange, RequestCheck.faulty(part.decoderResult().cause()));
         } else {
+            clock.clear();
             exchange.content((HttpContent) part);
             updateReading();
         }
     }
 
     private void begin(HttpRequest request) {
-        deadline.clear();
+        clock.clear();
         output.answers(request);
         boolean oldClient = request.protocolVersion().minorVersion() == 0;
         boolean keep = !oldClient && HttpUtil.isKeepAlive(request);
         boolean content = request.decoderResult().isSuccess() && RequestCheck.hasContent(request);
         OwnAnswer here = RequestCheck.refusal(request);
         if (here == null) {
-            here = RequestHeads.prepare(request, pool, channel.remoteAddress());
+            here = RequestHeads.prepare(request, pool, channel);
             if (here != null && here.status().code() != 400 && keep && !content) {
                 output.own(here, false);
                 answered(true);
@@ -103,12 +111,12 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         updateReading();
     }
 
-    private void contentFaulty(Exchange running) {
+    private void contentFaulty(Exchange running, OwnAnswer answer) {
         boolean silent = !running.passedOn();
         running.abandon();
         exchange = null;
         if (silent) {
-            answerAndClose(OwnAnswer.FAULTY);
+            answerAndClose(answer);
         } else {
             truncate(false);
         }
@@ -118,6 +126,8 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     public void channelReadComplete(ChannelHandlerContext context) {
         if (exchange != null) {
             exchange.flushRequest();
+        } else if (!ending.begun() && decoder.headOpen()) {
+            clock.head();
         }
     }
 
@@ -148,10 +158,32 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     /** Reads on while nothing was sent ahead and what comes can be passed on. */
     void updateReading() {
-        boolean reading = ending.begun()
-                || ahead.isEmpty() && (exchange == null || exchange.requestComplete() || exchange.takesContent());
+        boolean content = !ending.begun() && exchange != null && !exchange.requestComplete();
+        boolean reading = ending.begun() || ahead.isEmpty() && (!content || takesContent());
         if (channel.config().isAutoRead() != reading) {
             channel.config().setAutoRead(reading);
+        }
+        if (content && reading) {
+            clock.content();
+        } else if (exchange != null) {
+            clock.clear();
+        }
+    }
+
+    private boolean takesContent() {
+        return exchange != null && exchange.takesContent();
+    }
+
+    private void timePassed(ClientClock.Limit limit) {
+        switch (limit) {
+            case NONE -> {}
+            case IDLE, END -> channel.close();
+            case HEAD -> answerAndClose(OwnAnswer.SLOW_HEAD);
+            case CONTENT -> {
+                if (exchange != null) {
+                    exchange.clientStalled();
+                }
+            }
         }
     }
 
@@ -196,7 +228,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         boolean whole = exchange == null || exchange.requestComplete();
         exchange = null;
         if (keep) {
-            deadline.in(pool.settings().timeouts().idleNanos());
+            clock.idle();
             catchUp();
         } else if (whole && ahead.isEmpty()) {
             ending.afterFlush();
@@ -221,6 +253,8 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
             updateReading();
             if (exchange != null) {
                 exchange.flushRequest();
+            } else if (ahead.isEmpty() && decoder.headOpen()) {
+                clock.head();
             }
         }
     }

@@ -1,34 +1,46 @@
 package steelyard.balancer.live.http;
 
+import io.netty.channel.Channel;
 import java.net.Inet6Address;
 import java.net.InetAddress;
 import java.net.InetSocketAddress;
 import java.net.SocketAddress;
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.settings.FrontSettings;
 
-/** The element that the balancer appends to Forwarded (RFC 7239): for, host, proto. */
+/** The element that the balancer appends to Forwarded (RFC 7239): for, by, host, proto. */
 final class ForwardedElement {
     private ForwardedElement() {}
 
-    static String of(@Nullable SocketAddress client, @Nullable String host) {
-        StringBuilder element = new StringBuilder("for=").append(node(client));
+    /** @param host of the request, which goes on; {@code for} and {@code by} are made up where the pool hides them */
+    static String of(Channel client, @Nullable String host, PoolFront pool) {
+        FrontSettings front = pool.settings().front();
+        SocketAddress from = client.remoteAddress();
+        SocketAddress at = client.localAddress();
+        boolean hidden = front.forwarded() == FrontSettings.Forwarded.HIDDEN;
+        StringBuilder element = new StringBuilder("for=")
+                .append(hidden ? pool.hiddenNames().of(from, false) : node(from, false))
+                .append(";by=")
+                .append(hidden ? pool.hiddenNames().of(at, true) : node(at, true));
         if (host != null && !host.isEmpty()) {
             element.append(";host=").append(value(host));
         }
-        return element.append(";proto=http").toString();
+        return element.append(front.tls() == null ? ";proto=http" : ";proto=https")
+                .toString();
     }
 
-    private static String node(@Nullable SocketAddress client) {
-        if (!(client instanceof InetSocketAddress address) || address.getAddress() == null) {
+    /** Quoted where it holds a colon (RFC 7239, 4 and 6). */
+    static String node(@Nullable SocketAddress of, boolean withPort) {
+        if (!(of instanceof InetSocketAddress address) || address.getAddress() == null) {
             return "unknown";
         }
         InetAddress ip = address.getAddress();
-        if (!(ip instanceof Inet6Address)) {
-            return ip.getHostAddress();
-        }
         String text = ip.getHostAddress();
-        int zone = text.indexOf('%');
-        return "\"[" + (zone < 0 ? text : text.substring(0, zone)) + "]\"";
+        if (ip instanceof Inet6Address) {
+            int zone = text.indexOf('%');
+            text = "[" + (zone < 0 ? text : text.substring(0, zone)) + "]";
+        }
+        return value(withPort ? text + ":" + address.getPort() : text);
     }
 
     /** A token as it is, anything else as a quoted string (RFC 9110, 5.6). */

@@ -102,8 +102,9 @@ public final class Forwarding {
                 throw new IllegalStateException("a loop of another balancer");
             }
             clients.add(channel);
+            RequestDecoder decoder = Codecs.requests(front.settings().limits());
             ClientEncoder encoder = new ClientEncoder();
-            channel.pipeline().addLast(Codecs.requests(), encoder, new ClientHandler(front, there, encoder, channel));
+            channel.pipeline().addLast(decoder, encoder, new ClientHandler(front, there, decoder, encoder, channel));
         }
     }
 }

@@ -13,6 +13,10 @@ enum OwnAnswer {
     MALFORMED(HttpResponseStatus.BAD_GATEWAY, "http_protocol_error", "The backend did not answer in HTTP."),
     LATE(HttpResponseStatus.GATEWAY_TIMEOUT, "http_response_timeout", "The backend did not answer in time."),
     STALLED(HttpResponseStatus.GATEWAY_TIMEOUT, "connection_read_timeout", "The backend fell silent."),
+    LOOP(
+            HttpResponseStatus.BAD_GATEWAY,
+            "proxy_loop_detected",
+            "The request came back to the balancer that passed it on."),
     CUT(
             HttpResponseStatus.SERVICE_UNAVAILABLE,
             "connection_terminated; details=\"cut\"",
@@ -23,6 +27,10 @@ enum OwnAnswer {
     FAULTY_FRAMING(HttpResponseStatus.BAD_REQUEST, null, "The length of the request's content is not clear."),
     TOO_LONG_TARGET(HttpResponseStatus.REQUEST_URI_TOO_LONG, null, "The request line is too long."),
     TOO_LARGE_FIELDS(HttpResponseStatus.REQUEST_HEADER_FIELDS_TOO_LARGE, null, "The header section is too large."),
+    TOO_LARGE_CONTENT(
+            HttpResponseStatus.REQUEST_ENTITY_TOO_LARGE, null, "The request's content is larger than is taken here."),
+    LONG_METHOD(HttpResponseStatus.NOT_IMPLEMENTED, null, "No method of that length is served here."),
+    SLOW_HEAD(HttpResponseStatus.REQUEST_TIMEOUT, null, "The request's head did not come in time."),
     SLOW_CLIENT(HttpResponseStatus.REQUEST_TIMEOUT, null, "The request's content did not come in time."),
     NO_TUNNEL(HttpResponseStatus.NOT_IMPLEMENTED, null, "CONNECT is not served here."),
     OTHER_VERSION(HttpResponseStatus.HTTP_VERSION_NOT_SUPPORTED, null, "Only version 1.1 is served here."),

@@ -17,7 +17,8 @@ record PoolFront(
         RequestNumbers numbers,
         String balancer,
         AsciiString via11,
-        AsciiString via10) {
+        AsciiString via10,
+        HiddenNames hiddenNames) {
 
     static PoolFront of(
             int number, PoolSettings settings, GuardedDecider decider, RequestNumbers numbers, String balancer) {
@@ -28,7 +29,8 @@ record PoolFront(
                 numbers,
                 balancer,
                 AsciiString.cached("1.1 " + balancer),
-                AsciiString.cached("1.0 " + balancer));
+                AsciiString.cached("1.0 " + balancer),
+                new HiddenNames());
     }
 
     boolean pins() {

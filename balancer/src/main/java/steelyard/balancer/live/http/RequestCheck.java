@@ -7,7 +7,6 @@ import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpUtil;
 import io.netty.handler.codec.http.TooLongHttpHeaderException;
-import io.netty.handler.codec.http.TooLongHttpLineException;
 import java.util.Iterator;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
@@ -25,7 +24,7 @@ final class RequestCheck {
             return OwnAnswer.OTHER_VERSION;
         }
         if (HttpMethod.CONNECT.equals(request.method())) {
-            return OwnAnswer.NO_TUNNEL;
+            return namesPort(request.uri()) ? OwnAnswer.NO_TUNNEL : OwnAnswer.FAULTY;
         }
         HttpHeaders headers = request.headers();
         if (!framingClear(request, headers)) {
@@ -34,11 +33,19 @@ final class RequestCheck {
         return hostValid(request, headers) ? null : OwnAnswer.FAULTY_HOST;
     }
 
+    /** The answer to a message whose decoding failed so. */
     static OwnAnswer faulty(Throwable cause) {
-        if (cause instanceof TooLongHttpLineException) {
-            return OwnAnswer.TOO_LONG_TARGET;
+        if (cause instanceof Refusal refusal) {
+            return refusal.answer();
         }
         return cause instanceof TooLongHttpHeaderException ? OwnAnswer.TOO_LARGE_FIELDS : OwnAnswer.FAULTY;
+    }
+
+    /** The target of CONNECT is host and port, and a port that is empty or none is refused (RFC 9110, 9.3.6). */
+    private static boolean namesPort(String target) {
+        int colon = target.lastIndexOf(':');
+        String port = target.substring(colon + 1);
+        return colon > 0 && port.matches("[0-9]{1,5}") && Integer.parseInt(port) <= 65_535;
     }
 
     /** The decoder refuses both lengths at once and lists of lengths; left are transfer codings other than chunked. */

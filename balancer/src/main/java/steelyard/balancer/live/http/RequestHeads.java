@@ -1,11 +1,11 @@
 package steelyard.balancer.live.http;
 
+import io.netty.channel.Channel;
 import io.netty.handler.codec.http.HttpHeaderNames;
 import io.netty.handler.codec.http.HttpHeaders;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpVersion;
-import java.net.SocketAddress;
 import java.util.Locale;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.settings.FrontSettings;
@@ -15,7 +15,7 @@ final class RequestHeads {
     private RequestHeads() {}
 
     /** @return the answer that the request gets here instead, or null when it can be forwarded */
-    static @Nullable OwnAnswer prepare(HttpRequest request, PoolFront pool, @Nullable SocketAddress client) {
+    static @Nullable OwnAnswer prepare(HttpRequest request, PoolFront pool, Channel channel) {
         HttpHeaders headers = request.headers();
         boolean oldClient = request.protocolVersion().minorVersion() == 0;
         OwnAnswer here = countForward(request, headers);
@@ -34,9 +34,12 @@ final class RequestHeads {
                 headers.set(HttpHeaderNames.HOST, "");
             }
         }
+        if (Loops.returns(headers, pool.balancer())) {
+            return OwnAnswer.LOOP;
+        }
         headers.add(HttpHeaderNames.VIA, oldClient ? pool.via10() : pool.via11());
         if (pool.settings().front().forwarded() != FrontSettings.Forwarded.NOT) {
-            headers.add(Fields.FORWARDED, ForwardedElement.of(client, headers.get(HttpHeaderNames.HOST)));
+            headers.add(Fields.FORWARDED, ForwardedElement.of(channel, headers.get(HttpHeaderNames.HOST), pool));
         }
         request.setProtocolVersion(HttpVersion.HTTP_1_1);
         return null;

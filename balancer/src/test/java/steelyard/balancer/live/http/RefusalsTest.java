@@ -76,7 +76,8 @@ class RefusalsTest {
         EmbeddedChannel channel = new EmbeddedChannel();
         ClientEncoder encoder = new ClientEncoder();
         LoopConnections none = new LoopConnections(new io.netty.bootstrap.Bootstrap(), List.of(), List.of());
-        channel.pipeline().addLast(Codecs.requests(), encoder, new ClientHandler(front, none, encoder, channel));
+        RequestDecoder decoder = Codecs.requests(POOL.limits());
+        channel.pipeline().addLast(decoder, encoder, new ClientHandler(front, none, decoder, encoder, channel));
         return channel;
     }
 
