@@ -14,13 +14,15 @@ import steelyard.backends.behave.BehaviourSettings;
  * @param loadPath the path of its load page, starting with a slash, or null if it has none; only with a behaviour that has
  *     a load page
  * @param answers folder of mapping files that make its answers, or null for the plain answer of its behaviour
+ * @param tls whether it serves TLS, with the certificate of {@link Fleet#certificate}
  */
 public record BackendSpec(
         String name,
         BehaviourSettings behaviour,
         @Nullable String probePath,
         @Nullable String loadPath,
-        @Nullable Path answers) {
+        @Nullable Path answers,
+        boolean tls) {
     public BackendSpec {
         Objects.requireNonNull(name);
         Objects.requireNonNull(behaviour);
@@ -34,9 +36,9 @@ public record BackendSpec(
         }
     }
 
-    /** Without a load page. */
+    /** Without a load page and TLS. */
     public BackendSpec(String name, BehaviourSettings behaviour, @Nullable String probePath, @Nullable Path answers) {
-        this(name, behaviour, probePath, null, answers);
+        this(name, behaviour, probePath, null, answers, false);
     }
 
     private static void requirePath(String name, String what, @Nullable String path) {

@@ -3,6 +3,7 @@ package steelyard.backends.fleet;
 import io.netty.channel.EventLoopGroup;
 import java.net.InetSocketAddress;
 import java.nio.file.Path;
+import java.security.cert.X509Certificate;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.CompletableFuture;
@@ -19,6 +20,7 @@ import steelyard.backends.stub.BackendListener;
 import steelyard.backends.stub.BadAnswers;
 import steelyard.backends.stub.Stub;
 import steelyard.backends.stub.StubSettings;
+import steelyard.backends.stub.ThrowAwayCertificate;
 import steelyard.backends.stub.Transport;
 
 /** All backends in this process, each on a loopback port of its own, sharing a few event loops. */
@@ -31,6 +33,7 @@ public final class EmbeddedFleet implements Fleet {
     private final List<Stub> stubs = new ArrayList<>();
     private final List<InetSocketAddress> addresses = new ArrayList<>();
     private @Nullable EventLoopGroup group;
+    private @Nullable ThrowAwayCertificate tls;
     private boolean started;
 
     /** One event loop for all. */
@@ -54,6 +57,7 @@ public final class EmbeddedFleet implements Fleet {
         }
         started = true;
         List<@Nullable Answers> folders = readFolders(backends);
+        tls = backends.stream().anyMatch(BackendSpec::tls) ? ThrowAwayCertificate.make() : null;
         group = transport.loops(loops, "backends");
         try {
             for (int backend = 0; backend < backends.size(); backend++) {
@@ -68,6 +72,11 @@ public final class EmbeddedFleet implements Fleet {
     @Override
     public InetSocketAddress address(int backend) {
         return addresses.get(backend);
+    }
+
+    @Override
+    public @Nullable X509Certificate certificate() {
+        return tls == null ? null : tls.certificate();
     }
 
     @Override
@@ -130,8 +139,15 @@ public final class EmbeddedFleet implements Fleet {
             throws CannotStart {
         InetSocketAddress address =
                 new InetSocketAddress("127.0.0.1", Ports.ofThisProcess().next());
-        StubSettings settings =
-                new StubSettings(backend, address, spec.behaviour(), seed, spec.probePath(), spec.loadPath(), answers);
+        StubSettings settings = new StubSettings(
+                backend,
+                address,
+                spec.behaviour(),
+                seed,
+                spec.probePath(),
+                spec.loadPath(),
+                answers,
+                spec.tls() ? tls : null);
         List<Throwable> failures = new ArrayList<>();
         Stub stub = await(Stub.start(settings, transport, on.next(), clock, listener), failures);
         if (stub == null) {

@@ -1,9 +1,11 @@
 package steelyard.backends.fleet;
 
 import java.net.InetSocketAddress;
+import java.security.cert.X509Certificate;
 import java.util.List;
 import java.util.concurrent.CompletableFuture;
 import java.util.function.LongSupplier;
+import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Change;
 import steelyard.backends.behave.Figures;
 import steelyard.backends.stub.BackendListener;
@@ -29,6 +31,13 @@ public interface Fleet extends AutoCloseable {
 
     /** Where a backend listens; it keeps this address through kill and revive. */
     InetSocketAddress address(int backend);
+
+    /**
+     * What a client of the backends that serve TLS has to trust: one certificate for all of them, made at the start and for
+     * their addresses; null if none of them does.
+     */
+    @Nullable
+    X509Certificate certificate();
 
     /** Applies a change; see {@link steelyard.backends.stub.StubControl#apply}. */
     CompletableFuture<Long> apply(int backend, Change change);

@@ -13,8 +13,11 @@ import io.netty.handler.codec.http.HttpContent;
 import io.netty.handler.codec.http.HttpHeaderNames;
 import io.netty.handler.codec.http.HttpHeaderValues;
 import io.netty.handler.codec.http.HttpRequest;
+import io.netty.handler.codec.http.HttpResponseEncoder;
+import io.netty.handler.codec.http.HttpResponseStatus;
 import io.netty.handler.codec.http.HttpUtil;
 import io.netty.handler.codec.http.LastHttpContent;
+import io.netty.handler.ssl.SslHandler;
 import io.netty.util.ReferenceCountUtil;
 import java.util.ArrayDeque;
 import java.util.Deque;
@@ -37,6 +40,8 @@ final class Connection extends ChannelInboundHandlerAdapter {
     private @Nullable ByteBuf body;
     /** No request is taken after one that closes the connection. */
     private boolean closing;
+
+    private boolean tunnelling;
 
     Connection(PlanRunner runner) {
         this.runner = runner;
@@ -65,6 +70,9 @@ final class Connection extends ChannelInboundHandlerAdapter {
     @Override
     public void channelInactive(ChannelHandlerContext unused) {
         runner.closed(this);
+        if (tunnelling) {
+            runner.tunnelClosed();
+        }
         releaseBody();
         exchanges.forEach(runner::abandon);
         exchanges.clear();
@@ -93,7 +101,9 @@ final class Connection extends ChannelInboundHandlerAdapter {
         ChannelHandlerContext open = context;
         if (open != null) {
             open.channel().config().setOption(ChannelOption.SO_LINGER, 0);
-            open.close();
+            // Past the handler of TLS, if there is one: a process that dies says nothing more.
+            ChannelHandlerContext tls = open.pipeline().context(SslHandler.class);
+            (tls == null ? open : tls).close();
         }
     }
 
@@ -150,7 +160,8 @@ final class Connection extends ChannelInboundHandlerAdapter {
     }
 
     private void send(Exchange exchange, FullHttpResponse reply) {
-        if (!exchange.keepAlive) {
+        boolean switches = reply.status().code() == HttpResponseStatus.SWITCHING_PROTOCOLS.code();
+        if (!exchange.keepAlive && !switches) {
             reply.headers().set(HttpHeaderNames.CONNECTION, HttpHeaderValues.CLOSE);
         }
         ChannelFuture sent = opened().writeAndFlush(reply);
@@ -159,9 +170,32 @@ final class Connection extends ChannelInboundHandlerAdapter {
         } else {
             sent.addListener(done -> runner.sent(exchange, done.isSuccess()));
         }
-        if (!exchange.keepAlive) {
+        if (switches) {
+            tunnel();
+        } else if (!exchange.keepAlive) {
             sent.addListener(ChannelFutureListener.CLOSE);
+        } else if (exchange.upgrade != null) {
+            stayWithHttp();
         }
+    }
+
+    /** What was read behind the request goes to the tunnel with the rest. */
+    private void tunnel() {
+        tunnelling = true;
+        runner.tunnelOpened();
+        opened().channel().config().setOption(ChannelOption.ALLOW_HALF_CLOSURE, true);
+        opened().pipeline().remove(HttpResponseEncoder.class);
+        opened().pipeline().replace(RequestDecoder.class, "tunnel", new Tunnel());
+    }
+
+    private void stayWithHttp() {
+        // Not from inside the sending of replies: requests that were held back may be answered at once.
+        opened().executor().execute(() -> {
+            RequestDecoder decoder = opened().pipeline().get(RequestDecoder.class);
+            if (decoder != null) {
+                decoder.goOn();
+            }
+        });
     }
 
     private void readAgain() {

@@ -30,6 +30,10 @@ final class Exchange {
     @Nullable
     HttpRequest head;
 
+    /** The protocol that it asks to go on in, or null; only a request gets its wish. */
+    @Nullable
+    Upgrade upgrade;
+
     /** What the mappings answer, found when the request had been read. */
     Answers.@Nullable Answer answer;
 

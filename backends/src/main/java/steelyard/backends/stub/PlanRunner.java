@@ -1,10 +1,7 @@
 package steelyard.backends.stub;
 
 import io.netty.channel.EventLoop;
-import io.netty.handler.codec.http.FullHttpResponse;
-import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
-import io.netty.handler.codec.http.HttpUtil;
 import io.netty.util.collection.LongObjectHashMap;
 import io.netty.util.collection.LongObjectMap;
 import java.util.ArrayList;
@@ -13,7 +10,6 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import java.util.function.LongSupplier;
-import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Behaviour;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Change;
@@ -31,7 +27,8 @@ final class PlanRunner implements ReplySink {
     private final StubSettings settings;
     private final LongSupplier clock;
     private final BackendListener listener;
-    private final Chance chance;
+    private final Reception reception;
+    private final AnswerMaker answers;
     private final Behaviour behaviour;
     private final Replies replies;
     private final Door door;
@@ -39,20 +36,19 @@ final class PlanRunner implements ReplySink {
     private final Set<Connection> connections = new LinkedHashSet<>();
     private final LongObjectMap<Exchange> held = new LongObjectHashMap<>();
 
-    private long tokens;
-    private @Nullable LoadText loadText;
-    private long probes;
-    private long readings;
-    private long unnumbered;
     private long bodyBytes;
+    private long tunnelled;
+    private int tunnels;
 
     PlanRunner(StubSettings settings, EventLoop loop, LongSupplier clock, BackendListener listener, DoorMaker doors) {
         this.settings = settings;
         this.clock = clock;
         this.listener = listener;
-        this.chance = new Chance(settings.seed());
+        Chance chance = new Chance(settings.seed());
         this.behaviour = new Behaviour(settings.backend(), settings.behaviour(), chance, clock.getAsLong());
         this.replies = new Replies(settings.behaviour().bodyBytes());
+        this.reception = new Reception(settings);
+        this.answers = new AnswerMaker(settings.answers(), chance, replies);
         this.door = doors.make(this);
         this.timer = new DeadlineTimer(loop, clock, this::onDeadline);
     }
@@ -92,24 +88,16 @@ final class PlanRunner implements ReplySink {
 
     /** The head of a request was read. */
     Exchange begin(Connection connection, HttpRequest head) {
-        Kind kind = kind(head);
-        long number = numberOf(head, kind);
-        int attempt = (int) Math.max(0, Math.min(Integer.MAX_VALUE, RequestHeads.number(head, StubHeaders.ATTEMPT)));
-        boolean headOnly = HttpMethod.HEAD.equals(head.method());
-        Exchange exchange =
-                new Exchange(connection, tokens++, kind, number, attempt, headOnly, HttpUtil.isKeepAlive(head));
-        if (kind == Kind.REQUEST) {
-            exchange.head = settings.answers() == null ? null : head;
-            listener.received(settings.backend(), number, attempt, clock.getAsLong());
+        Exchange exchange = reception.begin(connection, head);
+        if (exchange.kind == Kind.REQUEST) {
+            listener.received(settings.backend(), exchange.request, exchange.attempt, clock.getAsLong());
         }
         return exchange;
     }
 
     /** A message that is no HTTP request: it is answered, but is neither traffic nor a probe. */
     Exchange malformed(Connection connection) {
-        Exchange exchange = new Exchange(connection, tokens++, Kind.REQUEST, --unnumbered, 0, false, false);
-        exchange.over = true;
-        return exchange;
+        return reception.malformed(connection);
     }
 
     /** A request was read to its end. */
@@ -119,7 +107,7 @@ final class PlanRunner implements ReplySink {
             case PROBE -> behaviour.probe(exchange.token, exchange.request, clock.getAsLong(), this);
             case READING -> behaviour.read(exchange.token, exchange.request, clock.getAsLong(), this);
             case REQUEST -> {
-                long extraNanos = findAnswer(exchange, body);
+                long extraNanos = answers.find(exchange, body);
                 exchange.place = behaviour.arrive(
                         exchange.token, exchange.request, exchange.attempt, extraNanos, clock.getAsLong(), this);
             }
@@ -133,6 +121,16 @@ final class PlanRunner implements ReplySink {
 
     long bodyBytes() {
         return bodyBytes;
+    }
+
+    /** A connection was upgraded. */
+    void tunnelOpened() {
+        tunnelled++;
+        tunnels++;
+    }
+
+    void tunnelClosed() {
+        tunnels--;
     }
 
     /** The connection of an exchange closed before its reply had gone. */
@@ -168,7 +166,7 @@ final class PlanRunner implements ReplySink {
     }
 
     Figures figures() {
-        Figures figures = behaviour.figures(clock.getAsLong(), this);
+        Figures figures = behaviour.figures(clock.getAsLong(), this).withTunnels(tunnelled, tunnels);
         arm();
         return figures;
     }
@@ -196,7 +194,7 @@ final class PlanRunner implements ReplySink {
         Exchange exchange = held.get(token);
         if (exchange != null && reply == Reply.ANSWER) {
             held.remove(token);
-            exchange.connection.reply(exchange, replies.page(loadPage(gauges), exchange.headOnly));
+            exchange.connection.reply(exchange, answers.loadPage(gauges, exchange.headOnly));
         } else {
             finish(token, reply, status);
         }
@@ -226,64 +224,13 @@ final class PlanRunner implements ReplySink {
             return;
         }
         switch (reply) {
-            case ANSWER -> exchange.connection.reply(exchange, answer(exchange, status));
+            case ANSWER -> exchange.connection.reply(exchange, answers.answer(exchange, status));
             case TURNED_AWAY, FAULT ->
                 exchange.connection.reply(exchange, replies.shortText(status, exchange.headOnly));
             case SILENCE, LOST, DROPPED -> {
                 // Nothing is sent. A lost one ends with the reset of its connection, which follows.
             }
         }
-    }
-
-    private FullHttpResponse answer(Exchange exchange, int status) {
-        if (exchange.kind == Kind.PROBE) {
-            return replies.shortText(status, exchange.headOnly);
-        }
-        return exchange.answer == null
-                ? replies.plain(status, exchange.headOnly)
-                : replies.mapped(exchange.answer, exchange.headOnly);
-    }
-
-    private byte[] loadPage(Map<String, Double> gauges) {
-        LoadText text = loadText == null ? loadText = new LoadText() : loadText;
-        return text.page(gauges);
-    }
-
-    private Kind kind(HttpRequest head) {
-        if (RequestHeads.asksFor(head.uri(), settings.probePath())) {
-            return Kind.PROBE;
-        }
-        return RequestHeads.asksFor(head.uri(), settings.loadPath()) ? Kind.READING : Kind.REQUEST;
-    }
-
-    /** The number that the head carries, else a running one; those of requests without one are below 0. */
-    private long numberOf(HttpRequest head, Kind kind) {
-        return switch (kind) {
-            case PROBE -> {
-                long carried = RequestHeads.number(head, StubHeaders.PROBE);
-                probes++;
-                yield carried < 0 ? probes - 1 : carried;
-            }
-            case READING -> readings++;
-            case REQUEST -> {
-                long carried = RequestHeads.number(head, StubHeaders.REQUEST);
-                yield carried < 0 ? --unnumbered : carried;
-            }
-        };
-    }
-
-    private long findAnswer(Exchange exchange, byte[] body) {
-        Answers answers = settings.answers();
-        HttpRequest head = exchange.head;
-        if (answers == null || head == null) {
-            return 0;
-        }
-        List<Map.Entry<String, String>> fields = head.headers().entries();
-        String target = RequestHeads.target(head.uri());
-        Answers.Answer answer = answers.find(new Answers.Asked(head.method().name(), target, fields, body));
-        exchange.head = null;
-        exchange.answer = answer;
-        return answer.delay().nanos(chance, exchange.request, exchange.attempt);
     }
 
     private void arm() {

@@ -79,6 +79,14 @@ final class Replies {
         return reply;
     }
 
+    /** Agrees to go on in another protocol. */
+    FullHttpResponse switching(String protocol) {
+        FullHttpResponse reply = message(HttpResponseStatus.SWITCHING_PROTOCOLS.code(), Unpooled.EMPTY_BUFFER);
+        reply.headers().set(HttpHeaderNames.CONNECTION, HttpHeaderValues.UPGRADE);
+        reply.headers().set(HttpHeaderNames.UPGRADE, protocol);
+        return reply;
+    }
+
     /** Tells a client that waits to send its body. */
     static FullHttpResponse goOn() {
         return message(HttpResponseStatus.CONTINUE.code(), Unpooled.EMPTY_BUFFER);

@@ -5,7 +5,6 @@ import io.netty.channel.ChannelInitializer;
 import io.netty.channel.ChannelOption;
 import io.netty.channel.EventLoop;
 import io.netty.channel.socket.SocketChannel;
-import io.netty.handler.codec.http.HttpRequestDecoder;
 import io.netty.handler.codec.http.HttpResponseEncoder;
 import java.util.concurrent.CompletableFuture;
 import java.util.concurrent.RejectedExecutionException;
@@ -113,6 +112,7 @@ public final class Stub implements StubControl {
     }
 
     private static Door door(StubSettings settings, Transport transport, EventLoop loop, PlanRunner runner) {
+        ThrowAwayCertificate tls = settings.tls();
         ServerBootstrap bootstrap = new ServerBootstrap()
                 .group(loop)
                 .channel(transport.serverChannel())
@@ -122,8 +122,11 @@ public final class Stub implements StubControl {
                 .childHandler(new ChannelInitializer<SocketChannel>() {
                     @Override
                     protected void initChannel(SocketChannel channel) {
+                        if (tls != null) {
+                            channel.pipeline().addLast(tls.server().newHandler(channel.alloc()));
+                        }
                         channel.pipeline()
-                                .addLast(new HttpRequestDecoder(), new HttpResponseEncoder(), new Connection(runner));
+                                .addLast(new RequestDecoder(), new HttpResponseEncoder(), new Connection(runner));
                     }
                 });
         return new Door(loop, bootstrap, settings.address());

@@ -16,6 +16,7 @@ import steelyard.backends.behave.BehaviourSettings;
  * @param loadPath path that is a reading of the load page and not traffic, or null for none; only with a behaviour that has
  *     a load page
  * @param answers where its answers come from, or null for the plain answer of the behaviour
+ * @param tls what it serves TLS with, or null for none
  */
 public record StubSettings(
         int backend,
@@ -24,7 +25,8 @@ public record StubSettings(
         long seed,
         @Nullable String probePath,
         @Nullable String loadPath,
-        @Nullable Answers answers) {
+        @Nullable Answers answers,
+        @Nullable ThrowAwayCertificate tls) {
     public StubSettings {
         Objects.requireNonNull(address);
         Objects.requireNonNull(behaviour);
@@ -39,7 +41,7 @@ public record StubSettings(
         }
     }
 
-    /** Without a load page. */
+    /** Without a load page and TLS. */
     public StubSettings(
             int backend,
             InetSocketAddress address,
@@ -47,6 +49,6 @@ public record StubSettings(
             long seed,
             @Nullable String probePath,
             @Nullable Answers answers) {
-        this(backend, address, behaviour, seed, probePath, null, answers);
+        this(backend, address, behaviour, seed, probePath, null, answers, null);
     }
 }

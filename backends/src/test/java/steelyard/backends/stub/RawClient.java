@@ -68,6 +68,11 @@ public final class RawClient implements AutoCloseable {
         return new String(in.readAllBytes(), StandardCharsets.ISO_8859_1);
     }
 
+    /** Ends this side of the connection; the other may go on. */
+    public void endOutput() throws IOException {
+        socket.shutdownOutput();
+    }
+
     public void longestRead(int millis) throws IOException {
         socket.setSoTimeout(millis);
     }
