@@ -26,6 +26,11 @@ public final class Keys {
         return mix(key ^ mix(number + 1));
     }
 
+    /** Another 64 bits for each key. */
+    static long of(long key) {
+        return mix(key);
+    }
+
     private static long mix(long z) {
         z = (z ^ (z >>> 30)) * 0xBF58476D1CE4E5B9L;
         z = (z ^ (z >>> 27)) * 0x94D049BB133111EBL;

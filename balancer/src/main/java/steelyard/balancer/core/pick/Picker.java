@@ -8,7 +8,7 @@ package steelyard.balancer.core.pick;
  * turns that were under way is each method's own rule.
  *
  * <p>Cost: every call takes at most a few times log2(members) steps and allocates nothing, but for the turns of warming
- * members that pass unserved. Owned by one Decider; not thread-safe.
+ * members that pass unserved and for what {@link Hash} says of its tables. Owned by one Decider; not thread-safe.
  */
 public interface Picker {
     /** What {@link #pick} says when no member may be picked. */
@@ -57,4 +57,9 @@ public interface Picker {
      * Decider ramps the weight it tells.
      */
     boolean takesTurns();
+
+    /** Whether set weights play a part; where not, everybody is told the weight of one, ramped as {@link #takesTurns} says. */
+    default boolean weighs() {
+        return true;
+    }
 }

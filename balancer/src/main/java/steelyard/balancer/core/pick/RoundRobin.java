@@ -41,4 +41,9 @@ public final class RoundRobin extends TournamentPicker {
     public boolean takesTurns() {
         return true;
     }
+
+    @Override
+    public boolean weighs() {
+        return false;
+    }
 }

@@ -10,7 +10,7 @@ class MethodsTest {
     private static final int[] NONE = {};
 
     @Nested
-    class OfRoundRobin extends PickerContract {
+    class OfRoundRobin extends TurnsContract {
         @Override
         Picker picker(int members, Ramp ramp) {
             return new RoundRobin(members, ramp);
@@ -28,7 +28,7 @@ class MethodsTest {
     }
 
     @Nested
-    class OfWeightedRoundRobin extends PickerContract {
+    class OfWeightedRoundRobin extends TurnsContract {
         @Override
         Picker picker(int members, Ramp ramp) {
             return new WeightedRoundRobin(members, ramp);
@@ -91,7 +91,7 @@ class MethodsTest {
     }
 
     @Nested
-    class OfStride extends PickerContract {
+    class OfStride extends TurnsContract {
         @Override
         Picker picker(int members, Ramp ramp) {
             return new Stride(members);
@@ -125,7 +125,7 @@ class MethodsTest {
     }
 
     @Nested
-    class OfLeastConnections extends PickerContract {
+    class OfLeastConnections extends TurnsContract {
         @Override
         Picker picker(int members, Ramp ramp) {
             return new LeastConnections(members);
@@ -147,7 +147,7 @@ class MethodsTest {
     }
 
     @Nested
-    class OfHostTurns extends PickerContract {
+    class OfHostTurns extends TurnsContract {
         @Override
         Picker picker(int members, Ramp ramp) {
             int[] weights = new int[members];
