@@ -98,7 +98,8 @@ public final class Decider {
                 members.stream().mapToInt(BackendSettings::host).toArray(),
                 hostWeights,
                 firstPlaces,
-                againPlaces);
+                againPlaces,
+                chance);
         return next;
     }
 

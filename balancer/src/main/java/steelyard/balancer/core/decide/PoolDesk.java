@@ -1,15 +1,27 @@
 package steelyard.balancer.core.decide;
 
+import java.util.List;
+import steelyard.balancer.core.pick.ExpectedDelayOfAll;
+import steelyard.balancer.core.pick.ExpectedDelayOfTwo;
+import steelyard.balancer.core.pick.Hash;
 import steelyard.balancer.core.pick.HostPlaces;
 import steelyard.balancer.core.pick.HostTurns;
+import steelyard.balancer.core.pick.JoinIdleQueue;
 import steelyard.balancer.core.pick.LeastConnections;
+import steelyard.balancer.core.pick.Lots;
 import steelyard.balancer.core.pick.Picker;
 import steelyard.balancer.core.pick.Ramp;
+import steelyard.balancer.core.pick.Random;
 import steelyard.balancer.core.pick.RoundRobin;
 import steelyard.balancer.core.pick.Stride;
+import steelyard.balancer.core.pick.TwoChoices;
+import steelyard.balancer.core.pick.WeightedRandom;
 import steelyard.balancer.core.pick.WeightedRoundRobin;
 import steelyard.balancer.core.standing.BackendStanding;
 import steelyard.balancer.core.weigh.PoolWeights;
+import steelyard.balancer.settings.BackendSettings;
+import steelyard.balancer.settings.DelaySettings;
+import steelyard.balancer.settings.HashSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.WarmUpSettings;
 
@@ -22,6 +34,9 @@ final class PoolDesk {
     /** The ramp of a method that does not take turns is told in steps of a thousandth of its length. */
     private static final int RAMP_STEPS = 1000;
 
+    /** Room for the lots of one attempt among the numbers of draws. */
+    private static final int LOTS = 64;
+
     private static final int[] NONE_TRIED = {};
 
     final PoolSettings settings;
@@ -29,6 +44,7 @@ final class PoolDesk {
     final RetryRule retries;
     private final BackendStanding[] standings;
     private final int[] set;
+    private final Lots lots;
     private final Picker first;
     private final Picker again;
     private final long rampStepNanos;
@@ -42,7 +58,8 @@ final class PoolDesk {
             int[] hostOf,
             int[] hostSet,
             HostPlaces firstPlaces,
-            HostPlaces againPlaces) {
+            HostPlaces againPlaces,
+            Chance chance) {
         this.settings = settings;
         this.standings = standings;
         this.set = set;
@@ -50,10 +67,11 @@ final class PoolDesk {
         retries = new RetryRule(settings.retry());
         WarmUpSettings warmUp = settings.warmUp();
         rampStepNanos = warmUp == null ? 0 : Math.max(1, warmUp.rampNanos() / RAMP_STEPS);
+        lots = (request, attempt, draw) -> chance.bits(Chance.Draw.PICK, request, (long) LOTS * attempt + draw);
         first = picker(firstPlaces, hostOf);
         again = picker(againPlaces, hostOf);
         for (int member = 0; member < set.length; member++) {
-            tellWeight(member, (long) set[member] * Picker.MILLI);
+            tellWeight(member, fullWeight(member));
             if (standings[member].shown().pickable()) {
                 first.enter(member);
                 again.enter(member);
@@ -72,8 +90,28 @@ final class PoolDesk {
             case WEIGHTED_ROUND_ROBIN -> new WeightedRoundRobin(members, ramp);
             case STRIDE -> new Stride(members);
             case LEAST_CONNECTIONS -> new LeastConnections(members);
-            case RANDOM, WEIGHTED_RANDOM, TWO_CHOICES, JOIN_IDLE_QUEUE, EXPECTED_DELAY, HASH ->
-                throw new IllegalArgumentException("no picker for " + settings.method());
+            case RANDOM -> new Random(members, lots);
+            case WEIGHTED_RANDOM -> new WeightedRandom(members, lots);
+            case TWO_CHOICES -> new TwoChoices(members, lots);
+            case JOIN_IDLE_QUEUE -> new JoinIdleQueue(members, lots);
+            case EXPECTED_DELAY -> expectedDelay(settings.pick().delay());
+            case HASH -> hash(settings.pick().hash(), ramp);
+        };
+    }
+
+    private Picker expectedDelay(DelaySettings delay) {
+        return delay.all()
+                ? new ExpectedDelayOfAll(set.length, delay.memoryNanos())
+                : new ExpectedDelayOfTwo(set.length, lots, delay.memoryNanos());
+    }
+
+    private Picker hash(HashSettings hash, Ramp ramp) {
+        List<String> names =
+                settings.backends().stream().map(BackendSettings::name).toList();
+        return switch (hash.table()) {
+            case RING -> Hash.overRing(names, hash.points(), hash.bound(), ramp);
+            case RENDEZVOUS -> Hash.byRendezvous(names, hash.bound(), ramp);
+            case PERMUTATION -> Hash.overPermutation(names, hash.size(), hash.bound(), ramp);
         };
     }
 
@@ -125,13 +163,17 @@ final class PoolDesk {
 
     /** Tells the pickers a member's weight: ramped, unless they hold warming members back by turns. */
     private void weigh(int member, long nowNanos) {
-        long full = (long) set[member] * Picker.MILLI;
+        long full = fullWeight(member);
         if (first.takesTurns() || full == 0) {
             tellWeight(member, full);
         } else {
             double ramped = (double) full * standings[member].rampFraction(nowNanos) / Ramp.FULL;
             tellWeight(member, Math.max(1, Math.round(ramped)));
         }
+    }
+
+    private long fullWeight(int member) {
+        return (first.weighs() ? set[member] : 1) * (long) Picker.MILLI;
     }
 
     private void tellWeight(int member, long weightMilli) {
