@@ -106,8 +106,7 @@ final class BackendConnection {
     void release(boolean reusable) {
         exchange = null;
         if (reusable && open()) {
-            read(true);
-            moved();
+            read(true); // the idle limit counts from the bytes that came last, a moment ago
             home.idle(this);
         } else {
             close();

@@ -45,7 +45,9 @@ final class Exchange {
         this.head = head;
         this.body = new RequestBody(pool.retries(), RequestCheck.hasContent(head));
         long number = pool.numbers().of(head.headers());
-        head.headers().set(Fields.REQUEST, number);
+        if (number < 0) { // of our own; one that was given stands there already
+            head.headers().set(Fields.REQUEST, Long.toString(number));
+        }
         this.attempts = new Attempts(pool, head.method(), number);
         this.answer = new AnswerPath(pool, client.output(), head.method(), oldClient);
         this.keepClient = keepClient && !oldClient;
@@ -67,7 +69,7 @@ final class Exchange {
     private void attempt() {
         connected = false;
         headSent = false;
-        head.headers().set(Fields.ATTEMPT, Integer.toString(attempts.attempt()));
+        head.headers().set(Fields.ATTEMPT, Fields.attempt(attempts.attempt()));
         BackendConnection idle = connections.take(attempts.backend());
         if (idle == null) {
             connections.connect(attempts.backend(), this);
@@ -90,11 +92,12 @@ final class Exchange {
         connection = to;
         connected = true;
         headSent = true;
-        to.moved();
         to.serve(this, body.empty() ? whole() : head);
         body.sendAll(to);
         if (body.complete()) {
             to.awaitFirstByte();
+        } else {
+            to.moved();
         }
     }
 

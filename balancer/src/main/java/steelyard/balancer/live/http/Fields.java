@@ -5,6 +5,7 @@ import io.netty.handler.codec.http.HttpHeaderValues;
 import io.netty.handler.codec.http.HttpHeaders;
 import io.netty.util.AsciiString;
 import java.util.List;
+import java.util.stream.Stream;
 
 /** Header fields of our own, and the removal of those that are meant for one connection only (RFC 9110, 7.6.1). */
 final class Fields {
@@ -19,7 +20,16 @@ final class Fields {
     private static final AsciiString KEEP_ALIVE = AsciiString.cached("keep-alive");
     private static final AsciiString PROXY_CONNECTION = AsciiString.cached("proxy-connection");
 
+    /** Values of {@link #ATTEMPT} that are met again and again. */
+    private static final List<AsciiString> ATTEMPTS =
+            Stream.of("1", "2", "3", "4").map(AsciiString::cached).toList();
+
     private Fields() {}
+
+    /** The value of {@link #ATTEMPT}. */
+    static CharSequence attempt(int number) {
+        return number <= ATTEMPTS.size() ? ATTEMPTS.get(number - 1) : Integer.toString(number);
+    }
 
     /**
      * Removes the fields of one hop, but Transfer-Encoding, which is framing.
