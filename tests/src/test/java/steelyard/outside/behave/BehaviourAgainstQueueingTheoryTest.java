@@ -13,7 +13,10 @@ import steelyard.backends.behave.BehaviourSettings;
 import steelyard.backends.behave.ServiceTime;
 import steelyard.backends.behave.ServiceTime.Exponential;
 import steelyard.backends.behave.ServiceTime.Fixed;
+import steelyard.backends.behave.ServiceTime.Gamma;
 import steelyard.backends.behave.ServiceTime.Lognormal;
+import steelyard.backends.behave.ServiceTime.Order;
+import steelyard.backends.behave.ServiceTime.Trace;
 import steelyard.outside.CheckTable;
 
 /**
@@ -109,6 +112,38 @@ class BehaviourAgainstQueueingTheoryTest {
         ServiceTime time = service(model, row);
         assertThat(Math.abs(time.meanNanos() / MEAN_SERVICE_NANOS - 1)).isLessThan(1e-6);
         assertThat(Math.abs(time.squaredVariation() - variation)).isLessThan(1e-6);
+        BehaviourSettings settings = BehaviourSettings.of(1, UNLIMITED, time);
+        Sample waits = new Sample(REPLICATIONS);
+        for (int seed = 1; seed <= REPLICATIONS; seed++) {
+            waits.add(OpenQueue.run(settings, load, arrivals, seed).meanWait());
+        }
+        waits.mustAgreeWith("mean wait", number(row, "mean_wait_in_mean_service_times"), WIDEST_ERROR);
+    }
+
+    // The formula knows of a service time only its mean and variation, so a row holds for every law that has these:
+    // gamma of
+    // shape 1 / variation (Erlang's two phases at 0.5), and a trace of 0.5 and 1.5, whose variation is 0.25.
+    @ParameterizedTest
+    @CsvSource({
+        "gamma, M/E2/1, 0.5, 0.5, 20000",
+        "gamma, M/E2/1, 0.8, 0.5, 60000",
+        "gamma, M/G/1 lognormal, 0.8, 0.25, 60000",
+        "gamma, M/G/1 lognormal, 0.5, 4, 100000",
+        "trace, M/G/1 lognormal, 0.5, 0.25, 20000",
+        "trace, M/G/1 lognormal, 0.8, 0.25, 60000"
+    })
+    void wait_gammaAndTracedService_isPollaczekKhinchine(
+            String law, String model, double load, double variation, long arrivals) {
+        Map<String, String> row = row(
+                "mg1.csv",
+                r -> model.equals(r.get("model"))
+                        && number(r, "utilisation_rho") == load
+                        && number(r, "squared_coefficient_of_variation") == variation);
+        ServiceTime time = law.equals("gamma")
+                ? new Gamma(MEAN_SERVICE_NANOS, 1 / variation)
+                : new Trace(new long[] {MEAN_SERVICE_NANOS / 2, MEAN_SERVICE_NANOS / 2 * 3}, Order.SAMPLED);
+        assertThat(time.meanNanos()).isEqualTo(MEAN_SERVICE_NANOS);
+        assertThat(time.squaredVariation()).isEqualTo(variation);
         BehaviourSettings settings = BehaviourSettings.of(1, UNLIMITED, time);
         Sample waits = new Sample(REPLICATIONS);
         for (int seed = 1; seed <= REPLICATIONS; seed++) {
