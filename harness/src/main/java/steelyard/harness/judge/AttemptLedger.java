@@ -8,6 +8,9 @@ import steelyard.harness.record.Words;
  * Attempts as the balancer and the backends tell of them, matched by request and attempt number. An entry goes when
  * both sides have ended it, or when the balancer's attempt failed before a backend had read it: such a one may still be
  * read later, and is then matched by count.
+ *
+ * <p>Where octets are passed on as they come, the balancer tells of connections, under numbers below zero, and the
+ * backends of the requests in them. There is nothing to match then; the connections' times in flight still count.
  */
 final class AttemptLedger extends LongTable {
     private static final int ATTEMPT_BITS = 8;
@@ -27,6 +30,9 @@ final class AttemptLedger extends LongTable {
     private short[] answered = new short[capacity()];
     private long[] pickNanos = new long[capacity()];
 
+    /** By backend: whether it is reached by connections that are passed on as they come. */
+    private final boolean[] byConnection;
+
     private final long[] timeNanos;
     private final long[] apart = new long[OUTCOMES.length];
     private final long[] unread = new long[OUTCOMES.length];
@@ -41,9 +47,12 @@ final class AttemptLedger extends LongTable {
     private long openInBalancer;
     private long openInBackend;
     private long leftBehind;
+    private long connections;
 
-    AttemptLedger(int backends) {
-        timeNanos = new long[backends];
+    /** @param byConnection by backend: whether it is reached by connections that are passed on as they come */
+    AttemptLedger(boolean[] byConnection) {
+        this.byConnection = byConnection;
+        timeNanos = new long[byConnection.length];
     }
 
     void picked(long atNanos, int backend, long request, int attempt) {
@@ -68,6 +77,11 @@ final class AttemptLedger extends LongTable {
             differing++;
         }
         timeNanos[backend] += atNanos - pickNanos[place];
+        if (byConnection[backend]) {
+            connections++;
+            remove(place);
+            return;
+        }
         state[place] |= ENDED;
         outcome[place] = (byte) how.ordinal();
         told[place] = (short) status;
@@ -75,6 +89,9 @@ final class AttemptLedger extends LongTable {
     }
 
     void received(int backend, long request, int attempt) {
+        if (byConnection[backend]) {
+            return;
+        }
         if (foreign(request, attempt)) {
             foreign++;
             return;
@@ -94,7 +111,7 @@ final class AttemptLedger extends LongTable {
     }
 
     void left(int backend, long request, int attempt, boolean inFull, int status) {
-        if (foreign(request, attempt)) {
+        if (byConnection[backend] || foreign(request, attempt)) {
             return;
         }
         int place = find(key(request, attempt));
@@ -115,7 +132,8 @@ final class AttemptLedger extends LongTable {
             }
             if ((state[place] & ENDED) == 0) {
                 timeNanos[backendOf[place]] += atNanos - pickNanos[place];
-                openInBalancer++;
+                openInBalancer += byConnection[backendOf[place]] ? 0 : 1;
+                connections += byConnection[backendOf[place]] ? 1 : 0;
             } else if ((state[place] & BELATED) == 0 && OUTCOMES[outcome[place]] == Outcome.ANSWERED) {
                 openInBackend++;
             } else {
@@ -147,6 +165,7 @@ final class AttemptLedger extends LongTable {
                 }
             }
         }
+        note(text, connections, "were connections, which the balancer alone counts");
         note(text, belated, "read after they were given up");
         note(text, foreign, "not of this play");
         note(text, leftBehind, "given up and left in a backend");

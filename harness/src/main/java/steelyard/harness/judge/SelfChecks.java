@@ -37,7 +37,11 @@ final class SelfChecks implements PlayListener {
     SelfChecks(Cast cast) {
         this.cast = cast;
         int backends = cast.backends().size();
-        attempts = new AttemptLedger(backends);
+        boolean[] byConnection = new boolean[backends];
+        for (int backend = 0; backend < backends; backend++) {
+            byConnection[backend] = cast.passesOctets(cast.poolOf(backend));
+        }
+        attempts = new AttemptLedger(byConnection);
         inFlight = new int[backends];
         movedNanos = new long[backends];
         integralNanos = new long[backends];

@@ -77,6 +77,11 @@ public final class Cast {
         return pools.get(pool).weights() == Weights.LOAD;
     }
 
+    /** Whether what is picked for in a pool are connections, whose octets are passed on as they come. */
+    public boolean passesOctets(int pool) {
+        return pools.get(pool).passesOctets();
+    }
+
     /** From one load probe of a pool's backends to the next; 0 where nothing reads their load. */
     public long loadPeriodNanos(int pool) {
         LoadProbe load = pools.get(pool).health().load();

@@ -5,6 +5,7 @@ import static steelyard.harness.record.TestDrill.FULMAR;
 import static steelyard.harness.record.TestDrill.GANNET;
 import static steelyard.harness.record.TestDrill.MS;
 import static steelyard.harness.record.TestDrill.S;
+import static steelyard.harness.record.TestDrill.SKUA;
 
 import org.junit.jupiter.api.Test;
 import steelyard.balancer.core.decide.Outcome;
@@ -201,5 +202,34 @@ class SelfChecksTest {
                 .containsExactly("played to its end");
         assertThat(check(verdict, "requests add up").text())
                 .endsWith("each once; 1 was open when the play was interrupted");
+    }
+
+    @Test
+    void read_connectionsPassedOn_areNotMatchedButTheirTimesAre() {
+        // Two connections to skua, numbered from -1 down; one is still open at the end. The backend tells of the
+        // requests
+        // in them, under the numbers of the client. 2 s and 4 s in flight, on both sides of Little's law.
+        Drill drill = new TestDrill().cargoByConnection().build();
+        Play play = sound().picked(S, SKUA, -1, 1)
+                .at(S, to -> to.backendReceived(S, SKUA, 900, 1))
+                .at(S + MS, to -> to.backendEnded(S + MS, SKUA, 900, 1, true, 200))
+                .ended(3 * S, SKUA, -1, 1, Outcome.RESET, 0)
+                .picked(6 * S, SKUA, -2, 1);
+
+        Verdict verdict = play.verdict(drill);
+
+        assertThat(verdict.checks()).allMatch(SelfCheck::ok);
+        assertThat(check(verdict, ATTEMPTS).text())
+                .isEqualTo("100 agree, 2 were connections, which the balancer alone counts");
+    }
+
+    @Test
+    void read_connectionEndedTwice_isUnfit() {
+        Drill drill = new TestDrill().cargoByConnection().build();
+        Play play = sound().picked(S, SKUA, -1, 1)
+                .ended(2 * S, SKUA, -1, 1, Outcome.ANSWERED, 0)
+                .at(3 * S, to -> to.attemptEnded(3 * S, SKUA, -1, 1, Outcome.ANSWERED, 0, 0));
+
+        assertThat(check(play.verdict(drill), ATTEMPTS).ok()).isFalse();
     }
 }

@@ -9,12 +9,14 @@ import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drain;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Expectation;
+import steelyard.drills.model.Front;
 import steelyard.drills.model.Health;
 import steelyard.drills.model.Host;
 import steelyard.drills.model.InFlight;
 import steelyard.drills.model.LoadProbe;
 import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
+import steelyard.drills.model.Pool.Count;
 import steelyard.drills.model.Pool.Method;
 import steelyard.drills.model.Pool.Weights;
 import steelyard.drills.model.Probe;
@@ -24,6 +26,7 @@ import steelyard.drills.model.Target;
 import steelyard.drills.model.Timeouts;
 import steelyard.drills.model.Traffic;
 import steelyard.drills.model.WarmUp;
+import steelyard.drills.model.Wire;
 
 /** A small drill for tests: pool seats with fulmar, gannet and petrel, and pool cargo with skua beside gannet. */
 public final class TestDrill {
@@ -42,6 +45,7 @@ public final class TestDrill {
     private long lastsNanos = 10 * S;
     private @Nullable LoadProbe load;
     private @Nullable InFlight inFlight;
+    private boolean byConnection;
 
     public TestDrill lasts(long nanos) {
         lastsNanos = nanos;
@@ -63,6 +67,12 @@ public final class TestDrill {
     /** Requests of pool seats wait, at most so many, when each of its backends has one in flight. */
     public TestDrill waiting(int most) {
         inFlight = new InFlight(1, most, S);
+        return this;
+    }
+
+    /** Pool cargo passes connections on. */
+    public TestDrill cargoByConnection() {
+        byConnection = true;
         return this;
     }
 
@@ -124,7 +134,12 @@ public final class TestDrill {
         Health health = Health.NONE
                 .with(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 3, 2))
                 .with(new WarmUp(5 * S, 0.1));
-        return Pool.with(name, Picking.by(Method.WEIGHTED_ROUND_ROBIN).with(byLoad ? Weights.LOAD : weights))
+        boolean octets = byConnection && name.equals("cargo");
+        Picking picking = Picking.by(Method.WEIGHTED_ROUND_ROBIN)
+                .with(byLoad ? Weights.LOAD : weights)
+                .with(octets ? Count.CONNECTIONS : Count.REQUESTS);
+        return Pool.with(name, picking)
+                .wire(octets ? Wire.USUAL.with(new Front(0, Front.Kind.TCP, null)) : Wire.USUAL)
                 .health(byLoad ? health.with(load) : health)
                 .inFlight(name.equals("seats") ? inFlight : null)
                 .drain(new Drain(10 * S, false))
