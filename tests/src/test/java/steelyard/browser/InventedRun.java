@@ -39,6 +39,10 @@ final class InventedRun {
     private final List<Member> members = new ArrayList<>();
     private final List<Cue> cues = new ArrayList<>();
     private final List<Expected> expectations = new ArrayList<>();
+    private final List<String> readings = new ArrayList<>();
+    private String loaded = "";
+    private String queued = "";
+    private String connected = "";
 
     InventedRun(String title, double lasts) {
         this.title = title;
@@ -60,6 +64,30 @@ final class InventedRun {
 
     InventedRun expect(String text, String bound, String measured, String margin, boolean met, String why) {
         expectations.add(new Expected(text, bound, measured, margin, met, why));
+        return this;
+    }
+
+    /** The pool weighs by load, read each second. */
+    InventedRun byLoad(String pool) {
+        loaded = pool;
+        return this;
+    }
+
+    /** Requests of the pool may wait in the balancer. */
+    InventedRun queues(String pool) {
+        queued = pool;
+        return this;
+    }
+
+    /** Connections to the pool are passed on. */
+    InventedRun connections(String pool) {
+        connected = pool;
+        return this;
+    }
+
+    InventedRun unread(String backend, double from, double to) {
+        readings.add(fixed(from, 6) + "," + backend + ",9,1.000,false\n");
+        readings.add(fixed(to, 6) + "," + backend + ",14,0.400,true\n");
         return this;
     }
 
@@ -92,6 +120,10 @@ final class InventedRun {
         Files.writeString(folder.resolve("slices.csv"), slices());
         Files.writeString(folder.resolve("standing.csv"), standing());
         Files.writeString(folder.resolve("cues.csv"), cueRows());
+        if (!loaded.isEmpty()) {
+            Files.writeString(
+                    folder.resolve("readings.csv"), "at,backend,reading,headroom,fresh\n" + String.join("", readings));
+        }
         return folder;
     }
 
@@ -135,8 +167,10 @@ final class InventedRun {
         for (String pool : pools()) {
             ObjectNode node = pools.addObject();
             node.put("name", pool).put("method", "weighted-round-robin");
-            node.put("count", "requests").put("weights", "backend");
+            node.put("count", pool.equals(connected) ? "connections" : "requests");
+            node.put("weights", pool.equals(loaded) ? "load" : "backend");
             node.putObject("settings")
+                    .put("front", pool.equals(connected) ? "tcp" : "http")
                     .put("probe", "http /afloat every 1 s within 400 ms, 3 misses, 2 passes")
                     .put("warm-up", "5 s from 10 %")
                     .put("retry", "at most 1, budget 40 %");
@@ -191,6 +225,12 @@ final class InventedRun {
                 out.append(',').append(member.name).append(':').append(column);
             }
         }
+        if (!queued.isEmpty()) {
+            out.append(",pool ").append(queued).append(":waiting");
+        }
+        members.stream()
+                .filter(this::byLoad)
+                .forEach(each -> out.append(',').append(each.name).append(":headroom"));
         out.append('\n');
         for (int slice = 0; slice < Math.round(played * 10); slice++) {
             out.append(new Slice(slice).row()).append('\n');
@@ -305,6 +345,12 @@ final class InventedRun {
             for (Member member : members) {
                 ofBackend(row, member);
             }
+            if (!queued.isEmpty()) {
+                row.append(',').append(Math.max(0, (int) (30 * Math.sin(at / 5) + random.nextInt(8))));
+            }
+            members.stream()
+                    .filter(InventedRun.this::byLoad)
+                    .forEach(each -> row.append(',').append(fixed(each.headroom, 4)));
             return row.toString();
         }
 
@@ -330,7 +376,17 @@ final class InventedRun {
             double weight = member.weightAt(at);
             double busy = member.deadAt(at)
                     ? 0
-                    : Math.min(1, picked[members.indexOf(member)] * 10 * 0.0163 / 8 * (0.9 + random.nextDouble() / 5));
+                    : Math.min(
+                            1,
+                            member.slower
+                                    * picked[members.indexOf(member)]
+                                    * 10
+                                    * 0.0163
+                                    / 8
+                                    * (0.9 + random.nextDouble() / 5));
+            if (byLoad(member)) {
+                member.read(number, busy);
+            }
             int inFlight = (int) Math.round(busy * 8 + (busy > 0.7 ? random.nextInt(7) : 0));
             row.append(',').append(picked[members.indexOf(member)]);
             row.append(',').append(inFlight);
@@ -340,6 +396,10 @@ final class InventedRun {
             row.append(',').append(fixed(busy, 6));
             row.append(',').append(Math.max(0, inFlight - 8));
         }
+    }
+
+    private boolean byLoad(Member member) {
+        return member.pool.equals(loaded);
     }
 
     private int poisson(double mean) {
@@ -365,6 +425,9 @@ final class InventedRun {
         private String first = "up";
         private double reweighedAt = Double.MAX_VALUE;
         private int reweighed;
+        private double slower = 1;
+        private double headroom = 1;
+        private double busySum;
 
         Member(String name, String pool, int weight, double poolRate) {
             this.name = name;
@@ -376,6 +439,21 @@ final class InventedRun {
         Member stands(double at, String to, String cause) {
             changes.add(new Change(at, to, cause));
             return this;
+        }
+
+        /** Its work takes that many times what it does for others. */
+        Member slower(double times) {
+            slower = times;
+            return this;
+        }
+
+        /** Once a second the headroom becomes what the last second's utilisation left. */
+        private void read(int slice, double busy) {
+            busySum += busy;
+            if (slice % 10 == name.length() % 10) {
+                headroom = Math.max(0.1, 1 - busySum / 10);
+                busySum = 0;
+            }
         }
 
         Member dead(double from, double to) {
@@ -418,7 +496,7 @@ final class InventedRun {
         private double weightAt(double at) {
             double full = at >= reweighedAt ? reweighed : weight;
             return switch (standingAt(at)) {
-                case "up" -> full;
+                case "up" -> full * headroom;
                 case "warming" -> full * Math.max(0.1, (at - since(at)) / WARM_UP);
                 default -> 0;
             };

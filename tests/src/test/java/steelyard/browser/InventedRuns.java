@@ -41,6 +41,7 @@ final class InventedRuns {
         runs.put("interrupted", interrupted());
         runs.put("failures", failures());
         runs.put("crowded", crowded());
+        runs.put("by-load", byLoad());
         return runs;
     }
 
@@ -142,6 +143,28 @@ final class InventedRuns {
                         false,
                         "never detected: fulmar stayed pickable up to its next cue at 35 s")
                 .expect("latency 99 %, from 25 s to 35 s", "at most 150 ms", "96.4 ms", "53.6 ms", true, "");
+    }
+
+    /** Weights that chase the load, a bench, a queue, and a pool of connections. */
+    static InventedRun byLoad() {
+        InventedRun run = new InventedRun("Weights by load, read too seldom", 60)
+                .byLoad("seats")
+                .queues("seats")
+                .connections("mail")
+                .unread("gannet", 22.4, 27.1)
+                .unread("gannet", 40.2, 43.3);
+        run.backend("fulmar", "seats", 1, 900);
+        run.backend("gannet", "seats", 1, 900).slower(1.6);
+        run.backend("petrel", "seats", 1, 900);
+        run.backend("kittiwake", "seats", 2, 900)
+                .stands(30, "benched", "failures")
+                .stands(35, "warming", "bench-over")
+                .stands(40, "up", "warmed");
+        run.backend("skua", "mail", 1, 60);
+        run.backend("tern", "mail", 1, 60);
+        return run.cue(20, "gannet gets slower", "slow gannet")
+                .expect("swing of seats", "at most 10 %", "14.2 %", "", false, "")
+                .expect("weight-lag of gannet", "at most 2 s", "1.2 s", "0.8 s", true, "");
     }
 
     static InventedRun crowded() {

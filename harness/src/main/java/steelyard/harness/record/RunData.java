@@ -57,7 +57,17 @@ public record RunData(
     public record HostRow(String name, int weight, @Nullable String zone) {}
 
     /** A pool of the cast; settings in words, in order. */
-    public record PoolRow(String name, String method, String count, String weights, Map<String, String> settings) {}
+    public record PoolRow(String name, String method, String count, String weights, Map<String, String> settings) {
+        /** Whether its weights go by what load probes read. */
+        public boolean weighsByLoad() {
+            return weights.equals("load");
+        }
+
+        /** Whether what is picked for are connections, whose octets are passed on as they come. */
+        public boolean passesOctets() {
+            return settings.getOrDefault("front", "http").startsWith("tcp");
+        }
+    }
 
     /** A backend of the cast, in stage order. */
     public record BackendRow(String name, String pool, String host, int weight) {}

@@ -15,8 +15,16 @@ final class Assets {
     private static final Pattern SLOT = Pattern.compile("\\{\\{([a-z-]+)}}");
 
     /** Our scripts: an earlier one knows nothing of a later one while the page loads. */
-    private static final List<String> PARTS =
-            List.of("figures.js", "ink.js", "layers.js", "charts.js", "stack.js", "rail.js", "readout.js", "start.js");
+    private static final List<String> PARTS = List.of(
+            "figures.js",
+            "ink.js",
+            "layers.js",
+            "weigh.js",
+            "charts.js",
+            "stack.js",
+            "rail.js",
+            "readout.js",
+            "start.js");
 
     private Assets() {}
 

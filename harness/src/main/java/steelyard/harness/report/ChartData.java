@@ -10,9 +10,11 @@ import com.fasterxml.jackson.databind.node.ValueNode;
 import java.math.BigDecimal;
 import java.math.RoundingMode;
 import java.util.List;
+import java.util.function.Predicate;
 import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.record.RunData.CueRow;
 import steelyard.harness.record.RunData.ForecastRow;
+import steelyard.harness.record.RunData.PoolRow;
 import steelyard.harness.record.RunData.StandingRow;
 import steelyard.harness.report.Columns.PerBackend;
 
@@ -35,6 +37,9 @@ final class ChartData {
         data.put("slice", Columns.SECONDS);
         data.put("slices", run.columns().size());
         data.set("pools", words(run.pools()));
+        data.set("byLoad", words(pools(run, PoolRow::weighsByLoad)));
+        data.set("connections", words(pools(run, PoolRow::passesOctets)));
+        data.set("queues", queues(run));
         data.set("cues", cues(run.run().cues()));
         data.set("requests", requests(run.columns()));
         data.set("backends", backends(run));
@@ -50,6 +55,19 @@ final class ChartData {
             data.set("bands", ChartBands.json(run));
         }
         return new ObjectMapper().writeValueAsString(data).replace("<", "\\u003c");
+    }
+
+    private static List<String> pools(RunFiles run, Predicate<PoolRow> which) {
+        return run.run().pools().stream().filter(which).map(PoolRow::name).toList();
+    }
+
+    /** What waited in the balancer, by pool; of those that let requests wait. */
+    private static ObjectNode queues(RunFiles run) {
+        ObjectNode queues = JSON.objectNode();
+        for (String pool : run.queueing()) {
+            queues.set(pool, column(run.run().slices().numbers(RunFiles.queue(pool)), 1));
+        }
+        return queues;
     }
 
     private static ArrayNode words(List<String> words) {
@@ -98,6 +116,21 @@ final class ChartData {
             node.set("entitled", column(slices.entitled(), 4));
             node.set("utilisation", column(slices.utilisation(), 3));
             node.set("standing", standing(run, backend.name(), slices.standing()));
+            ArrayNode unread = unread(run, backend.name());
+            if (!unread.isEmpty()) {
+                node.set("unread", unread);
+            }
+        }
+        return array;
+    }
+
+    /** Stretches, each from and to a second, in which the weight should have gone by load and did not. */
+    private static ArrayNode unread(RunFiles run, String backend) {
+        ArrayNode array = JSON.arrayNode();
+        for (Readings.Gap gap : Readings.of(run)) {
+            if (gap.backend().equals(backend)) {
+                array.addArray().add(gap.from()).add(gap.to());
+            }
         }
         return array;
     }

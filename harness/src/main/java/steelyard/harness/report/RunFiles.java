@@ -58,6 +58,16 @@ record RunFiles(RunData run, List<BackendRow> backends, Columns columns, Columns
         return run.pools().stream().map(PoolRow::name).toList();
     }
 
+    /** The pools of which slices say what waited in the balancer. */
+    List<String> queueing() {
+        return pools().stream().filter(pool -> run.slices().has(queue(pool))).toList();
+    }
+
+    /** The column that says what waited in the balancer for a pool. */
+    static String queue(String pool) {
+        return "pool " + pool + ":waiting";
+    }
+
     boolean complete() {
         return run.ended().equals("complete");
     }

@@ -13,7 +13,7 @@ function chartsOf(run, narrow) {
   const one = run.forecast && run.forecast.grouped ? 'group' : 'backend';
   const of = (pool) => (several ? ` in pool ${pool.name}` : '');
   const rivers = run.pools.map((pool, at) => ({
-    title: `Attempts a second${of(pool)}, by ${one}`,
+    title: `${pool.unit === 'connections' ? 'Connections' : 'Attempts'} a second${of(pool)}, by ${one}`,
     note:
       (run.bands ? 'median shares; ' : '') +
       (pool.members.length > 1 ? 'thin lines: where entitled shares would put the edges' : ''),
@@ -21,7 +21,7 @@ function chartsOf(run, narrow) {
     y: linear(),
     series: [{ figure: (bin) => bin.pools[at] }],
     under: riverLayer(pool),
-    about: () => backendsAbout(run, pool.members, 'picked', 0, 'attempts a second'),
+    about: () => backendsAbout(run, pool.members, 'picked', 0, `${pool.unit} a second`),
   }));
   const strips = run.pools.map((pool) => {
     const row = pool.members.length > 16 ? 15 : pool.members.length > 6 ? 17 : 21;
@@ -63,14 +63,7 @@ function chartsOf(run, narrow) {
       over: run.bands ? ceilingLayer((bin) => bin.bands.failed.high) : undefined,
       about: () => failuresAbout(run),
     },
-    {
-      title: `In flight, by ${one}`,
-      note: 'dotted: of these, waiting in the backend’s queue',
-      height: 120,
-      y: linear(),
-      series: [...lines(run, 'inFlight'), ...lines(run, 'waiting', true)],
-      about: () => backendsAbout(run, run.backends, 'inFlight', 1, 'in flight'),
-    },
+    flightChart(run, one),
     {
       title: 'Utilisation of workers, %',
       note: '',
@@ -80,7 +73,7 @@ function chartsOf(run, narrow) {
       about: () => backendsAbout(run, run.backends, 'utilisation', 2, 'of 1 busy'),
     },
   ];
-  const moving = run.pools.filter((pool) => pool.members.some((each) => each.weight.some((weight) => weight !== each.weight[0])));
+  const moving = run.pools.filter((pool) => !pool.byLoad && pool.members.some((each) => each.weight.some((weight) => weight !== each.weight[0])));
   const weights = moving.map((pool) => ({
     title: `Weight in effect${of(pool)}, by ${one}`,
     note: '',
@@ -89,8 +82,34 @@ function chartsOf(run, narrow) {
     series: lines(run, 'weight', false, pool.members).map((each) => ({ ...each, stepped: true })),
     about: () => backendsAbout(run, pool.members, 'weight', 2, 'weight'),
   }));
-  charts.splice(charts.length - 1, 0, ...weights);
+  const byLoad = run.pools.filter((pool) => pool.byLoad).map((pool) => weighChart(run, pool, of(pool), one));
+  charts.splice(charts.length - 1, 0, ...weights, ...byLoad);
   return charts;
+}
+
+/** What is in flight on backends, and what waits in the balancer until one is free. */
+function flightChart(run, one) {
+  const several = run.pools.length > 1;
+  const queueing = run.pools.filter((pool) => pool.queue);
+  const queues = queueing.map((pool) => queueLine(run, pool));
+  return {
+    title: `In flight${queues.length ? ' and queue' : ''}, by ${one}`,
+    note: 'dotted: of these, waiting in the backend’s queue' + (queues.length ? '; dashed: waiting in the balancer' : ''),
+    height: 120,
+    y: linear(),
+    series: [...queues, ...lines(run, 'inFlight'), ...lines(run, 'waiting', true)],
+    over: queues.length ? lineNames(queueing.map((pool) => (queues.length > 1 ? pool.name : 'queue'))) : undefined,
+    about: () =>
+      backendsAbout(run, run.backends, 'inFlight', 1, 'in flight') +
+      queueing.map((pool) => `; queue${several ? ` of ${pool.name}` : ''} up to ${plain(most(pool.queue, 0, run.slices), 0)}`).join(''),
+  };
+}
+
+function queueLine(run, pool) {
+  const line = { colour: ink.ink, width: 1.8, dash: [5, 3] };
+  const at = run.pools.indexOf(pool);
+  if (!run.bands || !run.bands.queues[pool.name]) return { ...line, figure: (bin) => bin.queues[at] };
+  return { ...line, ...bandOf((bin) => bin.bands.queues[pool.name]), figure: (bin) => bin.bands.queues[pool.name].median };
 }
 
 /** What only a forecast shows: requests and shares, each a line of medians in the band of 90 % of plays. */
@@ -108,7 +127,7 @@ function bandCharts(run, one) {
   }));
   return [
     {
-      title: `Share of the attempts of its pool, by ${one}, %`,
+      title: `Share of the ${unitOf(run)} of its pool, by ${one}, %`,
       note: 'shaded: 90 % of plays',
       height: 150,
       y: { ...linear(), values: (splits) => splits.map((each) => plain(each * 100, each * 100 < 1 ? 1 : 0).replace("0.0", "0")) },
@@ -129,6 +148,11 @@ function bandCharts(run, one) {
       about: () => requests.map((each) => `${each.name} ${plain(figuresOf(run, 0, run.slices)[each.key], 0)}`).join(', '),
     },
   ];
+}
+
+/** What is picked for: connections where octets are passed on as they come, everywhere. */
+function unitOf(run) {
+  return run.pools.every((pool) => pool.unit === 'connections') ? 'connections' : 'attempts';
 }
 
 /** The edges of a line's band. */

@@ -39,16 +39,20 @@ function unpacked(raw) {
     weight: column(each.weight),
     entitled: column(each.entitled),
     utilisation: column(each.utilisation),
+    unread: each.unread || [],
   }));
   const pools = raw.pools.map((name) => {
     const members = backends.filter((each) => each.pool === name);
     const picked = new Float64Array(raw.slices);
     for (const member of members) member.picked.forEach((count, at) => (picked[at] += count));
-    return { name, members, picked };
+    const unit = (raw.connections || []).includes(name) ? 'connections' : 'attempts';
+    const queue = raw.queues && raw.queues[name] && column(raw.queues[name]);
+    return { name, members, picked, unit, queue, byLoad: (raw.byLoad || []).includes(name) };
   });
   const bands = raw.bands && {
     requests: unpackedBands(raw.bands.requests),
     backends: raw.bands.backends.map(unpackedBands),
+    queues: unpackedBands(raw.bands.queues || {}),
   };
   const latencies = raw.latencies && unpackedLatencies(raw.latencies);
   return { ...raw, requests, backends, pools, bands, latencies, causes: Object.keys(requests.failed) };
@@ -205,9 +209,11 @@ function figuresOf(run, from, to) {
       share: NAN,
     })),
     pools: [],
+    queues: run.pools.map((pool) => (pool.queue ? mean(pool.queue, from, to) : 0)),
   };
   if (run.bands) {
     figures.bands = bandsOf(run.bands.requests, from, to, seconds);
+    figures.bands.queues = bandsOf(run.bands.queues, from, to);
     figures.backends.forEach((each, at) => (each.bands = bandsOf(run.bands.backends[at], from, to)));
   }
   for (const pool of run.pools) {

@@ -52,7 +52,7 @@ function standingFill(word, index) {
     case 'down':
       return hatched(ink.paper, 'cross', ink.soft, 0.75);
     case 'benched':
-      return hatched(ink.paper, 'dots', ink.soft, 0.9);
+      return hatched(ink.paper, 'upright', ink.soft, 0.9);
     case 'withdrawn':
       return hatched(ink.paper, 'sparse', ink.soft, 0.7);
     default:

@@ -47,6 +47,7 @@ function colourReadout(readout) {
   readout.group = element('div', '', readout.requests);
   requestRow(readout, 'offered', '1/s');
   requestRow(readout, 'ok', '1/s');
+  if (run.pools.some((pool) => pool.queue)) requestRow(readout, 'queue', '');
   run.causes.forEach((cause, at) => requestRow(readout, cause, '1/s', fillSample(causeFill(at)), 'failure'));
   if (!run.causes.length) requestRow(readout, 'failed', '1/s');
   readout.group = element('div', '', readout.requests);
@@ -62,7 +63,7 @@ function colourReadout(readout) {
   const head = element('tr', '', element('thead', '', readout.table));
   element('th', '', head, 'backend').scope = 'col';
   for (const [name, unit, css] of BACKEND_COLUMNS) {
-    const cell = element('th', css, head, name);
+    const cell = element('th', css, head, name === 'attempts' ? unitOf(run) : name);
     cell.scope = 'col';
     if (unit) element('small', '', cell, ' ' + unit);
   }
@@ -121,6 +122,7 @@ function sayRequests(readout, figures) {
   const set = (name, text) => (readout.figures[name].textContent = text);
   set('offered', plain(figures.offered, 0));
   set('ok', plain(figures.ok, 0));
+  if (run.pools.some((pool) => pool.queue)) set('queue', plain(figures.queues.reduce((sum, each) => sum + each, 0), 1));
   run.causes.forEach((cause, at) => set(cause, plain(figures.failed[at], figures.failed[at] < 10 ? 1 : 0)));
   if (!run.causes.length) set('failed', '0');
   QUANTILES.forEach((each) => set(each.name, millis(figures[each.key])));
