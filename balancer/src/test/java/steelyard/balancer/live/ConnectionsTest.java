@@ -24,6 +24,7 @@ class ConnectionsTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
 
     @Test
+    @Duty("H136")
     void backend_closesAnIdleConnection_nextRequestTakesANewOne() throws Exception {
         CountDownLatch closed = new CountDownLatch(1);
         try (FakeBackend backend = FakeBackend.playing(wire -> {
@@ -138,6 +139,7 @@ class ConnectionsTest {
     }
 
     @Test
+    @Duty("H133")
     void client_stillSendingWhenTheAnswerComes_canReadAllOfIt() throws Exception {
         String refusal = "HTTP/1.1 413 Content Too Large\r\nContent-Length: 5\r\n\r\nlarge";
         try (FakeBackend backend = FakeBackend.playing(wire -> {

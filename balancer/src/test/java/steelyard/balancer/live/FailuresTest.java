@@ -101,6 +101,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H118")
     void own_headRequest_hasNoContent() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress());
                 Wire client = play.client()) {
@@ -113,6 +114,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty({"H116", "H117"})
     void own_nobodyToPick_is503WithRetryAfter() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
             play.balancer.withdraw(0);
@@ -126,6 +128,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H081")
     void own_nobodyWhileContentIsOwed_closesAfterTheAnswer() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress());
                 Wire client = play.client()) {
@@ -139,6 +142,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H115")
     void own_firstByteLate_is504() throws Exception {
         try (FakeBackend backend = silent();
                 LivePlay play = LivePlay.of(pool -> pool.patience(10, 0.2, 30), backend.address())) {
@@ -197,6 +201,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H088")
     void answer_brokenHalfway_closesTheClientShort() throws Exception {
         try (FakeBackend backend = FakeBackend.playing(wire -> {
                     wire.readHead();
@@ -211,6 +216,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H088")
     void answer_chunkedAndBroken_hasNoLastChunk() throws Exception {
         try (FakeBackend backend = FakeBackend.playing(wire -> {
                     wire.readHead();
@@ -226,6 +232,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H122")
     void retry_refused_goesToTheOtherBackend() throws Exception {
         try (FakeBackend good = FakeBackend.playing(wire -> {
                     String head = wire.readHead();
@@ -262,6 +269,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H123")
     void retry_getResetBeforeAnyByte_isMadeOnce() throws Exception {
         try (FakeBackend bad = resetting();
                 FakeBackend good = FakeBackend.answering(OK);
@@ -272,6 +280,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H121")
     void retry_postWhoseHeadWasSent_isNotMade() throws Exception {
         try (FakeBackend bad = resetting();
                 FakeBackend good = FakeBackend.answering(OK);
@@ -315,6 +324,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H126")
     void retry_keptConnectionDiesAtReuse_getIsRetried() throws Exception {
         try (FakeBackend bad = dyingAtReuse();
                 FakeBackend good = FakeBackend.answering(OK);
@@ -330,6 +340,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H126")
     void retry_keptConnectionDiesAtReuse_postIsNotRetried() throws Exception {
         try (FakeBackend bad = dyingAtReuse();
                 FakeBackend good = FakeBackend.answering(OK);
@@ -412,6 +423,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H082")
     void client_leavesInsideItsContent_backendIsNotGivenAWholeRequest() throws Exception {
         CountDownLatch over = new CountDownLatch(1);
         try (FakeBackend backend = FakeBackend.playing(wire -> {
@@ -459,6 +471,7 @@ class FailuresTest {
     }
 
     @Test
+    @Duty("H136")
     void idle_clientConnection_isClosedAtTheLimit() throws Exception {
         try (FakeBackend backend = FakeBackend.answering(OK);
                 LivePlay play = LivePlay.of(pool -> pool.patience(10, 10, 0.3), backend.address());

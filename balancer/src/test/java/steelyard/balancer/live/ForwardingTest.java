@@ -119,6 +119,7 @@ class ForwardingTest {
     }
 
     @Test
+    @Duty({"H084", "H086"})
     void forwarding_head_hasNoContentAndNextAnswerIsAligned() throws Exception {
         try (FakeBackend backend = FakeBackend.playing(wire -> {
                     wire.readHead();
@@ -146,6 +147,7 @@ class ForwardingTest {
     }
 
     @Test
+    @Duty("H127")
     void forwarding_pipelinedRequests_areAnsweredInOrder() throws Exception {
         try (FakeBackend slow = answeringPath(100);
                 FakeBackend quick = answeringPath(0);
@@ -259,6 +261,7 @@ class ForwardingTest {
     }
 
     @Test
+    @Duty("H091")
     void forwarding_interimAnswers_areForwarded() throws Exception {
         try (FakeBackend backend = FakeBackend.playing(wire -> {
                     String head = wire.readHead();
@@ -293,6 +296,7 @@ class ForwardingTest {
     }
 
     @Test
+    @Duty("H132")
     void forwarding_connectionCloseFromBackend_isNotReused() throws Exception {
         try (FakeBackend backend =
                         FakeBackend.answering("HTTP/1.1 200 OK\r\nConnection: close\r\nContent-Length: 2\r\n\r\nok");
@@ -307,6 +311,7 @@ class ForwardingTest {
     }
 
     @Test
+    @Duty("H087")
     void forwarding_secondAnswerToOneRequest_reachesNobody() throws Exception {
         try (FakeBackend backend = FakeBackend.answering(OK + OK.replace("200", "250"));
                 LivePlay play = LivePlay.of(backend.address());

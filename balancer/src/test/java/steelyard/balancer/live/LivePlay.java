@@ -3,6 +3,7 @@ package steelyard.balancer.live;
 import static org.junit.jupiter.api.Assertions.assertThrows;
 
 import java.io.IOException;
+import java.net.InetAddress;
 import java.net.InetSocketAddress;
 import java.util.ArrayList;
 import java.util.List;
@@ -33,8 +34,13 @@ final class LivePlay implements AutoCloseable {
     private final BalancerSettings settings;
 
     private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses) throws CannotStart {
+        this(settings, addresses, 0);
+    }
+
+    private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses, int port) throws CannotStart {
         this.settings = settings;
-        balancer = Balancer.start(settings, addresses::get, pool -> 0, System::nanoTime, (draw, a, b) -> 0, decisions);
+        balancer =
+                Balancer.start(settings, addresses::get, pool -> port, System::nanoTime, (draw, a, b) -> 0, decisions);
     }
 
     private LivePlay begun() {
@@ -52,6 +58,12 @@ final class LivePlay implements AutoCloseable {
 
     static LivePlay onLoops(int loops, InetSocketAddress... addresses) throws CannotStart {
         return new LivePlay(settings(loops, UnaryOperator.identity(), addresses), List.of(addresses)).begun();
+    }
+
+    /** A balancer whose only backend is itself. */
+    static LivePlay onItself(int port) throws CannotStart {
+        InetSocketAddress self = new InetSocketAddress(InetAddress.getLoopbackAddress(), port);
+        return new LivePlay(settings(1, UnaryOperator.identity(), self), List.of(self), port).begun();
     }
 
     /** A balancer that has not begun. */

@@ -6,6 +6,7 @@ import org.jspecify.annotations.Nullable;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.FrontSettings;
+import steelyard.balancer.settings.LimitSettings;
 import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
@@ -18,7 +19,8 @@ final class Pool {
     private @Nullable ProbeSettings probe;
     private @Nullable RetrySettings retry;
     private TimeoutSettings timeouts = LivePlay.PATIENT;
-    private boolean forwarded;
+    private FrontSettings.Forwarded forwarded = FrontSettings.Forwarded.NOT;
+    private LimitSettings limits = LimitSettings.USUAL;
     private long drainLimitNanos = 30 * LivePlay.SECOND;
 
     Pool countingConnections() {
@@ -49,7 +51,29 @@ final class Pool {
     }
 
     Pool forwarding() {
-        forwarded = true;
+        forwarded = FrontSettings.Forwarded.SHOWN;
+        return this;
+    }
+
+    Pool forwardingHidden() {
+        forwarded = FrontSettings.Forwarded.HIDDEN;
+        return this;
+    }
+
+    /** Octets. */
+    Pool limited(int target, int head, long body) {
+        limits = new LimitSettings(target, head, body);
+        return this;
+    }
+
+    /** Seconds for a head, and for a further octet of content. */
+    Pool clientsWithin(double head, double body) {
+        timeouts = new TimeoutSettings(
+                timeouts.connectNanos(),
+                timeouts.firstByteNanos(),
+                timeouts.idleNanos(),
+                (long) (head * LivePlay.SECOND),
+                (long) (body * LivePlay.SECOND));
         return this;
     }
 
@@ -61,12 +85,8 @@ final class Pool {
                 .drain(new DrainSettings(drainLimitNanos, false))
                 .retry(retry)
                 .timeouts(timeouts)
-                .front(new FrontSettings(
-                        0,
-                        FrontSettings.Kind.HTTP,
-                        null,
-                        false,
-                        forwarded ? FrontSettings.Forwarded.SHOWN : FrontSettings.Forwarded.NOT))
+                .limits(limits)
+                .front(new FrontSettings(0, FrontSettings.Kind.HTTP, null, false, forwarded))
                 .of(backends);
     }
 }

@@ -56,6 +56,36 @@ final class Wire implements AutoCloseable {
         return head.toString(StandardCharsets.ISO_8859_1);
     }
 
+    /** Octet by octet, each in a segment of its own as far as the system grants it. */
+    void sendSlowly(String text) throws IOException {
+        for (byte octet : text.getBytes(StandardCharsets.ISO_8859_1)) {
+            out.write(octet);
+            out.flush();
+        }
+    }
+
+    /** A line without its CR LF, or null at the end of the connection. */
+    @Nullable
+    String readLine() throws IOException {
+        ByteArrayOutputStream line = new ByteArrayOutputStream();
+        for (int octet = in.read(); octet >= 0; octet = in.read()) {
+            if (octet == '\r') {
+                if (in.read() != '\n') {
+                    throw new IOException("a CR without LF behind " + line.toString(StandardCharsets.ISO_8859_1));
+                }
+                return line.toString(StandardCharsets.ISO_8859_1);
+            }
+            if (octet == '\n') {
+                throw new IOException("a LF without CR behind " + line.toString(StandardCharsets.ISO_8859_1));
+            }
+            line.write(octet);
+        }
+        if (line.size() > 0) {
+            throw new IOException("ended inside " + line.toString(StandardCharsets.ISO_8859_1));
+        }
+        return null;
+    }
+
     /** Exactly so many octets, as text. */
     String read(int octets) throws IOException {
         byte[] read = in.readNBytes(octets);

@@ -12,6 +12,8 @@ import steelyard.balancer.settings.FrontSettings;
 
 /** Makes the head that goes to the backend out of the one that came, in place. */
 final class RequestHeads {
+    private static final int MOST_DIGITS = 9; // whatever has no more fits an int
+
     private RequestHeads() {}
 
     /** @return the answer that the request gets here instead, or null when it can be forwarded */
@@ -55,15 +57,10 @@ final class RequestHeads {
         if (given == null) {
             return null;
         }
-        int left;
-        try {
-            left = Integer.parseInt(given);
-        } catch (NumberFormatException e) {
+        if (!given.matches("[0-9]+")) {
             return OwnAnswer.FAULTY;
         }
-        if (left < 0) {
-            return OwnAnswer.FAULTY;
-        }
+        int left = given.length() > MOST_DIGITS ? Integer.MAX_VALUE : Integer.parseInt(given);
         if (left == 0) {
             return trace ? OwnAnswer.NO_ECHO : OwnAnswer.OPTIONS_HERE;
         }
