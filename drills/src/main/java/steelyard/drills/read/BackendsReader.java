@@ -12,6 +12,7 @@ import steelyard.drills.model.Serves;
 final class BackendsReader {
     private static final int MOST = 10_000;
     private static final Quantity<Integer> TIMES = Numbers.from(1, MOST);
+    private static final Quantity<Integer> TIER = Numbers.from(1, 2);
     private static final Quantity<String> STARTS = Words.of("a way to start", "up", "down");
 
     private final Problems problems;
@@ -45,7 +46,9 @@ final class BackendsReader {
                         "nothing says the " + Sentence.and(draft.missing()) + " of backend '" + entry.key() + "'",
                         "write serves: {workers: 8, time: 12ms} for it or for its pool");
             }
-            add(entry, fields, draft.build(), backends);
+            // A tier that was refused where it stands is taken as the one that the pool expects.
+            int harmless = fields.has("tier") && pool.has("standby") ? 2 : 1;
+            add(entry, fields, harmless, draft.build(), backends);
         }
         if (backends.isEmpty()) {
             problems.add(
@@ -56,15 +59,16 @@ final class BackendsReader {
         return new OfPool(backends, firstWeight);
     }
 
-    private void add(Node.Entry entry, Fields fields, Serves backendServes, List<Backend> backends) {
+    private void add(Node.Entry entry, Fields fields, int harmlessTier, Serves backendServes, List<Backend> backends) {
         int weight = fields.read("weight", HostsReader.WEIGHT, 1);
         String hostName = fields.read("host", Names.NAME);
         Placed<String> host = hostName == null ? null : new Placed<>(fields.valuePlace("host"), hostName);
         boolean down = fields.read("starts", STARTS, "up").equals("down");
+        int tier = fields.read("tier", TIER, harmlessTier);
         for (String name : names(entry, fields)) {
             if (enter(name, entry.place())) {
                 String stand = hosts.hostOf(host, name, entry.place());
-                backends.add(new Backend(name, entry.key(), weight, stand, down, backendServes));
+                backends.add(new Backend(name, entry.key(), weight, stand, down, tier, backendServes));
             }
         }
     }

@@ -20,9 +20,11 @@ final class CueReader {
             .that(CueReader::fits, "cannot name a cue", "use no + and no -, and begin with a letter");
 
     private final Problems problems;
+    private final RetuneReader retunes;
 
     CueReader(Problems problems) {
         this.problems = problems;
+        this.retunes = new RetuneReader(problems);
     }
 
     /** Notes which names of cues will be refused, so that instants which count from them raise no problem of their own. */
@@ -86,7 +88,12 @@ final class CueReader {
     }
 
     private Cue.@Nullable Kind kind(Fields fields) {
-        List<String> given = fields.given().stream().filter(KINDS::contains).toList();
+        // A retune says how drains change, under the word of another kind.
+        boolean retunes = fields.has(Cue.Kind.RETUNE.word());
+        List<String> given = fields.given().stream()
+                .filter(KINDS::contains)
+                .filter(word -> !retunes || !word.equals(Cue.Kind.DRAIN.word()))
+                .toList();
         if (given.size() == 1) {
             return Cue.Kind.values()[KINDS.indexOf(given.get(0))];
         }
@@ -132,14 +139,21 @@ final class CueReader {
 
     private @Nullable TargetDraft target(Fields fields, Cue.Kind kind) {
         TargetDraft draft = TargetDraft.read(fields, kind.word());
-        if (draft == null || kind != Cue.Kind.SURGE || draft.kind() == Target.Kind.POOL) {
+        if (draft == null || !ofPools(kind) || draft.kind() == Target.Kind.POOL) {
             return draft;
         }
         if (draft.kind() == Target.Kind.BACKENDS && draft.names().size() == 1) {
             return new TargetDraft(draft.place(), Target.Kind.POOL, draft.names());
         }
-        problems.add(draft.place(), "a surge is of the traffic to a pool", "write surge: {pool: seats}");
+        problems.add(
+                draft.place(),
+                kind == Cue.Kind.SURGE ? "a surge is of the traffic to a pool" : "a retune is of a pool",
+                "write " + kind.word() + ": {pool: seats}");
         return null;
+    }
+
+    private static boolean ofPools(Cue.Kind kind) {
+        return kind == Cue.Kind.SURGE || kind == Cue.Kind.RETUNE;
     }
 
     private Cue.Settings settings(Fields fields, Cue.@Nullable Kind kind) {
@@ -149,6 +163,9 @@ final class CueReader {
         needs(fields, kind, Cue.Kind.SURGE, "factor", "write factor: 2");
         needs(fields, kind, Cue.Kind.FLAP_PROBE, "period", "write period: 4s");
         needs(fields, kind, Cue.Kind.REWEIGH, "weight", "write weight: 3");
+        needs(fields, kind, Cue.Kind.LOAD, "gauge", "write gauge: memory");
+        needs(fields, kind, Cue.Kind.LOAD, "to", "write to: 90%");
+        needs(fields, kind, Cue.Kind.FILL, "to", "write to: 95%");
         return new Cue.Settings(
                 fields.read("factor", FACTOR, 1.0),
                 fields.read("plus", Durations.DURATION, 0L),
@@ -158,7 +175,10 @@ final class CueReader {
                 fields.read("probes", Numbers.YES_OR_NO, false),
                 fields.read("period", Durations.PERIOD, 0L),
                 fields.read("weight", HostsReader.WEIGHT, 0),
-                fields.read("limit", Durations.POSITIVE, 0L));
+                fields.read("limit", Durations.POSITIVE, 0L),
+                fields.read("gauge", Names.GAUGE),
+                fields.read("to", Shares.SHARE, 0.0),
+                kind == Cue.Kind.RETUNE ? retunes.read(fields) : null);
     }
 
     private static void needs(Fields fields, Cue.@Nullable Kind kind, Cue.Kind of, String key, String remedy) {

@@ -11,6 +11,8 @@ import java.util.Map;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Cue;
+import steelyard.drills.model.Retune;
+import steelyard.drills.model.Serves;
 import steelyard.drills.model.Target;
 
 /** Turns drafts of cues into cues: names, instants that count from other cues, repeats, targets. */
@@ -81,6 +83,7 @@ final class CueSchedule {
             return;
         }
         noticeUnseen(draft, kind, target);
+        checkChange(draft, kind, target);
         Placed<String> name = draft.name();
         for (int i = 0; i < draft.times(); i++) {
             String called = name == null ? free(kind.word() + " " + target.text()) : CueDraft.repeat(name.value(), i);
@@ -98,6 +101,22 @@ final class CueSchedule {
                     draft.place(),
                     kind.word() + " does nothing in a pool without probes",
                     "write probe: {path: /afloat} for the pool");
+        }
+    }
+
+    /** What a cue changes has to be there to be changed. */
+    private void checkChange(CueDraft draft, Cue.Kind kind, Target target) {
+        Retune retune = draft.settings().retune();
+        if (retune != null) {
+            roster.poolsOf(target).forEach(pool -> new RetuneReader(problems).check(retune, pool, draft.place()));
+        }
+        GaugeChecks gauges = new GaugeChecks(problems, roster);
+        String gauge = draft.settings().gauge();
+        if (kind == Cue.Kind.LOAD && gauge != null) {
+            gauges.refuseUnknown(draft.place(), gauge, target);
+        }
+        if (kind == Cue.Kind.FILL) {
+            gauges.noticeUncounted(draft.place(), kind.word(), Serves.DISK, target);
         }
     }
 

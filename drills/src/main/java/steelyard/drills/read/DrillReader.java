@@ -28,7 +28,7 @@ public final class DrillReader {
 
     private DrillReader() {}
 
-    /** Reads a file; {@code answers:} folders are looked up from the folder it is in, and have to be there. */
+    /** Reads a file; what it names is looked up from the folder that it is in, and has to be there. */
     public static Parsed<Drill> read(Path file) {
         Problems problems = new Problems(file.toString());
         String text = load(file, problems);
@@ -37,9 +37,17 @@ public final class DrillReader {
                 : read(text, problems, file.toAbsolutePath().getParent());
     }
 
-    /** Reads a text under a name for messages; names of {@code answers:} folders are kept as they stand. */
+    /**
+     * Reads a text under a name for messages. Names of folders and files are kept as they stand, and a trace, which has
+     * to be read, is a problem.
+     */
     public static Parsed<Drill> read(String name, String text) {
         return read(text, new Problems(name), null);
+    }
+
+    /** Reads a text under a name for messages as if it were a file in a folder. */
+    public static Parsed<Drill> read(String name, String text, Path folder) {
+        return read(text, new Problems(name), folder);
     }
 
     /**

@@ -8,6 +8,7 @@ import org.jspecify.annotations.Nullable;
 /** Durations, in nanoseconds: numbers with a unit, perhaps several of falling unit ({@code 1m30s}). */
 final class Durations {
     static final long SECOND = 1_000_000_000L;
+    static final long MILLISECOND = 1_000_000L;
     static final long DAY = 24 * 3600 * SECOND;
 
     private static final List<String> UNITS = List.of("h", "m", "s", "ms", "us");

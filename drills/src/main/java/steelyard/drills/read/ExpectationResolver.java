@@ -77,8 +77,11 @@ final class ExpectationResolver {
         Window window = window(draft);
         TargetDraft ofDraft = draft.of();
         if (ofDraft == null) {
-            if (draft.measure() == Measure.SHARE) {
-                problems.add(draft.place(), "share needs 'of'", "name a backend, a list, a host, a zone or a pool");
+            if (needsTarget(draft.measure())) {
+                problems.add(
+                        draft.place(),
+                        draft.measure().word() + " needs 'of'",
+                        "name a backend, a list, a host, a zone or a pool");
             }
             return window == null ? null : build(draft, null, null, window.from(), window.to(), null);
         }
@@ -98,6 +101,10 @@ final class ExpectationResolver {
         return window == null
                 ? null
                 : build(draft, ofTraffic ? null : of, ofTraffic ? of.name() : null, window.from(), window.to(), null);
+    }
+
+    private static boolean needsTarget(Measure measure) {
+        return measure == Measure.SHARE || measure == Measure.WEIGHT_LAG || measure == Measure.SWING;
     }
 
     private static boolean looksAtRequests(Measure measure) {

@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.function.Predicate;
 import org.jspecify.annotations.Nullable;
 
 /** A map of a drill, read key by key. What is not known or there twice is noted when it is opened. */
@@ -153,6 +154,15 @@ final class Fields {
 
     /** The named entries of the map behind a key; a second one of a name is noted and left out. */
     List<Node.Entry> named(String key, String noun) {
+        return named(key, noun, Names::fits, Names.RULE);
+    }
+
+    /** The same for gauges, whose names begin with a letter. */
+    List<Node.Entry> gauges(String key) {
+        return named(key, "gauge", Names::fitsGauge, Names.GAUGE_RULE);
+    }
+
+    private List<Node.Entry> named(String key, String noun, Predicate<String> fits, String rule) {
         Node node = node(key);
         if (node == null) {
             return List.of();
@@ -172,8 +182,8 @@ final class Fields {
                         entry.place(),
                         noun + " '" + entry.key() + "' is there twice",
                         "rename one; the first is on line " + first.place().line());
-            } else if (!Names.fits(entry.key())) {
-                problems.add(entry.place(), Quantity.quoted(entry.key()) + " cannot name a " + noun, Names.RULE);
+            } else if (!fits.test(entry.key())) {
+                problems.add(entry.place(), Quantity.quoted(entry.key()) + " cannot name a " + noun, rule);
             }
         }
         return new ArrayList<>(byName.values());

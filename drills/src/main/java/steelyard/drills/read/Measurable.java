@@ -67,6 +67,21 @@ final class Measurable {
             always(draft, "1 in a pool without retry", "write retry: {at-most: 1} for the pool");
         } else if (measure == Measure.CUT && cues.stream().noneMatch(cue -> cue.kind() == Cue.Kind.DRAIN)) {
             always(draft, "0 without a drain cue", "add one, or drop the expectation");
+        } else if (measure == Measure.WEIGHT_LAG || measure == Measure.SWING) {
+            ofLoad(draft, target);
+        }
+    }
+
+    /** Both are counted in periods of load probes; the lag is one of weights that follow them. */
+    private void ofLoad(ExpectationDraft draft, Target target) {
+        Pool without = first(target, pool -> pool.health().load() == null || pool.weights() != Pool.Weights.LOAD);
+        if (without != null) {
+            never(
+                    draft,
+                    "pool '" + without.name() + "' has no load weights",
+                    "write weights: load, and load: {every: 1s} for the pool");
+        } else if (draft.measure() == Measure.SWING && wholePool(target)) {
+            always(draft, "0 %, since it names the whole pool", "name some of its backends");
         }
     }
 
@@ -74,6 +89,9 @@ final class Measurable {
         Set<Pool> pools = pools(target);
         if (pools.stream().anyMatch(pool -> pool.weights() == Pool.Weights.HOST)) {
             never(draft, "under weights: host the shares of a pool have no set value", "use share instead");
+        }
+        if (pools.stream().anyMatch(pool -> pool.weights() == Pool.Weights.LOAD)) {
+            never(draft, "under weights: load the shares of a pool have no set value", "use share instead");
         }
         room(
                 draft,
@@ -109,13 +127,19 @@ final class Measurable {
     private void detected(ExpectationDraft draft, Target target, Cue cue) {
         Standing until = draft.options().until();
         boolean byHand = cue.kind().side() == Cue.Side.BALANCER;
-        boolean wantsProbe = until == Standing.DOWN || (!byHand && (until == null || until == Standing.UP));
+        boolean benches = until == null && first(target, pool -> pool.health().bench() == null) == null;
+        boolean wantsProbe = until == Standing.DOWN || (!byHand && !benches && (until == null || until == Standing.UP));
         Pool without = first(target, pool -> pool.probe() == null);
         Pool cold = first(target, pool -> pool.warmUp() == null);
+        Pool benchless = first(target, pool -> pool.health().bench() == null);
         if (wantsProbe && without != null) {
             never(draft, "pool '" + without.name() + "' has no probe", "write probe: {path: /afloat} for the pool");
+        } else if (until == Standing.BENCHED && benchless != null) {
+            never(draft, "pool '" + benchless.name() + "' has no bench", "write bench: {after: 5} for the pool");
         } else if (until == Standing.WARMING && cold != null) {
             never(draft, "pool '" + cold.name() + "' has no warm-up", "write warm-up: 5s for the pool");
+        } else if (wantsProbe && (cue.kind() == Cue.Kind.LOAD || cue.kind() == Cue.Kind.FILL)) {
+            never(draft, "probes do not see " + cue.kind().word(), "a gauge moves weights: use share or weight-lag");
         } else if (wantsProbe && !probesSee(cue)) {
             never(
                     draft,

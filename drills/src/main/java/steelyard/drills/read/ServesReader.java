@@ -3,6 +3,7 @@ package steelyard.drills.read;
 import java.nio.file.Files;
 import java.nio.file.InvalidPathException;
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Serves;
@@ -12,15 +13,18 @@ final class ServesReader {
     private static final Quantity<Integer> WORKERS = Numbers.from(1, 100_000);
     private static final Quantity<Integer> QUEUE = Numbers.from(0, 10_000_000);
     private static final Quantity<String> PROBE_WORK = Words.of("a kind of probe work", "queued", "free");
-    private static final Serves.Time HARMLESS_TIME = Serves.Time.fixed(1_000_000);
+    private static final Quantity<Double> FACTOR =
+            Numbers.NUMBER.that(n -> n >= 1 && n <= 1_000, "is out of range", "write a number from 1 to 1000");
 
     private final Problems problems;
     private final @Nullable Path folder;
+    private final TimeReader times;
 
-    /** With the folder that {@code answers:} starts from, or null to leave such names as they are. */
+    /** With the folder that names of files start from, or null to leave such names as they are. */
     ServesReader(Problems problems, @Nullable Path folder) {
         this.problems = problems;
         this.folder = folder;
+        this.times = new TimeReader(problems, folder);
     }
 
     Draft read(Fields owner) {
@@ -28,11 +32,13 @@ final class ServesReader {
         return new Draft(
                 fields.has("workers") ? fields.read("workers", WORKERS, 1) : null,
                 fields.read("queue", QUEUE),
-                time(fields),
+                times.read(fields),
                 fields.read("body", Sizes.SIZE),
                 probesQueue(fields),
                 fields.read("probe-loss", Shares.SHARE),
-                answers(fields));
+                answers(fields),
+                cold(fields),
+                gauges(fields));
     }
 
     private static @Nullable Boolean probesQueue(Fields fields) {
@@ -40,40 +46,36 @@ final class ServesReader {
         return word == null ? null : Boolean.valueOf(word.equals("queued"));
     }
 
-    private Serves.@Nullable Time time(Fields serves) {
-        Node node = serves.node("time");
-        if (node == null) {
+    private Serves.@Nullable Cold cold(Fields serves) {
+        if (!serves.has("cold")) {
             return null;
         }
-        if (node instanceof Node.Scalar) {
-            return Serves.Time.fixed(serves.read("time", Durations.POSITIVE, 1_000_000L));
-        }
-        Fields fields = Fields.open(node, Keys.TIME, problems);
-        List<String> laws = fields.given();
-        if (laws.size() != 1) {
-            if (!fields.odd()) {
-                problems.add(node.place(), "a time follows one law", "write fixed, exponential or lognormal");
-            }
-            return HARMLESS_TIME;
-        }
-        return switch (laws.get(0)) {
-            case "fixed" -> Serves.Time.fixed(fields.read("fixed", Durations.POSITIVE, 1_000_000L));
-            case "exponential" -> Serves.Time.exponential(fields.read("exponential", Durations.POSITIVE, 1_000_000L));
-            default -> lognormal(fields.map("lognormal", Keys.LOGNORMAL));
-        };
+        Fields fields = serves.map("cold", Keys.COLD);
+        return new Serves.Cold(
+                fields.need("factor", FACTOR, 1.0), fields.need("decay", Durations.POSITIVE, Durations.SECOND));
     }
 
-    private Serves.Time lognormal(Fields fields) {
-        long median = fields.need("median", Durations.POSITIVE, 1L);
-        long p99 = fields.need("99%", Durations.POSITIVE, Durations.DAY + 1);
-        if (p99 <= median) {
-            problems.add(
-                    fields.valuePlace("99%"),
-                    "the 99 % quantile is not above the median",
-                    "write more than " + Durations.text(median));
-            return HARMLESS_TIME;
+    private @Nullable List<Serves.Gauge> gauges(Fields serves) {
+        if (!serves.has("gauges")) {
+            return null;
         }
-        return Serves.Time.lognormal(median, p99);
+        List<Serves.Gauge> gauges = new ArrayList<>();
+        for (Node.Entry entry : serves.gauges("gauges")) {
+            if (entry.key().equals(Serves.CPU)) {
+                problems.add(
+                        entry.place(),
+                        "the gauge cpu is the busy share of the workers",
+                        "leave it out; every backend has it");
+            } else if (entry.value() instanceof Node.Scalar) {
+                Double base = Shares.SHARE.read(entry.value(), entry.key(), problems);
+                gauges.add(new Serves.Gauge(entry.key(), base == null ? 0 : base, 0));
+            } else {
+                Fields fields = Fields.open(entry.value(), Keys.GAUGE, problems);
+                gauges.add(new Serves.Gauge(
+                        entry.key(), fields.need("base", Shares.SHARE, 0.0), fields.read("each", Shares.SHARE, 0.0)));
+            }
+        }
+        return gauges;
     }
 
     private @Nullable String answers(Fields fields) {
@@ -104,7 +106,9 @@ final class ServesReader {
             @Nullable Integer bodyBytes,
             @Nullable Boolean probesQueue,
             @Nullable Double probeLoss,
-            @Nullable String answers) {
+            @Nullable String answers,
+            Serves.@Nullable Cold cold,
+            @Nullable List<Serves.Gauge> gauges) {
 
         /** What this says, and where it says nothing what the other one says. */
         Draft over(Draft other) {
@@ -115,7 +119,9 @@ final class ServesReader {
                     first(bodyBytes, other.bodyBytes),
                     first(probesQueue, other.probesQueue),
                     first(probeLoss, other.probeLoss),
-                    first(answers, other.answers));
+                    first(answers, other.answers),
+                    first(cold, other.cold),
+                    first(gauges, other.gauges));
         }
 
         /** The keys that have no value of their own and were left out. */
@@ -129,11 +135,13 @@ final class ServesReader {
             return new Serves(
                     or(workers, 1),
                     or(queue, 64),
-                    or(time, HARMLESS_TIME),
+                    or(time, TimeReader.HARMLESS),
                     or(bodyBytes, 512),
                     or(probesQueue, Boolean.FALSE),
                     or(probeLoss, 0.0),
-                    answers);
+                    answers,
+                    cold,
+                    or(gauges, List.of()));
         }
 
         private static <T> @Nullable T first(@Nullable T one, @Nullable T other) {

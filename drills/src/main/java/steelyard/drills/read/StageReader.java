@@ -31,8 +31,8 @@ final class StageReader {
         }
         Fields fields = drill.map("stage", Keys.STAGE);
         HostsReader hosts = new HostsReader(fields);
-        PoolReader reader =
-                new PoolReader(problems, new BackendsReader(problems, hosts, new ServesReader(problems, folder)));
+        PoolReader reader = new PoolReader(
+                problems, new BackendsReader(problems, hosts, new ServesReader(problems, folder)), folder);
         List<Pool> pools = new ArrayList<>();
         List<Node.Entry> entries = fields.named("pools", "pool");
         for (Node.Entry entry : entries) {

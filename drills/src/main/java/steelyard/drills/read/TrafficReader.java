@@ -3,13 +3,9 @@ package steelyard.drills.read;
 import java.math.BigDecimal;
 import java.math.RoundingMode;
 import java.util.ArrayList;
-import java.util.HashSet;
 import java.util.List;
-import java.util.Locale;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
-import steelyard.drills.model.Pool;
-import steelyard.drills.model.Probe;
 import steelyard.drills.model.Stage;
 import steelyard.drills.model.Traffic;
 
@@ -20,19 +16,20 @@ final class TrafficReader {
     private static final Quantity<Double> SKEW =
             Numbers.NUMBER.that(s -> s >= 0 && s <= 10, "is out of range", "write a number from 0 to 10");
     private static final Quantity<String> POOL = Names.name("the name of a pool", "seats");
-    private static final List<String> METHODS = List.of("get", "head", "post", "put", "delete", "patch", "options");
     private static final Traffic.Request GET = new Traffic.Request("GET", "/", 1, 0, Set.of());
 
     private final Problems problems;
     private final List<String> pools;
-    private final @Nullable Stage stage;
+    private final RequestReader reader;
+    private final TrafficChecks checks;
     private final long lastsNanos;
 
     /** With the names of the pools, none when they are not known, and the stage, null when it could not be read. */
     TrafficReader(Problems problems, List<String> pools, @Nullable Stage stage, long lastsNanos) {
         this.problems = problems;
         this.pools = pools;
-        this.stage = stage;
+        this.reader = new RequestReader(problems);
+        this.checks = new TrafficChecks(problems, stage);
         this.lastsNanos = lastsNanos;
     }
 
@@ -48,7 +45,7 @@ final class TrafficReader {
             Fields fields = Fields.open(one, Keys.TRAFFIC, problems);
             Traffic stream = stream(fields);
             streams.add(stream);
-            noticeSilence(fields, stream);
+            checks.check(fields, stream);
         }
         if (nodes.isEmpty() && node instanceof Node.Items) {
             problems.add(node.place(), "there is no traffic", "write traffic: [{to: seats, rate: 300/s}]");
@@ -59,7 +56,6 @@ final class TrafficReader {
     private Traffic stream(Fields fields) {
         String to = to(fields);
         List<Traffic.Request> requests = requests(fields);
-        refuseProbePath(fields, to, requests);
         return new Traffic(
                 to,
                 fields.read("arrivals", ARRIVALS, Traffic.Arrivals.POISSON),
@@ -68,52 +64,6 @@ final class TrafficReader {
                 fields.read("skew", SKEW, 0.0),
                 fields.read("give-up", Durations.POSITIVE, 10 * Durations.SECOND),
                 requests);
-    }
-
-    /** A backend knows a probe by its path alone, so a request for it would be no traffic. */
-    private void refuseProbePath(Fields fields, String to, List<Traffic.Request> requests) {
-        String probed = probePath(to);
-        for (Traffic.Request request : requests) {
-            if (probed != null && asksFor(request.path(), probed)) {
-                problems.add(
-                        fields.has("requests") ? fields.valuePlace("requests") : fields.place(),
-                        "a backend would take '" + request.path() + "' for a probe of the pool",
-                        "ask for another path, or let the probe do so");
-            }
-        }
-    }
-
-    /** Without mapping files every answer of a backend has status 200. */
-    private void noticeSilence(Fields fields, Traffic stream) {
-        boolean own = stage != null
-                && stage.pools().stream()
-                        .filter(pool -> pool.name().equals(stream.pool()))
-                        .flatMap(pool -> pool.backends().stream())
-                        .allMatch(backend -> backend.serves().answers() == null);
-        for (int i = 0; own && i < stream.requests().size(); i++) {
-            Traffic.Request request = stream.requests().get(i);
-            if (!request.good().isEmpty() && !request.good().contains(200)) {
-                problems.notice(
-                        fields.list("requests").get(i).place(),
-                        "no answer to '" + request.path() + "' could be good: the backends answer with status 200",
-                        "add 200 to good, or give the backends a folder of answers");
-            }
-        }
-    }
-
-    private @Nullable String probePath(String pool) {
-        for (Pool each : stage == null ? List.<Pool>of() : stage.pools()) {
-            Probe probe = each.probe();
-            if (each.name().equals(pool) && probe != null) {
-                return probe.path();
-            }
-        }
-        return null;
-    }
-
-    /** Whether a target is this path, with whatever query where the path names none. */
-    private static boolean asksFor(String target, String path) {
-        return target.equals(path) || (path.indexOf('?') < 0 && target.startsWith(path + "?"));
     }
 
     private String to(Fields fields) {
@@ -174,7 +124,7 @@ final class TrafficReader {
             }
             known &= share != null || (whole == 1 && !request.has("share"));
             sum += share == null ? whole : share;
-            requests.add(request(request, share == null ? whole : share));
+            requests.add(reader.read(request, share == null ? whole : share));
         }
         if (Math.abs(sum - 1) < 1e-9) {
             return requests;
@@ -186,23 +136,6 @@ final class TrafficReader {
                     "change them so that they do");
         }
         return List.of(GET);
-    }
-
-    private Traffic.Request request(Fields fields, double share) {
-        List<String> methods = fields.given().stream().filter(METHODS::contains).toList();
-        String method = methods.isEmpty() ? "get" : methods.get(0);
-        if (methods.size() != 1 && !fields.odd()) {
-            problems.add(
-                    fields.place(),
-                    methods.isEmpty() ? "a request needs a method and a path" : "a request has one method",
-                    "write one, such as get: /sailings/today");
-        }
-        return new Traffic.Request(
-                method.toUpperCase(Locale.ROOT),
-                fields.read(method, PoolReader.PATH, "/"),
-                share,
-                fields.read("body", Sizes.SIZE, 0),
-                new HashSet<>(fields.values("good", Numbers.STATUS)));
     }
 
     private static String percent(double share) {

@@ -37,7 +37,7 @@ class BrokenDrillTest {
 
     @Test
     void names_ofBrokenDrills_areMany() throws IOException {
-        assertThat(names()).hasSizeGreaterThan(90);
+        assertThat(names()).hasSizeGreaterThan(180);
     }
 
     @ParameterizedTest

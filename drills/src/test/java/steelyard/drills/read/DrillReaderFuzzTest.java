@@ -93,7 +93,7 @@ class DrillReaderFuzzTest {
 
     private static Parsed<?> outcome(String text, long seed, int round) {
         try {
-            Parsed<?> parsed = DrillReader.read("spoiled", text);
+            Parsed<?> parsed = DrillReader.read("spoiled", text, EveryKeyTest.FOLDER);
             for (Problem problem : parsed.problems()) {
                 assertThat(problem.line()).isBetween(1, text.length() + 1);
                 assertThat(problem.column()).isPositive();

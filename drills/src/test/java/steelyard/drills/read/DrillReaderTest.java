@@ -8,30 +8,44 @@ import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.EnumSet;
 import java.util.List;
+import java.util.Map;
 import java.util.Set;
 import java.util.stream.Collectors;
 import java.util.stream.IntStream;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
+import steelyard.drills.model.Affinity;
 import steelyard.drills.model.Backend;
+import steelyard.drills.model.Bench;
 import steelyard.drills.model.Cause;
 import steelyard.drills.model.Cue;
+import steelyard.drills.model.Delay;
+import steelyard.drills.model.Drain;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Expectation;
 import steelyard.drills.model.Forwarded;
+import steelyard.drills.model.Front;
+import steelyard.drills.model.Hashing;
 import steelyard.drills.model.Host;
+import steelyard.drills.model.InFlight;
+import steelyard.drills.model.Limits;
+import steelyard.drills.model.LoadProbe;
 import steelyard.drills.model.Measure;
 import steelyard.drills.model.Picking;
 import steelyard.drills.model.Pool;
 import steelyard.drills.model.Probe;
+import steelyard.drills.model.Reserve;
 import steelyard.drills.model.Retry;
+import steelyard.drills.model.Retune;
 import steelyard.drills.model.Serves;
 import steelyard.drills.model.Stage;
 import steelyard.drills.model.Standing;
 import steelyard.drills.model.Target;
 import steelyard.drills.model.Timeouts;
+import steelyard.drills.model.Trace;
 import steelyard.drills.model.Traffic;
 import steelyard.drills.model.WarmUp;
+import steelyard.drills.model.Wire;
 
 class DrillReaderTest {
     private static final long MS = 1_000_000;
@@ -46,8 +60,10 @@ class DrillReaderTest {
             lasts: 10s
             """;
 
+    private static final String PAGES = EveryKeyTest.FOLDER.resolve("pages").toString();
+
     private static Drill read(String text) {
-        Parsed<Drill> parsed = DrillReader.read("drill.yaml", text);
+        Parsed<Drill> parsed = DrillReader.read("drill.yaml", text, EveryKeyTest.FOLDER);
         assertThat(parsed.value()).as("%s", parsed.problems()).isPresent();
         return parsed.value().orElseThrow();
     }
@@ -110,7 +126,7 @@ class DrillReaderTest {
         assertThat(stage.loops()).isEqualTo(2);
         assertThat(stage.connections()).isEqualTo(9_000);
         Pool seats = stage.pool("seats");
-        assertThat(seats.probe()).isEqualTo(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 4, 1));
+        assertThat(seats.probe()).isEqualTo(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 4, 1, 0.1));
         assertThat(seats.warmUp()).isEqualTo(new WarmUp(90 * S, 0.05));
         assertThat(seats.drain().limitNanos()).isEqualTo(10 * S);
         assertThat(seats.retry()).isEqualTo(new Retry(2, 0.25, 7, Set.of(502, 503)));
@@ -123,11 +139,137 @@ class DrillReaderTest {
     }
 
     @Test
+    void read_ofPools_takesWhatTheyKeepTo() {
+        Pool cargo = read(EveryKeyTest.TEXT).stage().pool("cargo");
+        assertThat(cargo.weights()).isEqualTo(Pool.Weights.LOAD);
+        assertThat(cargo.picking().affinity()).isEqualTo(new Affinity(Affinity.By.COOKIE, "berth", 600 * S));
+        assertThat(cargo.health().bench()).isEqualTo(new Bench(4, 0.45, 8 * S, 15, 4 * S, 50 * S, 20 * S, 0.6));
+        assertThat(cargo.health().load())
+                .isEqualTo(new LoadProbe(
+                        "/gauges",
+                        2 * S,
+                        300 * MS,
+                        5 * S,
+                        0.05,
+                        2 * MS,
+                        List.of(
+                                new LoadProbe.Gauge("cpu", 0.8, 1),
+                                new LoadProbe.Gauge("memory", 0.9, 2),
+                                new LoadProbe.Gauge("disk", 0.95, 1))));
+        assertThat(cargo.reserve()).isEqualTo(new Reserve(0.3, 0.4));
+        assertThat(cargo.inFlight()).isEqualTo(new InFlight(16, 100, 500 * MS));
+        assertThat(cargo.drain()).isEqualTo(new Drain(30 * S, true));
+        assertThat(cargo.timeouts()).isEqualTo(new Timeouts(S, 10 * S, 60 * S, 5 * S, 6 * S));
+        assertThat(cargo.limits()).isEqualTo(new Limits(4_096, 16_384, 1 << 20));
+        assertThat(cargo.wire())
+                .isEqualTo(new Wire(
+                        new Front(0, Front.Kind.HTTP, Front.Tls.files(file("front.pem"), file("front-key.pem"))),
+                        Forwarded.HIDDEN,
+                        true));
+    }
+
+    @Test
+    void read_ofEmptyBenchAndLoad_fillsInTheDefaults() {
+        Pool pool = read(LEAST.replace("method: round-robin", "method: stride, weights: load, bench: {}, load: {}"))
+                .stage()
+                .pool("seats");
+        // The defaults of the table of keys: 5 in a row, no share, 10 s, 20, 5 s, 1 min, 30 s, half of the pool.
+        assertThat(pool.health().bench()).isEqualTo(new Bench(5, 0, 10 * S, 20, 5 * S, 60 * S, 30 * S, 0.5));
+        // /load every second within 400 ms, stale after three of them, floor a tenth, free, the processor alone.
+        assertThat(pool.health().load())
+                .isEqualTo(
+                        new LoadProbe("/load", S, 400 * MS, 3 * S, 0.1, 0, List.of(new LoadProbe.Gauge("cpu", 1, 1))));
+    }
+
+    @Test
+    void read_ofLoadWithAPeriodOfItsOwn_isStaleAfterThreeOfThem() {
+        Pool pool = read(LEAST.replace("method: round-robin", "method: stride, weights: load, load: {every: 2s}"))
+                .stage()
+                .pool("seats");
+        assertThat(pool.health().load()).extracting(LoadProbe::staleAfterNanos).isEqualTo(6 * S);
+    }
+
+    @Test
+    void read_ofMethods_takesWhatTheyAreTold() {
+        Stage stage = read(EveryKeyTest.TEXT).stage();
+        Picking mail = stage.pool("mail").picking();
+        Picking quays = stage.pool("quays").picking();
+        Picking tides = stage.pool("tides").picking();
+        assertThat(mail.hash())
+                .isEqualTo(new Hashing(Hashing.By.COOKIE, "berth", Hashing.Table.PERMUTATION, 100, 101, 1.25));
+        assertThat(quays.hash())
+                .isEqualTo(new Hashing(Hashing.By.HEADER, "x-berth", Hashing.Table.RING, 50, 65_537, 0));
+        assertThat(quays.affinity()).isEqualTo(Affinity.byCookie());
+        assertThat(tides.delay()).isEqualTo(new Delay(Delay.Candidates.ALL, 5 * S));
+        assertThat(tides.affinity()).isEqualTo(Affinity.byClient());
+        assertThat(stage.pool("tides").wire().front()).isEqualTo(new Front(0, Front.Kind.TCP, Front.Tls.THROW_AWAY));
+        assertThat(stage.pool("mail").wire().front().tls())
+                .isEqualTo(Front.Tls.store(file("front.p12"), "STORE_PASSWORD"));
+    }
+
+    @Test
+    void read_ofServes_takesLawsColdCachesAndGauges() {
+        Stage stage = read(EveryKeyTest.TEXT).stage();
+        Backend skua = stage.pool("cargo").backends().get(0);
+        Backend dunlin = stage.pool("cargo").backends().get(1);
+        assertThat(skua.tier()).isEqualTo(1);
+        assertThat(dunlin.tier()).isEqualTo(2);
+        assertThat(skua.serves().cold()).isEqualTo(new Serves.Cold(3, 5 * S));
+        assertThat(dunlin.serves().gauges())
+                .containsExactly(new Serves.Gauge("memory", 0.3, 0.005), new Serves.Gauge("disk", 0.2, 0));
+        assertThat(dunlin.serves().time()).isEqualTo(Serves.Time.gamma(12 * MS, 2));
+        // times.csv: 12 ms, 1.5 s and 9 ms in column took.
+        assertThat(stage.pool("mail").backends().get(0).serves().time())
+                .isEqualTo(Serves.Time.trace(new Trace(
+                        "times.csv", "took", Trace.Order.REPLAYED, Trace.Nanos.of(12 * MS, 1_500 * MS, 9 * MS))));
+    }
+
+    @Test
+    void read_ofAnUpgrade_takesItsHeadersAndHowLongItStaysOpen() {
+        assertThat(read(EveryKeyTest.TEXT).traffic().get(2).requests())
+                .containsExactly(new Traffic.Request(
+                        "GET",
+                        "/berths/{client}",
+                        1,
+                        0,
+                        Set.of(),
+                        Map.of("x-shore", "north-{client}"),
+                        "websocket",
+                        3 * S));
+    }
+
+    @Test
+    void read_ofARetune_takesOnlyTheKeysThatAreGiven() {
+        Drill drill = read(EveryKeyTest.TEXT);
+        Retune whole = cue(drill, "retune pool cargo").settings().retune();
+        assertThat(whole)
+                .isEqualTo(new Retune(
+                        new Retune.ProbeChange(500 * MS, 200 * MS, 2, 3, 0.05), 5 * S, Pool.Method.TWO_CHOICES));
+        Retune part = DrillReader.readCue("{retune: seats, probe: {misses: 5}}", drill)
+                .value()
+                .orElseThrow()
+                .settings()
+                .retune();
+        assertThat(part).isEqualTo(new Retune(new Retune.ProbeChange(null, null, 5, null, null), null, null));
+        assertThat(part.probe().of(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 4, 1, 0.1)))
+                .isEqualTo(new Probe(Probe.Kind.HTTP, "/afloat", S, 400 * MS, 5, 1, 0.1));
+    }
+
+    @Test
+    void read_ofGaugeCues_takesGaugeAndValue() {
+        Drill drill = read(EveryKeyTest.TEXT);
+        assertThat(cue(drill, "load skua").settings().gauge()).isEqualTo("memory");
+        assertThat(cue(drill, "load skua").settings().to()).isEqualTo(0.9);
+        assertThat(cue(drill, "load skua").forNanos()).isEqualTo(5 * S);
+        assertThat(cue(drill, "fill pool cargo").settings().to()).isEqualTo(0.95);
+    }
+
+    @Test
     void read_ofBackends_laysTheirOwnServesOverThePools() {
         List<Backend> backends = read(EveryKeyTest.TEXT).stage().pool("seats").backends();
-        Serves pool = new Serves(8, 16, Serves.Time.lognormal(12 * MS, 60 * MS), 4096, true, 0.01, "pages");
-        Serves fulmar = new Serves(8, 16, Serves.Time.fixed(9 * MS), 4096, true, 0.01, "pages");
-        Serves gannet = new Serves(8, 0, Serves.Time.exponential(20 * MS), 4096, true, 0.01, "pages");
+        Serves pool = new Serves(8, 16, Serves.Time.lognormal(12 * MS, 60 * MS), 4096, true, 0.01, PAGES);
+        Serves fulmar = new Serves(8, 16, Serves.Time.fixed(9 * MS), 4096, true, 0.01, PAGES);
+        Serves gannet = new Serves(8, 0, Serves.Time.exponential(20 * MS), 4096, true, 0.01, PAGES);
         assertThat(backends)
                 .containsExactly(
                         new Backend("fulmar", "fulmar", 3, "north-quay", true, fulmar),
@@ -329,6 +471,10 @@ class DrillReaderTest {
                         "cue:1:8: there is no backend 'gannet-9'; did you mean 'gannet-1'?",
                         "cue:1:18: a cue sent by hand is played once; leave out times",
                         "cue:1:28: a cue sent by hand is played once; leave out every");
+    }
+
+    private static String file(String name) {
+        return EveryKeyTest.FOLDER.resolve(name).toString();
     }
 
     private static Cue cue(Drill drill, String name) {
