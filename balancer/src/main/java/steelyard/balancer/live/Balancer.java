@@ -3,10 +3,12 @@ package steelyard.balancer.live;
 import java.io.IOException;
 import java.net.InetSocketAddress;
 import java.security.SecureRandom;
+import java.security.cert.X509Certificate;
 import java.util.ArrayList;
 import java.util.HexFormat;
 import java.util.List;
 import java.util.Locale;
+import java.util.concurrent.atomic.AtomicLong;
 import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Chance;
@@ -16,10 +18,14 @@ import steelyard.balancer.live.control.ControlPage;
 import steelyard.balancer.live.control.Counts;
 import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.live.guard.WaitingRooms;
 import steelyard.balancer.live.http.Forwarding;
 import steelyard.balancer.live.probe.Probes;
+import steelyard.balancer.live.tcp.TcpFronts;
 import steelyard.balancer.live.tcp.Transport;
+import steelyard.balancer.live.tls.FrontTls;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.PoolSettings;
 
 /**
  * A running balancer: one front a pool on 127.0.0.1.
@@ -34,7 +40,10 @@ public final class Balancer implements AutoCloseable {
     private final Transport transport;
     private final GuardedDecider decider;
     private final Counts counts;
+    private final WaitingRooms rooms;
+    private final Certificates certificates;
     private final Forwarding forwarding;
+    private final TcpFronts tcpFronts;
     private final Probes probes;
     private final List<InetSocketAddress> fronts = new ArrayList<>();
     private @Nullable ControlPage control;
@@ -43,6 +52,7 @@ public final class Balancer implements AutoCloseable {
     private Balancer(
             BalancerSettings settings,
             List<InetSocketAddress> addresses,
+            Certificates certificates,
             LongSupplier nanoClock,
             Chance chance,
             DecisionSink listener) {
@@ -50,8 +60,13 @@ public final class Balancer implements AutoCloseable {
         this.transport = Transport.open(settings.loops());
         this.counts = new Counts(settings, listener);
         this.decider = new GuardedDecider(settings, nanoClock, chance, counts, transport.home(), new CarryOut());
-        this.forwarding = new Forwarding(settings, decider, transport, addresses);
-        this.probes = new Probes(settings, decider, transport, addresses);
+        this.certificates = certificates;
+        this.rooms = new WaitingRooms(transport.loops());
+        AtomicLong numbers = new AtomicLong();
+        this.forwarding =
+                new Forwarding(settings, decider, transport, rooms, addresses, certificates::backends, numbers);
+        this.tcpFronts = new TcpFronts(decider, transport, rooms, addresses, numbers);
+        this.probes = new Probes(settings, decider, transport, addresses, certificates::backends);
     }
 
     /**
@@ -60,7 +75,7 @@ public final class Balancer implements AutoCloseable {
      * @param nanoClock monotonic, in nanoseconds; read from several threads
      * @param listener is told every decision, in order, inside the balancer's lock: it must be quick and must not call
      *     back
-     * @throws CannotStart when a port cannot be had; nothing is left open then
+     * @throws CannotStart when a port cannot be had or a certificate cannot be used; nothing is left open then
      */
     public static Balancer start(
             BalancerSettings settings,
@@ -74,7 +89,8 @@ public final class Balancer implements AutoCloseable {
         for (int backend = 0; backend < settings.backends().size(); backend++) {
             addresses.add(backends.of(backend));
         }
-        Balancer balancer = new Balancer(settings, addresses, nanoClock, chance, listener);
+        Certificates certificates = Certificates.of(settings, backends);
+        Balancer balancer = new Balancer(settings, addresses, certificates, nanoClock, chance, listener);
         try {
             for (int pool = 0; pool < settings.pools().size(); pool++) {
                 balancer.bind(pool, ports.of(pool));
@@ -87,11 +103,16 @@ public final class Balancer implements AutoCloseable {
     }
 
     private void bind(int pool, int port) throws CannotStart {
+        PoolSettings of = settings.pools().get(pool);
+        FrontTls tls = certificates.front(pool);
         try {
-            fronts.add(forwarding.bind(pool, port));
+            fronts.add(
+                    switch (of.front().kind()) {
+                        case HTTP -> forwarding.bind(pool, tls, port);
+                        case TCP -> tcpFronts.bind(pool, of, tls, certificates.backends(pool), port);
+                    });
         } catch (IOException e) {
-            String name = settings.pools().get(pool).name();
-            throw new CannotStart("the front of pool " + name + " cannot listen: " + reason(port, e), e);
+            throw new CannotStart("the front of pool " + of.name() + " cannot listen: " + reason(port, e), e);
         }
     }
 
@@ -114,11 +135,24 @@ public final class Balancer implements AutoCloseable {
     public void begin(long nowNanos) {
         decider.begin(nowNanos);
         forwarding.begin();
+        tcpFronts.begin();
     }
 
     /** Where the front of a pool listens. */
     public InetSocketAddress frontAddress(int pool) {
         return fronts.get(pool);
+    }
+
+    /** The certificate that the front of a pool shows; null for a front without TLS. */
+    public @Nullable X509Certificate frontCertificate(int pool) {
+        FrontTls tls = certificates.front(pool);
+        return tls == null ? null : tls.certificate();
+    }
+
+    /** Connections to the front of a pool that did not come to agree on keys. */
+    public long failedHandshakes(int pool) {
+        FrontTls tls = certificates.front(pool);
+        return tls == null ? 0 : tls.failedHandshakes();
     }
 
     /**
@@ -194,6 +228,7 @@ public final class Balancer implements AutoCloseable {
         closed = true;
         List<RuntimeException> failures = new ArrayList<>();
         step(failures, forwarding::close);
+        step(failures, tcpFronts::close);
         step(failures, decider::end);
         step(failures, () -> transport.home().submit(probes::close).awaitUninterruptibly());
         ControlPage page = control;
@@ -240,12 +275,13 @@ public final class Balancer implements AutoCloseable {
 
         @Override
         public void place(long ticket, int backend) {
-            throw new IllegalStateException("not asked for");
+            rooms.placed(ticket, backend);
         }
 
         @Override
         public void cut(int backend) {
             forwarding.cut(backend);
+            tcpFronts.cut(backend);
         }
     }
 }

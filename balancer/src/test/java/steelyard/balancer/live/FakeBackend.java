@@ -6,8 +6,10 @@ import java.net.InetSocketAddress;
 import java.net.ServerSocket;
 import java.net.Socket;
 import java.util.List;
+import java.util.Objects;
 import java.util.concurrent.CopyOnWriteArrayList;
 import java.util.concurrent.atomic.AtomicInteger;
+import org.jspecify.annotations.Nullable;
 
 /** A backend of plain sockets that does exactly what its script says, one thread a connection. */
 final class FakeBackend implements AutoCloseable {
@@ -21,16 +23,21 @@ final class FakeBackend implements AutoCloseable {
     private final AtomicInteger connections = new AtomicInteger();
     private volatile Script script;
 
-    private FakeBackend(Script script) throws IOException {
+    private FakeBackend(Script script, ServerSocket server) throws IOException {
         this.script = script;
-        this.server = new ServerSocket();
+        this.server = server;
         server.setReuseAddress(true);
         server.bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), 0), 128);
         daemon(this::accept);
     }
 
     static FakeBackend playing(Script script) throws IOException {
-        return new FakeBackend(script);
+        return new FakeBackend(script, new ServerSocket());
+    }
+
+    /** Plays over the sockets that this unbound one accepts. */
+    static FakeBackend playing(Script script, ServerSocket server) throws IOException {
+        return new FakeBackend(script, server);
     }
 
     /** Answers every request, without content, with these octets. */
@@ -60,6 +67,16 @@ final class FakeBackend implements AutoCloseable {
     /** How many connections were accepted so far. */
     int connections() {
         return connections.get();
+    }
+
+    /** What ended a script early, if anything did. */
+    @Nullable
+    IOException failure() {
+        return wires.stream()
+                .map(Wire::failure)
+                .filter(Objects::nonNull)
+                .findFirst()
+                .orElse(null);
     }
 
     private void accept() {

@@ -5,9 +5,11 @@ import static org.junit.jupiter.api.Assertions.assertThrows;
 import java.io.IOException;
 import java.net.InetAddress;
 import java.net.InetSocketAddress;
+import java.security.cert.X509Certificate;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.function.UnaryOperator;
+import org.awaitility.Awaitility;
 import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
@@ -34,13 +36,12 @@ final class LivePlay implements AutoCloseable {
     private final BalancerSettings settings;
 
     private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses) throws CannotStart {
-        this(settings, addresses, 0);
+        this(settings, addresses::get, 0);
     }
 
-    private LivePlay(BalancerSettings settings, List<InetSocketAddress> addresses, int port) throws CannotStart {
+    private LivePlay(BalancerSettings settings, BackendAddresses addresses, int port) throws CannotStart {
         this.settings = settings;
-        balancer =
-                Balancer.start(settings, addresses::get, pool -> port, System::nanoTime, (draw, a, b) -> 0, decisions);
+        balancer = Balancer.start(settings, addresses, pool -> port, System::nanoTime, (draw, a, b) -> 0, decisions);
     }
 
     private LivePlay begun() {
@@ -56,6 +57,23 @@ final class LivePlay implements AutoCloseable {
         return new LivePlay(settings(1, with, addresses), List.of(addresses)).begun();
     }
 
+    /** Backends that are believed when they show this certificate. */
+    static LivePlay believing(X509Certificate shown, UnaryOperator<Pool> with, InetSocketAddress... addresses)
+            throws CannotStart {
+        BackendAddresses known = new BackendAddresses() {
+            @Override
+            public InetSocketAddress of(int backend) {
+                return addresses[backend];
+            }
+
+            @Override
+            public X509Certificate certificate(int backend) {
+                return shown;
+            }
+        };
+        return new LivePlay(settings(1, with, addresses), known, 0).begun();
+    }
+
     static LivePlay onLoops(int loops, InetSocketAddress... addresses) throws CannotStart {
         return new LivePlay(settings(loops, UnaryOperator.identity(), addresses), List.of(addresses)).begun();
     }
@@ -63,7 +81,7 @@ final class LivePlay implements AutoCloseable {
     /** A balancer whose only backend is itself. */
     static LivePlay onItself(int port) throws CannotStart {
         InetSocketAddress self = new InetSocketAddress(InetAddress.getLoopbackAddress(), port);
-        return new LivePlay(settings(1, UnaryOperator.identity(), self), List.of(self), port).begun();
+        return new LivePlay(settings(1, UnaryOperator.identity(), self), List.of(self)::get, port).begun();
     }
 
     /** A balancer that has not begun. */
@@ -97,6 +115,11 @@ final class LivePlay implements AutoCloseable {
 
     InetSocketAddress front() {
         return balancer.frontAddress(0);
+    }
+
+    /** Waits until nothing is in flight. */
+    void settle() {
+        Awaitility.await().until(() -> inFlight() == 0);
     }
 
     Wire client() throws IOException {

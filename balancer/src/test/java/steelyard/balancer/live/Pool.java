@@ -12,6 +12,7 @@ import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.RetrySettings;
 import steelyard.balancer.settings.TimeoutSettings;
+import steelyard.balancer.settings.TlsSettings;
 
 /** A pool in the making, for tests: round robin, no probes, no retries, patient. */
 final class Pool {
@@ -21,6 +22,9 @@ final class Pool {
     private TimeoutSettings timeouts = LivePlay.PATIENT;
     private FrontSettings.Forwarded forwarded = FrontSettings.Forwarded.NOT;
     private LimitSettings limits = LimitSettings.USUAL;
+    private FrontSettings.Kind kind = FrontSettings.Kind.HTTP;
+    private @Nullable TlsSettings tls;
+    private boolean backendTls;
     private long drainLimitNanos = 30 * LivePlay.SECOND;
 
     Pool countingConnections() {
@@ -77,6 +81,25 @@ final class Pool {
         return this;
     }
 
+    /** Octets are passed through, a connection as a whole. */
+    Pool passing() {
+        kind = FrontSettings.Kind.TCP;
+        count = PoolSettings.Count.CONNECTIONS;
+        return this;
+    }
+
+    /** Clients speak TLS. */
+    Pool securedBy(TlsSettings settings) {
+        tls = settings;
+        return this;
+    }
+
+    /** Backends speak TLS. */
+    Pool towardsTls() {
+        backendTls = true;
+        return this;
+    }
+
     PoolSettings settings(List<BackendSettings> backends) {
         return PoolSettings.named(
                         "terns",
@@ -86,7 +109,7 @@ final class Pool {
                 .retry(retry)
                 .timeouts(timeouts)
                 .limits(limits)
-                .front(new FrontSettings(0, FrontSettings.Kind.HTTP, null, false, forwarded))
+                .front(new FrontSettings(0, kind, tls, backendTls, forwarded))
                 .of(backends);
     }
 }

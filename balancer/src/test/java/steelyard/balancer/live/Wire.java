@@ -95,6 +95,11 @@ final class Wire implements AutoCloseable {
         return new String(read, StandardCharsets.ISO_8859_1);
     }
 
+    /** Exactly so many octets. */
+    byte[] readOctets(int octets) throws IOException {
+        return in.readNBytes(octets);
+    }
+
     /** How many octets came, of so many at most. */
     int skip(byte[] into) throws IOException {
         return in.read(into);

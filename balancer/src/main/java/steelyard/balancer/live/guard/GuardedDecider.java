@@ -98,6 +98,17 @@ public final class GuardedDecider {
         }
     }
 
+    /** @see Decider#leave */
+    public boolean leave(long ticket) {
+        synchronized (lock) {
+            Decider begun = begun();
+            long now = nanoClock.getAsLong();
+            boolean waited = begun.leave(ticket, now);
+            rearm(begun, now);
+            return waited;
+        }
+    }
+
     /** @see Decider#ended */
     public void ended(int backend, long request, int attempt, Outcome outcome, int status) {
         synchronized (lock) {

@@ -4,14 +4,16 @@ import io.netty.channel.Channel;
 import io.netty.channel.ChannelFuture;
 import io.netty.channel.ChannelHandler;
 import io.netty.channel.ChannelInitializer;
-import io.netty.channel.ConnectTimeoutException;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpRequestEncoder;
+import io.netty.util.concurrent.Future;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.live.tcp.Deadline;
+import steelyard.balancer.live.tls.BackendTls;
+import steelyard.balancer.live.tls.Ends;
 import steelyard.balancer.settings.TimeoutSettings;
 
 /** One connection to a backend: it serves one exchange at a time and waits idle between them. */
@@ -19,6 +21,7 @@ final class BackendConnection {
     private final LoopConnections home;
     private final int backend;
     private final TimeoutSettings timeouts;
+    private final @Nullable BackendTls tls;
     private final BackendDecoder decoder = Codecs.answers(this::moved);
     private final BackendReader reader = new BackendReader(this, decoder);
     private @Nullable Channel channel;
@@ -29,10 +32,13 @@ final class BackendConnection {
 
     private boolean awaitsFirstByte;
 
-    BackendConnection(LoopConnections home, int backend, TimeoutSettings timeouts, Exchange exchange) {
+    /** @param tls null for none */
+    BackendConnection(
+            LoopConnections home, int backend, TimeoutSettings timeouts, @Nullable BackendTls tls, Exchange exchange) {
         this.home = home;
         this.backend = backend;
         this.timeouts = timeouts;
+        this.tls = tls;
         this.exchange = exchange;
     }
 
@@ -55,6 +61,7 @@ final class BackendConnection {
             @Override
             protected void initChannel(Channel opened) {
                 opened.pipeline().addLast(decoder, new HttpRequestEncoder(), reader);
+                BackendTls.secure(tls, opened);
             }
         };
     }
@@ -67,17 +74,18 @@ final class BackendConnection {
         if (exchange != null) {
             exchange.opening(this);
         }
-        connecting.addListener(done -> {
-            if (!done.isSuccess()) {
-                boolean late = done.cause() instanceof ConnectTimeoutException;
-                home.closed(this);
-                fail(Outcome.REFUSED, late ? OwnAnswer.UNREACHED : OwnAnswer.REFUSED);
-            } else if (exchange == null) {
-                close();
-            } else {
-                exchange.connected(this);
-            }
-        });
+        Ends.whenUsable(connecting, this::opened);
+    }
+
+    private void opened(Future<?> done) {
+        if (!done.isSuccess()) {
+            home.closed(this);
+            fail(Outcome.REFUSED, OwnAnswer.unopened(done.cause()));
+        } else if (exchange == null) {
+            close();
+        } else {
+            exchange.connected(this);
+        }
     }
 
     void close() {

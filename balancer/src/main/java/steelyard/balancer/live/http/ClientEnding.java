@@ -2,9 +2,9 @@ package steelyard.balancer.live.http;
 
 import io.netty.channel.Channel;
 import io.netty.channel.ChannelFutureListener;
-import io.netty.channel.ChannelOption;
 import io.netty.channel.socket.DuplexChannel;
 import java.util.concurrent.TimeUnit;
+import steelyard.balancer.live.tls.Ends;
 
 /** The ways in which a client connection ends from this side. Once one has begun, nothing more is taken from the client. */
 final class ClientEnding {
@@ -49,12 +49,12 @@ final class ClientEnding {
     void gently() {
         begun = true;
         channel.config().setAutoRead(true);
-        if (!(channel instanceof DuplexChannel duplex)) {
+        if (!(channel instanceof DuplexChannel)) {
             afterFlush();
             return;
         }
         clock.end(LINGER_NANOS);
-        output.drained().addListener(done -> duplex.shutdownOutput());
+        output.drained().addListener(done -> Ends.finish(channel));
     }
 
     /**
@@ -65,8 +65,7 @@ final class ClientEnding {
     void truncate(boolean byReset) {
         if (byReset) {
             begun = true;
-            channel.config().setOption(ChannelOption.SO_LINGER, 0);
-            channel.close();
+            Ends.reset(channel);
         } else {
             afterFlush();
         }

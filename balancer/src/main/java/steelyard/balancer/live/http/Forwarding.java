@@ -14,50 +14,64 @@ import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
+import java.util.concurrent.atomic.AtomicLong;
 import java.util.function.Consumer;
+import java.util.function.IntFunction;
+import org.jspecify.annotations.Nullable;
 import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.live.guard.WaitingRooms;
 import steelyard.balancer.live.tcp.Transport;
+import steelyard.balancer.live.tls.BackendTls;
+import steelyard.balancer.live.tls.FrontTls;
 import steelyard.balancer.settings.BalancerSettings;
-import steelyard.balancer.settings.PoolSettings;
-import steelyard.balancer.settings.TimeoutSettings;
 
 /** The fronts of all pools and the connections behind them. Methods may be called from any thread but a loop's own. */
 public final class Forwarding {
     private final BalancerSettings settings;
     private final GuardedDecider decider;
     private final Transport transport;
-    private final RequestNumbers numbers = new RequestNumbers();
+    private final RequestNumbers numbers;
+    private final WaitingRooms rooms;
     private final List<Channel> fronts = new ArrayList<>();
     private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
     private final Map<EventLoop, LoopConnections> connections = new HashMap<>();
 
-    /** @param addresses by backend number */
+    /**
+     * @param addresses by backend number
+     * @param tls towards backends, by pool number; null for a pool without it
+     * @param own counted down for each request without a number
+     */
     public Forwarding(
-            BalancerSettings settings, GuardedDecider decider, Transport transport, List<InetSocketAddress> addresses) {
+            BalancerSettings settings,
+            GuardedDecider decider,
+            Transport transport,
+            WaitingRooms rooms,
+            List<InetSocketAddress> addresses,
+            IntFunction<@Nullable BackendTls> tls,
+            AtomicLong own) {
         this.settings = settings;
         this.decider = decider;
         this.transport = transport;
-        List<TimeoutSettings> timeouts = new ArrayList<>();
-        for (PoolSettings pool : settings.pools()) {
-            pool.backends().forEach(backend -> timeouts.add(pool.timeouts()));
-        }
+        this.rooms = rooms;
+        this.numbers = new RequestNumbers(own);
         for (EventLoop loop : transport.loops()) {
-            connections.put(loop, new LoopConnections(transport.client(loop), addresses, timeouts));
+            connections.put(loop, new LoopConnections(transport.client(loop), settings.pools(), addresses, tls));
         }
     }
 
     /**
      * Binds the front of a pool to a loopback port. Connections wait there until {@link #begin}.
      *
+     * @param tls towards clients, or null for none
      * @param port 0 for any that is free
      * @throws IOException when the port cannot be had
      */
-    public InetSocketAddress bind(int pool, int port) throws IOException {
+    public InetSocketAddress bind(int pool, @Nullable FrontTls tls, int port) throws IOException {
         PoolFront front = PoolFront.of(pool, settings.pools().get(pool), decider, numbers, settings.name());
         var binding = transport
                 .server()
                 .option(ChannelOption.AUTO_READ, false)
-                .childHandler(new ClientInitializer(front))
+                .childHandler(new ClientInitializer(front, tls))
                 .bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), port))
                 .awaitUninterruptibly();
         if (!binding.isSuccess()) {
@@ -90,9 +104,11 @@ public final class Forwarding {
 
     private final class ClientInitializer extends ChannelInitializer<Channel> {
         private final PoolFront front;
+        private final @Nullable FrontTls tls;
 
-        ClientInitializer(PoolFront front) {
+        ClientInitializer(PoolFront front, @Nullable FrontTls tls) {
             this.front = front;
+            this.tls = tls;
         }
 
         @Override
@@ -102,6 +118,9 @@ public final class Forwarding {
                 throw new IllegalStateException("a loop of another balancer");
             }
             clients.add(channel);
+            if (tls != null) {
+                channel.pipeline().addLast(tls.handler(channel));
+            }
             RequestDecoder decoder = Codecs.requests(front.settings().limits());
             ClientEncoder encoder = new ClientEncoder();
             channel.pipeline().addLast(decoder, encoder, new ClientHandler(front, there, decoder, encoder, channel));

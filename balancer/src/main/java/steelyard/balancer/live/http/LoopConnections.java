@@ -9,8 +9,11 @@ import java.util.HashSet;
 import java.util.List;
 import java.util.Set;
 import java.util.concurrent.TimeUnit;
+import java.util.function.IntFunction;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.live.tls.BackendTls;
+import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.TimeoutSettings;
 
 /** The connections of one event loop to all backends; idle ones are taken again last used first. Used on its loop only. */
@@ -20,11 +23,18 @@ final class LoopConnections {
     /**
      * @param client makes channels on this loop
      * @param addresses by backend number
-     * @param timeouts by backend number
+     * @param tls by pool number; null for a pool without it
      */
-    LoopConnections(Bootstrap client, List<InetSocketAddress> addresses, List<TimeoutSettings> timeouts) {
-        for (int backend = 0; backend < addresses.size(); backend++) {
-            lanes.add(new Lane(client, addresses.get(backend), timeouts.get(backend)));
+    LoopConnections(
+            Bootstrap client,
+            List<PoolSettings> pools,
+            List<InetSocketAddress> addresses,
+            IntFunction<@Nullable BackendTls> tls) {
+        for (int pool = 0; pool < pools.size(); pool++) {
+            PoolSettings of = pools.get(pool);
+            for (int member = 0; member < of.backends().size(); member++) {
+                lanes.add(new Lane(client, addresses.get(lanes.size()), of.timeouts(), tls.apply(pool)));
+            }
         }
     }
 
@@ -42,7 +52,7 @@ final class LoopConnections {
     /** Starts a new connection, which tells the exchange when it stands or does not come to stand. */
     void connect(int backend, Exchange exchange) {
         Lane lane = lanes.get(backend);
-        BackendConnection connection = new BackendConnection(this, backend, lane.timeouts, exchange);
+        BackendConnection connection = new BackendConnection(this, backend, lane.timeouts, lane.tls, exchange);
         lane.all.add(connection);
         connection.opening(
                 lane.bootstrap.clone().handler(connection.initializer()).connect());
@@ -80,14 +90,16 @@ final class LoopConnections {
     private static final class Lane {
         private final Bootstrap bootstrap;
         private final TimeoutSettings timeouts;
+        private final @Nullable BackendTls tls;
         private final ArrayDeque<BackendConnection> idle = new ArrayDeque<>();
         private final Set<BackendConnection> all = new HashSet<>();
 
-        Lane(Bootstrap client, InetSocketAddress address, TimeoutSettings timeouts) {
+        Lane(Bootstrap client, InetSocketAddress address, TimeoutSettings timeouts, @Nullable BackendTls tls) {
             long millis = TimeUnit.NANOSECONDS.toMillis(timeouts.connectNanos());
             this.bootstrap = client.clone().remoteAddress(address).option(ChannelOption.CONNECT_TIMEOUT_MILLIS, (int)
                     Math.max(1, Math.min(millis, Integer.MAX_VALUE)));
             this.timeouts = timeouts;
+            this.tls = tls;
         }
     }
 }

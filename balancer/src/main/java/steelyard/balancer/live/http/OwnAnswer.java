@@ -1,6 +1,9 @@
 package steelyard.balancer.live.http;
 
+import io.netty.channel.ConnectTimeoutException;
 import io.netty.handler.codec.http.HttpResponseStatus;
+import io.netty.handler.ssl.SslHandshakeTimeoutException;
+import javax.net.ssl.SSLException;
 import org.jspecify.annotations.Nullable;
 
 /** Answers that the balancer gives itself. Error types are those of RFC 9209, section 2.3. */
@@ -8,6 +11,7 @@ enum OwnAnswer {
     NOBODY(HttpResponseStatus.SERVICE_UNAVAILABLE, "destination_unavailable", "No backend can be picked."),
     REFUSED(HttpResponseStatus.BAD_GATEWAY, "connection_refused", "The backend refused the connection."),
     UNREACHED(HttpResponseStatus.GATEWAY_TIMEOUT, "connection_timeout", "No connection to the backend in time."),
+    NO_TLS(HttpResponseStatus.BAD_GATEWAY, "tls_protocol_error", "The backend does not speak TLS as it should."),
     RESET(HttpResponseStatus.BAD_GATEWAY, "connection_terminated", "The backend closed before it answered."),
     BROKEN(HttpResponseStatus.BAD_GATEWAY, "connection_terminated", "The backend closed inside its answer."),
     MALFORMED(HttpResponseStatus.BAD_GATEWAY, "http_protocol_error", "The backend did not answer in HTTP."),
@@ -45,6 +49,14 @@ enum OwnAnswer {
         this.status = status;
         this.error = error;
         this.text = text;
+    }
+
+    /** For a connection to a backend that did not come to stand. */
+    static OwnAnswer unopened(Throwable why) {
+        if (why instanceof ConnectTimeoutException || why instanceof SslHandshakeTimeoutException) {
+            return UNREACHED;
+        }
+        return why instanceof SSLException ? NO_TLS : REFUSED;
     }
 
     HttpResponseStatus status() {

@@ -7,7 +7,12 @@ import java.util.concurrent.atomic.AtomicLong;
 final class RequestNumbers {
     private static final int MOST_DIGITS = 18; // whatever has no more fits a long
 
-    private final AtomicLong own = new AtomicLong();
+    private final AtomicLong own;
+
+    /** @param own counted down from -1, shared with whatever else brings no number */
+    RequestNumbers(AtomicLong own) {
+        this.own = own;
+    }
 
     long of(HttpHeaders headers) {
         String given = headers.get(Fields.REQUEST);

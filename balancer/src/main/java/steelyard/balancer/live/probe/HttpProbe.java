@@ -16,6 +16,8 @@ import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.HttpVersion;
 import io.netty.util.AsciiString;
 import java.net.InetSocketAddress;
+import org.jspecify.annotations.Nullable;
+import steelyard.balancer.live.tls.BackendTls;
 
 /** Asks for the probe's path on a connection that is used for nothing else, and looks at the status. */
 final class HttpProbe extends ChannelInitializer<Channel> {
@@ -24,17 +26,20 @@ final class HttpProbe extends ChannelInitializer<Channel> {
 
     private final String path;
     private final InetSocketAddress address;
+    private final @Nullable BackendTls tls;
     private final Probes.Probe probe;
 
-    HttpProbe(String path, InetSocketAddress address, Probes.Probe probe) {
+    HttpProbe(String path, InetSocketAddress address, @Nullable BackendTls tls, Probes.Probe probe) {
         this.path = path;
         this.address = address;
+        this.tls = tls;
         this.probe = probe;
     }
 
     @Override
     protected void initChannel(Channel channel) {
         channel.pipeline().addLast(new HttpClientCodec(), new Answer());
+        BackendTls.secure(tls, channel);
     }
 
     private FullHttpRequest request() {

@@ -8,9 +8,11 @@ import io.netty.channel.ChannelInboundHandlerAdapter;
 import java.net.InetSocketAddress;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.function.IntFunction;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.live.tcp.Transport;
+import steelyard.balancer.live.tls.BackendTls;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
@@ -28,14 +30,22 @@ public final class Probes {
     private final List<Lane> lanes = new ArrayList<>();
     private boolean closed;
 
-    /** @param addresses by backend number */
+    /**
+     * @param addresses by backend number
+     * @param tls by pool number; null for a pool without it
+     */
     public Probes(
-            BalancerSettings settings, GuardedDecider decider, Transport transport, List<InetSocketAddress> addresses) {
+            BalancerSettings settings,
+            GuardedDecider decider,
+            Transport transport,
+            List<InetSocketAddress> addresses,
+            IntFunction<@Nullable BackendTls> tls) {
         this.decider = decider;
         this.client = transport.client(transport.home());
-        for (PoolSettings pool : settings.pools()) {
-            for (int i = 0; i < pool.backends().size(); i++) {
-                lanes.add(new Lane(addresses.get(lanes.size()), pool.probe()));
+        for (int pool = 0; pool < settings.pools().size(); pool++) {
+            PoolSettings of = settings.pools().get(pool);
+            for (int i = 0; i < of.backends().size(); i++) {
+                lanes.add(new Lane(addresses.get(lanes.size()), of.probe(), tls.apply(pool)));
             }
         }
     }
@@ -50,8 +60,9 @@ public final class Probes {
         Probe started = new Probe(backend, probe);
         lane.running = started;
         String path = settings.path();
-        ChannelHandler handler =
-                path == null ? new ChannelInboundHandlerAdapter() : new HttpProbe(path, lane.address, started);
+        ChannelHandler handler = path == null
+                ? new ChannelInboundHandlerAdapter()
+                : new HttpProbe(path, lane.address, lane.tls, started);
         ChannelFuture connecting = client.clone().handler(handler).connect(lane.address);
         started.channel = connecting.channel();
         connecting.addListener(done -> {
@@ -85,11 +96,13 @@ public final class Probes {
     private static final class Lane {
         private final InetSocketAddress address;
         private final @Nullable ProbeSettings settings;
+        private final @Nullable BackendTls tls;
         private @Nullable Probe running;
 
-        Lane(InetSocketAddress address, @Nullable ProbeSettings settings) {
+        Lane(InetSocketAddress address, @Nullable ProbeSettings settings, @Nullable BackendTls tls) {
             this.address = address;
             this.settings = settings;
+            this.tls = tls;
         }
     }
 

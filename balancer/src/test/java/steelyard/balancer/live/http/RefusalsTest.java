@@ -8,6 +8,7 @@ import io.netty.channel.embedded.EmbeddedChannel;
 import io.netty.util.concurrent.GlobalEventExecutor;
 import java.nio.charset.StandardCharsets;
 import java.util.List;
+import java.util.concurrent.atomic.AtomicLong;
 import org.junit.jupiter.api.AfterEach;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
@@ -72,10 +73,11 @@ class RefusalsTest {
                 settings, () -> 0, (draw, a, b) -> 0, new Sink(), GlobalEventExecutor.INSTANCE, new NoOrders());
         decider.begin(0);
         decider.change((core, now) -> core.withdraw(0, now));
-        PoolFront front = PoolFront.of(0, POOL, decider, new RequestNumbers(), "steelyard");
+        PoolFront front = PoolFront.of(0, POOL, decider, new RequestNumbers(new AtomicLong()), "steelyard");
         EmbeddedChannel channel = new EmbeddedChannel();
         ClientEncoder encoder = new ClientEncoder();
-        LoopConnections none = new LoopConnections(new io.netty.bootstrap.Bootstrap(), List.of(), List.of());
+        LoopConnections none =
+                new LoopConnections(new io.netty.bootstrap.Bootstrap(), List.of(), List.of(), pool -> null);
         RequestDecoder decoder = Codecs.requests(POOL.limits());
         channel.pipeline().addLast(decoder, encoder, new ClientHandler(front, none, decoder, encoder, channel));
         return channel;
