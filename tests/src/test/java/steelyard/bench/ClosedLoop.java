@@ -13,18 +13,20 @@ import java.net.InetSocketAddress;
 import java.nio.charset.StandardCharsets;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.stream.IntStream;
 import org.HdrHistogram.Histogram;
 
-/** 32 clients on one event loop, each of which sends its next request when the last answer is whole. */
+/**
+ * 32 clients on one event loop, each of which sends its next request when the last answer is whole. Each asks for a path of
+ * its own, so that a method that hashes paths spreads them.
+ */
 final class ClosedLoop implements AutoCloseable {
     private static final int CLIENTS = 32;
     private static final long HIGHEST_NANOS = 60_000_000_000L;
     private static final double SETTLE_SECONDS = 0.15;
 
-    private static final ByteBuf REQUEST = Unpooled.unreleasableBuffer(Unpooled.directBuffer()
-            .writeBytes(("GET /sailings/today HTTP/1.1\r\nHost: skerry.example\r\nAccept: */*\r\n"
-                            + "User-Agent: steelyard-bench\r\nSteelyard-Request: 1000001\r\n\r\n")
-                    .getBytes(StandardCharsets.US_ASCII)));
+    private static final List<ByteBuf> REQUESTS =
+            IntStream.range(0, CLIENTS).mapToObj(ClosedLoop::asking).toList();
 
     private final Loops loops = new Loops("bench-clients");
     private final ThreadMXBean threads = ManagementFactory.getThreadMXBean();
@@ -39,11 +41,12 @@ final class ClosedLoop implements AutoCloseable {
         stopping = false; // the connections that come next carry this over to their loop
         List<Channel> clients = new ArrayList<>();
         for (int i = 0; i < CLIENTS; i++) {
+            int number = i;
             clients.add(loops.client()
                     .handler(new ChannelInitializer<Channel>() {
                         @Override
                         protected void initChannel(Channel channel) {
-                            channel.pipeline().addLast(new Client());
+                            channel.pipeline().addLast(new Client(number));
                         }
                     })
                     .connect(target)
@@ -75,6 +78,18 @@ final class ClosedLoop implements AutoCloseable {
         return new Stretch(took, latencies.copy(), cpu, middle);
     }
 
+    /** What a client sends, again and again; shared, and never released. */
+    static ByteBuf request(int client) {
+        return REQUESTS.get(client).duplicate();
+    }
+
+    private static ByteBuf asking(int client) {
+        String head = "GET /sailings/" + (100 + client) + " HTTP/1.1\r\nHost: skerry.example\r\nAccept: */*\r\n"
+                + "User-Agent: steelyard-bench\r\nSteelyard-Request: 1000001\r\n\r\n";
+        return Unpooled.unreleasableBuffer(
+                Unpooled.directBuffer().writeBytes(head.getBytes(StandardCharsets.US_ASCII)));
+    }
+
     private static void onLoop(List<Channel> clients, Runnable what) throws Exception {
         clients.get(0).eventLoop().submit(what).sync();
     }
@@ -95,9 +110,14 @@ final class ClosedLoop implements AutoCloseable {
     }
 
     private final class Client extends ChannelInboundHandlerAdapter {
+        private final int number;
         private final HeadEnds ends = new HeadEnds();
         private int contentLeft;
         private long sentAt;
+
+        Client(int number) {
+            this.number = number;
+        }
 
         @Override
         public void channelActive(ChannelHandlerContext context) {
@@ -106,7 +126,7 @@ final class ClosedLoop implements AutoCloseable {
 
         private void send(ChannelHandlerContext context) {
             sentAt = System.nanoTime();
-            context.writeAndFlush(REQUEST.duplicate(), context.voidPromise());
+            context.writeAndFlush(request(number), context.voidPromise());
         }
 
         @Override

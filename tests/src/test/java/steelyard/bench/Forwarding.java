@@ -6,17 +6,8 @@ import java.util.EnumMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
-import java.util.Set;
 import java.util.function.ToDoubleFunction;
-import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.live.Balancer;
-import steelyard.balancer.settings.BackendSettings;
-import steelyard.balancer.settings.BalancerSettings;
-import steelyard.balancer.settings.HostSettings;
-import steelyard.balancer.settings.PickSettings;
-import steelyard.balancer.settings.PoolSettings;
-import steelyard.balancer.settings.RetrySettings;
-import steelyard.balancer.settings.TimeoutSettings;
 
 /**
  * Requests a second, p99 and CPU time a request: straight to a backend, through a bare byte relay, and through the
@@ -24,14 +15,14 @@ import steelyard.balancer.settings.TimeoutSettings;
  *
  * <p>32 clients in a closed loop over kept connections, answers of 512 bytes; client, middle and backend have one event
  * loop each. Five rounds; in each the three ways take short turns again and again, so that a slow spell of the machine
- * touches all of them alike; the table shows medians of the rounds.
+ * touches all of them alike; the table shows medians of the rounds. Then latencies at half of the relay's load, and every
+ * method before a thousand backends.
  */
 public final class Forwarding {
     private static final int ROUNDS = 5;
     private static final double WARM_SECONDS = 4;
     private static final int TURNS = 4;
     private static final double TURN_SECONDS = 0.75;
-    private static final long SECOND = 1_000_000_000L;
 
     private enum Way {
         DIRECT("direct", "bench-backend"),
@@ -53,7 +44,7 @@ public final class Forwarding {
     public static void main(String[] args) throws Exception {
         try (QuickBackend backend = new QuickBackend();
                 ByteRelay relay = new ByteRelay(backend.address());
-                Balancer balancer = balancer(backend.address());
+                Balancer balancer = Middles.three(backend.address());
                 ClosedLoop clients = new ClosedLoop()) {
             Map<Way, InetSocketAddress> targets = Map.of(
                     Way.DIRECT, backend.address(),
@@ -69,7 +60,10 @@ public final class Forwarding {
                                 .add(stretch));
             }
             print(rounds);
+            double relayRate = median(rounds.get(Way.RELAY), Stretch::perSecond);
+            HalfLoad.measure(relayRate / 2, backend.address(), relay.address(), balancer.frontAddress(0));
         }
+        ManyBackends.measure();
     }
 
     private static Map<Way, Stretch> round(ClosedLoop clients, Map<Way, InetSocketAddress> targets) throws Exception {
@@ -80,26 +74,6 @@ public final class Forwarding {
             }
         }
         return sums;
-    }
-
-    /** As a drill would have it: a pool with a retry budget and the decisions listened to. */
-    private static Balancer balancer(InetSocketAddress backend) throws Exception {
-        PoolSettings pool = PoolSettings.named("seats", PickSettings.of(PoolSettings.Method.WEIGHTED_ROUND_ROBIN))
-                .retry(new RetrySettings(1, 0.4, 10, Set.of()))
-                .timeouts(new TimeoutSettings(5 * SECOND, 30 * SECOND, 60 * SECOND))
-                .of(List.of(
-                        new BackendSettings("fulmar", 1, 0, false),
-                        new BackendSettings("gannet", 2, 0, false),
-                        new BackendSettings("petrel", 3, 0, false)));
-        Balancer balancer = Balancer.start(
-                new BalancerSettings("steelyard", 1, List.of(new HostSettings("north-quay", 1)), List.of(pool)),
-                number -> backend,
-                number -> 0,
-                System::nanoTime,
-                (draw, a, b) -> 0,
-                new DecisionSink() {}); // what a recorder costs is not the balancer's
-        balancer.begin(System.nanoTime());
-        return balancer;
     }
 
     private static void print(Map<Way, List<Stretch>> rounds) {
@@ -119,12 +93,12 @@ public final class Forwarding {
         say("ratio-to-relay: %.2f", balancer / median(rounds.get(Way.RELAY), Stretch::perSecond));
     }
 
-    private static double median(List<Stretch> stretches, ToDoubleFunction<Stretch> figure) {
+    static double median(List<Stretch> stretches, ToDoubleFunction<Stretch> figure) {
         double[] sorted = stretches.stream().mapToDouble(figure).sorted().toArray();
         return sorted[sorted.length / 2];
     }
 
-    private static void say(String format, Object... values) {
+    static void say(String format, Object... values) {
         System.out.println(String.format(Locale.ROOT, format, values));
     }
 }
