@@ -6,16 +6,23 @@ import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import java.io.IOException;
 import java.net.InetAddress;
 import java.net.ServerSocket;
+import java.net.URI;
+import java.net.http.HttpClient;
+import java.net.http.HttpRequest;
+import java.net.http.HttpResponse;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.time.Duration;
 import java.util.List;
+import java.util.concurrent.CompletableFuture;
 import java.util.concurrent.ConcurrentLinkedQueue;
+import java.util.concurrent.TimeUnit;
 import java.util.stream.Stream;
 import org.awaitility.Awaitility;
 import org.junit.jupiter.api.BeforeAll;
 import org.junit.jupiter.api.Test;
 import steelyard.backends.behave.Chance;
+import steelyard.balancer.live.ControlAddress;
 import steelyard.contract.Heard;
 import steelyard.contract.StageContract;
 import steelyard.drills.model.Drill;
@@ -25,6 +32,7 @@ import steelyard.harness.conduct.Conductor;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.CannotPlay;
 import steelyard.harness.stage.Stage;
+import steelyard.harness.stage.live.CuesByHand;
 import steelyard.harness.stage.live.LiveStage;
 
 class LiveStageTest extends StageContract {
@@ -62,6 +70,43 @@ class LiveStageTest extends StageContract {
                         .message()
                         .doesNotContain("\n");
             }
+        }
+    }
+
+    @Test
+    void cue_postedToTheControlPage_isCarriedOutAndRecordedAsByHand() throws Exception {
+        Drill drill = drill("", "rate: 50/s", "2s", "");
+        Heard heard = new Heard();
+        Conductor conductor = conductor(drill);
+        try (LiveStage stage = new LiveStage(drill, 7)) {
+            stage.open(heard);
+            ControlAddress control = stage.openControl(new CuesByHand(drill, conductor));
+            assertThat(post(control, "{\"withdraw\": \"fulmar\"}")).isEqualTo(409);
+            CompletableFuture<Integer> status = CompletableFuture.supplyAsync(() -> {
+                Awaitility.await().until(() -> post(control, "{\"withdraw\": \"albatross\"}") == 400);
+                return post(control, "{\"withdraw\": \"fulmar\"}");
+            });
+            stage.play(conductor);
+            assertThat(status.get(20, TimeUnit.SECONDS)).isEqualTo(202);
+            assertThat(post(control, "{\"admit\": \"fulmar\"}")).isEqualTo(409);
+        }
+        assertThat(heard.cues).hasSize(1).allSatisfy(each -> {
+            assertThat(each.by()).isEqualTo(PlayListener.By.HAND);
+            assertThat(each.cue().text()).isEqualTo("withdraw fulmar");
+        });
+    }
+
+    private static int post(ControlAddress control, String cue) {
+        HttpRequest request = HttpRequest.newBuilder(URI.create(control.base() + "/cues"))
+                .header("Authorization", "Bearer " + control.token())
+                .POST(HttpRequest.BodyPublishers.ofString(cue))
+                .build();
+        try {
+            return HttpClient.newHttpClient()
+                    .send(request, HttpResponse.BodyHandlers.ofString())
+                    .statusCode();
+        } catch (IOException | InterruptedException e) {
+            throw new IllegalStateException(e);
         }
     }
 

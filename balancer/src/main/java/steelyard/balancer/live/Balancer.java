@@ -16,6 +16,7 @@ import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.live.control.ControlPage;
 import steelyard.balancer.live.control.Counts;
+import steelyard.balancer.live.control.CueTaker;
 import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.live.guard.WaitingRooms;
@@ -156,19 +157,21 @@ public final class Balancer implements AutoCloseable {
     }
 
     /**
-     * Opens the control page, {@code GET /metrics} as OpenMetrics text; 503 before {@link #begin}. At most once.
+     * Opens the control page: {@code GET /metrics} as OpenMetrics text and {@code GET /state} as JSON, both 503 before
+     * {@link #begin}, and {@code POST /cues}. At most once.
      *
      * @param port of 127.0.0.1, or 0 for any that is free
+     * @param cues takes what is sent to {@code /cues}
      * @throws CannotStart when the port cannot be had
      */
-    public synchronized ControlAddress openControl(int port) throws CannotStart {
+    public synchronized ControlAddress openControl(int port, CueTaker cues) throws CannotStart {
         if (control != null || closed) {
             throw new IllegalStateException("the control page opens once");
         }
         byte[] random = new byte[TOKEN_BYTES];
         new SecureRandom().nextBytes(random);
         String token = HexFormat.of().formatHex(random);
-        ControlPage page = new ControlPage(settings, decider, counts, token);
+        ControlPage page = new ControlPage(settings, decider, counts, cues, token);
         try {
             InetSocketAddress address = page.bind(transport, port);
             control = page;

@@ -10,6 +10,11 @@ import java.net.InetSocketAddress;
 public record ControlAddress(InetSocketAddress address, String token) {
     /** Where the metrics are read. */
     public String url() {
-        return "http://" + address.getAddress().getHostAddress() + ":" + address.getPort() + "/metrics";
+        return base() + "/metrics";
+    }
+
+    /** What the paths {@code /metrics}, {@code /state} and {@code /cues} are put behind. */
+    public String base() {
+        return "http://" + address.getAddress().getHostAddress() + ":" + address.getPort();
     }
 }

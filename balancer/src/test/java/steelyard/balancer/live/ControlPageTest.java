@@ -2,14 +2,29 @@ package steelyard.balancer.live;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import java.util.List;
+import java.util.concurrent.CopyOnWriteArrayList;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import steelyard.balancer.live.control.CueTaker;
 
 /** The control page. */
 @Timeout(60)
 class ControlPageTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
     private static final String OK = "HTTP/1.1 200 OK\r\nContent-Length: 2\r\n\r\nok";
+
+    private static String bearer(ControlAddress control) {
+        return "Authorization: Bearer " + control.token() + "\r\n";
+    }
+
+    private static String send(ControlAddress control, String cue, String authorization) throws Exception {
+        try (Wire wire = Wire.to(control.address())) {
+            wire.send("POST /cues HTTP/1.1\r\nHost: a\r\n" + authorization + "Content-Length: " + cue.length()
+                    + "\r\n\r\n" + cue);
+            return wire.readAnswer();
+        }
+    }
 
     private static String read(ControlAddress control, String path, String authorization) throws Exception {
         try (Wire wire = Wire.to(control.address())) {
@@ -22,7 +37,7 @@ class ControlPageTest {
     void page_withToken_showsWhatWasDecided() throws Exception {
         try (FakeBackend backend = FakeBackend.answering(OK);
                 LivePlay play = LivePlay.of(Pool::retrying, FakeBackend.deadAddress(), backend.address())) {
-            ControlAddress control = play.balancer.openControl(0);
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
             String bearer = "Authorization: Bearer " + control.token() + "\r\n";
             play.ask(GET);
             play.balancer.reweigh(1, 7);
@@ -55,7 +70,7 @@ class ControlPageTest {
     @Test
     void page_withoutTheToken_is401() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
-            ControlAddress control = play.balancer.openControl(0);
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
             for (String authorization : new String[] {
                 "",
                 "Authorization: Bearer \r\n",
@@ -73,7 +88,7 @@ class ControlPageTest {
     @Test
     void page_beforeThePlay_is503() throws Exception {
         try (Balancer waiting = LivePlay.waiting(FakeBackend.deadAddress()).balancer) {
-            ControlAddress control = waiting.openControl(0);
+            ControlAddress control = waiting.openControl(0, CueTaker.NOBODY);
             assertThat(control.url()).startsWith("http://127.0.0.1:").endsWith("/metrics");
             assertThat(read(control, "/metrics", "Authorization: Bearer " + control.token() + "\r\n"))
                     .startsWith("HTTP/1.1 503 ");
@@ -83,7 +98,7 @@ class ControlPageTest {
     @Test
     void page_otherPath_is404() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
-            ControlAddress control = play.balancer.openControl(0);
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
             assertThat(read(control, "/", "Authorization: Bearer " + control.token() + "\r\n"))
                     .startsWith("HTTP/1.1 404 ");
         }
@@ -92,9 +107,83 @@ class ControlPageTest {
     @Test
     void page_loopback_onlyThere() throws Exception {
         try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
-            assertThat(play.balancer.openControl(0).address().getAddress().isLoopbackAddress())
+            assertThat(play.balancer
+                            .openControl(0, CueTaker.NOBODY)
+                            .address()
+                            .getAddress()
+                            .isLoopbackAddress())
                     .isTrue();
             assertThat(play.front().getAddress().isLoopbackAddress()).isTrue();
+        }
+    }
+
+    @Test
+    void state_withToken_saysHowEveryBackendStands() throws Exception {
+        try (FakeBackend backend = FakeBackend.answering(OK);
+                LivePlay play = LivePlay.of(backend.address(), backend.address())) {
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
+            play.balancer.reweigh(1, 7);
+            play.balancer.withdraw(0);
+            String page = read(control, "/state", bearer(control));
+            assertThat(page)
+                    .startsWith("HTTP/1.1 200 ")
+                    .containsIgnoringCase("content-type: application/json\r\n")
+                    .containsIgnoringCase("cache-control: no-store\r\n");
+            assertThat(page.substring(page.indexOf("\r\n\r\n") + 4))
+                    .startsWith("{\"pools\":[{\"pool\":\"terns\",")
+                    .contains("{\"backend\":\"tern-1\",\"standing\":\"withdrawn\",\"pickable\":false,\"in-flight\":0,"
+                            + "\"weight\":1,")
+                    .contains("{\"backend\":\"tern-2\",\"standing\":\"up\",\"pickable\":true,\"in-flight\":0,"
+                            + "\"weight\":7,\"effective-weight\":1.0,\"entitled-share\":1.0");
+        }
+    }
+
+    @Test
+    void cue_sent_isHandedOnAndAnsweredByWhatBecameOfIt() throws Exception {
+        List<String> sent = new CopyOnWriteArrayList<>();
+        CueTaker taker = cue -> {
+            sent.add(cue);
+            return switch (cue) {
+                case "{\"drain\":\"tern-1\"}" -> CueTaker.Reply.taken("drain tern-1");
+                case "over" -> CueTaker.Reply.nothingPlays();
+                default -> CueTaker.Reply.refused("cue:1:1: no cue; write one");
+            };
+        };
+        try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
+            ControlAddress control = play.balancer.openControl(0, taker);
+            assertThat(send(control, "{\"drain\":\"tern-1\"}", bearer(control)))
+                    .startsWith("HTTP/1.1 202 ")
+                    .endsWith("\r\n\r\ndrain tern-1\n");
+            assertThat(send(control, "x", bearer(control)))
+                    .startsWith("HTTP/1.1 400 ")
+                    .endsWith("\r\n\r\ncue:1:1: no cue; write one\n");
+            assertThat(send(control, "over", bearer(control))).startsWith("HTTP/1.1 409 ");
+            assertThat(send(control, "x", "")).startsWith("HTTP/1.1 401 ");
+            assertThat(sent).containsExactly("{\"drain\":\"tern-1\"}", "x", "over");
+            assertThat(send(control, "x".repeat(20_000), bearer(control))).startsWith("HTTP/1.1 413 ");
+            assertThat(read(control, "/cues", bearer(control)))
+                    .startsWith("HTTP/1.1 405 ")
+                    .containsIgnoringCase("allow: POST\r\n");
+        }
+    }
+
+    @Test
+    void cue_beforeThePlay_is409() throws Exception {
+        try (Balancer waiting = LivePlay.waiting(FakeBackend.deadAddress()).balancer) {
+            ControlAddress control = waiting.openControl(0, cue -> CueTaker.Reply.taken(cue));
+            assertThat(send(control, "x", bearer(control))).startsWith("HTTP/1.1 409 ");
+        }
+    }
+
+    @Test
+    void token_shownTwice_is401() throws Exception {
+        try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
+            for (String path : List.of("/metrics", "/state", "/nothing")) {
+                assertThat(read(control, path, "Authorization: Bearer x\r\n" + bearer(control)))
+                        .startsWith("HTTP/1.1 401 ")
+                        .doesNotContain("tern");
+            }
         }
     }
 }

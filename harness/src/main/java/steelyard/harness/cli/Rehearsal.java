@@ -27,6 +27,7 @@ import steelyard.harness.record.Verdict;
 import steelyard.harness.report.Report;
 import steelyard.harness.stage.CannotPlay;
 import steelyard.harness.stage.Stage;
+import steelyard.harness.stage.live.CuesByHand;
 import steelyard.harness.stage.live.LiveStage;
 
 /** One drill played live: puts stage, conductor, recorder, judge and view together, and takes them apart. */
@@ -97,9 +98,10 @@ final class Rehearsal {
         LiveStage stage = new LiveStage(drill, seed);
         try {
             interrupts.atFirst(stage::interrupt);
-            open(stage);
+            Conductor conductor = new Conductor(drill, new Chance(seed), new ConcurrentLinkedQueue<>());
+            open(stage, new CuesByHand(drill, conductor));
             view.begin();
-            stage.play(new Conductor(drill, new Chance(seed), new ConcurrentLinkedQueue<>()));
+            stage.play(conductor);
             return null;
         } catch (CannotPlay broken) {
             return broken;
@@ -109,11 +111,12 @@ final class Rehearsal {
         }
     }
 
-    private void open(LiveStage stage) throws CommandFailure {
+    private void open(LiveStage stage, CuesByHand cues) throws CommandFailure {
         try {
             stage.open(listener);
-            ControlAddress control = stage.openControl();
+            ControlAddress control = stage.openControl(cues);
             out.println("metrics %s (bearer token %s)".formatted(control.url(), control.token()));
+            out.println("control %s/state, %s/cues".formatted(control.base(), control.base()));
         } catch (CannotPlay cannot) {
             discard();
             throw CommandFailure.cannot(line(String.valueOf(cannot.getMessage())), cannot);

@@ -35,7 +35,8 @@ public final class Conductor implements Agenda {
     private long plannedNanos;
 
     private long polledNanos;
-    private boolean over;
+    /** Read by threads that send cues. */
+    private volatile boolean over;
 
     /**
      * @param chance of the play's seed

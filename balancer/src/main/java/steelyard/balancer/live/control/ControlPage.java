@@ -1,7 +1,5 @@
 package steelyard.balancer.live.control;
 
-import io.netty.buffer.ByteBuf;
-import io.netty.buffer.Unpooled;
 import io.netty.channel.Channel;
 import io.netty.channel.ChannelFutureListener;
 import io.netty.channel.ChannelHandlerContext;
@@ -9,16 +7,14 @@ import io.netty.channel.ChannelInitializer;
 import io.netty.channel.SimpleChannelInboundHandler;
 import io.netty.channel.group.ChannelGroup;
 import io.netty.channel.group.DefaultChannelGroup;
-import io.netty.handler.codec.http.DefaultFullHttpResponse;
 import io.netty.handler.codec.http.FullHttpRequest;
 import io.netty.handler.codec.http.FullHttpResponse;
 import io.netty.handler.codec.http.HttpHeaderNames;
-import io.netty.handler.codec.http.HttpHeaderValues;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpObjectAggregator;
 import io.netty.handler.codec.http.HttpResponseStatus;
 import io.netty.handler.codec.http.HttpServerCodec;
-import io.netty.handler.codec.http.HttpVersion;
+import io.netty.handler.timeout.ReadTimeoutHandler;
 import io.netty.util.concurrent.DefaultEventExecutor;
 import io.netty.util.concurrent.DefaultThreadFactory;
 import io.netty.util.concurrent.GlobalEventExecutor;
@@ -27,34 +23,48 @@ import java.net.InetAddress;
 import java.net.InetSocketAddress;
 import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
+import java.util.List;
 import java.util.concurrent.TimeUnit;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.live.tcp.Transport;
 import steelyard.balancer.settings.BalancerSettings;
 
-/** {@code GET /metrics} on a loopback port, for whoever shows the run's token as a bearer (RFC 6750). Thread-safe. */
+/**
+ * {@code GET /metrics}, {@code GET /state} and {@code POST /cues} on a loopback port, for whoever shows the run's token as
+ * a bearer (RFC 6750). Thread-safe.
+ */
 public final class ControlPage {
-    private static final int MOST_REQUEST = 4096;
+    private static final int MOST_REQUEST = 16 * 1024;
     private static final long END_SECONDS = 10;
+    private static final String METRICS = "/metrics";
+    private static final String STATE = "/state";
+    private static final String CUES = "/cues";
 
     private final BalancerSettings settings;
     private final GuardedDecider decider;
     private final Counts counts;
+    private final CueTaker cues;
     private final byte[] authorization;
     private final ChannelGroup channels = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
 
-    /** Makes the pages, and alone touches the meters. */
+    /** Makes the pages and sends the cues, and alone touches the meters. */
     private final DefaultEventExecutor maker =
             new DefaultEventExecutor(new DefaultThreadFactory("steelyard-control", true));
 
+    private final StatePage state;
     private @Nullable Meters meters;
 
-    /** @param token that a reader has to show */
-    public ControlPage(BalancerSettings settings, GuardedDecider decider, Counts counts, String token) {
+    /**
+     * @param cues where the cues go that are sent here
+     * @param token that a reader has to show
+     */
+    public ControlPage(BalancerSettings settings, GuardedDecider decider, Counts counts, CueTaker cues, String token) {
         this.settings = settings;
         this.decider = decider;
         this.counts = counts;
+        this.cues = cues;
+        this.state = new StatePage(settings, decider);
         this.authorization = ("Bearer " + token).getBytes(StandardCharsets.US_ASCII);
     }
 
@@ -90,7 +100,12 @@ public final class ControlPage {
         @Override
         protected void initChannel(Channel channel) {
             channels.add(channel);
-            channel.pipeline().addLast(new HttpServerCodec(), new HttpObjectAggregator(MOST_REQUEST), new Reader());
+            channel.pipeline()
+                    .addLast(
+                            new ReadTimeoutHandler(END_SECONDS, TimeUnit.SECONDS),
+                            new HttpServerCodec(),
+                            new HttpObjectAggregator(MOST_REQUEST),
+                            new Reader());
         }
     }
 
@@ -100,9 +115,11 @@ public final class ControlPage {
             FullHttpResponse refusal = refusal(request);
             if (refusal != null) {
                 send(context, refusal);
-            } else {
-                maker.execute(() -> send(context, page()));
+                return;
             }
+            String path = request.uri();
+            String content = request.content().toString(StandardCharsets.UTF_8);
+            maker.execute(() -> send(context, answer(path, content)));
         }
 
         private void send(ChannelHandlerContext context, FullHttpResponse answer) {
@@ -115,47 +132,55 @@ public final class ControlPage {
         }
     }
 
+    /** The token comes first: without it nothing is said, not even what there is here. */
     private @Nullable FullHttpResponse refusal(FullHttpRequest request) {
         if (request.decoderResult().isFailure()) {
-            return text(HttpResponseStatus.BAD_REQUEST, "The request is not valid HTTP.\n");
+            return ControlAnswers.line(HttpResponseStatus.BAD_REQUEST, "The request is not valid HTTP.");
         }
-        if (!shown(request.headers().get(HttpHeaderNames.AUTHORIZATION))) {
-            FullHttpResponse refused = text(HttpResponseStatus.UNAUTHORIZED, "The token of the run is needed.\n");
-            refused.headers().set(HttpHeaderNames.WWW_AUTHENTICATE, "Bearer");
-            return refused;
+        List<String> shown = request.headers().getAll(HttpHeaderNames.AUTHORIZATION);
+        if (shown.size() != 1 || !shown(shown.get(0))) {
+            return ControlAnswers.unauthorized();
         }
-        if (!request.uri().equals("/metrics")) {
-            return text(HttpResponseStatus.NOT_FOUND, "There is /metrics here.\n");
+        HttpMethod method = method(request.uri());
+        if (method == null) {
+            return ControlAnswers.line(HttpResponseStatus.NOT_FOUND, "There are /metrics, /state and /cues here.");
         }
-        if (!HttpMethod.GET.equals(request.method())) {
-            FullHttpResponse refused = text(HttpResponseStatus.METHOD_NOT_ALLOWED, "GET is served here.\n");
-            refused.headers().set(HttpHeaderNames.ALLOW, HttpMethod.GET.asciiName());
-            return refused;
+        if (!method.equals(request.method())) {
+            return ControlAnswers.only(method);
         }
-        return decider.hasBegun() ? null : text(HttpResponseStatus.SERVICE_UNAVAILABLE, "Nothing is decided yet.\n");
+        if (decider.hasBegun()) {
+            return null;
+        }
+        return request.uri().equals(CUES)
+                ? ControlAnswers.reply(CueTaker.Reply.nothingPlays())
+                : ControlAnswers.line(HttpResponseStatus.SERVICE_UNAVAILABLE, "Nothing is decided yet.");
     }
 
-    private FullHttpResponse page() {
+    private static @Nullable HttpMethod method(String path) {
+        return switch (path) {
+            case METRICS, STATE -> HttpMethod.GET;
+            case CUES -> HttpMethod.POST;
+            default -> null;
+        };
+    }
+
+    private FullHttpResponse answer(String path, String content) {
+        return switch (path) {
+            case METRICS -> ControlAnswers.page(Meters.OPEN_METRICS, meters().page());
+            case STATE -> ControlAnswers.page("application/json", state.page());
+            default -> ControlAnswers.reply(cues.take(content));
+        };
+    }
+
+    private Meters meters() {
         if (meters == null) {
             meters = new Meters(settings, decider, counts);
         }
-        FullHttpResponse page = text(HttpResponseStatus.OK, meters.page());
-        page.headers().set(HttpHeaderNames.CONTENT_TYPE, Meters.OPEN_METRICS);
-        return page;
+        return meters;
     }
 
     /** Takes the same time for every wrong token of one length. */
-    private boolean shown(@Nullable String given) {
-        return given != null && MessageDigest.isEqual(authorization, given.getBytes(StandardCharsets.UTF_8));
-    }
-
-    private static FullHttpResponse text(HttpResponseStatus status, String text) {
-        ByteBuf content = Unpooled.copiedBuffer(text, StandardCharsets.UTF_8);
-        FullHttpResponse response = new DefaultFullHttpResponse(HttpVersion.HTTP_1_1, status, content);
-        response.headers()
-                .set(HttpHeaderNames.CONTENT_TYPE, "text/plain; charset=utf-8")
-                .set(HttpHeaderNames.CONTENT_LENGTH, content.readableBytes())
-                .set(HttpHeaderNames.CONNECTION, HttpHeaderValues.CLOSE);
-        return response;
+    private boolean shown(String given) {
+        return MessageDigest.isEqual(authorization, given.getBytes(StandardCharsets.UTF_8));
     }
 }

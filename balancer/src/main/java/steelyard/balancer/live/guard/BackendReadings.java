@@ -15,6 +15,7 @@ public final class BackendReadings {
     private final double[] effectiveWeight;
     private final double[] entitledShare;
     private final int[] weight;
+    private final boolean[] pickable;
     private long atNanos;
 
     /** @param backends how many the balancer has */
@@ -25,6 +26,7 @@ public final class BackendReadings {
         effectiveWeight = new double[backends];
         entitledShare = new double[backends];
         weight = new int[backends];
+        pickable = new boolean[backends];
     }
 
     void take(Decider decider, long nowNanos) {
@@ -35,6 +37,7 @@ public final class BackendReadings {
             effectiveWeight[backend] = decider.effectiveWeight(backend, nowNanos);
             entitledShare[backend] = decider.entitledShare(backend, nowNanos);
             weight[backend] = decider.weight(backend);
+            pickable[backend] = decider.pickable(backend);
         }
     }
 
@@ -54,6 +57,11 @@ public final class BackendReadings {
 
     public Standing standing(int backend) {
         return standing[backend];
+    }
+
+    /** Whether it may be picked by its standing. */
+    public boolean pickable(int backend) {
+        return pickable[backend];
     }
 
     /** What it weighs, ramp and host included, whether or not it may be picked. */

@@ -18,6 +18,7 @@ import steelyard.backends.fleet.Ports;
 import steelyard.backends.stub.Transport;
 import steelyard.balancer.live.Balancer;
 import steelyard.balancer.live.ControlAddress;
+import steelyard.balancer.live.control.CueTaker;
 import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.drills.model.Drill;
@@ -118,11 +119,12 @@ public final class LiveStage implements Stage {
      * Opens the balancer's control page on a loopback port; the address holds the token made for it. At most once, while
      * the stage is open.
      *
+     * @param cues takes the cues that are sent there
      * @throws CannotPlay when no port can be had
      */
-    public ControlAddress openControl() throws CannotPlay {
+    public ControlAddress openControl(CueTaker cues) throws CannotPlay {
         try {
-            return opened(balancer).openControl(Ports.ofThisProcess().next());
+            return opened(balancer).openControl(Ports.ofThisProcess().next(), cues);
         } catch (CannotStart | steelyard.balancer.live.CannotStart failure) {
             throw new CannotPlay(String.valueOf(failure.getMessage()), failure);
         }
