@@ -22,15 +22,20 @@ public final class Sample {
     }
 
     public void mustAgreeWith(String what, double expected, double widestRelativeError) {
+        mustAgreeWith(what, expected, 0, widestRelativeError);
+    }
+
+    /** As above, where what is expected has a standard error of its own. */
+    public void mustAgreeWith(String what, double expected, double errorOfExpected, double widestRelativeError) {
         assertThat(size).isEqualTo(values.length).isGreaterThanOrEqualTo(20);
         double error = standardError();
         assertThat(error).as("standard error of " + what).isLessThanOrEqualTo(widestRelativeError * expected);
         assertThat(Math.abs(mean() - expected))
                 .as(what + ": mean " + mean() + ", expected " + expected + ", standard error " + error)
-                .isLessThanOrEqualTo(4 * error);
+                .isLessThanOrEqualTo(4 * Math.hypot(error, errorOfExpected));
     }
 
-    private double mean() {
+    public double mean() {
         double sum = 0;
         for (double value : values) {
             sum += value;

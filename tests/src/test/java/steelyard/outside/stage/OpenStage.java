@@ -29,16 +29,25 @@ final class OpenStage implements PlayListener {
     /**
      * What stands there.
      *
+     * @param method by which a backend is picked
      * @param load arrivals in one mean service time, of all backends together
      * @param time the law of service, with a mean of 10 ms
      * @param requests about how many are measured
      * @param longSojourn counts requests that take longer, in mean service times
      */
-    record Setting(int backends, int workers, int queue, double load, String time, long requests, double longSojourn) {
+    record Setting(
+            String method,
+            int backends,
+            int workers,
+            int queue,
+            double load,
+            String time,
+            long requests,
+            double longSojourn) {
         static final int UNLIMITED = 10_000_000;
 
         static Setting oneBackend(int workers, int queue, double load, String time, long requests) {
-            return new Setting(1, workers, queue, load, time, requests, Double.POSITIVE_INFINITY);
+            return new Setting("round-robin", 1, workers, queue, load, time, requests, Double.POSITIVE_INFINITY);
         }
     }
 
@@ -66,7 +75,7 @@ final class OpenStage implements PlayListener {
                 stage:
                   pools:
                     seats:
-                      method: round-robin
+                      method: %s
                       probe: {path: /afloat, every: 1s, within: 500ms}
                       timeouts: {first-byte: 1h}
                       serves: {workers: %d, queue: %d, time: %s}
@@ -77,6 +86,7 @@ final class OpenStage implements PlayListener {
                   - {measure: latency, quantile: mean, from: %s, at-most: 1h}
                   - {measure: failed, from: %<s, at-most: 99%%}
                 """.formatted(
+                        set.method,
                         set.workers,
                         set.queue,
                         set.time,

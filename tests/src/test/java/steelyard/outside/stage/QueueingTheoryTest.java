@@ -91,7 +91,8 @@ class QueueingTheoryTest {
         double p99 = number(row, "p99_sojourn_in_mean_service_times");
         Sample sojourns = new Sample(REPLICATIONS);
         Sample tails = new Sample(REPLICATIONS);
-        replicate(new Setting(backends, 1, Setting.UNLIMITED, load * backends, EXPONENTIAL, requests, p99))
+        replicate(new Setting(
+                        "round-robin", backends, 1, Setting.UNLIMITED, load * backends, EXPONENTIAL, requests, p99))
                 .forEach(each -> {
                     sojourns.add(each.meanSojourn());
                     tails.add(each.shareThatTakesLong());

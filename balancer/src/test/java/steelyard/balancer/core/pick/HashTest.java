@@ -5,6 +5,7 @@ import static org.assertj.core.api.Assertions.assertThatThrownBy;
 
 import java.util.List;
 import java.util.stream.IntStream;
+import org.assertj.core.data.Offset;
 import org.junit.jupiter.api.Nested;
 import org.junit.jupiter.api.Test;
 
@@ -169,7 +170,7 @@ class HashTest {
                 int[] now = owners(hash);
                 long back = IntStream.of(now).filter(owner -> owner == 1).count();
                 // Binomial over about 5,000 keys: 4 standard deviations are at most 142.
-                assertThat(back).isCloseTo(owned * tenth / 10, org.assertj.core.data.Offset.offset(142L));
+                assertThat(back).isCloseTo(owned * tenth / 10, Offset.offset(142L));
                 for (int i = 0; i < KEYS; i++) {
                     assertThat(full[i] == 1 || now[i] == full[i]).isTrue();
                     assertThat(earlier[i] != 1 || now[i] == 1).isTrue();
