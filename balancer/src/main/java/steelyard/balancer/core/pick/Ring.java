@@ -1,6 +1,7 @@
 package steelyard.balancer.core.pick;
 
 import java.util.Arrays;
+import java.util.stream.IntStream;
 
 /**
  * Points on a ring: a key belongs to the member of the next point, and passes on to the points behind it (Karger, Lehman,
@@ -12,16 +13,11 @@ import java.util.Arrays;
  *
  * <p>Who leaves keeps its points: a walk passes over them, which moves exactly the keys that it owned, and coming back costs
  * nothing. Only once walks have passed over as many points as there are is the ring copied without them; so that copy is paid
- * for. The points are sorted anew only after a change of weight, at the next walk: new ones are sorted and merged with
- * the rest. A walk begins with a binary search.
- *
- * <p>A point is one number, position above and member below, so that sorted numbers are a sorted ring.
+ * for. Only a change of weight makes points anew, at the next walk and for that member: they are sorted and merged with the
+ * rest.
  */
 final class Ring implements KeyTable {
     static final int MOST_POINTS = 1 << 16;
-
-    private static final int MEMBER_BITS = 20;
-    private static final int MEMBER = (1 << MEMBER_BITS) - 1;
 
     private final long[] nameHash;
     private final int pointsPerUnit;
@@ -31,9 +27,9 @@ final class Ring implements KeyTable {
 
     private boolean changed;
     /** All points, of whoever is in or not. */
-    private long[] points = {};
+    private Points points = new Points(new long[0]);
     /** The points that walks go over: all, or without those of members that are out. */
-    private long[] walked = points;
+    private Points walked = points;
 
     private long passedOver;
     private int at;
@@ -73,14 +69,12 @@ final class Ring implements KeyTable {
     public int first(long key) {
         if (changed) {
             place();
-        } else if (passedOver > walked.length) {
-            walked = Arrays.stream(points).filter(point -> in[member(point)]).toArray();
+        } else if (passedOver > walked.count()) {
+            walked = pointsOfThoseIn();
             passedOver = 0;
         }
-        // Members are never below 0, so the search meets no equal, and its answer is where the key would stand.
-        int found = Arrays.binarySearch(walked, position(key) - 1);
-        at = found < 0 ? -found - 1 : found + 1;
-        left = walked.length;
+        at = walked.next(key);
+        left = walked.count();
         return next();
     }
 
@@ -88,8 +82,8 @@ final class Ring implements KeyTable {
     public int next() {
         while (left > 0) {
             left--;
-            at = at < walked.length ? at : 0;
-            int member = member(walked[at++]);
+            at = at < walked.count() ? at : 0;
+            int member = Points.member(walked.at(at++));
             if (in[member]) {
                 return member;
             }
@@ -98,21 +92,28 @@ final class Ring implements KeyTable {
         return NOBODY;
     }
 
+    private Points pointsOfThoseIn() {
+        return new Points(IntStream.range(0, points.count())
+                .mapToLong(points::at)
+                .filter(point -> in[Points.member(point)])
+                .toArray());
+    }
+
     /** Keeps the points of members whose number of points is right, and makes those of the others anew. */
     private void place() {
         long[] fresh = new long[Arrays.stream(wanted).sum()];
         int kept = 0;
-        for (long point : points) {
-            int member = member(point);
+        for (int i = 0; i < points.count(); i++) {
+            int member = Points.member(points.at(i));
             if (wanted[member] == placed[member]) {
-                fresh[kept++] = point;
+                fresh[kept++] = points.at(i);
             }
         }
         int size = kept;
         for (int member = 0; member < wanted.length; member++) {
             if (wanted[member] != placed[member]) {
                 for (int i = 0; i < wanted[member]; i++) {
-                    fresh[size++] = position(Keys.of(nameHash[member], i)) | member;
+                    fresh[size++] = Points.point(Keys.of(nameHash[member], i), member);
                 }
                 placed[member] = wanted[member];
             }
@@ -120,18 +121,9 @@ final class Ring implements KeyTable {
         // Two sorted runs are what the library's sort merges in one pass.
         Arrays.sort(fresh, kept, size);
         Arrays.sort(fresh);
-        points = fresh;
-        walked = fresh;
+        points = new Points(fresh);
+        walked = points;
         passedOver = 0;
         changed = false;
-    }
-
-    /** Where a hash stands on the ring: its high bits, above those of a member, and not below 0. */
-    private static long position(long hash) {
-        return hash >>> 1 >>> MEMBER_BITS << MEMBER_BITS;
-    }
-
-    private static int member(long point) {
-        return (int) point & MEMBER;
     }
 }
