@@ -65,7 +65,11 @@ final class Confirming {
 
     private DrillSource changed(Cell cell) {
         return new DrillSource(
-                source.name(), source.stem(), cell.text(), new Parsed<>(Optional.of(cell.drill()), List.of()));
+                source.name(),
+                source.stem(),
+                cell.text(),
+                source.folder(),
+                new Parsed<>(Optional.of(cell.drill()), List.of()));
     }
 
     private Confirmed read(Result result, String name, Path path) throws CommandFailure {

@@ -6,6 +6,7 @@ import java.nio.file.Path;
 import java.util.List;
 import java.util.Locale;
 import java.util.Optional;
+import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Drill;
 import steelyard.drills.read.DrillLibrary;
 import steelyard.drills.read.DrillPlaces;
@@ -19,9 +20,11 @@ import steelyard.drills.read.Problem;
  * @param name as it is shown
  * @param stem the file name without its ending, in letters, digits and dashes: for names of folders
  * @param text what was read
+ * @param folder where names of files in it begin, or null for a bundled drill
  * @param parsed what that came to
  */
-record DrillSource(String name, String stem, String text, Parsed<Drill> parsed) {
+record DrillSource(
+        String name, String stem, String text, @Nullable Path folder, Parsed<Drill> parsed) {
     private static final String ENDING = "\\.ya?ml$";
 
     /**
@@ -39,7 +42,7 @@ record DrillSource(String name, String stem, String text, Parsed<Drill> parsed) 
                             + " drills` lists them)"));
         }
         if (!Files.isRegularFile(path) && bundled.isPresent()) {
-            return new DrillSource(bare, bare, bundled.get(), DrillReader.read(bare, bundled.get()));
+            return new DrillSource(bare, bare, bundled.get(), null, DrillReader.read(bare, bundled.get()));
         }
         boolean looksBare = path.getNameCount() == 1 && bare.equals(name);
         if (!Files.exists(path) && looksBare) {
@@ -47,7 +50,12 @@ record DrillSource(String name, String stem, String text, Parsed<Drill> parsed) 
                     List.of("steelyard: no file and no bundled drill '" + name + "'; " + remedy(name)));
         }
         Parsed<Drill> parsed = DrillReader.read(path);
-        return new DrillSource(name, stem(path), parsed.ok() ? text(path) : "", parsed);
+        return new DrillSource(
+                name,
+                stem(path),
+                parsed.ok() ? text(path) : "",
+                path.toAbsolutePath().getParent(),
+                parsed);
     }
 
     private static String remedy(String name) {

@@ -126,7 +126,7 @@ final class TuneCommand implements Callable<Integer> {
             for (String each : vary) {
                 variations.add(Variation.read(each));
             }
-            Grid grid = Grid.of(source.name(), source.text(), variations);
+            Grid grid = Grid.of(source.name(), source.text(), source.folder(), variations);
             return new Tuning.Request(grid, new Aim(want), new Aim(against), seed, plays, hold);
         } catch (TuneRefused refused) {
             throw CommandFailure.wrong(List.of("steelyard: " + refused.getMessage()));

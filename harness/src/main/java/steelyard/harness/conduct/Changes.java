@@ -25,7 +25,9 @@ final class Changes {
             case FAIL_PROBE -> new Change.FailProbe();
             case FLAP_PROBE -> new Change.FlapProbe(settings.periodNanos());
             case HEAL -> Change.Heal.all();
-            case LOAD, FILL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> throw notOnBackends(cue.kind());
+            case LOAD -> new Change.Load(gauge(cue), settings.to());
+            case FILL -> new Change.Fill(settings.to());
+            case REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> throw notOnBackends(cue.kind());
         };
     }
 
@@ -39,8 +41,18 @@ final class Changes {
             case FAIL_PROBE -> new Change.Heal(Change.Kind.FAIL_PROBE);
             case FLAP_PROBE -> new Change.Heal(Change.Kind.FLAP_PROBE);
             case KILL -> new Change.Revive();
-            case LOAD, FILL, REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> throw notOnBackends(kind);
+            case LOAD -> new Change.Heal(Change.Kind.LOAD);
+            case FILL -> new Change.Heal(Change.Kind.FILL);
+            case REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> throw notOnBackends(kind);
         };
+    }
+
+    private static String gauge(Cue cue) {
+        String gauge = cue.settings().gauge();
+        if (gauge == null) {
+            throw new IllegalArgumentException("load names no gauge");
+        }
+        return gauge;
     }
 
     private static IllegalArgumentException notOnBackends(Cue.Kind kind) {

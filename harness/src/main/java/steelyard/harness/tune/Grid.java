@@ -1,11 +1,13 @@
 package steelyard.harness.tune;
 
+import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Drill;
 import steelyard.drills.read.DrillReader;
 import steelyard.drills.read.Parsed;
@@ -34,6 +36,12 @@ public record Grid(List<Variation> variations, List<Cell> cells) {
      * @throws TuneRefused when a path leads nowhere, or the reader refuses a value: with the cell's values and the place
      */
     public static Grid of(String name, String text, List<Variation> variations) throws TuneRefused {
+        return of(name, text, null, variations);
+    }
+
+    /** The same for a drill that names files, which begin at its folder; null for a drill in none. */
+    public static Grid of(String name, String text, @Nullable Path folder, List<Variation> variations)
+            throws TuneRefused {
         checkPaths(variations);
         List<Map<String, String>> combinations = combinations(variations);
         List<Cell> cells = new ArrayList<>();
@@ -42,7 +50,7 @@ public record Grid(List<Variation> variations, List<Cell> cells) {
             for (Map.Entry<String, String> each : values.entrySet()) {
                 changed = new DrillText(changed).with(each.getKey(), each.getValue());
             }
-            cells.add(new Cell(cells.size() + 1, values, changed, read(name, changed, values)));
+            cells.add(new Cell(cells.size() + 1, values, changed, read(name, changed, folder, values)));
         }
         return new Grid(variations, cells);
     }
@@ -77,8 +85,9 @@ public record Grid(List<Variation> variations, List<Cell> cells) {
         return all;
     }
 
-    private static Drill read(String name, String text, Map<String, String> values) throws TuneRefused {
-        Parsed<Drill> parsed = DrillReader.read(name, text);
+    private static Drill read(String name, String text, @Nullable Path folder, Map<String, String> values)
+            throws TuneRefused {
+        Parsed<Drill> parsed = folder == null ? DrillReader.read(name, text) : DrillReader.read(name, text, folder);
         if (parsed.value().isPresent()) {
             return parsed.value().get();
         }

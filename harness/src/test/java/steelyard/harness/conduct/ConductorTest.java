@@ -37,6 +37,8 @@ class ConductorTest {
                 Arguments.of("{revive: fulmar}", "change 0 Revive[]"),
                 Arguments.of("{fail-probe: fulmar}", "change 0 FailProbe[]"),
                 Arguments.of("{flap-probe: fulmar, period: 2s}", "change 0 FlapProbe[periodNanos=2000000000]"),
+                Arguments.of("{load: fulmar, gauge: cpu, to: 90%}", "change 0 Load[gauge=cpu, to=0.9]"),
+                Arguments.of("{fill: fulmar, to: 95%}", "change 0 Fill[to=0.95]"),
                 Arguments.of("{heal: fulmar}", "change 0 Heal[fault=null]"),
                 Arguments.of("{reweigh: gannet, weight: 5}", "reweigh 1 to 5"),
                 Arguments.of("{drain: gannet, limit: 3s}", "drain 1 within 3000 ms"),
@@ -70,7 +72,8 @@ class ConductorTest {
         List<Cue.Kind> seen = everyKind()
                 .map(each -> byHand((String) each.get()[0], drill).kind())
                 .toList();
-        assertThat(Cue.Kind.values()).allMatch(kind -> seen.contains(kind) || kind == Cue.Kind.SURGE);
+        assertThat(Cue.Kind.values())
+                .allMatch(kind -> seen.contains(kind) || kind == Cue.Kind.SURGE || kind == Cue.Kind.RETUNE);
     }
 
     @Test
