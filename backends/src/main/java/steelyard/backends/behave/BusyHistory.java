@@ -34,12 +34,12 @@ final class BusyHistory {
     long lastSecondNanos(long nowNanos) {
         forget(nowNanos);
         long sum = 0;
-        long toNanos = nowNanos;
+        long laterAgo = 0;
         for (int i = size - 1; i >= 0; i--) {
             // Only the first corner can lie before the second.
-            long fromNanos = Math.min(SPAN_NANOS, nowNanos - atNanos[index(i)]);
-            sum += (fromNanos - (nowNanos - toNanos)) * busy[index(i)];
-            toNanos = nowNanos - fromNanos;
+            long ago = Math.min(SPAN_NANOS, nowNanos - atNanos[index(i)]);
+            sum += (ago - laterAgo) * busy[index(i)];
+            laterAgo = ago;
         }
         return sum;
     }
