@@ -53,11 +53,34 @@ public record PoolSettings(
                         || pick.hash().size() > backends.size(),
                 "pool %s: a permutation table has more places than there are backends",
                 name);
+        boolean standsBy = backends.stream().anyMatch(each -> each.tier() == 2);
+        Check.that(
+                !standsBy || reserve.standby() > 0 && backends.stream().anyMatch(each -> each.tier() == 1),
+                "pool %s: backends of tier 2 stand by for tier 1, below a share of it",
+                name);
     }
 
     /** Begins a pool. */
     public static PoolBuilder named(String name, PickSettings pick) {
         return new PoolBuilder(name, pick);
+    }
+
+    /**
+     * The same pool, picking otherwise.
+     *
+     * @throws IllegalArgumentException for what its other settings rule out
+     */
+    public PoolSettings with(PickSettings changed) {
+        return new PoolSettings(
+                name, changed, probe, warmUp, drain, retry, load, affinity, bench, reserve, inFlight, timeouts, limits,
+                front, backends);
+    }
+
+    /** The same pool, draining otherwise. */
+    public PoolSettings with(DrainSettings changed) {
+        return new PoolSettings(
+                name, pick, probe, warmUp, changed, retry, load, affinity, bench, reserve, inFlight, timeouts, limits,
+                front, backends);
     }
 
     public Method method() {

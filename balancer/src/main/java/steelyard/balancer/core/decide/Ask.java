@@ -30,7 +30,7 @@ public final class Ask {
     /** The backend that the client's connection follows, or {@link Decider#NOBODY}. */
     public int pinned = Decider.NOBODY;
 
-    /** Of a try that may have to wait: what {@link Orders#place} names it by; unique in the instance. */
+    /** Of a try in a pool with a waiting queue: what {@link Orders#place} names it by; unique in the instance. */
     public long ticket;
 
     private int[] tried = NONE;
@@ -62,6 +62,28 @@ public final class Ask {
         }
         tried[triedCount++] = backend;
         attempt++;
+    }
+
+    /** Whether an answer from this backend has to bind the client anew, since its cookie names another one or none. */
+    public boolean rebinds(int backend) {
+        return held != backend;
+    }
+
+    /** Becomes a copy of another one. */
+    void become(Ask other) {
+        pool = other.pool;
+        request = other.request;
+        attempt = other.attempt;
+        key = other.key;
+        client = other.client;
+        held = other.held;
+        pinned = other.pinned;
+        ticket = other.ticket;
+        triedCount = other.triedCount;
+        if (tried.length < triedCount) {
+            tried = new int[triedCount];
+        }
+        System.arraycopy(other.tried, 0, tried, 0, triedCount);
     }
 
     /** Clears what belongs to one request, so that the object can serve another one. */

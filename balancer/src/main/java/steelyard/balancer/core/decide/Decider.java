@@ -1,24 +1,18 @@
 package steelyard.balancer.core.decide;
 
-import java.util.Arrays;
-import java.util.List;
 import org.jspecify.annotations.Nullable;
-import steelyard.balancer.core.pick.HostPlaces;
 import steelyard.balancer.core.pick.Picker;
-import steelyard.balancer.core.pick.Tournament;
 import steelyard.balancer.core.standing.BackendStanding;
-import steelyard.balancer.core.standing.ProbeTracker;
 import steelyard.balancer.core.standing.Standing;
-import steelyard.balancer.core.standing.Transition;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
-import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
 
 /**
- * Decides everything that one balancer instance decides, for all its pools: who is picked, who may be, what is probed,
- * cut and tried again.
+ * Decides everything that one balancer instance decides, for all its pools: who is picked, who may be, who waits, what is
+ * probed, read, benched, cut and tried again.
  *
  * <p>It is told what happens and when, and answers with a decision; what has to be done it says through {@link Orders},
  * what it decided through {@link DecisionSink}, both inside the call and in the order of decision. It reads no clock,
@@ -27,7 +21,8 @@ import steelyard.balancer.settings.ProbeSettings;
  *
  * <p>Pools, hosts and backends are known by their numbers in {@link BalancerSettings}. Instants come from any clock that
  * does not go back, from any origin. Not thread-safe: a driver with several threads holds one lock over every call.
- * Cost: log2 of the backends a call; a pick and its end allocate nothing.
+ * Cost: log2 of the backends a call, a walk over the pool where tiers or the last resort change for all; a pick and its end
+ * allocate nothing.
  */
 public final class Decider {
     /** No backend. */
@@ -36,178 +31,71 @@ public final class Decider {
     /** No backend yet: every one is full, and the try waits. */
     public static final int WAITING = NOBODY - 1;
 
-    private final DecisionSink sink;
-    private final Orders orders;
-    private final PoolDesk[] pools;
-    private final int[] poolOf;
-    private final int[] firstOfPool;
-    private final BackendStanding[] standings;
-    private final int[] inFlight;
-    private final int[][] setWeights;
-    private final int[] hostWeights;
-    private final HostPlaces firstPlaces;
-    private final HostPlaces againPlaces;
-    /** As of the last change of each, so that finding the next costs no walk over standings. */
-    private final long[] deadlineNanos;
-
-    private final Tournament deadlines;
+    private final Roster roster;
+    private final Attempts attempts;
+    private final Probing probing;
+    private final Readings readings;
 
     /**
      * @param nowNanos the instant from which the first probes' phases count
      * @throws IllegalArgumentException for settings that contradict themselves
      */
     public Decider(BalancerSettings settings, Chance chance, DecisionSink sink, Orders orders, long nowNanos) {
-        this.sink = sink;
-        this.orders = orders;
-        List<BackendSettings> backends = settings.backends();
-        inFlight = new int[backends.size()];
-        poolOf = new int[backends.size()];
-        standings = new BackendStanding[backends.size()];
-        hostWeights = settings.hosts().stream().mapToInt(HostSettings::weight).toArray();
-        firstPlaces = new HostPlaces(hostWeights);
-        againPlaces = new HostPlaces(hostWeights);
-        pools = new PoolDesk[settings.pools().size()];
-        firstOfPool = new int[pools.length];
-        setWeights = new int[pools.length][];
-        deadlineNanos = new long[standings.length];
-        deadlines = new Tournament(backends.size(), this::earlier);
-        int backend = 0;
-        for (int pool = 0; pool < pools.length; pool++) {
-            firstOfPool[pool] = backend;
-            backend = open(pool, settings.pools().get(pool), backend, chance, nowNanos);
-        }
-        for (int each = 0; each < standings.length; each++) {
-            reschedule(each);
-        }
-    }
-
-    private int open(int pool, PoolSettings settings, int first, Chance chance, long nowNanos) {
-        List<BackendSettings> members = settings.backends();
-        int next = first + members.size();
-        Arrays.fill(poolOf, first, next, pool);
-        for (int member = 0; member < members.size(); member++) {
-            boolean startsUp = !members.get(member).startsDown();
-            ProbeTracker probes = probes(settings.probe(), first + member, startsUp, chance, nowNanos);
-            standings[first + member] = new BackendStanding(first + member, probes, startsUp, settings.warmUp());
-        }
-        setWeights[pool] = members.stream().mapToInt(BackendSettings::weight).toArray();
-        pools[pool] = new PoolDesk(
-                settings,
-                Arrays.copyOfRange(standings, first, next),
-                setWeights[pool],
-                members.stream().mapToInt(BackendSettings::host).toArray(),
-                hostWeights,
-                firstPlaces,
-                againPlaces,
-                chance);
-        return next;
-    }
-
-    private static @Nullable ProbeTracker probes(
-            @Nullable ProbeSettings settings, int backend, boolean startsUp, Chance chance, long nowNanos) {
-        if (settings == null) {
-            return null;
-        }
-        long phaseNanos = (long) (chance.unit(Chance.Draw.PROBE_PHASE, backend, 0) * settings.everyNanos());
-        return new ProbeTracker(settings, startsUp, nowNanos + phaseNanos);
+        roster = new Roster(settings, chance, sink, orders, nowNanos);
+        attempts = new Attempts(roster);
+        probing = new Probing(roster);
+        readings = new Readings(roster);
     }
 
     // --- time -------------------------------------------------------------------------------------------------------
 
     /** Whether {@link #poll} will ever have something to do, as things stand. */
     public boolean hasDeadline() {
-        return deadlines.best() != NOBODY;
+        return roster.deadlines.next() != NOBODY;
     }
 
     /** When {@link #poll} has something to do next; any other call may move it. Only while {@link #hasDeadline}. */
     public long nextDeadlineNanos() {
-        return deadlineNanos[deadlines.best()];
+        return roster.deadlines.nextNanos();
     }
 
-    /** Does everything that is due: starts and drops probes, cuts at drain limits, ends ramps. */
+    /**
+     * Does everything that is due: starts and drops probes and readings, cuts at drain limits, ends ramps and bench times,
+     * sends away what waited too long.
+     */
     public void poll(long nowNanos) {
-        int backend = deadlines.best();
-        while (backend != NOBODY && nowNanos - deadlineNanos[backend] >= 0) {
-            pollBackend(backend, nowNanos);
-            reschedule(backend);
-            backend = deadlines.best();
+        while (hasDeadline() && nowNanos - nextDeadlineNanos() >= 0) {
+            int place = roster.deadlines.next();
+            if (place < roster.backends()) {
+                pollBackend(place, nowNanos);
+                settle(place, nowNanos);
+            } else {
+                attempts.serve(place - roster.backends(), nowNanos);
+            }
         }
     }
 
     private void pollBackend(int backend, long nowNanos) {
-        BackendStanding standing = standings[backend];
+        BackendStanding standing = roster.standing(backend);
         if (standing.cuts(nowNanos)) {
-            orders.cut(backend);
+            roster.orders.cut(backend);
         }
-        boolean wasWarming = standings[backend].warming();
-        stood(backend, standing.pollRamp(nowNanos), wasWarming, nowNanos);
-        pollProbe(backend, nowNanos);
-    }
-
-    private void pollProbe(int backend, long nowNanos) {
-        BackendStanding standing = standings[backend];
-        Standing before = standing.shown();
-        boolean wasWarming = standings[backend].warming();
-        ProbeTracker.Step step = standing.pollProbes(nowNanos);
-        ProbeTracker probes = standing.probes();
-        if (probes == null) {
-            return;
-        }
-        switch (step) {
-            case NOTHING -> {}
-            case START -> orders.startProbe(backend, probes.number());
-            case DROP -> {
-                orders.dropProbe(backend, probes.number());
-                sink.probed(nowNanos, backend, probes.number(), false);
-                stood(backend, standing.afterProbe(before, nowNanos), wasWarming, nowNanos);
-            }
-        }
+        roster.stood(backend, standing.pollBench(nowNanos), nowNanos);
+        roster.stood(backend, standing.pollRamp(nowNanos), nowNanos);
+        probing.poll(backend, nowNanos);
+        readings.poll(backend, nowNanos);
     }
 
     // --- work -------------------------------------------------------------------------------------------------------
 
     /**
      * Picks a backend for one attempt and counts it in flight there. A backend that the client's connection or affinity
-     * follows is kept, at no turn, while it may be picked and was not tried yet.
+     * follows is kept, at no turn, while it may be picked, is not full and was not tried yet.
      *
      * @return the backend, {@link #NOBODY}, or {@link #WAITING}: {@link Orders#place} tells then
      */
     public int pick(Ask ask, long nowNanos) {
-        PoolDesk pool = pools[ask.pool];
-        int backend = ask.pinned;
-        if (!keeps(ask)) {
-            backend = toBackend(ask.pool, ask.attempt == 1 ? pool.pickFirst(ask, nowNanos) : pickAgain(ask, nowNanos));
-        }
-        if (ask.attempt == 1) {
-            pool.retries.firstTry();
-        }
-        if (backend == NOBODY) {
-            sink.nobody(nowNanos, ask.pool, ask.request, ask.attempt);
-            return NOBODY;
-        }
-        int count = ++inFlight[backend];
-        pool.began(member(backend), count, nowNanos);
-        sink.picked(nowNanos, ask.pool, backend, ask.request, ask.attempt, count);
-        return backend;
-    }
-
-    private boolean keeps(Ask ask) {
-        return ask.pinned != NOBODY && pickable(ask.pinned) && !ask.tried(ask.pinned);
-    }
-
-    private int pickAgain(Ask ask, long nowNanos) {
-        // The pool knows its backends by their place in it; the asker's array gets its numbers back below.
-        int first = firstOfPool[ask.pool];
-        int[] tried = ask.tried();
-        int count = ask.triedCount();
-        for (int i = 0; i < count; i++) {
-            tried[i] -= first;
-        }
-        int member = pools[ask.pool].pickAgain(ask, tried, count, nowNanos);
-        for (int i = 0; i < count; i++) {
-            tried[i] += first;
-        }
-        return member;
+        return attempts.pick(ask, nowNanos);
     }
 
     /**
@@ -217,31 +105,29 @@ public final class Decider {
      *     be ended
      */
     public boolean leave(long ticket, long nowNanos) {
-        return false;
+        return attempts.leave(ticket, nowNanos);
     }
 
-    private int toBackend(int pool, int member) {
-        return member == NOBODY ? NOBODY : firstOfPool[pool] + member;
+    /** How many tries of a pool wait for a place. */
+    public int waiting(int pool) {
+        return roster.desks[pool].line.waiting();
     }
 
     /**
-     * An attempt ended; to be told exactly once for each pick.
+     * An attempt ended; to be told exactly once for each pick. What it says may bench the backend; the place that it leaves
+     * may go to a try that waits.
      *
      * @param status of the answer, or 0 without one
      * @throws IllegalStateException if nothing was in flight there
      */
     public void ended(int backend, long request, int attempt, Outcome outcome, int status, long nowNanos) {
-        if (inFlight[backend] == 0) {
-            throw new IllegalStateException("request " + request + " ended on backend " + backend + ", which has none");
-        }
-        int count = --inFlight[backend];
-        pools[poolOf[backend]].ended(member(backend), count, outcome == Outcome.ANSWERED, nowNanos);
-        sink.ended(nowNanos, backend, request, attempt, outcome, status, count);
+        attempts.ended(backend, request, attempt, outcome, status, nowNanos);
+        attempts.serve(roster.poolOf(backend), nowNanos);
     }
 
     /**
      * Whether an attempt that has ended may be made again on another backend; takes from the pool's budget when it says
-     * yes.
+     * yes. A retry that {@link #pick} then finds nobody for, at once or after waiting, gives back what it took.
      *
      * @param attempt the one that ended
      * @param idempotent whether the method is (RFC 9110, 9.2.2)
@@ -258,48 +144,58 @@ public final class Decider {
             boolean headSent,
             boolean replayable,
             long nowNanos) {
-        RetryRule rule = pools[pool].retries;
+        RetryRule rule = roster.desks[pool].retries;
         boolean granted = rule.grants(attempt, outcome, status, idempotent, headSent, replayable);
         if (rule.asked()) {
-            sink.retryAsked(nowNanos, pool, request, attempt, granted);
+            roster.sink.retryAsked(nowNanos, pool, request, attempt, granted);
         }
         return granted;
     }
 
     /** Whether the next answer from this backend should tell its client to close the connection. */
     public boolean saysClose(int backend) {
-        return standings[backend].saysClose();
+        return roster.standing(backend).saysClose();
     }
 
-    // --- probes -----------------------------------------------------------------------------------------------------
+    // --- probes and readings ----------------------------------------------------------------------------------------
 
     /** The answer to a probe, or its failure; one to a probe that is over is ignored. */
     public void probeAnswered(int backend, long probe, boolean good, long nowNanos) {
-        BackendStanding standing = standings[backend];
-        ProbeTracker probes = standing.probes();
-        if (probes == null) {
-            return;
-        }
-        Standing before = standing.shown();
-        boolean wasWarming = standings[backend].warming();
-        boolean passes = good && probes.passesAt(nowNanos);
-        if (probes.answered(probe, good, nowNanos)) {
-            sink.probed(nowNanos, backend, probe, passes);
-            stood(backend, standing.afterProbe(before, nowNanos), wasWarming, nowNanos);
-            reschedule(backend);
-        }
+        probing.answered(backend, probe, good, nowNanos);
+        attempts.serve(roster.poolOf(backend), nowNanos);
     }
 
-    /** Changes the probe settings of a pool; runs so far and probes under way go on. Harmless for a pool without probes. */
-    public void retune(int pool, ProbeSettings settings, long nowNanos) {
-        int first = firstOfPool[pool];
-        for (int backend = first; backend < first + setWeights[pool].length; backend++) {
-            standings[backend].retune(settings, nowNanos);
-            reschedule(backend);
-        }
+    /**
+     * What a backend's load page said; a reading that is over is ignored.
+     *
+     * @param gauges in the order of the pool's load settings, from 0 to 1, NaN for one that the page lacks (such a reading
+     *     does not count); null for a reading that failed
+     */
+    public void read(int backend, long number, double @Nullable [] gauges, long nowNanos) {
+        readings.read(backend, number, gauges, nowNanos);
     }
 
     // --- by hand ----------------------------------------------------------------------------------------------------
+
+    /** Changes the probe settings of a pool; runs so far and probes under way go on. Harmless for a pool without probes. */
+    public void retune(int pool, ProbeSettings settings, long nowNanos) {
+        probing.retune(pool, settings, nowNanos);
+    }
+
+    /** Changes what drains of a pool keep to; the limit of one under way stays. */
+    public void retune(int pool, DrainSettings settings, long nowNanos) {
+        roster.desks[pool].retune(settings);
+    }
+
+    /**
+     * Changes the method of a pool: from the next pick on, knowing all that is in flight.
+     *
+     * @throws IllegalArgumentException for one that the pool's other settings rule out; nothing changes then
+     */
+    public void retune(int pool, PoolSettings.Method method, long nowNanos) {
+        roster.desks[pool].retune(method, nowNanos);
+        attempts.serve(pool, nowNanos);
+    }
 
     /**
      * Begins a drain: nothing new is picked for the backend, what is in flight has until the limit and is then cut.
@@ -307,24 +203,21 @@ public final class Decider {
      * @param limitNanos 0 for the pool's own limit
      */
     public void drain(int backend, long limitNanos, long nowNanos) {
-        long limit = limitNanos == 0 ? pools[poolOf[backend]].settings.drain().limitNanos() : limitNanos;
-        boolean wasWarming = standings[backend].warming();
-        stood(backend, standings[backend].drain(limit, nowNanos), wasWarming, nowNanos);
-        reschedule(backend);
+        long limit = limitNanos == 0 ? roster.deskOf(backend).drain().limitNanos() : limitNanos;
+        roster.stood(backend, roster.standing(backend).drain(limit, nowNanos), nowNanos);
+        settle(backend, nowNanos);
     }
 
     /** Admits a backend that was draining or withdrawn. */
     public void admit(int backend, long nowNanos) {
-        boolean wasWarming = standings[backend].warming();
-        stood(backend, standings[backend].admit(nowNanos), wasWarming, nowNanos);
-        reschedule(backend);
+        roster.stood(backend, roster.standing(backend).admit(nowNanos), nowNanos);
+        settle(backend, nowNanos);
     }
 
     /** Takes a backend out; what it has in flight goes on. */
     public void withdraw(int backend, long nowNanos) {
-        boolean wasWarming = standings[backend].warming();
-        stood(backend, standings[backend].withdraw(nowNanos), wasWarming, nowNanos);
-        reschedule(backend);
+        roster.stood(backend, roster.standing(backend).withdraw(nowNanos), nowNanos);
+        settle(backend, nowNanos);
     }
 
     /**
@@ -335,56 +228,68 @@ public final class Decider {
      */
     public void reweigh(int backend, int weight, long nowNanos) {
         requireWeight(weight);
-        pools[poolOf[backend]].reweigh(member(backend), weight, nowNanos);
-        sink.reweighed(nowNanos, false, backend, weight);
+        roster.deskOf(backend).reweigh(roster.member(backend), weight, nowNanos);
+        roster.sink.reweighed(nowNanos, false, backend, weight);
+        attempts.serve(roster.poolOf(backend), nowNanos);
     }
 
     /** Sets a host's weight; see {@link #reweigh}. */
     public void reweighHost(int host, int weight, long nowNanos) {
         requireWeight(weight);
-        hostWeights[host] = weight;
-        firstPlaces.weigh(host, weight);
-        againPlaces.weigh(host, weight);
-        for (PoolDesk pool : pools) {
-            pool.weights.stale();
+        roster.hostWeights[host] = weight;
+        roster.firstPlaces.weigh(host, weight);
+        roster.againPlaces.weigh(host, weight);
+        for (PoolDesk desk : roster.desks) {
+            desk.weights.stale();
         }
-        sink.reweighed(nowNanos, true, host, weight);
+        roster.sink.reweighed(nowNanos, true, host, weight);
+        for (int pool = 0; pool < roster.desks.length; pool++) {
+            attempts.serve(pool, nowNanos);
+        }
     }
 
     // --- reading ----------------------------------------------------------------------------------------------------
 
     /** Attempts picked for a backend that have not ended. */
     public int inFlight(int backend) {
-        return inFlight[backend];
+        return roster.deskOf(backend).inFlight(roster.member(backend));
     }
 
     public Standing standing(int backend) {
-        return standings[backend].shown();
+        return roster.standing(backend).shown();
     }
 
-    /** Whether new work may be given to a backend. */
+    /**
+     * Whether new work may be given to a backend, by its standing, its tier and the last resort. A full one counts: it is
+     * given work as soon as a place frees.
+     */
     public boolean pickable(int backend) {
-        return standings[backend].shown().pickable();
+        return roster.deskOf(backend).open(roster.member(backend));
     }
 
     /** The weight that was set. */
     public int weight(int backend) {
-        return setWeights[poolOf[backend]][member(backend)];
+        return roster.deskOf(backend).weight(roster.member(backend));
     }
 
     /** The weight that was set. */
     public int hostWeight(int host) {
-        return hostWeights[host];
+        return roster.hostWeights[host];
     }
 
-    /** What a backend weighs now, ramp and host included, whether or not it may be picked. */
+    /** What load readings leave of a backend's weight, in thousandths; 1000 while nothing fresh is known. */
+    public int headroom(int backend) {
+        return roster.deskOf(backend).headroomMilli(roster.member(backend));
+    }
+
+    /** What a backend weighs now, ramp, host and headroom included, whether or not it may be picked. */
     public double effectiveWeight(int backend, long nowNanos) {
-        return pools[poolOf[backend]].weights.effectiveWeight(member(backend), nowNanos);
+        return roster.deskOf(backend).weights.effectiveWeight(roster.member(backend), nowNanos);
     }
 
     /** Effective weight over the sum of those of the pool that may be picked; 0 for one that may not. */
     public double entitledShare(int backend, long nowNanos) {
-        return pools[poolOf[backend]].weights.entitledShare(member(backend), nowNanos);
+        return roster.deskOf(backend).weights.entitledShare(roster.member(backend), nowNanos);
     }
 
     // --- inside -----------------------------------------------------------------------------------------------------
@@ -396,28 +301,9 @@ public final class Decider {
         }
     }
 
-    private int member(int backend) {
-        return backend - firstOfPool[poolOf[backend]];
-    }
-
-    private void stood(int backend, @Nullable Transition change, boolean wasWarming, long nowNanos) {
-        if (change == null) {
-            return;
-        }
-        pools[poolOf[backend]].stood(member(backend), change.from().pickable(), wasWarming, nowNanos);
-        sink.stood(change);
-    }
-
-    private void reschedule(int backend) {
-        if (standings[backend].hasDeadline()) {
-            deadlineNanos[backend] = standings[backend].deadlineNanos();
-            deadlines.enter(backend);
-        } else {
-            deadlines.leave(backend);
-        }
-    }
-
-    private boolean earlier(int backend, int other) {
-        return deadlineNanos[backend] - deadlineNanos[other] < 0;
+    /** What a change of a backend's standing leads to: another next instant, and places for those that wait. */
+    private void settle(int backend, long nowNanos) {
+        roster.reschedule(backend, nowNanos);
+        attempts.serve(roster.poolOf(backend), nowNanos);
     }
 }

@@ -19,5 +19,10 @@ public enum Outcome {
     /** Cut at the limit of a drain. */
     CUT,
     /** The client went away. */
-    ABANDONED
+    ABANDONED;
+
+    /** Whether it says something of how the backend is: a cut and a client's leaving do not. */
+    boolean saysOfBackend() {
+        return this != CUT && this != ABANDONED;
+    }
 }

@@ -1,32 +1,25 @@
 package steelyard.balancer.core.decide;
 
-import java.util.List;
-import steelyard.balancer.core.pick.ExpectedDelayOfAll;
-import steelyard.balancer.core.pick.ExpectedDelayOfTwo;
-import steelyard.balancer.core.pick.Hash;
+import java.util.Arrays;
+import java.util.function.BooleanSupplier;
+import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.pick.HostPlaces;
-import steelyard.balancer.core.pick.HostTurns;
-import steelyard.balancer.core.pick.JoinIdleQueue;
-import steelyard.balancer.core.pick.LeastConnections;
-import steelyard.balancer.core.pick.Lots;
 import steelyard.balancer.core.pick.Picker;
 import steelyard.balancer.core.pick.Ramp;
-import steelyard.balancer.core.pick.Random;
-import steelyard.balancer.core.pick.RoundRobin;
-import steelyard.balancer.core.pick.Stride;
-import steelyard.balancer.core.pick.TwoChoices;
-import steelyard.balancer.core.pick.WeightedRandom;
-import steelyard.balancer.core.pick.WeightedRoundRobin;
 import steelyard.balancer.core.standing.BackendStanding;
+import steelyard.balancer.core.standing.Eligibility;
+import steelyard.balancer.core.weigh.Headroom;
 import steelyard.balancer.core.weigh.PoolWeights;
-import steelyard.balancer.settings.BackendSettings;
-import steelyard.balancer.settings.DelaySettings;
-import steelyard.balancer.settings.HashSettings;
+import steelyard.balancer.settings.AffinitySettings;
+import steelyard.balancer.settings.BenchSettings;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.InFlightSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.WarmUpSettings;
 
 /**
- * Everything that picks for one pool: a picker for first tries, one of its own for retries, weights, retry rule.
+ * Everything that picks for one pool: a picker for first tries, one of its own for retries, who may be picked, weights, what
+ * is in flight, retry rule, waiting line and the clients that are held.
  *
  * <p>Members are known by their place in the pool.
  */
@@ -34,21 +27,37 @@ final class PoolDesk {
     /** The ramp of a method that does not take turns is told in steps of a thousandth of its length. */
     private static final int RAMP_STEPS = 1000;
 
-    /** Room for the lots of one attempt among the numbers of draws. */
-    private static final int LOTS = 64;
-
     private static final int[] NONE_TRIED = {};
+    private static final double SLACK = 1e-9;
 
-    final PoolSettings settings;
     final PoolWeights weights;
     final RetryRule retries;
+    final WaitingLine line;
+    final @Nullable AffinitySettings affinity;
+    /** There where clients are held by their address. */
+    final @Nullable ClientTable clients;
+    /** What the pool's bench cap allows: whether one more may be benched. */
+    final BooleanSupplier benchRoom = this::benchesOneMore;
+
+    private final Eligibility eligibility;
     private final BackendStanding[] standings;
     private final int[] set;
-    private final Lots lots;
-    private final Picker first;
-    private final Picker again;
+    private final int[] headroomMilli;
+    private final int[] inFlight;
+    /** Whether the pickers have the member: it may be picked and is not full. */
+    private final boolean[] entered;
+
+    private final boolean[] warming;
+    private final Methods methods;
+    private final HostPlaces firstPlaces;
+    private final HostPlaces againPlaces;
+    private final int mostInFlight;
+    private final int mostBenched;
     private final long rampStepNanos;
-    private int warming;
+    private PoolSettings settings;
+    private Picker first;
+    private Picker again;
+    private int warmingCount;
     private long nextRampStepNanos;
 
     PoolDesk(
@@ -59,61 +68,44 @@ final class PoolDesk {
             int[] hostSet,
             HostPlaces firstPlaces,
             HostPlaces againPlaces,
-            Chance chance) {
+            Chance chance,
+            long nowNanos) {
+        int members = set.length;
         this.settings = settings;
         this.standings = standings;
         this.set = set;
-        weights = new PoolWeights(settings, standings, set, hostOf, hostSet);
+        methods = Methods.of(hostOf, this::turnFraction, chance);
+        this.firstPlaces = firstPlaces;
+        this.againPlaces = againPlaces;
+        headroomMilli = new int[members];
+        Arrays.fill(headroomMilli, Headroom.FULL);
+        inFlight = new int[members];
+        entered = new boolean[members];
+        warming = new boolean[members];
+        eligibility = new Eligibility(standings, settings.backends(), settings.reserve());
+        weights = new PoolWeights(settings, standings, eligibility, set, headroomMilli, hostOf, hostSet);
         retries = new RetryRule(settings.retry());
+        InFlightSettings limit = settings.inFlight();
+        mostInFlight = limit == null ? Integer.MAX_VALUE : limit.most();
+        line = limit == null ? new WaitingLine(0, 1) : new WaitingLine(limit.waiting(), limit.waitNanos());
+        affinity = settings.affinity();
+        clients = affinity != null && affinity.by() == AffinitySettings.By.CLIENT
+                ? new ClientTable(affinity.lastsNanos(), ClientTable.MOST)
+                : null;
+        BenchSettings bench = settings.bench();
+        mostBenched = bench == null ? 0 : (int) (bench.cap() * members + SLACK);
         WarmUpSettings warmUp = settings.warmUp();
         rampStepNanos = warmUp == null ? 0 : Math.max(1, warmUp.rampNanos() / RAMP_STEPS);
-        lots = (request, attempt, draw) -> chance.bits(Chance.Draw.PICK, request, (long) LOTS * attempt + draw);
-        first = picker(firstPlaces, hostOf);
-        again = picker(againPlaces, hostOf);
-        for (int member = 0; member < set.length; member++) {
-            tellWeight(member, fullWeight(member));
-            if (standings[member].shown().pickable()) {
-                first.enter(member);
-                again.enter(member);
-            }
+        first = methods.picker(settings, firstPlaces);
+        again = methods.picker(settings, againPlaces);
+        weights.weighs(first.weighs());
+        for (int member = 0; member < members; member++) {
+            weigh(member, nowNanos);
+            settle(member);
         }
     }
 
-    private Picker picker(HostPlaces places, int[] hostOf) {
-        int members = set.length;
-        Ramp ramp = (member, nowNanos) -> standings[member].rampFraction(nowNanos);
-        if (settings.weights() == PoolSettings.Weights.HOST) {
-            return new HostTurns(places, hostOf, ramp);
-        }
-        return switch (settings.method()) {
-            case ROUND_ROBIN -> new RoundRobin(members, ramp);
-            case WEIGHTED_ROUND_ROBIN -> new WeightedRoundRobin(members, ramp);
-            case STRIDE -> new Stride(members);
-            case LEAST_CONNECTIONS -> new LeastConnections(members);
-            case RANDOM -> new Random(members, lots);
-            case WEIGHTED_RANDOM -> new WeightedRandom(members, lots);
-            case TWO_CHOICES -> new TwoChoices(members, lots);
-            case JOIN_IDLE_QUEUE -> new JoinIdleQueue(members, lots);
-            case EXPECTED_DELAY -> expectedDelay(settings.pick().delay());
-            case HASH -> hash(settings.pick().hash(), ramp);
-        };
-    }
-
-    private Picker expectedDelay(DelaySettings delay) {
-        return delay.all()
-                ? new ExpectedDelayOfAll(set.length, delay.memoryNanos())
-                : new ExpectedDelayOfTwo(set.length, lots, delay.memoryNanos());
-    }
-
-    private Picker hash(HashSettings hash, Ramp ramp) {
-        List<String> names =
-                settings.backends().stream().map(BackendSettings::name).toList();
-        return switch (hash.table()) {
-            case RING -> Hash.overRing(names, hash.points(), hash.bound(), ramp);
-            case RENDEZVOUS -> Hash.byRendezvous(names, hash.bound(), ramp);
-            case PERMUTATION -> Hash.overPermutation(names, hash.size(), hash.bound(), ramp);
-        };
-    }
+    // --- picking ----------------------------------------------------------------------------------------------------
 
     int pickFirst(Ask ask, long nowNanos) {
         stepRamps(nowNanos);
@@ -126,14 +118,54 @@ final class PoolDesk {
         return again.pick(ask.request, ask.attempt, ask.key, tried, triedCount, nowNanos);
     }
 
-    void began(int member, int count, long nowNanos) {
-        first.began(member, count, nowNanos);
-        again.began(member, count, nowNanos);
+    /** Whether new work may be given to a member, once it has a free place. */
+    boolean open(int member) {
+        return eligibility.open(member);
     }
 
-    void ended(int member, int count, boolean answered, long nowNanos) {
+    boolean full(int member) {
+        return inFlight[member] >= mostInFlight;
+    }
+
+    /** Whether a place that frees on this member could serve somebody who finds none now. */
+    boolean worthWaitingFor(int member, long nowNanos) {
+        return open(member) && full(member) && weights.effectiveWeight(member, nowNanos) > 0;
+    }
+
+    int inFlight(int member) {
+        return inFlight[member];
+    }
+
+    /** An attempt begins; how many are now in flight on the member. */
+    int began(int member, long nowNanos) {
+        int count = ++inFlight[member];
+        first.began(member, count, nowNanos);
+        again.began(member, count, nowNanos);
+        settle(member);
+        return count;
+    }
+
+    /** An attempt ended; how many are still in flight on the member. */
+    int ended(int member, boolean answered, long nowNanos) {
+        int count = --inFlight[member];
         first.ended(member, count, answered, nowNanos);
         again.ended(member, count, answered, nowNanos);
+        settle(member);
+        return count;
+    }
+
+    // --- changes ----------------------------------------------------------------------------------------------------
+
+    int weight(int member) {
+        return set[member];
+    }
+
+    int headroomMilli(int member) {
+        return headroomMilli[member];
+    }
+
+    DrainSettings drain() {
+        return settings.drain();
     }
 
     void reweigh(int member, int weight, long nowNanos) {
@@ -142,38 +174,103 @@ final class PoolDesk {
         weigh(member, nowNanos);
     }
 
+    void headroom(int member, int milli, long nowNanos) {
+        headroomMilli[member] = milli;
+        weights.stale();
+        weigh(member, nowNanos);
+    }
+
     /** Takes over what changed in a member's standing. */
-    void stood(int member, boolean wasPickable, boolean wasWarming, long nowNanos) {
+    void stood(int member, long nowNanos) {
         weights.stale();
         boolean isWarming = standings[member].warming();
-        boolean isPickable = standings[member].shown().pickable();
-        warming += (isWarming ? 1 : 0) - (wasWarming ? 1 : 0);
-        if (isWarming != wasWarming) {
+        if (isWarming != warming[member]) {
+            warming[member] = isWarming;
+            warmingCount += isWarming ? 1 : -1;
             weigh(member, nowNanos);
             nextRampStepNanos = nowNanos + rampStepNanos;
         }
-        if (isPickable && !wasPickable) {
+        if (eligibility.changed(member)) {
+            for (int each = 0; each < set.length; each++) {
+                settle(each);
+            }
+        } else {
+            settle(member);
+        }
+    }
+
+    /** Drains that begin from now on keep to these. */
+    void retune(DrainSettings drain) {
+        settings = settings.with(drain);
+    }
+
+    /**
+     * Picks by another method from now on. Its pickers are told all that holds at present: weights, who may be picked, what
+     * is in flight; turns begin anew, and nothing that was picked before is touched.
+     *
+     * @throws IllegalArgumentException for one that the pool's other settings rule out; nothing changes then
+     */
+    void retune(PoolSettings.Method method, long nowNanos) {
+        if (method == settings.method()) {
+            return;
+        }
+        settings = settings.with(settings.pick().with(method));
+        first = methods.picker(settings, firstPlaces);
+        again = methods.picker(settings, againPlaces);
+        weights.weighs(first.weighs());
+        for (int member = 0; member < set.length; member++) {
+            weigh(member, nowNanos);
+            if (entered[member]) {
+                first.enter(member);
+                again.enter(member);
+            }
+            if (inFlight[member] > 0) {
+                first.began(member, inFlight[member], nowNanos);
+                again.began(member, inFlight[member], nowNanos);
+            }
+        }
+    }
+
+    // --- inside -----------------------------------------------------------------------------------------------------
+
+    private boolean benchesOneMore() {
+        int benched = 0;
+        for (BackendStanding each : standings) {
+            benched += each.benched() ? 1 : 0;
+        }
+        return benched < mostBenched;
+    }
+
+    /** Brings the pickers to whether a member may be picked and has a free place. */
+    private void settle(int member) {
+        boolean belongs = eligibility.open(member) && !full(member);
+        if (belongs == entered[member]) {
+            return;
+        }
+        entered[member] = belongs;
+        if (belongs) {
             first.enter(member);
             again.enter(member);
-        } else if (!isPickable && wasPickable) {
+        } else {
             first.leave(member);
             again.leave(member);
         }
     }
 
-    /** Tells the pickers a member's weight: ramped, unless they hold warming members back by turns. */
+    /** The part of its turns that a member takes: ramp and headroom, in billionths. */
+    private long turnFraction(int member, long nowNanos) {
+        return standings[member].rampFraction(nowNanos) * headroomMilli[member] / Headroom.FULL;
+    }
+
+    /** Tells the pickers a member's weight: with ramp and headroom, unless they hold members back by turns. */
     private void weigh(int member, long nowNanos) {
-        long full = fullWeight(member);
+        long full = (first.weighs() ? set[member] : 1) * (long) Picker.MILLI;
         if (first.takesTurns() || full == 0) {
             tellWeight(member, full);
         } else {
-            double ramped = (double) full * standings[member].rampFraction(nowNanos) / Ramp.FULL;
-            tellWeight(member, Math.max(1, Math.round(ramped)));
+            double held = (double) full * turnFraction(member, nowNanos) / Ramp.FULL;
+            tellWeight(member, Math.max(1, Math.round(held)));
         }
-    }
-
-    private long fullWeight(int member) {
-        return (first.weighs() ? set[member] : 1) * (long) Picker.MILLI;
     }
 
     private void tellWeight(int member, long weightMilli) {
@@ -182,12 +279,12 @@ final class PoolDesk {
     }
 
     private void stepRamps(long nowNanos) {
-        if (warming == 0 || first.takesTurns() || nowNanos - nextRampStepNanos < 0) {
+        if (warmingCount == 0 || first.takesTurns() || nowNanos - nextRampStepNanos < 0) {
             return;
         }
         nextRampStepNanos = nowNanos + rampStepNanos;
         for (int member = 0; member < set.length; member++) {
-            if (standings[member].warming()) {
+            if (warming[member]) {
                 weigh(member, nowNanos);
             }
         }

@@ -11,7 +11,7 @@ import steelyard.balancer.settings.RetrySettings;
  * Never: anything after a byte of the answer was passed on, a request whose body can no longer be sent again, a timeout.
  *
  * <p>The budget is a bucket, counted in millionths: full at the start, each first try adds the budget share, each retry
- * takes one.
+ * takes one, and gives it back when nobody could be found for it.
  */
 final class RetryRule {
     private static final long ONE = 1_000_000;
@@ -47,6 +47,11 @@ final class RetryRule {
         }
         bucket -= ONE;
         return true;
+    }
+
+    /** A granted retry was not made after all. */
+    void giveBack() {
+        bucket = Math.min(full, bucket + ONE);
     }
 
     private static boolean repeatable(

@@ -1,12 +1,14 @@
 package steelyard.balancer.core.standing;
 
+import java.util.function.BooleanSupplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.standing.Transition.Cause;
+import steelyard.balancer.settings.BenchSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.WarmUpSettings;
 
 /**
- * The standing of one backend: what its probes, the people and its ramp say, as one word.
+ * The standing of one backend: what its probes, its bench, the people and its ramp say, as one word.
  *
  * <p>Every event method returns the change of the word that it brought about, or null. A return to pickable begins the
  * ramp, whatever made it away. Not thread-safe; any clock origin.
@@ -15,19 +17,26 @@ public final class BackendStanding {
     private final int backend;
     private final @Nullable ProbeTracker probes;
     private final Hand hand = new Hand();
+    private final Bench bench;
     private final WarmUp warmUp;
     private final boolean believedUp;
 
     /**
      * @param probes null for none
      * @param startsUp what is believed at first; without probes it stays so until a person acts
+     * @param bench null for a backend that is never benched
      */
     public BackendStanding(
-            int backend, @Nullable ProbeTracker probes, boolean startsUp, @Nullable WarmUpSettings warmUp) {
+            int backend,
+            @Nullable ProbeTracker probes,
+            boolean startsUp,
+            @Nullable WarmUpSettings warmUp,
+            @Nullable BenchSettings bench) {
         this.backend = backend;
         this.probes = probes;
         this.believedUp = startsUp;
         this.warmUp = new WarmUp(warmUp);
+        this.bench = new Bench(bench);
     }
 
     /** The word that shows. */
@@ -35,8 +44,33 @@ public final class BackendStanding {
         return switch (hand.state()) {
             case WITHDRAWN -> Standing.WITHDRAWN;
             case DRAINING -> Standing.DRAINING;
-            case ADMITTED -> !up() ? Standing.DOWN : warmUp.warming() ? Standing.WARMING : Standing.UP;
+            case ADMITTED -> able();
         };
+    }
+
+    private Standing able() {
+        if (!up()) {
+            return Standing.DOWN;
+        }
+        if (bench.benched()) {
+            return Standing.BENCHED;
+        }
+        return warmUp.warming() ? Standing.WARMING : Standing.UP;
+    }
+
+    /** Whether people let it take work, whatever the other facts say. */
+    public boolean admitted() {
+        return hand.state() == Hand.State.ADMITTED;
+    }
+
+    /** Whether failures have set it aside, whatever the other facts say. */
+    public boolean benched() {
+        return bench.benched();
+    }
+
+    /** Whether a drain goes on, its limit is still to come, and nothing else keeps the backend from serving. */
+    public boolean servesUntilLimit() {
+        return hand.state() == Hand.State.DRAINING && hand.hasDeadline() && up() && !bench.benched();
     }
 
     /** Whether the ramp after a return is under way. */
@@ -71,6 +105,22 @@ public final class BackendStanding {
         Standing from = shown();
         hand.withdraw();
         return changed(from, Cause.WITHDRAW, nowNanos);
+    }
+
+    /**
+     * An attempt ended that says something of the backend.
+     *
+     * @param room asked only when there are failures enough to bench it: whether the pool's cap allows one more
+     */
+    public @Nullable Transition ended(boolean failure, BooleanSupplier room, long nowNanos) {
+        Standing from = shown();
+        return bench.ended(failure, room, nowNanos) ? changed(from, Cause.BENCHED, nowNanos) : null;
+    }
+
+    /** Frees it when its bench time is over. */
+    public @Nullable Transition pollBench(long nowNanos) {
+        Standing from = shown();
+        return bench.frees(nowNanos) ? changed(from, Cause.FREED, nowNanos) : null;
     }
 
     /** Does one thing that its probes have due. Their verdict may have changed: call {@link #afterProbe} with the word before. */
@@ -111,25 +161,25 @@ public final class BackendStanding {
 
     /** Whether a poll will ever have something to do. */
     public boolean hasDeadline() {
-        return probes != null || hand.hasDeadline() || warmUp.warming();
+        return probes != null || hand.hasDeadline() || warmUp.warming() || bench.benched();
     }
 
     /** When a poll has something to do next; only while {@link #hasDeadline}. */
-    public long deadlineNanos() {
-        long earliest = 0;
-        boolean any = false;
+    public long deadlineNanos(long nowNanos) {
+        long soonest = Long.MAX_VALUE;
         if (probes != null) {
-            earliest = probes.deadlineNanos();
-            any = true;
+            soonest = probes.deadlineNanos() - nowNanos;
         }
-        if (hand.hasDeadline() && (!any || hand.deadlineNanos() - earliest < 0)) {
-            earliest = hand.deadlineNanos();
-            any = true;
+        if (hand.hasDeadline()) {
+            soonest = Math.min(soonest, hand.deadlineNanos() - nowNanos);
         }
-        if (warmUp.warming() && (!any || warmUp.deadlineNanos() - earliest < 0)) {
-            earliest = warmUp.deadlineNanos();
+        if (warmUp.warming()) {
+            soonest = Math.min(soonest, warmUp.deadlineNanos() - nowNanos);
         }
-        return earliest;
+        if (bench.benched()) {
+            soonest = Math.min(soonest, bench.deadlineNanos() - nowNanos);
+        }
+        return nowNanos + soonest;
     }
 
     private boolean up() {

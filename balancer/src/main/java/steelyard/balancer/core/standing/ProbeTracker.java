@@ -1,11 +1,13 @@
 package steelyard.balancer.core.standing;
 
+import java.util.function.LongToDoubleFunction;
 import steelyard.balancer.settings.ProbeSettings;
 
 /**
  * Probes of one backend: when the next one starts, and what runs of answers say.
  *
- * <p>A probe starts {@code every} after the last one started, or when that one ended if that is later; never two at once.
+ * <p>A probe starts a period after the last one started, or when that one ended if that is later; never two at once. A
+ * period is {@code every} x (1 + jitter x (2u - 1)), u drawn for the probe that begins it.
  * It passes when a good answer comes earlier than {@code within} after its start; an answer at exactly that instant is a
  * miss, so that it does not matter whether the answer or the deadline is handled first.
  *
@@ -27,6 +29,7 @@ public final class ProbeTracker {
         DROP
     }
 
+    private final LongToDoubleFunction draw;
     private ProbeSettings settings;
     private boolean up;
     private boolean running;
@@ -39,8 +42,10 @@ public final class ProbeTracker {
     /**
      * @param up what is believed at first
      * @param firstStartNanos when the first probe starts
+     * @param draw u by the number of the probe, from 0, below 1; asked only where there is jitter
      */
-    public ProbeTracker(ProbeSettings settings, boolean up, long firstStartNanos) {
+    public ProbeTracker(ProbeSettings settings, boolean up, long firstStartNanos, LongToDoubleFunction draw) {
+        this.draw = draw;
         this.settings = settings;
         this.up = up;
         nextNanos = firstStartNanos;
@@ -99,14 +104,14 @@ public final class ProbeTracker {
     /** Takes new settings; the runs so far and a probe under way go on under them. */
     public void retune(ProbeSettings newSettings, long nowNanos) {
         if (!running && number >= 0) {
-            nextNanos = later(startedNanos + newSettings.everyNanos(), nowNanos);
+            nextNanos = later(startedNanos + periodNanos(newSettings), nowNanos);
         }
         settings = newSettings;
     }
 
     private void end(long nowNanos) {
         running = false;
-        nextNanos = later(startedNanos + settings.everyNanos(), nowNanos);
+        nextNanos = later(startedNanos + periodNanos(settings), nowNanos);
     }
 
     private void count(boolean pass) {
@@ -119,6 +124,14 @@ public final class ProbeTracker {
             missesInARow = Math.min(missesInARow + 1, settings.misses());
             up &= missesInARow < settings.misses();
         }
+    }
+
+    private long periodNanos(ProbeSettings of) {
+        if (of.jitter() == 0) {
+            return of.everyNanos();
+        }
+        double off = of.jitter() * (2 * draw.applyAsDouble(number) - 1);
+        return Math.max(1, Math.round(of.everyNanos() * (1 + off)));
     }
 
     private static long later(long a, long b) {

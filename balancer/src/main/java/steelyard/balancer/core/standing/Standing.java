@@ -8,6 +8,8 @@ public enum Standing {
     DRAINING,
     /** Probes failed. */
     DOWN,
+    /** Set aside, since attempts at it failed. */
+    BENCHED,
     /** Back, and ramping up to its full weight. */
     WARMING,
     /** Takes its full share. */

@@ -20,6 +20,10 @@ public record Transition(int backend, Standing from, Standing to, Cause cause, l
         MISSES,
         /** Probes passed in a row. */
         PASSES,
+        /** Attempts failed: the bench time began. */
+        BENCHED,
+        /** The bench time is over. */
+        FREED,
         /** The ramp came to its end. */
         WARMED,
         /** A drain began. */

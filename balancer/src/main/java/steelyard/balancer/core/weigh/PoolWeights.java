@@ -1,26 +1,34 @@
 package steelyard.balancer.core.weigh;
 
 import java.util.Arrays;
+import steelyard.balancer.core.pick.Ramp;
 import steelyard.balancer.core.standing.BackendStanding;
+import steelyard.balancer.core.standing.Eligibility;
 import steelyard.balancer.settings.PoolSettings;
 
 /**
  * Effective weights and entitled shares of one pool's members.
  *
- * <p>Effective weight = set weight x ramp fraction; under host weights = host's weight x the member's part of the set
- * weights that the pool may pick on that host x ramp fraction, where one that may not be picked counts as if it came back alone; under plain round robin = ramp fraction. Entitled share =
- * effective weight over the sum of those that may be picked. Both are computed for a whole pool at once and kept until
- * the instant or a weight or standing changes, so that reading every member costs one pass. Not thread-safe.
+ * <p>Effective weight = full weight x ramp fraction x headroom. The full weight is the set one; under host weights = host's
+ * weight x the member's part of the set weights that the pool may pick on that host, where one that may not be picked counts
+ * as if it came back alone; under a method that does not weigh, 1.
+ *
+ * <p>Entitled share = effective weight over the sum of those that may be picked by {@link Eligibility}. A full member keeps
+ * its share: it is what the member is owed, and a limit in flight shows as less than that. Both are computed for a whole
+ * pool at once and kept until the instant, a weight or a standing changes, so that reading every member costs one pass. Not
+ * thread-safe.
  */
 public final class PoolWeights {
-    private final boolean weighs;
     private final boolean byHost;
     private final BackendStanding[] standings;
+    private final Eligibility eligibility;
+    private final int[] headroomMilli;
     private final int[] set;
     private final int[] hostOf;
     private final int[] hostSet;
     private final double[] effective;
     private final double[] onHost;
+    private boolean weighs = true;
     private double sum;
     private boolean fresh;
     private long freshAtNanos;
@@ -28,21 +36,36 @@ public final class PoolWeights {
     /**
      * @param standings of the pool's members
      * @param set the members' set weights; read again after each {@link #stale}
+     * @param headroomMilli the members' headroom in thousandths; read again likewise
      * @param hostOf the host of each member
-     * @param hostSet the set weights of all hosts; read again after each {@link #stale}
+     * @param hostSet the set weights of all hosts; read again likewise
      */
-    public PoolWeights(PoolSettings pool, BackendStanding[] standings, int[] set, int[] hostOf, int[] hostSet) {
-        weighs = pool.method() != PoolSettings.Method.ROUND_ROBIN && pool.method() != PoolSettings.Method.RANDOM;
+    public PoolWeights(
+            PoolSettings pool,
+            BackendStanding[] standings,
+            Eligibility eligibility,
+            int[] set,
+            int[] headroomMilli,
+            int[] hostOf,
+            int[] hostSet) {
         byHost = pool.weights() == PoolSettings.Weights.HOST;
         this.standings = standings;
+        this.eligibility = eligibility;
         this.set = set;
+        this.headroomMilli = headroomMilli;
         this.hostOf = hostOf;
         this.hostSet = hostSet;
         effective = new double[set.length];
         onHost = new double[hostSet.length];
     }
 
-    /** A standing or a weight has changed. */
+    /** Whether set weights play a part in the method of the pool; they do until this is told. */
+    public void weighs(boolean yes) {
+        weighs = yes;
+        stale();
+    }
+
+    /** A standing, a weight or a headroom has changed. */
     public void stale() {
         fresh = false;
     }
@@ -56,7 +79,7 @@ public final class PoolWeights {
     /** From 0 to 1; 0 for a member that may not be picked. */
     public double entitledShare(int member, long nowNanos) {
         refresh(nowNanos);
-        return sum > 0 && standings[member].shown().pickable() ? effective[member] / sum : 0;
+        return sum > 0 && eligibility.open(member) ? effective[member] / sum : 0;
     }
 
     private void refresh(long nowNanos) {
@@ -66,8 +89,10 @@ public final class PoolWeights {
         sumHosts();
         sum = 0;
         for (int member = 0; member < set.length; member++) {
-            effective[member] = fullWeight(member) * (standings[member].rampFraction(nowNanos) / 1e9);
-            if (standings[member].shown().pickable()) {
+            double ramp = (double) standings[member].rampFraction(nowNanos) / Ramp.FULL;
+            double headroom = (double) headroomMilli[member] / Headroom.FULL;
+            effective[member] = fullWeight(member) * ramp * headroom;
+            if (eligibility.open(member)) {
                 sum += effective[member];
             }
         }
@@ -83,7 +108,7 @@ public final class PoolWeights {
             return set[member];
         }
         // A member that may not be picked is shown as if it alone came back among those that may be.
-        double there = onHost[hostOf[member]] + (standings[member].shown().pickable() ? 0 : set[member]);
+        double there = onHost[hostOf[member]] + (eligibility.open(member) ? 0 : set[member]);
         return there == 0 ? 0 : (double) hostSet[hostOf[member]] * set[member] / there;
     }
 
@@ -93,7 +118,7 @@ public final class PoolWeights {
         }
         Arrays.fill(onHost, 0);
         for (int member = 0; member < set.length; member++) {
-            if (standings[member].shown().pickable()) {
+            if (eligibility.open(member)) {
                 onHost[hostOf[member]] += set[member];
             }
         }

@@ -1,7 +1,9 @@
 /**
- * What weighs how much: set weights, host weights and ramps turned into effective weights and entitled shares.
+ * What weighs how much: set weights, host weights, ramps and headroom turned into effective weights and entitled shares.
  *
- * <p>Allowed dependencies: the JDK, balancer.settings, core.standing. Thread rule: owned by the Decider. First class to
+ * <p>{@code LoadReader} says when a backend's load page is read and how long a reading counts; {@code Headroom} is the formula.
+ *
+ * <p>Allowed dependencies: the JDK, balancer.settings, core.pick's units, core.standing. Thread rule: owned by the Decider. First class to
  * read: {@link steelyard.balancer.core.weigh.PoolWeights}.
  */
 @NullMarked

@@ -137,7 +137,7 @@ class BackendStandingTest {
 
     @Test
     void shown_withoutWarmUp_returnsAsUp() {
-        BackendStanding standing = new BackendStanding(0, null, true, null);
+        BackendStanding standing = new BackendStanding(0, null, true, null, null);
         standing.withdraw(0);
         standing.admit(0);
 
@@ -160,7 +160,11 @@ class BackendStandingTest {
     /** A backend with a ramp of 1000, probes of one miss and one pass every 10 within 5, at a clock near its end. */
     private static final class Bench {
         final BackendStanding standing = new BackendStanding(
-                4, new ProbeTracker(new ProbeSettings(null, 10, 5, 1, 1), true, ORIGIN), true, RAMP);
+                4,
+                new ProbeTracker(new ProbeSettings(null, 10, 5, 1, 1), true, ORIGIN, probe -> 0.5),
+                true,
+                RAMP,
+                null);
         long now = ORIGIN;
 
         void reach(String state) {

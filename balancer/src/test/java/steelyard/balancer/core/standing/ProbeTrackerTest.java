@@ -14,7 +14,7 @@ class ProbeTrackerTest {
     @ParameterizedTest
     @ValueSource(longs = {0, -1, -50, Long.MAX_VALUE, Long.MAX_VALUE - 130, Long.MIN_VALUE, 1_000_000_007})
     void poll_overThePeriod_startsDropsAndStartsAgain(long origin) {
-        ProbeTracker probes = new ProbeTracker(EVERY_100_WITHIN_40, true, origin + 30);
+        ProbeTracker probes = new ProbeTracker(EVERY_100_WITHIN_40, true, origin + 30, probe -> 0.5);
 
         assertThat(probes.deadlineNanos()).isEqualTo(origin + 30);
         assertThat(probes.poll(origin + 29)).isEqualTo(Step.NOTHING);
@@ -102,7 +102,7 @@ class ProbeTrackerTest {
     }
 
     private static ProbeTracker started(long at, ProbeSettings settings) {
-        ProbeTracker probes = new ProbeTracker(settings, true, at);
+        ProbeTracker probes = new ProbeTracker(settings, true, at, probe -> 0.5);
         assertThat(probes.poll(at)).isEqualTo(Step.START);
         return probes;
     }
@@ -118,7 +118,7 @@ class ProbeTrackerTest {
         long lastStart;
 
         Play(long origin, ProbeSettings settings) {
-            probes = new ProbeTracker(settings, true, origin);
+            probes = new ProbeTracker(settings, true, origin, probe -> 0.5);
         }
 
         void probes(String answers) {
