@@ -9,6 +9,7 @@ import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.stream.Stream;
+import org.assertj.core.api.InstanceOfAssertFactories;
 import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.BeforeAll;
@@ -121,6 +122,35 @@ class ReportPageTest {
                 .allSatisfy(ink -> assertThat((Long) ink).isGreaterThan(20));
         assertThat(list("return [...document.querySelectorAll('.plot')].map(each => each.ariaLabel)"))
                 .allSatisfy(about -> assertThat((String) about).contains(": "));
+    }
+
+    @Test
+    void byLoad_ofARun_hasItsChartItsQueueAndItsReadings() {
+        open("by-load", DESK, "light");
+
+        assertThat(list("return [...document.querySelectorAll('h3')].map(each => each.firstChild.textContent)"))
+                .asInstanceOf(InstanceOfAssertFactories.list(String.class))
+                .contains(
+                        "Attempts a second in pool seats, by backend",
+                        "Connections a second in pool mail, by backend",
+                        "In flight and queue, by backend",
+                        "Weight over utilisation in pool seats, by backend")
+                .noneMatch(title -> title.startsWith("Weight in effect in pool seats"));
+        assertThat(browser.driver().getPageSource()).contains("barred at the top: no fresh reading");
+        assertThat(find(".readings tbody tr").getText()).isEqualTo("gannet 2 22.400 43.300 7.8");
+        assertThat(find("#readout .requests").getText()).containsPattern("queue\\s+[0-9]+\\.[0-9]");
+        assertThat(find("#readout .standings").getText()).contains("benched");
+    }
+
+    @Test
+    void weights_ofARunThatSetsThem_keepTheChartOfTheirOwn() {
+        open("two-pools", DESK, "light");
+
+        assertThat(list("return [...document.querySelectorAll('h3')].map(each => each.firstChild.textContent)"))
+                .asInstanceOf(InstanceOfAssertFactories.list(String.class))
+                .contains("Weight in effect in pool seats, by backend", "In flight, by backend")
+                .noneMatch(title -> title.startsWith("Weight over"));
+        assertThat(browser.driver().findElements(By.cssSelector(".readings"))).isEmpty();
     }
 
     @Test

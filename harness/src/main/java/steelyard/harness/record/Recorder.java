@@ -36,7 +36,7 @@ public final class Recorder implements PlayListener {
         slices = new RowFile(folder.file(RunFolder.SLICES), trouble);
         standing = new RowFile(folder.file(RunFolder.STANDING), trouble);
         cues = new RowFile(folder.file(RunFolder.CUES), trouble);
-        latency = new LatencyLog(folder.file(RunFolder.LATENCY), trouble);
+        latency = new LatencyLog(folder.file(RunFolder.LATENCY), cast, trouble);
         standing.row().append("at,backend,from,to,cause,pickable");
         standing.write();
         cues.row().append("due,at,cue,action,by");
@@ -48,10 +48,13 @@ public final class Recorder implements PlayListener {
             readings.write();
         }
         SliceTable table = new SliceTable(slices, cast);
-        book = new SliceBook(cast, slice -> {
-            table.write(slice);
-            latency.add(slice);
-        });
+        book = new SliceBook(
+                cast,
+                slice -> {
+                    table.write(slice);
+                    latency.add(slice);
+                },
+                true);
         flush();
     }
 

@@ -27,6 +27,9 @@ public final class Slice {
     /** Latency of good answers; takes whatever comes, three significant digits. */
     final IntCountsHistogram latency = new IntCountsHistogram(FINEST_NANOS, 1_000_000_000L, 3);
 
+    /** The same by pool, where it is kept; otherwise empty. */
+    final IntCountsHistogram[] latencyOf;
+
     /** Requests by pool. */
     final int[] offeredTo;
 
@@ -46,8 +49,14 @@ public final class Slice {
 
     long firstTold;
 
-    Slice(int backends, int pools) {
+    /** @param byPool whether latencies are kept by pool too, which takes some 80 KiB each */
+    Slice(int backends, int pools, boolean byPool) {
         latency.setAutoResize(true);
+        latencyOf = new IntCountsHistogram[byPool ? pools : 0];
+        for (int pool = 0; pool < latencyOf.length; pool++) {
+            latencyOf[pool] = new IntCountsHistogram(FINEST_NANOS, 1_000_000_000L, 3);
+            latencyOf[pool].setAutoResize(true);
+        }
         offeredTo = new int[pools];
         failedOf = new int[pools];
         picked = new int[backends];
@@ -73,6 +82,9 @@ public final class Slice {
         Arrays.fill(picked, 0);
         Arrays.fill(utilisation, 0);
         latency.reset();
+        for (IntCountsHistogram each : latencyOf) {
+            each.reset();
+        }
     }
 
     /** From 0; the slice begins at {@code index * NANOS}. */
@@ -123,6 +135,16 @@ public final class Slice {
     /** Adds the latencies of good answers to a histogram of nanoseconds. */
     public void addLatencies(Histogram sum) {
         sum.add(latency);
+    }
+
+    /** Adds those of one pool; only where {@link #knowsPools}. */
+    void addLatenciesOf(int pool, Histogram sum) {
+        sum.add(latencyOf[pool]);
+    }
+
+    /** Whether latencies are kept by pool. */
+    boolean knowsPools() {
+        return latencyOf.length > 0;
     }
 
     public int picked(int backend) {

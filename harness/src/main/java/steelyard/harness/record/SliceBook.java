@@ -28,6 +28,7 @@ public final class SliceBook implements PlayListener {
     private final int[] workers;
     private final int[] poolOfTraffic;
     private final int pools;
+    private final boolean byPool;
     private final ArrayDeque<Slice> spare = new ArrayDeque<>();
     private final Sample last;
     private final long[] busyBefore;
@@ -42,7 +43,16 @@ public final class SliceBook implements PlayListener {
 
     /** @param receiver gets each slice once, in order, and must not keep it */
     public SliceBook(Cast cast, Consumer<Slice> receiver) {
+        this(cast, receiver, false);
+    }
+
+    /**
+     * @param receiver gets each slice once, in order, and must not keep it
+     * @param byPool whether slices keep latencies by pool too; they do so where there are several
+     */
+    SliceBook(Cast cast, Consumer<Slice> receiver, boolean byPool) {
         this.receiver = receiver;
+        this.byPool = byPool && cast.pools().size() > 1;
         backends = cast.backends().size();
         workers = cast.backends().stream().mapToInt(b -> b.serves().workers()).toArray();
         pools = cast.pools().size();
@@ -72,7 +82,11 @@ public final class SliceBook implements PlayListener {
         slice.failedOf[pool] += cause == null ? 0 : 1;
         if (cause == null) {
             slice.ok++;
-            slice.latency.recordValue(Math.max(0, atNanos - dueNanos));
+            long tookNanos = Math.max(0, atNanos - dueNanos);
+            slice.latency.recordValue(tookNanos);
+            if (byPool) {
+                slice.latencyOf[pool].recordValue(tookNanos);
+            }
         } else {
             slice.failedBy[cause.ordinal()]++;
         }
@@ -180,7 +194,7 @@ public final class SliceBook implements PlayListener {
             }
             Slice slice = spare.poll();
             if (slice == null) {
-                slice = new Slice(backends, pools);
+                slice = new Slice(backends, pools, byPool);
             }
             slice.reset(next, told);
             ring[place(next)] = slice;

@@ -20,14 +20,16 @@ public final class SliceLatencies {
     private static final long SLICE_MILLIS = Slice.NANOS / 1_000_000;
 
     private final Map<Integer, AbstractHistogram> slices;
+    private final Map<String, SliceLatencies> tagged;
 
-    private SliceLatencies(Map<Integer, AbstractHistogram> slices) {
+    private SliceLatencies(Map<Integer, AbstractHistogram> slices, Map<String, SliceLatencies> tagged) {
         this.slices = slices;
+        this.tagged = tagged;
     }
 
     /** Nothing is known. */
     public static SliceLatencies none() {
-        return new SliceLatencies(Map.of());
+        return new SliceLatencies(Map.of(), Map.of());
     }
 
     /**
@@ -49,7 +51,7 @@ public final class SliceLatencies {
     }
 
     private static SliceLatencies of(String log) {
-        Map<Integer, AbstractHistogram> slices = new HashMap<>();
+        SliceLatencies all = new SliceLatencies(new HashMap<>(), new HashMap<>());
         try (HistogramLogReader reader =
                 new HistogramLogReader(new ByteArrayInputStream(log.getBytes(StandardCharsets.UTF_8)))) {
             while (reader.hasNext()) {
@@ -59,10 +61,19 @@ public final class SliceLatencies {
                 if (Math.abs(span - SLICE_MILLIS) > 1 || !(each instanceof AbstractHistogram histogram)) {
                     return none();
                 }
-                slices.put((int) StrictMath.round(each.getStartTimeStamp() / (double) SLICE_MILLIS), histogram);
+                SliceLatencies own = each.getTag() == null
+                        ? all
+                        : all.tagged.computeIfAbsent(
+                                each.getTag(), none -> new SliceLatencies(new HashMap<>(), Map.of()));
+                own.slices.put((int) StrictMath.round(each.getStartTimeStamp() / (double) SLICE_MILLIS), histogram);
             }
         }
-        return new SliceLatencies(slices);
+        return all;
+    }
+
+    /** Those of one pool alone; nothing is known where there is one pool, or in a run of an earlier version. */
+    public SliceLatencies ofPool(String name) {
+        return tagged.getOrDefault(LatencyLog.tag(name), none());
     }
 
     /** Whether there is anything to tell. */

@@ -46,6 +46,24 @@ class PlainViewTest {
     }
 
     @Test
+    void readings_failAndComeBack_areLinesAndCounted() {
+        view.loadRead(3 * Boards.SECOND, 0, 1, 800, true);
+        view.loadRead(4 * Boards.SECOND, 0, 1, 1_000, false);
+        view.loadRead(4_500_000_000L, 0, 1, 1_000, false);
+        view.loadRead(6 * Boards.SECOND, 0, 4, 700, true);
+        board.loadRead(4 * Boards.SECOND, 0, 1, 1_000, false);
+        Sample sample = new Sample(2, 1);
+        sample.waitingForBackend[0] = 12;
+        board.sampled(5 * Boards.SECOND, sample);
+
+        assertThat(linesAtTheEnd())
+                .containsExactly(
+                        "    4.0 s  fulmar: no fresh reading of its load, so the set weight stands",
+                        "    6.0 s  fulmar: weight goes by load again",
+                        "    5.0 s  0/s, 0 good, failed 0, pickable 2 of 2, 12 waiting, 1 backend without a fresh reading");
+    }
+
+    @Test
     void state_atTheEnd_isOneLine() {
         board.sampled(60 * Boards.SECOND, new Sample(2));
         board.ended(60_100_000_000L, true);

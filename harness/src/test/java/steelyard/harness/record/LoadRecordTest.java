@@ -1,6 +1,7 @@
 package steelyard.harness.record;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.within;
 import static steelyard.harness.record.TestDrill.FULMAR;
 import static steelyard.harness.record.TestDrill.GANNET;
 import static steelyard.harness.record.TestDrill.MS;
@@ -96,5 +97,27 @@ class LoadRecordTest {
                 .containsEntry("in flight", "at most 1 a backend, 20 wait up to 1 s")
                 .containsEntry("limits", "target 8000 B, head 32 KiB, body any")
                 .doesNotContainKeys("bench", "affinity", "hash");
+    }
+
+    @Test
+    void latencies_ofSeveralPools_areKeptByPoolToo(@TempDir Path dir) throws Exception {
+        // In the first slice one answer of seats takes 20 ms and one of cargo 80 ms; in the second only cargo answers.
+        Recorder recorder = recorder(dir, new TestDrill().build());
+        recorder.requestDue(0, 0, 0, 0, 0);
+        recorder.requestDue(0, 1, 1, 0, 0);
+        recorder.requestEnded(20 * MS, 0, 0, 0, 0, null, 200);
+        recorder.requestEnded(80 * MS, 1, 0, 1, 0, null, 200);
+        recorder.requestDue(150 * MS, 2, 1, 0, 0);
+        recorder.requestEnded(190 * MS, 2, 150 * MS, 1, 0, null, 200);
+        recorder.ended(200 * MS, true);
+
+        SliceLatencies latencies = SliceLatencies.read(RunFolder.existing(dir));
+
+        assertThat(latencies.quantile(0, 2, 1)).isCloseTo(80.0 * MS, within(0.1 * MS));
+        assertThat(latencies.of(0).getTotalCount()).isEqualTo(2);
+        assertThat(latencies.ofPool("seats").quantile(0, 2, 1)).isCloseTo(20.0 * MS, within(0.1 * MS));
+        assertThat(latencies.ofPool("seats").of(1)).isNull();
+        assertThat(latencies.ofPool("cargo").quantile(0, 2, 0.5)).isCloseTo(40.0 * MS, within(0.1 * MS));
+        assertThat(latencies.ofPool("mail").known()).isFalse();
     }
 }
