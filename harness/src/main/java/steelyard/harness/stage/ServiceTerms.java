@@ -18,13 +18,13 @@ final class ServiceTerms {
 
     private ServiceTerms() {}
 
-    /** With how its load is read, or null where it is not: then it shows no load page. */
-    static BehaviourSettings of(Serves serves, @Nullable LoadProbe load) {
+    /** With its service time, and how its load is read, or null where it is not: then it shows no load page. */
+    static BehaviourSettings of(Serves serves, ServiceTime time, @Nullable LoadProbe load) {
         Serves.Cold cold = serves.cold();
         return new BehaviourSettings(
                 serves.workers(),
                 serves.queue(),
-                time(serves.time()),
+                time,
                 serves.probesQueue() ? ProbeWork.QUEUED : ProbeWork.FREE,
                 serves.probeLoss(),
                 OK,
@@ -41,7 +41,7 @@ final class ServiceTerms {
                         .toList());
     }
 
-    private static ServiceTime time(Serves.Time time) {
+    static ServiceTime time(Serves.Time time) {
         return switch (time.law()) {
             case FIXED -> new ServiceTime.Fixed(time.firstNanos());
             case EXPONENTIAL -> new ServiceTime.Exponential(time.firstNanos());

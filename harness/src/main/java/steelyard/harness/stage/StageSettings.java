@@ -2,7 +2,10 @@ package steelyard.harness.stage;
 
 import java.nio.file.Path;
 import java.util.ArrayList;
+import java.util.IdentityHashMap;
 import java.util.List;
+import java.util.Map;
+import steelyard.backends.behave.ServiceTime;
 import steelyard.backends.fleet.BackendSpec;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.HostSettings;
@@ -30,25 +33,27 @@ public final class StageSettings {
         return new BalancerSettings("steelyard", drill.stage().loops(), hosts, pools);
     }
 
-    /** The backends to start, by number. */
+    /** The backends to start, by number. Those that serve by one trace share it: it may be long. */
     public static List<BackendSpec> backends(Drill drill) {
         List<BackendSpec> specs = new ArrayList<>();
+        Map<Serves.Time, ServiceTime> times = new IdentityHashMap<>();
         for (Pool pool : drill.stage().pools()) {
             for (Backend backend : pool.backends()) {
-                specs.add(spec(pool, backend));
+                ServiceTime time = times.computeIfAbsent(backend.serves().time(), ServiceTerms::time);
+                specs.add(spec(pool, backend, time));
             }
         }
         return specs;
     }
 
-    private static BackendSpec spec(Pool pool, Backend backend) {
+    private static BackendSpec spec(Pool pool, Backend backend, ServiceTime time) {
         Serves serves = backend.serves();
         Probe probe = pool.probe();
         LoadProbe load = pool.health().load();
         String answers = serves.answers();
         return new BackendSpec(
                 backend.name(),
-                ServiceTerms.of(serves, load),
+                ServiceTerms.of(serves, time, load),
                 probe == null ? null : probe.path(),
                 load == null ? null : load.path(),
                 answers == null ? null : Path.of(answers),

@@ -200,6 +200,19 @@ class StageSettingsTest {
         });
     }
 
+    @Test
+    void backends_thatServeByOneTrace_shareIt() {
+        Trace trace = new Trace("times.csv", null, Trace.Order.SAMPLED, Trace.Nanos.of(5, 6));
+        Serves serves = new Serves(1, 0, Serves.Time.trace(trace), 0, false, 0, null);
+        Pool pool = Pool.with("berths", Picking.by(Pool.Method.STRIDE))
+                .of(List.of(
+                        new Backend("skua", "quay", 1, "quay", false, serves),
+                        new Backend("tern", "quay", 1, "quay", false, serves)));
+        List<BackendSpec> specs = StageSettings.backends(drill(pool));
+        assertThat(specs.get(0).behaviour().time())
+                .isSameAs(specs.get(1).behaviour().time());
+    }
+
     private static Drill drill(Pool pool) {
         Traffic traffic = new Traffic(
                 pool.name(),
