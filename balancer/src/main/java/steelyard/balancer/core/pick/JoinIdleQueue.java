@@ -1,12 +1,12 @@
 package steelyard.balancer.core.pick;
 
 /**
- * The member that has been idle for longest, and while none is idle one by lot, by effective weight (Lu, Xie, Kliot, Geller,
- * Larus, Greenberg, Performance Evaluation 68(11) 2011).
+ * The member that has been idle for longest, and while none is idle one by lot (Lu, Xie, Kliot, Geller, Larus, Greenberg,
+ * Performance Evaluation 68(11) 2011).
  *
  * <p>Idle is who has nothing in flight. Idle members stand in line in the order in which they became so; a member that comes
- * in idle joins at the end. Weights, and with them ramps, count for the lots only: an idle member takes what comes, one unit
- * of work at a time.
+ * in idle joins at the end. Set weights play no part: with idle members about, work goes round evenly whatever anybody weighs.
+ * A ramp counts for the lots only, since an idle member takes no more than one unit of work before it has to join again.
  */
 public final class JoinIdleQueue extends LotsPicker {
     private final Line idle;
@@ -34,5 +34,10 @@ public final class JoinIdleQueue extends LotsPicker {
         } else if (!isIdle) {
             idle.leave(member);
         }
+    }
+
+    @Override
+    public boolean weighs() {
+        return false;
     }
 }

@@ -102,12 +102,14 @@ class DrawingMethodsTest {
             assertThat(picker.pick(2, 1, 0, NONE, 0, 7)).isZero();
         }
 
+        /** The weight told is that of one, ramped: the first warms at a third. */
         @Test
-        void pick_nobodyIdle_isByWeight() {
+        void pick_nobodyIdle_isByLot() {
             Picker picker = full(2);
-            picker.weigh(1, 3_000);
+            picker.weigh(0, 333);
             picker.began(0, 1, 0);
             picker.began(1, 9, 0);
+            assertThat(picker.weighs()).isFalse();
             // Binomial with p = 3/4: 300, 4 standard deviations are 35; what is in flight plays no part.
             assertThat(picked(2, picker, 400)[1]).isBetween(265, 335);
         }
