@@ -16,10 +16,20 @@ public final class BackendReadings {
     private final double[] entitledShare;
     private final int[] weight;
     private final boolean[] pickable;
+    private final double[] headroom;
+    private final int[] waiting;
     private long atNanos;
 
-    /** @param backends how many the balancer has */
+    /** Without what waits by pool. */
     public BackendReadings(int backends) {
+        this(backends, 0);
+    }
+
+    /**
+     * @param backends how many the balancer has
+     * @param pools how many of its pools are looked at, from the first on
+     */
+    public BackendReadings(int backends, int pools) {
         inFlight = new int[backends];
         standing = new Standing[backends];
         Arrays.fill(standing, Standing.UP);
@@ -27,6 +37,8 @@ public final class BackendReadings {
         entitledShare = new double[backends];
         weight = new int[backends];
         pickable = new boolean[backends];
+        headroom = new double[backends];
+        waiting = new int[pools];
     }
 
     void take(Decider decider, long nowNanos) {
@@ -38,6 +50,10 @@ public final class BackendReadings {
             entitledShare[backend] = decider.entitledShare(backend, nowNanos);
             weight[backend] = decider.weight(backend);
             pickable[backend] = decider.pickable(backend);
+            headroom[backend] = decider.headroom(backend) / 1e3;
+        }
+        for (int pool = 0; pool < waiting.length; pool++) {
+            waiting[pool] = decider.waiting(pool);
         }
     }
 
@@ -72,6 +88,16 @@ public final class BackendReadings {
     /** From 0 to 1: its part of the effective weights of its pool. */
     public double entitledShare(int backend) {
         return entitledShare[backend];
+    }
+
+    /** From 0 to 1: what the set weight is multiplied by for its load. */
+    public double headroom(int backend) {
+        return headroom[backend];
+    }
+
+    /** Tries of a pool that wait for a backend to be free. */
+    public int waiting(int pool) {
+        return waiting[pool];
     }
 
     /** The set weight. */

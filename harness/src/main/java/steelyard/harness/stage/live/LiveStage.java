@@ -137,8 +137,15 @@ public final class LiveStage implements Stage {
         EventLoop loop = opened(loops).next();
         Generator sending = generator(loop);
         Play playing = new Play(loop, clock, told, sending, balancing, fleet, agenda);
-        Sampler sampler =
-                new Sampler(loop, clock, told, balancing, fleet, cast.backends().size(), drill.lastsNanos());
+        Sampler sampler = new Sampler(
+                loop,
+                clock,
+                told,
+                balancing,
+                fleet,
+                cast.backends().size(),
+                cast.pools().size(),
+                drill.lastsNanos());
         generator = sending;
         play = playing;
         if (interrupted) {

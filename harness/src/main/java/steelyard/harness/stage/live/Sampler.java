@@ -28,6 +28,7 @@ final class Sampler {
     private final long lastsNanos;
     private final BackendReadings readings;
     private final int backends;
+    private final int pools;
     private final long[] busyNanos;
     private long sliceEndNanos = SLICE_NANOS;
     private volatile boolean stopped;
@@ -39,6 +40,7 @@ final class Sampler {
             Balancer balancer,
             Fleet fleet,
             int backends,
+            int pools,
             long lastsNanos) {
         this.loop = loop;
         this.clock = clock;
@@ -46,8 +48,9 @@ final class Sampler {
         this.balancer = balancer;
         this.fleet = fleet;
         this.lastsNanos = lastsNanos;
-        this.readings = new BackendReadings(backends);
+        this.readings = new BackendReadings(backends, pools);
         this.backends = backends;
+        this.pools = pools;
         this.busyNanos = new long[backends];
     }
 
@@ -72,7 +75,7 @@ final class Sampler {
             return;
         }
         long endNanos = sliceEndNanos;
-        Sample sample = new Sample(backends);
+        Sample sample = new Sample(backends, pools);
         balancer.sample(readings);
         for (int backend = 0; backend < backends; backend++) {
             sample.inFlight[backend] = readings.inFlight(backend);
@@ -80,6 +83,10 @@ final class Sampler {
             sample.setWeight[backend] = readings.weight(backend);
             sample.effectiveWeight[backend] = readings.effectiveWeight(backend);
             sample.entitledShare[backend] = readings.entitledShare(backend);
+            sample.headroom[backend] = readings.headroom(backend);
+        }
+        for (int pool = 0; pool < pools; pool++) {
+            sample.waitingForBackend[pool] = readings.waiting(pool);
         }
         List<CompletableFuture<Figures>> figures =
                 IntStream.range(0, backends).mapToObj(fleet::figures).toList();

@@ -146,6 +146,12 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
         sample.setWeight[backend] = decider.weight(backend);
         sample.effectiveWeight[backend] = decider.effectiveWeight(backend, nowNanos);
         sample.entitledShare[backend] = decider.entitledShare(backend, nowNanos);
+        sample.headroom[backend] = decider.headroom(backend) / 1e3;
+    }
+
+    /** How many requests of a pool wait for a backend to be free. */
+    int waiting(int pool) {
+        return decider.waiting(pool);
     }
 
     Decider decider() {

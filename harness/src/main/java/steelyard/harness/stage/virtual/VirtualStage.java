@@ -40,7 +40,8 @@ public final class VirtualStage implements Stage {
         this.drill = drill;
         this.seed = seed;
         this.transport = transport;
-        this.sample = new Sample(drill.stage().backends().size());
+        this.sample = new Sample(
+                drill.stage().backends().size(), drill.stage().pools().size());
         this.nextSliceNanos = sliceAt(SLICE_NANOS);
     }
 
@@ -110,6 +111,9 @@ public final class VirtualStage implements Stage {
             sample.busyNanos[backend] = figures.busyWorkerNanos();
             sample.spentNanos[backend] = figures.waitNanos() + figures.serviceNanos();
             sample.heldNanos[backend] = figures.heldIntegralNanos();
+        }
+        for (int pool = 0; pool < sample.waitingForBackend.length; pool++) {
+            sample.waitingForBackend[pool] = stage.balancer.waiting(pool);
         }
         stage.listener.sampled(nowNanos, sample);
         nextSliceNanos = sliceAt(nowNanos + SLICE_NANOS);
