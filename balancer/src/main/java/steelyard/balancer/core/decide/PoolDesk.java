@@ -45,7 +45,10 @@ final class PoolDesk {
     private final int[] headroomMilli;
     private final int[] inFlight;
     /** Whether the pickers have the member: it may be picked and is not full. */
+    /** Who may be picked, and who of them is full, as the pickers were told. */
     private final boolean[] entered;
+
+    private final boolean[] blocked;
 
     private final boolean[] warming;
     private final Methods methods;
@@ -81,6 +84,7 @@ final class PoolDesk {
         Arrays.fill(headroomMilli, Headroom.FULL);
         inFlight = new int[members];
         entered = new boolean[members];
+        blocked = new boolean[members];
         warming = new boolean[members];
         eligibility = new Eligibility(standings, settings.backends(), settings.reserve());
         weights = new PoolWeights(settings, standings, eligibility, set, headroomMilli, hostOf, hostSet);
@@ -220,10 +224,8 @@ final class PoolDesk {
         weights.weighs(first.weighs());
         for (int member = 0; member < set.length; member++) {
             weigh(member, nowNanos);
-            if (entered[member]) {
-                first.enter(member);
-                again.enter(member);
-            }
+            tell(first, member);
+            tell(again, member);
             if (inFlight[member] > 0) {
                 first.began(member, inFlight[member], nowNanos);
                 again.began(member, inFlight[member], nowNanos);
@@ -243,17 +245,25 @@ final class PoolDesk {
 
     /** Brings the pickers to whether a member may be picked and has a free place. */
     private void settle(int member) {
-        boolean belongs = eligibility.open(member) && !full(member);
-        if (belongs == entered[member]) {
+        boolean open = eligibility.open(member);
+        boolean blocks = open && full(member);
+        if (open == entered[member] && blocks == blocked[member]) {
             return;
         }
-        entered[member] = belongs;
-        if (belongs) {
-            first.enter(member);
-            again.enter(member);
-        } else {
-            first.leave(member);
-            again.leave(member);
+        entered[member] = open;
+        blocked[member] = blocks;
+        tell(first, member);
+        tell(again, member);
+    }
+
+    private void tell(Picker picker, int member) {
+        if (!entered[member]) {
+            picker.leave(member);
+            return;
+        }
+        picker.enter(member);
+        if (blocked[member]) {
+            picker.block(member);
         }
     }
 

@@ -73,15 +73,13 @@ public final class ExpectedDelayOfAll extends CountingPicker {
 
     @Override
     public void began(int member, int count, long nowNanos) {
-        times.began(member, count, nowNanos);
+        times.began(member, nowNanos);
         super.began(member, count, nowNanos);
     }
 
     @Override
     public void ended(int member, int count, boolean answered, long nowNanos) {
-        if (answered) {
-            times.answered(member, nowNanos);
-        }
+        times.ended(member, count, answered, nowNanos);
         super.ended(member, count, answered, nowNanos);
     }
 }

@@ -5,7 +5,8 @@ import java.util.List;
 /**
  * Each key to the member that a table gives it to, and on to the next ones when that one cannot take it.
  *
- * <p>A member cannot take a key that it was already tried for. It cannot take one either
+ * <p>A member cannot take a key while it is full, or one that it was already tried for. Neither changes the table: no key of
+ * others moves. It cannot take one either
  *
  * <ul>
  *   <li>while it warms up, unless the key is among those that it already has back: a uniform number made of key and name
@@ -15,7 +16,7 @@ import java.util.List;
  *       proportion to its weight, times the bound (Mirrokni, Thorup, Zadimoghaddam, SODA 2018).
  * </ul>
  *
- * <p>When nobody is left that way, the first that was not tried takes the key.
+ * <p>When nobody is left that way, the first that is not full and was not tried takes the key.
  *
  * <p>Cost of a pick: what the table's first step costs, plus a step for each member passed over; see {@link Ring}, {@link
  * Rendezvous} and {@link Permutation}. With a bound close to 1 many may be passed over. Nothing is allocated but when a table
@@ -32,6 +33,7 @@ public final class Hash implements Picker {
     private final long[] weight;
     private final int[] inFlight;
     private final boolean[] pickable;
+    private final boolean[] full;
 
     /** Of the members that may be picked. */
     private long allWeight;
@@ -46,6 +48,7 @@ public final class Hash implements Picker {
         weight = new long[nameHash.length];
         inFlight = new int[nameHash.length];
         pickable = new boolean[nameHash.length];
+        full = new boolean[nameHash.length];
         for (int member = 0; member < nameHash.length; member++) {
             weigh(member, MILLI);
         }
@@ -86,15 +89,19 @@ public final class Hash implements Picker {
     @Override
     public int pick(long request, int attempt, long key, int[] tried, int triedCount, long nowNanos) {
         for (int member = table.first(key); member != NOBODY; member = table.next()) {
-            if (hasRoom(member) && isBack(member, key, nowNanos) && !Urn.among(member, tried, triedCount)) {
+            if (isFree(member, tried, triedCount) && hasRoom(member) && isBack(member, key, nowNanos)) {
                 return member;
             }
         }
         int member = table.first(key);
-        while (member != NOBODY && Urn.among(member, tried, triedCount)) {
+        while (member != NOBODY && !isFree(member, tried, triedCount)) {
             member = table.next();
         }
         return member;
+    }
+
+    private boolean isFree(int member, int[] tried, int triedCount) {
+        return !full[member] && !Urn.among(member, tried, triedCount);
     }
 
     /** In flight below bound x (all in flight + 1) x share of the weights; no rounding up, since in flight is whole. */
@@ -109,6 +116,7 @@ public final class Hash implements Picker {
 
     @Override
     public void enter(int member) {
+        full[member] = false;
         if (!pickable[member]) {
             pickable[member] = true;
             allWeight += weight[member];
@@ -119,12 +127,18 @@ public final class Hash implements Picker {
 
     @Override
     public void leave(int member) {
+        full[member] = false;
         if (pickable[member]) {
             pickable[member] = false;
             allWeight -= weight[member];
             allInFlight -= inFlight[member];
             table.leave(member);
         }
+    }
+
+    @Override
+    public void block(int member) {
+        full[member] = true;
     }
 
     @Override

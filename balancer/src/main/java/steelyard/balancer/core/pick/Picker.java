@@ -36,6 +36,14 @@ public interface Picker {
     void leave(int member);
 
     /**
+     * A member that may be picked is full: it is passed over until {@link #enter} or {@link #leave} is told of it. To most
+     * methods this is a member that left.
+     */
+    default void block(int member) {
+        leave(member);
+    }
+
+    /**
      * A member's weight changed.
      *
      * @param weightMilli in thousandths; 0 is never picked by a method that weighs

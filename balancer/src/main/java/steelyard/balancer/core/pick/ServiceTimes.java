@@ -22,6 +22,7 @@ final class ServiceTimes {
     private final double[] sum;
     private final double[] count;
     private final double[] mean;
+    private final boolean[] busy;
     /** Those of whom something was seen, the longest ago first. */
     private final Line seen;
 
@@ -35,6 +36,7 @@ final class ServiceTimes {
         sum = new double[members];
         count = new double[members];
         mean = new double[members];
+        busy = new boolean[members];
         seen = new Line(members);
     }
 
@@ -51,13 +53,22 @@ final class ServiceTimes {
         return seenCount == 0 ? 1 : sumOfMeans / seenCount;
     }
 
-    void began(int member, int inFlight, long nowNanos) {
-        if (inFlight == 1) {
+    void began(int member, long nowNanos) {
+        if (!busy[member]) {
+            busy[member] = true;
             sinceNanos[member] = nowNanos;
         }
     }
 
-    void answered(int member, long nowNanos) {
+    /** An attempt ended, of so many that are still in flight. */
+    void ended(int member, int inFlight, boolean answered, long nowNanos) {
+        if (answered && busy[member]) {
+            answered(member, nowNanos);
+        }
+        busy[member] = inFlight > 0;
+    }
+
+    private void answered(int member, long nowNanos) {
         double kept = seen(member) ? StrictMath.exp((double) (seenAtNanos[member] - nowNanos) / memoryNanos) : 0;
         forget(member);
         sum[member] = sum[member] * kept + (nowNanos - sinceNanos[member]);

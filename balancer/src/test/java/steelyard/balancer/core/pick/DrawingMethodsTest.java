@@ -178,6 +178,17 @@ class DrawingMethodsTest {
             assertThat(picked(2, picker, 40, late)[1]).isPositive();
         }
 
+        /** A picker made in the middle of a play hears first of the third in flight, and counts from then. */
+        @Test
+        void began_othersAlreadyInFlight_countsFromThen() {
+            Picker picker = full(2);
+            picker.began(0, 3, 100 * SECOND);
+            picker.ended(0, 2, true, 101 * SECOND);
+            serveOnce(picker, 1, 100 * SECOND, 104 * SECOND);
+            // 3 x 1 s against 1 x 4 s.
+            assertThat(picked(2, picker, 20, 104 * SECOND)).containsExactly(20, 0);
+        }
+
         @Test
         void ended_waitingBehindAnother_seesTheTimeBetweenAnswers() {
             Picker picker = full(2);

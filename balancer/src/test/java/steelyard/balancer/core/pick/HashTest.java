@@ -130,6 +130,20 @@ class HashTest {
             }
         }
 
+        /** The owner is full: its keys pass on, no other key moves over any table, and it finds all its own again. */
+        @Test
+        void block_owner_passesItsKeysOnAndMovesNoOther() {
+            Hash hash = all(9);
+            int[] before = owners(hash);
+            hash.block(4);
+            int[] meanwhile = owners(hash);
+            hash.enter(4);
+
+            assertThat(meanwhile).doesNotContain(4);
+            assertThat(moved(before, meanwhile, 4)).isZero();
+            assertThat(owners(hash)).isEqualTo(before);
+        }
+
         @Test
         void weigh_threeOfFive_ownsThreeFifths() {
             Hash hash = all(3);

@@ -43,6 +43,30 @@ abstract class PickerContract {
     }
 
     @Test
+    void block_member_isPassedOverUntilItEnters() {
+        Picker picker = full(3);
+        picker.block(1);
+        assertThat(serve(picker, 30, 3)[1]).isZero();
+        picker.enter(1);
+        picker.block(1);
+        assertThat(serve(picker, 30, 3)[1]).isZero();
+        picker.enter(1);
+        assertThat(serve(picker, 60, 3)).doesNotContain(0);
+        picker.block(1);
+        picker.leave(1);
+        picker.enter(1);
+        assertThat(serve(picker, 60, 3)).doesNotContain(0);
+    }
+
+    @Test
+    void block_everybody_leavesNobody() {
+        Picker picker = full(2);
+        picker.block(0);
+        picker.block(1);
+        assertThat(picker.pick(1, 1, Keys.of(1), NONE, 0, 0)).isEqualTo(Picker.NOBODY);
+    }
+
+    @Test
     void enter_afterALeave_isServedAgain() {
         Picker picker = full(3);
         picker.enter(1);
