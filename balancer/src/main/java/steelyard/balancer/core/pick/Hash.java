@@ -34,11 +34,15 @@ public final class Hash implements Picker {
     private final int[] inFlight;
     private final boolean[] pickable;
     private final boolean[] full;
+    private final boolean[] free;
 
     /** Of the members that may be picked. */
     private long allWeight;
 
     private long allInFlight;
+
+    /** How many can take anything at all. */
+    private int freeCount;
 
     private Hash(KeyTable table, long[] nameHash, double bound, Ramp ramp) {
         this.table = table;
@@ -49,6 +53,7 @@ public final class Hash implements Picker {
         inFlight = new int[nameHash.length];
         pickable = new boolean[nameHash.length];
         full = new boolean[nameHash.length];
+        free = new boolean[nameHash.length];
         for (int member = 0; member < nameHash.length; member++) {
             weigh(member, MILLI);
         }
@@ -88,6 +93,9 @@ public final class Hash implements Picker {
 
     @Override
     public int pick(long request, int attempt, long key, int[] tried, int triedCount, long nowNanos) {
+        if (freeCount == 0) {
+            return NOBODY;
+        }
         for (int member = table.first(key); member != NOBODY; member = table.next()) {
             if (isFree(member, tried, triedCount) && hasRoom(member) && isBack(member, key, nowNanos)) {
                 return member;
@@ -101,7 +109,7 @@ public final class Hash implements Picker {
     }
 
     private boolean isFree(int member, int[] tried, int triedCount) {
-        return !full[member] && !Urn.among(member, tried, triedCount);
+        return free[member] && !Urn.among(member, tried, triedCount);
     }
 
     /** In flight below bound x (all in flight + 1) x share of the weights; no rounding up, since in flight is whole. */
@@ -114,6 +122,15 @@ public final class Hash implements Picker {
         return fraction >= Ramp.FULL || Draw.below(Ramp.FULL, Keys.of(key ^ nameHash[member], WARMING)) < fraction;
     }
 
+    /** Keeps count of who can take anything, so that no walk is made where nobody can. */
+    private void recount(int member) {
+        boolean isFree = pickable[member] && !full[member] && weight[member] > 0;
+        if (isFree != free[member]) {
+            free[member] = isFree;
+            freeCount += isFree ? 1 : -1;
+        }
+    }
+
     @Override
     public void enter(int member) {
         full[member] = false;
@@ -123,6 +140,7 @@ public final class Hash implements Picker {
             allInFlight += inFlight[member];
             table.enter(member);
         }
+        recount(member);
     }
 
     @Override
@@ -134,11 +152,13 @@ public final class Hash implements Picker {
             allInFlight -= inFlight[member];
             table.leave(member);
         }
+        recount(member);
     }
 
     @Override
     public void block(int member) {
         full[member] = true;
+        recount(member);
     }
 
     @Override
@@ -146,6 +166,7 @@ public final class Hash implements Picker {
         allWeight += pickable[member] ? weightMilli - weight[member] : 0;
         weight[member] = weightMilli;
         table.weigh(member, weightMilli);
+        recount(member);
     }
 
     @Override
