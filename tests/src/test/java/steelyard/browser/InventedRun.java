@@ -121,8 +121,11 @@ final class InventedRun {
         Files.writeString(folder.resolve("standing.csv"), standing());
         Files.writeString(folder.resolve("cues.csv"), cueRows());
         if (!loaded.isEmpty()) {
-            Files.writeString(
-                    folder.resolve("readings.csv"), "at,backend,reading,headroom,fresh\n" + String.join("", readings));
+            StringBuilder rows = new StringBuilder("at,backend,reading,headroom,fresh\n");
+            members.stream()
+                    .filter(this::byLoad)
+                    .forEach(each -> rows.append("0.6,").append(each.name).append(",0,0.500,true\n"));
+            Files.writeString(folder.resolve("readings.csv"), rows + String.join("", readings));
         }
         return folder;
     }

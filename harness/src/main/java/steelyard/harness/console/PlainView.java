@@ -63,14 +63,11 @@ final class PlainView implements View {
 
     @Override
     public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
-        if (guidance.changes(backend, fresh)) {
-            String name = drill.stage().backends().get(backend).name();
-            events.add(line(
-                    atNanos,
-                    name + ": "
-                            + (fresh
-                                    ? "weight goes by load again"
-                                    : "no fresh reading of its load, so the set weight stands")));
+        String name = drill.stage().backends().get(backend).name();
+        switch (guidance.take(backend, fresh)) {
+            case NONE, BEGAN -> {}
+            case LOST -> events.add(line(atNanos, name + ": no fresh reading of its load, so the set weight stands"));
+            case BACK -> events.add(line(atNanos, name + ": weight goes by load again"));
         }
     }
 

@@ -73,7 +73,7 @@ public final class PlayBoard implements PlayListener {
 
     @Override
     public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
-        guidance.changes(backend, fresh);
+        guidance.take(backend, fresh);
     }
 
     @Override

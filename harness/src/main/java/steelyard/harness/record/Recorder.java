@@ -87,7 +87,7 @@ public final class Recorder implements PlayListener {
 
     @Override
     public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
-        if (!guidance.changes(backend, fresh) || readings == null) {
+        if (guidance.take(backend, fresh) == Guidance.Change.NONE || readings == null) {
             return;
         }
         StringBuilder row = Fixed.seconds(readings.row(), atNanos).append(',');

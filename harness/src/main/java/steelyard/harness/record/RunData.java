@@ -12,7 +12,7 @@ import org.jspecify.annotations.Nullable;
  * @param drill title of the drill
  * @param ended {@code complete}, {@code interrupted}, or {@code playing} for a play that was killed
  * @param standings of a forecast: changes over plays, each at the median of its instants
- * @param readings when weights ceased to go by load for want of readings, and when they did again; in order of time
+ * @param readings when weights began to go by load, ceased to for want of readings, and did again; in order of time
  * @param forecast what only a forecast has; null for a rehearsal
  * @param machine what {@code machine.json} says, in its order; empty when it is not there
  */

@@ -13,7 +13,7 @@ public final class RunFolder {
     public static final String SLICES = "slices.csv";
     public static final String STANDING = "standing.csv";
     public static final String CUES = "cues.csv";
-    /** Where weights go by load: when they ceased to and began again, for want of readings. */
+    /** Where weights go by load: from when on, and when they ceased to and began again for want of readings. */
     public static final String READINGS = "readings.csv";
 
     public static final String LATENCY = "latency.hlog";

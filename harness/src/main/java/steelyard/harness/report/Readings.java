@@ -1,9 +1,12 @@
 package steelyard.harness.report;
 
 import java.util.ArrayList;
+import java.util.Collection;
+import java.util.Collections;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
+import steelyard.harness.record.RunData.BackendRow;
 import steelyard.harness.record.RunData.PoolRow;
 import steelyard.harness.record.RunData.ReadingRow;
 import steelyard.harness.report.Html.Column;
@@ -42,7 +45,7 @@ final class Readings {
         if (run.run().pools().stream().noneMatch(PoolRow::weighsByLoad)) {
             return "";
         }
-        return "<h2>Readings</h2>\n" + (run.run().forecast() != null ? forecast() : table(of(run)));
+        return "<h2>Readings</h2>\n" + (run.run().forecast() != null ? forecast() : ofPlay(run));
     }
 
     private static String forecast() {
@@ -50,11 +53,38 @@ final class Readings {
                 + " alone.</p>\n";
     }
 
-    private static String table(List<Gap> gaps) {
-        if (gaps.isEmpty()) {
-            return "<p>Weights went by fresh readings of the load throughout, from the first reading of each backend on."
-                    + "</p>\n";
+    private static String ofPlay(RunFiles run) {
+        Map<String, Double> first = new LinkedHashMap<>();
+        run.run().readings().stream()
+                .filter(ReadingRow::fresh)
+                .forEach(each -> first.putIfAbsent(each.backend(), each.at()));
+        Map<String, List<Gap>> gaps = new LinkedHashMap<>();
+        for (BackendRow each : run.backends()) {
+            if (!first.containsKey(each.name()) && weighsByLoad(run, each)) {
+                gaps.put(each.name(), List.of());
+            }
         }
+        of(run).stream()
+                .filter(each -> first.containsKey(each.backend()))
+                .forEach(each -> gaps.computeIfAbsent(each.backend(), none -> new ArrayList<>())
+                        .add(each));
+        return began(first.values()) + (gaps.isEmpty() ? "" : table(gaps));
+    }
+
+    private static boolean weighsByLoad(RunFiles run, BackendRow backend) {
+        return run.run().pools().stream()
+                .anyMatch(pool -> pool.weighsByLoad() && pool.name().equals(backend.pool()));
+    }
+
+    private static String began(Collection<Double> first) {
+        if (first.isEmpty()) {
+            return "<p>No reading of the load came, so the set weights stood throughout.</p>\n";
+        }
+        return "<p>Set weights stood until the first readings came, from " + Figures.fixed(Collections.min(first), 2)
+                + " s to " + Figures.fixed(Collections.max(first), 2) + " s.</p>\n";
+    }
+
+    private static String table(Map<String, List<Gap>> gaps) {
         List<Column> columns = List.of(
                 Column.rowHead("Backend"),
                 Column.number("Times", ""),
@@ -62,15 +92,14 @@ final class Readings {
                 Column.number("Last until", "s"),
                 Column.number("Together", "s"));
         Html table = new Html().table("readings", "Without a fresh reading, so that the set weight stood", columns);
-        Map<String, List<Gap>> byBackend = new LinkedHashMap<>();
-        gaps.forEach(each -> byBackend
-                .computeIfAbsent(each.backend(), none -> new ArrayList<>())
-                .add(each));
-        byBackend.forEach((backend, own) -> table.row(columns, row(backend, own)));
+        gaps.forEach((backend, own) -> table.row(columns, row(backend, own)));
         return table.endTable().toString();
     }
 
     private static List<String> row(String backend, List<Gap> own) {
+        if (own.isEmpty()) {
+            return List.of(backend, "never read", "", "", "");
+        }
         Gap last = own.get(own.size() - 1);
         return List.of(
                 backend,

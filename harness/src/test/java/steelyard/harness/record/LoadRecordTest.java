@@ -76,12 +76,14 @@ class LoadRecordTest {
 
         assertThat(Files.readString(dir.resolve(RunFolder.READINGS))).isEqualTo("""
                 at,backend,reading,headroom,fresh
+                1.000000,fulmar,0,0.800,true
                 5.000000,fulmar,1,1.000,false
                 5.000000,gannet,0,1.000,false
                 6.500000,fulmar,6,0.625,true
                 """);
         assertThat(read(dir).readings())
                 .containsExactly(
+                        new ReadingRow(1, "fulmar", 0, 0.8, true),
                         new ReadingRow(5, "fulmar", 1, 1, false),
                         new ReadingRow(5, "gannet", 0, 1, false),
                         new ReadingRow(6.5, "fulmar", 6, 0.625, true));
