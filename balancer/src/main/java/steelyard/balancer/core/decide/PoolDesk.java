@@ -44,7 +44,6 @@ final class PoolDesk {
     private final int[] set;
     private final int[] headroomMilli;
     private final int[] inFlight;
-    /** Whether the pickers have the member: it may be picked and is not full. */
     /** Who may be picked, and who of them is full, as the pickers were told. */
     private final boolean[] entered;
 

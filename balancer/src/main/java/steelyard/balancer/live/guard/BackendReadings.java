@@ -75,12 +75,12 @@ public final class BackendReadings {
         return standing[backend];
     }
 
-    /** Whether it may be picked by its standing. */
+    /** Whether new work may be given to it, by its standing, its tier and the last resort. */
     public boolean pickable(int backend) {
         return pickable[backend];
     }
 
-    /** What it weighs, ramp and host included, whether or not it may be picked. */
+    /** What it weighs, ramp, host and headroom included, whether or not it may be picked. */
     public double effectiveWeight(int backend) {
         return effectiveWeight[backend];
     }

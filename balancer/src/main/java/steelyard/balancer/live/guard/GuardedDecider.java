@@ -12,6 +12,9 @@ import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 
 /**
  * A Decider behind one lock.
@@ -87,7 +90,12 @@ public final class GuardedDecider {
         }
     }
 
-    /** @see Decider#pick */
+    /**
+     * Where the pool has a waiting queue, whoever asks must be ready for {@link Orders#place} by the ask's ticket before it
+     * asks: the order may be carried out on another thread before this method has returned.
+     *
+     * @see Decider#pick
+     */
     public int pick(Ask ask) {
         synchronized (lock) {
             Decider begun = begun();
@@ -145,6 +153,26 @@ public final class GuardedDecider {
     /** @see Decider#probeAnswered */
     public void probeAnswered(int backend, long probe, boolean good) {
         change((begun, now) -> begun.probeAnswered(backend, probe, good, now));
+    }
+
+    /** @see Decider#read */
+    public void read(int backend, long number, double @Nullable [] gauges) {
+        change((begun, now) -> begun.read(backend, number, gauges, now));
+    }
+
+    /** @see Decider#retune(int, ProbeSettings, long) */
+    public void retune(int pool, ProbeSettings settings) {
+        change((begun, now) -> begun.retune(pool, settings, now));
+    }
+
+    /** @see Decider#retune(int, DrainSettings, long) */
+    public void retune(int pool, DrainSettings settings) {
+        change((begun, now) -> begun.retune(pool, settings, now));
+    }
+
+    /** @see Decider#retune(int, PoolSettings.Method, long) */
+    public void retune(int pool, PoolSettings.Method method) {
+        change((begun, now) -> begun.retune(pool, method, now));
     }
 
     /** Applies a change at the present instant: hand commands and probe answers, which are rare. */
