@@ -17,6 +17,9 @@ import steelyard.harness.stage.virtual.Post.Kind;
  * What is to follow from that is not known here.
  */
 final class Attempts {
+    /** What a backend answers that goes over to another protocol (RFC 9110, 15.2.2). */
+    static final int SWITCHING = 101;
+
     private final PlayListener listener;
     private final Post post;
     private final Decider decider;
@@ -25,6 +28,7 @@ final class Attempts {
     private final Streams streams;
     private final FirstBytes firstBytes;
     private final int[] poolOf;
+    private final boolean[] speaksTls;
     /** Kept connections without work, by backend. */
     private final int[] idle;
 
@@ -49,6 +53,10 @@ final class Attempts {
         Cast cast = new Cast(drill);
         poolOf = new int[cast.backends().size()];
         Arrays.setAll(poolOf, cast::poolOf);
+        speaksTls = new boolean[poolOf.length];
+        for (int backend = 0; backend < poolOf.length; backend++) {
+            speaksTls[backend] = pools.get(poolOf[backend]).front().backendTls();
+        }
         idle = new int[poolOf.length];
     }
 
@@ -67,37 +75,50 @@ final class Attempts {
         return -1;
     }
 
-    /** Makes the next attempt at a request; false when nobody can be picked for it. */
+    /** Makes the next attempt at a request, or lets it wait for a backend; false when nobody can be picked for it. */
     boolean begin(int flight, long nowNanos) {
         int stream = flights.traffic[flight];
-        int pool = streams.pool(stream);
         ask.clear();
-        ask.pool = pool;
+        ask.pool = streams.pool(stream);
         ask.request = flights.request[flight];
         for (int i = 0; i < flights.triedCount[flight]; i++) {
             ask.again(flights.tried[flight][i]);
         }
-        boolean pins = ask.attempt == 1 && streams.rules(stream).pins();
-        if (pins) {
+        if (ask.attempt == 1 && streams.rules(stream).pins()) {
             ask.pinned = clients.pinned(flight);
         }
-        int backend = decider.pick(ask, nowNanos);
-        if (backend == Decider.NOBODY) {
-            return false;
+        if (streams.says(stream)) {
+            streams.say(ask, stream, flights.kind[flight], flights.client[flight], flights.held[flight]);
         }
-        if (pins) {
+        ask.ticket = flights.token(flight);
+        int backend = decider.pick(ask, nowNanos);
+        if (backend >= 0) {
+            send(flight, ask.attempt, backend, nowNanos);
+        } else if (backend == Decider.WAITING) {
+            flights.waiting(flight, ask.attempt);
+        }
+        return backend != Decider.NOBODY;
+    }
+
+    /** An attempt that waited has its backend. */
+    void placed(int flight, int backend, long nowNanos) {
+        send(flight, flights.attempt[flight], backend, nowNanos);
+    }
+
+    private void send(int flight, int attempt, int backend, long nowNanos) {
+        int stream = flights.traffic[flight];
+        if (attempt == 1 && streams.rules(stream).pins()) {
             clients.pin(flight, backend);
         }
-        flights.attempted(flight, ask.attempt, backend);
+        flights.attempted(flight, attempt, backend);
         long token = flights.token(flight);
         if (idle[backend] > 0) {
             idle[backend]--;
             post.send(Kind.ATTEMPT, nowNanos, token, backend);
-            firstBytes.sentOnKept(pool, token, nowNanos);
+            firstBytes.sentOnKept(streams.pool(stream), token, nowNanos);
         } else {
             post.send(Kind.CONNECT, nowNanos, token, backend);
         }
-        return true;
     }
 
     /** The balancer's wish for a connection reaches the backend. */
@@ -107,7 +128,7 @@ final class Attempts {
         }
         int backend = flights.backend[Flights.flightOf(token)];
         if (backends.listening(backend)) {
-            post.send(Kind.ATTEMPT_ON_NEW, nowNanos, token, backend);
+            post.send(speaksTls[backend] ? Kind.ATTEMPT_ON_TLS : Kind.ATTEMPT_ON_NEW, nowNanos, token, backend);
             firstBytes.acceptedNew(poolOf[backend], token, nowNanos);
         } else {
             post.send(Kind.REFUSAL, nowNanos, token, backend);
@@ -131,8 +152,9 @@ final class Attempts {
     }
 
     /** A backend is done with what it read; see {@link VirtualBackends.Hearer#replied}. */
-    void replied(int backend, long token, long request, int attempt, Reply reply, int status, long atNanos) {
+    void replied(int backend, long token, long request, int attempt, Reply reply, int answer, long atNanos) {
         boolean waitedFor = flights.current(token);
+        int status = waitedFor && reply == Reply.ANSWER && opensTunnel(Flights.flightOf(token)) ? SWITCHING : answer;
         boolean inFull = switch (reply) {
             case ANSWER, TURNED_AWAY, FAULT -> true;
             case SILENCE, LOST, DROPPED -> false;
@@ -149,11 +171,15 @@ final class Attempts {
         }
     }
 
-    /** A backend died: its kept connections are gone, and those that it was silent on break too. */
+    private boolean opensTunnel(int flight) {
+        return streams.openNanos(flights.traffic[flight], flights.kind[flight]) > 0;
+    }
+
+    /** A backend died: its kept connections and tunnels are gone, and those that it was silent on break too. */
     void connectionsReset(int backend, long atNanos) {
         idle[backend] = 0;
         for (int flight = 0; flight < flights.used(); flight++) {
-            if (flights.attemptOn(flight, backend) && flights.silent[flight]) {
+            if (flights.attemptOn(flight, backend) && flights.silent[flight] || flights.tunnelOn(flight, backend)) {
                 post.send(Kind.RESET, atNanos, flights.token(flight), backend);
             }
         }

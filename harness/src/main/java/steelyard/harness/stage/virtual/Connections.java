@@ -11,6 +11,8 @@ import steelyard.drills.model.Traffic;
  */
 final class Connections {
     private static final int NONE = -1;
+    /** Idle since then: closed, or in use. Far from every play time, and its distance to one is no overflow. */
+    private static final long CLOSED = Long.MIN_VALUE / 2;
 
     private final int[] firstClient;
     private final int cap;
@@ -19,6 +21,7 @@ final class Connections {
     private int[] below = new int[64];
     private int[] client = new int[64];
     private int[] pinned = new int[64];
+    private int[] passage = new int[64];
     private long[] idleSinceNanos = new long[64];
     private int used;
     private int freeTop = NONE;
@@ -48,15 +51,29 @@ final class Connections {
             fresh = false;
             return top;
         }
-        // The last used has been idle too long, so those below it have too.
-        while (top != NONE) {
-            int next = below[top];
-            close(top);
-            top = next;
+        top = firstAlive(top, nowNanos);
+        fresh = top == NONE;
+        if (fresh) {
+            idleTop[owner] = NONE;
+            return open < cap ? connect(owner) : NONE;
         }
-        idleTop[owner] = NONE;
-        fresh = true;
-        return open < cap ? connect(owner) : NONE;
+        idleTop[owner] = below[top];
+        return top;
+    }
+
+    /** Drops what broke while idle; where one has been idle too long, those below it have too. */
+    private int firstAlive(int top, long nowNanos) {
+        int each = top;
+        while (each != NONE && nowNanos - idleSinceNanos[each] >= idleLimitNanos) {
+            int next = below[each];
+            if (idleSinceNanos[each] == CLOSED) {
+                recycle(each);
+            } else {
+                close(each);
+            }
+            each = next;
+        }
+        return each;
     }
 
     /** Whether the connection just taken had to be made. */
@@ -72,10 +89,34 @@ final class Connections {
         idleTop[owner] = connection;
     }
 
+    /** One that a request is on. */
     void close(int connection) {
+        open--;
+        recycle(connection);
+    }
+
+    /** One that nothing is on; it is dropped when its client comes upon it. */
+    void closeIdle(int connection) {
+        open--;
+        idleSinceNanos[connection] = CLOSED;
+    }
+
+    boolean idleSince(int connection, long sinceNanos) {
+        return idleSinceNanos[connection] == sinceNanos;
+    }
+
+    private void recycle(int connection) {
         below[connection] = freeTop;
         freeTop = connection;
-        open--;
+    }
+
+    /** The passage through the balancer that a connection is. */
+    int passage(int connection) {
+        return passage[connection];
+    }
+
+    void passes(int connection, int asPassage) {
+        passage[connection] = asPassage;
     }
 
     int pinned(int connection) {
@@ -107,6 +148,7 @@ final class Connections {
         below = Arrays.copyOf(below, capacity);
         client = Arrays.copyOf(client, capacity);
         pinned = Arrays.copyOf(pinned, capacity);
+        passage = Arrays.copyOf(passage, capacity);
         idleSinceNanos = Arrays.copyOf(idleSinceNanos, capacity);
     }
 }

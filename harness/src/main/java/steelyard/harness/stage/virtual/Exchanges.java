@@ -20,13 +20,16 @@ final class Exchanges {
     private final Flights flights;
     private final Streams streams;
     private final Attempts attempts;
+    private final PassThrough passThrough;
 
-    Exchanges(Post post, Decider decider, Flights flights, Streams streams, Attempts attempts) {
+    Exchanges(
+            Post post, Decider decider, Flights flights, Streams streams, Attempts attempts, PassThrough passThrough) {
         this.post = post;
         this.decider = decider;
         this.flights = flights;
         this.streams = streams;
         this.attempts = attempts;
+        this.passThrough = passThrough;
     }
 
     /** A request reaches the balancer. */
@@ -36,8 +39,27 @@ final class Exchanges {
             // Its client gave up meanwhile, and the balancer may know it already.
             return;
         }
+        if (streams.rules(flights.traffic[flight]).octets()) {
+            passThrough.arrived(flight, nowNanos);
+            return;
+        }
+        flights.note(flight, UNAVAILABLE, Cause.NO_BACKEND.ordinal());
         if (!attempts.begin(flight, nowNanos)) {
-            reply(flight, UNAVAILABLE, Cause.NO_BACKEND, nowNanos);
+            reply(flight, nowNanos);
+        }
+    }
+
+    /** What waited has a backend, or has waited too long. */
+    void placed(long ticket, int backend, long nowNanos) {
+        if (PassThrough.ownsTicket(ticket)) {
+            passThrough.placed(ticket, backend, nowNanos);
+            return;
+        }
+        int flight = Flights.flightOf(ticket);
+        if (backend == Decider.NOBODY) {
+            reply(flight, nowNanos);
+        } else {
+            attempts.placed(flight, backend, nowNanos);
         }
     }
 
@@ -45,7 +67,11 @@ final class Exchanges {
     void gone(int flight, long nowNanos) {
         switch (flights.state[flight]) {
             case TO_BALANCER -> flights.free(flight);
-            case ATTEMPTED -> {
+            case WAITING -> {
+                leave(flight, nowNanos);
+                flights.free(flight);
+            }
+            case ATTEMPTED, TUNNEL -> {
                 attempts.close(flight, nowNanos);
                 attempts.end(flight, Outcome.ABANDONED, 0, nowNanos);
                 flights.free(flight);
@@ -53,14 +79,27 @@ final class Exchanges {
             case TO_CLIENT -> {
                 // Its result frees it.
             }
-            case FREE -> throw new IllegalStateException("flight " + flight + " is over");
+            case FREE, PASSED -> throw new IllegalStateException("flight " + flight + " is over");
+        }
+    }
+
+    private void leave(int flight, long nowNanos) {
+        if (!decider.leave(flights.token(flight), nowNanos)) {
+            throw new IllegalStateException("request " + flights.request[flight] + " was not waiting");
         }
     }
 
     /** Interrupted: everybody gives up, and the balancer knows at once. */
     void abandonAll(long nowNanos) {
+        passThrough.abandonAll(nowNanos);
         for (int flight = 0; flight < flights.used(); flight++) {
-            if (flights.state[flight] == State.ATTEMPTED) {
+            if (flights.state[flight] == State.WAITING) {
+                leave(flight, nowNanos);
+                flights.free(flight);
+            }
+        }
+        for (int flight = 0; flight < flights.used(); flight++) {
+            if (flights.state[flight] == State.ATTEMPTED || flights.state[flight] == State.TUNNEL) {
                 attempts.end(flight, Outcome.ABANDONED, 0, nowNanos);
                 flights.free(flight);
             }
@@ -73,12 +112,30 @@ final class Exchanges {
             return;
         }
         int flight = Flights.flightOf(token);
+        if (flights.state[flight] == State.PASSED) {
+            passOn(flight, status, nowNanos);
+        } else if (status == Attempts.SWITCHING) {
+            flights.tunnel(flight);
+            post.send(Kind.TUNNEL_OPENED, nowNanos, flights.token(flight), 0);
+        } else {
+            answered(flight, status, nowNanos);
+        }
+    }
+
+    private void passOn(int flight, int status, long nowNanos) {
+        if (passThrough.carries(flight)) {
+            flights.note(flight, status, -1);
+            reply(flight, nowNanos);
+        }
+    }
+
+    private void answered(int flight, int status, long nowNanos) {
         int backend = flights.backend[flight];
         attempts.answered(flight, status, nowNanos);
+        flights.note(flight, status, -1);
+        flights.closes[flight] = decider.saysClose(backend);
         if (!retriesAnswer(flight, status, nowNanos)) {
-            flights.closes[flight] = decider.saysClose(backend);
-            flights.replied(flight, status, -1);
-            post.send(Kind.RESULT, nowNanos, flights.token(flight), 0);
+            reply(flight, nowNanos);
         }
     }
 
@@ -87,11 +144,31 @@ final class Exchanges {
                 && retries(flight, Outcome.ANSWERED, status, true, nowNanos);
     }
 
-    /** The connection of an attempt was reset. */
+    /** The connection of an attempt was reset; that of a passage is told by itself. */
     void reset(long token, long nowNanos) {
-        if (flights.current(token)) {
-            failed(Flights.flightOf(token), Outcome.RESET, BAD_GATEWAY, Cause.RESET, true, nowNanos);
+        int flight = Flights.flightOf(token);
+        if (!flights.current(token) || flights.state[flight] == State.PASSED) {
+            return;
         }
+        if (flights.state[flight] == State.TUNNEL) {
+            tunnelEnds(flight, Outcome.BROKEN, Cause.RESET.ordinal(), nowNanos);
+        } else {
+            failed(flight, Outcome.RESET, BAD_GATEWAY, Cause.RESET, true, nowNanos);
+        }
+    }
+
+    /** A tunnel has come to its own end, both ways. */
+    void tunnelEnded(long token, long nowNanos) {
+        if (flights.current(token)) {
+            tunnelEnds(Flights.flightOf(token), Outcome.ANSWERED, -1, nowNanos);
+        }
+    }
+
+    private void tunnelEnds(int flight, Outcome outcome, int cause, long nowNanos) {
+        attempts.end(flight, outcome, Attempts.SWITCHING, nowNanos);
+        flights.note(flight, Attempts.SWITCHING, cause);
+        flights.closes[flight] = true;
+        reply(flight, nowNanos);
     }
 
     /** A backend took no connection. */
@@ -109,10 +186,13 @@ final class Exchanges {
 
     /** Cuts whatever a backend has in flight. */
     void cutAll(int backend, long nowNanos) {
+        passThrough.cutAll(backend, nowNanos);
         for (int flight = 0; flight < flights.used(); flight++) {
             if (flights.attemptOn(flight, backend)) {
                 attempts.close(flight, nowNanos);
                 failed(flight, Outcome.CUT, UNAVAILABLE, Cause.CUT, true, nowNanos);
+            } else if (flights.tunnelOn(flight, backend)) {
+                tunnelEnds(flight, Outcome.CUT, Cause.CUT.ordinal(), nowNanos);
             }
         }
     }
@@ -120,9 +200,11 @@ final class Exchanges {
     /** An attempt failed: another one is made, or the client told. */
     private void failed(int flight, Outcome outcome, int status, Cause cause, boolean headSent, long nowNanos) {
         attempts.end(flight, outcome, 0, nowNanos);
+        flights.note(flight, status, cause.ordinal());
+        flights.closes[flight] = false;
         boolean asks = streams.rules(flights.traffic[flight]).retries();
         if (!asks || !retries(flight, outcome, 0, headSent, nowNanos)) {
-            reply(flight, status, cause, nowNanos);
+            reply(flight, nowNanos);
         }
     }
 
@@ -141,8 +223,9 @@ final class Exchanges {
         return granted && attempts.begin(flight, nowNanos);
     }
 
-    private void reply(int flight, int status, Cause cause, long nowNanos) {
-        flights.replied(flight, status, cause.ordinal());
+    /** The client gets what was noted. */
+    private void reply(int flight, long nowNanos) {
+        flights.replied(flight);
         post.send(Kind.RESULT, nowNanos, flights.token(flight), 0);
     }
 }

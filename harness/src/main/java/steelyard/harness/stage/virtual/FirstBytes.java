@@ -14,15 +14,19 @@ final class FirstBytes {
     private final Lane[] onNew;
     private long nextNanos = Lane.NEVER;
 
-    /** @param returnHopNanos from the backend's side of a new connection to the balancer's */
-    FirstBytes(Flights flights, List<PoolSettings> pools, long returnHopNanos) {
+    FirstBytes(Flights flights, List<PoolSettings> pools, long hopNanos) {
         this.flights = flights;
         onKept = pools.stream()
                 .map(each -> new Lane(each.timeouts().firstByteNanos()))
                 .toArray(Lane[]::new);
         onNew = pools.stream()
-                .map(each -> new Lane(each.timeouts().firstByteNanos() + returnHopNanos))
+                .map(each -> new Lane(each.timeouts().firstByteNanos() + hopsToBeUsable(each) * hopNanos))
                 .toArray(Lane[]::new);
+    }
+
+    /** From the backend's acceptance of a connection until the balancer can use it. */
+    private static int hopsToBeUsable(PoolSettings pool) {
+        return pool.front().backendTls() ? 3 : 1;
     }
 
     void sentOnKept(int pool, long token, long nowNanos) {

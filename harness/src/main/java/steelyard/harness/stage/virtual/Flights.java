@@ -1,6 +1,7 @@
 package steelyard.harness.stage.virtual;
 
 import java.util.Arrays;
+import steelyard.balancer.core.decide.Decider;
 
 /**
  * Requests on their way, in columns: a flight is an index into all of them, reused when its request is over for client and
@@ -15,8 +16,14 @@ final class Flights {
     enum State {
         FREE,
         TO_BALANCER,
+        /** Every backend is full, and the next attempt waits for one. */
+        WAITING,
         /** An attempt is under way. */
         ATTEMPTED,
+        /** It went through on a connection of its client's. */
+        PASSED,
+        /** The backend agreed to go over to another protocol, and a tunnel stands. */
+        TUNNEL,
         TO_CLIENT
     }
 
@@ -25,18 +32,26 @@ final class Flights {
     long[] dueNanos = new long[FIRST_CAPACITY];
     int[] traffic = new int[FIRST_CAPACITY];
     int[] kind = new int[FIRST_CAPACITY];
+    int[] client = new int[FIRST_CAPACITY];
     int[] connection = new int[FIRST_CAPACITY];
+    /** The connection through the balancer that it is on; only where connections are passed through. */
+    int[] passage = new int[FIRST_CAPACITY];
+    /** The backend that the client's cookie names. */
+    int[] held = new int[FIRST_CAPACITY];
+
     int[] attempt = new int[FIRST_CAPACITY];
     int[] backend = new int[FIRST_CAPACITY];
     /** Where the behaviour holds it, or -1. */
     int[] place = new int[FIRST_CAPACITY];
     /** Whether the backend read it and fell silent about it. */
     boolean[] silent = new boolean[FIRST_CAPACITY];
-    /** Status of the answer, and ordinal of the cause of its failure or -1. */
+    /** What the client gets if nothing better comes: status of the answer, and ordinal of the cause of its failure or -1. */
     int[] status = new int[FIRST_CAPACITY];
 
     int[] cause = new int[FIRST_CAPACITY];
     boolean[] closes = new boolean[FIRST_CAPACITY];
+    /** When the client's tunnel stood, or {@link Lane#NEVER}. */
+    long[] openedNanos = new long[FIRST_CAPACITY];
     /** The client has its end, good or bad. */
     boolean[] told = new boolean[FIRST_CAPACITY];
 
@@ -56,7 +71,10 @@ final class Flights {
 
     /** Whether the client of a request still waits for its end. */
     boolean waits(int flight, long requestNumber) {
-        return request[flight] == requestNumber && !told[flight] && state[flight] != State.FREE;
+        return request[flight] == requestNumber
+                && !told[flight]
+                && state[flight] != State.FREE
+                && openedNanos[flight] == Lane.NEVER;
     }
 
     int open() {
@@ -68,14 +86,16 @@ final class Flights {
         return used;
     }
 
-    int take(long requestNumber, long due, int trafficNumber, int kindNumber, int connectionNumber) {
+    int take(long requestNumber, long due, int trafficNumber, int kindNumber, int clientNumber, int connectionNumber) {
         int flight = freedCount > 0 ? freed[--freedCount] : fresh();
         state[flight] = State.TO_BALANCER;
         request[flight] = requestNumber;
         dueNanos[flight] = due;
         traffic[flight] = trafficNumber;
         kind[flight] = kindNumber;
+        client[flight] = clientNumber;
         connection[flight] = connectionNumber;
+        held[flight] = Decider.NOBODY;
         attempt[flight] = 0;
         backend[flight] = -1;
         place[flight] = -1;
@@ -83,6 +103,7 @@ final class Flights {
         status[flight] = 0;
         cause[flight] = -1;
         closes[flight] = false;
+        openedNanos[flight] = Lane.NEVER;
         told[flight] = false;
         triedCount[flight] = 0;
         return flight;
@@ -98,6 +119,25 @@ final class Flights {
         nextLeg(flight);
     }
 
+    /** It goes through to a backend. */
+    void passed(int flight, int toBackend) {
+        state[flight] = State.PASSED;
+        backend[flight] = toBackend;
+        nextLeg(flight);
+    }
+
+    /** The attempt under way has become a tunnel. */
+    void tunnel(int flight) {
+        state[flight] = State.TUNNEL;
+        nextLeg(flight);
+    }
+
+    /** The attempt with that number waits for a backend. */
+    void waiting(int flight, int number) {
+        state[flight] = State.WAITING;
+        attempt[flight] = number;
+    }
+
     /** The attempt under way is over. */
     void ended(int flight) {
         if (triedCount[flight] < mostTried) {
@@ -106,15 +146,23 @@ final class Flights {
         nextLeg(flight);
     }
 
-    /** The answer to the client is on its way; {@code causeOrdinal} is -1 for what the backend answered. */
-    void replied(int flight, int withStatus, int causeOrdinal) {
-        state[flight] = State.TO_CLIENT;
+    /** Notes what the client gets unless another attempt succeeds; {@code causeOrdinal} is -1 for a backend's answer. */
+    void note(int flight, int withStatus, int causeOrdinal) {
         status[flight] = withStatus;
         cause[flight] = causeOrdinal;
     }
 
+    /** The answer to the client, as noted, is on its way. */
+    void replied(int flight) {
+        state[flight] = State.TO_CLIENT;
+    }
+
     boolean attemptOn(int flight, int onBackend) {
         return state[flight] == State.ATTEMPTED && backend[flight] == onBackend;
+    }
+
+    boolean tunnelOn(int flight, int onBackend) {
+        return state[flight] == State.TUNNEL && backend[flight] == onBackend;
     }
 
     void free(int flight) {
@@ -163,7 +211,10 @@ final class Flights {
         dueNanos = Arrays.copyOf(dueNanos, capacity);
         traffic = Arrays.copyOf(traffic, capacity);
         kind = Arrays.copyOf(kind, capacity);
+        client = Arrays.copyOf(client, capacity);
         connection = Arrays.copyOf(connection, capacity);
+        passage = Arrays.copyOf(passage, capacity);
+        held = Arrays.copyOf(held, capacity);
         attempt = Arrays.copyOf(attempt, capacity);
         backend = Arrays.copyOf(backend, capacity);
         place = Arrays.copyOf(place, capacity);
@@ -171,6 +222,7 @@ final class Flights {
         status = Arrays.copyOf(status, capacity);
         cause = Arrays.copyOf(cause, capacity);
         closes = Arrays.copyOf(closes, capacity);
+        openedNanos = Arrays.copyOf(openedNanos, capacity);
         told = Arrays.copyOf(told, capacity);
         triedCount = Arrays.copyOf(triedCount, capacity);
         tried = Arrays.copyOf(tried, capacity);

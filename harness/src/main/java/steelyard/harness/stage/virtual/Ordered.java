@@ -3,22 +3,28 @@ package steelyard.harness.stage.virtual;
 import java.util.Arrays;
 import steelyard.balancer.core.decide.Orders;
 
-/** Orders of the Decider, noted inside its call and carried out after it. */
+/** Orders of the Decider in the order in which they came, noted inside its call and carried out after it. */
 final class Ordered implements Orders {
-    private int[] probeBackends = new int[8];
-    private long[] probeNumbers = new long[8];
-    private int probes;
-    private int[] cutBackends = new int[8];
-    private int cuts;
+    /** What is to be done. */
+    enum Kind {
+        /** Start the probe {@code number} of a backend. */
+        PROBE,
+        /** Start the reading {@code number} of a backend. */
+        READING,
+        /** The try that waits with the ticket {@code number} has its backend. */
+        PLACE,
+        /** Cut what a backend has in flight. */
+        CUT
+    }
+
+    private Kind[] kinds = new Kind[8];
+    private int[] backends = new int[8];
+    private long[] numbers = new long[8];
+    private int count;
 
     @Override
     public void startProbe(int backend, long number) {
-        if (probes == probeBackends.length) {
-            probeBackends = Arrays.copyOf(probeBackends, 2 * probes);
-            probeNumbers = Arrays.copyOf(probeNumbers, 2 * probes);
-        }
-        probeBackends[probes] = backend;
-        probeNumbers[probes++] = number;
+        note(Kind.PROBE, backend, number);
     }
 
     @Override
@@ -28,49 +34,53 @@ final class Ordered implements Orders {
 
     @Override
     public void startReading(int backend, long number) {
-        throw new IllegalStateException("no pool here reads load");
+        note(Kind.READING, backend, number);
     }
 
     @Override
     public void dropReading(int backend, long number) {
-        throw new IllegalStateException("no pool here reads load");
+        // What it brings is ignored by its number.
     }
 
     @Override
     public void place(long ticket, int backend) {
-        throw new IllegalStateException("nobody waits here");
+        note(Kind.PLACE, backend, ticket);
     }
 
     @Override
     public void cut(int backend) {
-        if (cuts == cutBackends.length) {
-            cutBackends = Arrays.copyOf(cutBackends, 2 * cuts);
+        note(Kind.CUT, backend, 0);
+    }
+
+    private void note(Kind kind, int backend, long number) {
+        if (count == kinds.length) {
+            kinds = Arrays.copyOf(kinds, 2 * count);
+            backends = Arrays.copyOf(backends, 2 * count);
+            numbers = Arrays.copyOf(numbers, 2 * count);
         }
-        cutBackends[cuts++] = backend;
+        kinds[count] = kind;
+        backends[count] = backend;
+        numbers[count++] = number;
     }
 
-    int probes() {
-        return probes;
+    /** How many there are; carrying one out may add to them. */
+    int count() {
+        return count;
     }
 
-    int probeBackend(int i) {
-        return probeBackends[i];
+    Kind kind(int i) {
+        return kinds[i];
     }
 
-    long probeNumber(int i) {
-        return probeNumbers[i];
+    int backend(int i) {
+        return backends[i];
     }
 
-    int cuts() {
-        return cuts;
-    }
-
-    int cutBackend(int i) {
-        return cutBackends[i];
+    long number(int i) {
+        return numbers[i];
     }
 
     void clear() {
-        probes = 0;
-        cuts = 0;
+        count = 0;
     }
 }

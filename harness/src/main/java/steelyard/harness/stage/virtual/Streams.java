@@ -3,7 +3,9 @@ package steelyard.harness.stage.virtual;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Set;
+import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.PoolSettings;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Traffic;
 import steelyard.harness.record.Cast;
@@ -16,13 +18,29 @@ final class Streams {
     private final int[] pools;
     private final PoolRules[] rules;
     private final boolean[][] idempotent;
+    private final long[][] openNanos;
+    private final RequestKeys keys;
+    private final boolean[] hashes;
+    private final boolean[] says;
 
     Streams(Drill drill, BalancerSettings settings) {
         List<Traffic> traffic = drill.traffic();
+        List<PoolSettings> byNumber = settings.pools();
         pools = new Cast(drill).poolsOfTraffic();
-        PoolRules[] byPool = settings.pools().stream().map(PoolRules::of).toArray(PoolRules[]::new);
+        PoolRules[] byPool = byNumber.stream().map(PoolRules::of).toArray(PoolRules[]::new);
         rules = Arrays.stream(pools).mapToObj(pool -> byPool[pool]).toArray(PoolRules[]::new);
         idempotent = traffic.stream().map(Streams::idempotent).toArray(boolean[][]::new);
+        openNanos = traffic.stream()
+                .map(each -> each.requests().stream()
+                        .mapToLong(Traffic.Request::openNanos)
+                        .toArray())
+                .toArray(long[][]::new);
+        keys = new RequestKeys(drill, byNumber);
+        hashes = new boolean[pools.length];
+        says = new boolean[pools.length];
+        for (int pool = 0; pool < byNumber.size(); pool++) {
+            picksBy(pool, byNumber.get(pool).method());
+        }
     }
 
     private static boolean[] idempotent(Traffic traffic) {
@@ -31,6 +49,16 @@ final class Streams {
             each[kind] = IDEMPOTENT.contains(traffic.requests().get(kind).method());
         }
         return each;
+    }
+
+    /** From now on a pool picks by that method. */
+    void picksBy(int pool, PoolSettings.Method method) {
+        for (int stream = 0; stream < pools.length; stream++) {
+            if (pools[stream] == pool) {
+                hashes[stream] = method == PoolSettings.Method.HASH;
+                says[stream] = hashes[stream] || rules[stream].byAddress() || rules[stream].berthNanos() > 0;
+            }
+        }
     }
 
     /** The number of the pool that a stream goes to. */
@@ -45,5 +73,26 @@ final class Streams {
 
     boolean idempotent(int stream, int kind) {
         return idempotent[stream][kind];
+    }
+
+    /** How long the tunnel of a request stays open; 0 for one that asks for none. */
+    long openNanos(int stream, int kind) {
+        return openNanos[stream][kind];
+    }
+
+    /** Whether a pick has to know anything of the client or of the request. */
+    boolean says(int stream) {
+        return says[stream];
+    }
+
+    /** Says it; {@code held} is the backend that the client's cookie names. */
+    void say(Ask ask, int stream, int kind, int client, int held) {
+        if (hashes[stream]) {
+            ask.key = keys.key(stream, kind, client);
+        }
+        if (rules[stream].byAddress()) {
+            ask.client = keys.address(stream, client);
+        }
+        ask.held = held;
     }
 }

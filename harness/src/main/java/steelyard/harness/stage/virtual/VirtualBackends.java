@@ -19,8 +19,14 @@ final class VirtualBackends {
 
         void probeReplied(int backend, long probe, Reply reply, int status, long atNanos);
 
+        /** {@code gauges} by name; empty unless the page was answered. */
+        void readingReplied(int backend, long reading, Reply reply, Map<String, Double> gauges, long atNanos);
+
         void connectionsReset(int backend, long atNanos);
     }
+
+    /** Tokens of readings count down from here, below all those of probes. */
+    private static final long AS_READING = -(1L << 48);
 
     private final Behaviour[] behaviours;
     private final Sink[] sinks;
@@ -58,6 +64,12 @@ final class VirtualBackends {
 
     void probe(int backend, long probe, long nowNanos) {
         behaviours[backend].probe(-1 - probe, probe, nowNanos, sinks[backend]);
+        reschedule(backend);
+    }
+
+    /** The load page is asked for; {@code reading} as given. */
+    void read(int backend, long reading, long nowNanos) {
+        behaviours[backend].read(AS_READING - reading, reading, nowNanos, sinks[backend]);
         reschedule(backend);
     }
 
@@ -112,7 +124,7 @@ final class VirtualBackends {
         @Override
         public void readingReply(
                 long token, long reading, Reply reply, int status, Map<String, Double> gauges, long atNanos) {
-            // No load page is read here.
+            hearer.readingReplied(backend, reading, reply, gauges, atNanos);
         }
 
         @Override

@@ -1,6 +1,7 @@
 package steelyard.harness.stage.virtual;
 
 import java.util.List;
+import java.util.Map;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Reply;
 import steelyard.balancer.core.decide.Decider;
@@ -22,20 +23,26 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
     private final Ordered ordered = new Ordered();
     private final VirtualClients clients;
     private final VirtualProbes probes;
+    private final VirtualReadings readings;
+    private final Streams streams;
     private final Flights flights;
+    private final PassThrough passThrough;
     private final Attempts attempts;
     private final Exchanges exchanges;
 
     VirtualBalancer(Drill drill, Chance chance, PlayListener listener, Post post) {
         BalancerSettings settings = StageSettings.balancer(drill);
         List<PoolSettings> pools = settings.pools();
-        Streams streams = new Streams(drill, settings);
+        streams = new Streams(drill, settings);
         flights = new Flights(mostAttempts(pools));
-        clients = new VirtualClients(listener, post, flights, drill, idleLimitNanos(pools));
+        Passages passages = new Passages();
+        clients = new VirtualClients(listener, post, flights, passages, streams, drill, idleLimitNanos(pools));
         probes = new VirtualProbes(settings, post);
+        readings = new VirtualReadings(settings, post);
         decider = new Decider(settings, Draws.of(chance), new ToListener(listener), ordered, 0);
+        passThrough = new PassThrough(listener, post, decider, flights, passages, streams);
         attempts = new Attempts(drill, pools, listener, post, decider, clients, flights, streams);
-        exchanges = new Exchanges(post, decider, flights, streams, attempts);
+        exchanges = new Exchanges(post, decider, flights, streams, attempts, passThrough);
     }
 
     private static int mostAttempts(List<PoolSettings> pools) {
@@ -76,15 +83,25 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
             exchanges.late(flight, nowNanos);
         }
         decider.poll(nowNanos);
-        carryOut(nowNanos);
     }
 
-    private void carryOut(long nowNanos) {
-        for (int i = 0; i < ordered.probes(); i++) {
-            probes.start(ordered.probeBackend(i), ordered.probeNumber(i), nowNanos);
+    /** Carries out what the Decider has ordered; to be called after everything that may have told it something. */
+    void carryOut(long nowNanos) {
+        if (ordered.count() > 0) {
+            carryOutAll(nowNanos);
         }
-        for (int i = 0; i < ordered.cuts(); i++) {
-            exchanges.cutAll(ordered.cutBackend(i), nowNanos);
+    }
+
+    private void carryOutAll(long nowNanos) {
+        for (int i = 0; i < ordered.count(); i++) {
+            int backend = ordered.backend(i);
+            long number = ordered.number(i);
+            switch (ordered.kind(i)) {
+                case PROBE -> probes.start(backend, number, nowNanos);
+                case READING -> readings.start(backend, number, nowNanos);
+                case PLACE -> exchanges.placed(number, backend, nowNanos);
+                case CUT -> exchanges.cutAll(backend, nowNanos);
+            }
         }
         ordered.clear();
     }
@@ -103,17 +120,31 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
         long where = lane.where();
         lane.drop();
         switch (kind) {
-            case REQUEST, REQUEST_ON_NEW -> exchanges.arrived(what, nowNanos);
+            case REQUEST, REQUEST_ON_NEW, REQUEST_ON_TLS -> exchanges.arrived(what, nowNanos);
             case CLIENT_GONE -> exchanges.gone((int) where, nowNanos);
             case CONNECT -> attempts.connect(backends, what, nowNanos);
-            case ATTEMPT, ATTEMPT_ON_NEW -> attempts.read(backends, what, nowNanos);
+            case ATTEMPT, ATTEMPT_ON_NEW, ATTEMPT_ON_TLS -> attempts.read(backends, what, nowNanos);
             case ATTEMPT_GONE -> backends.abandon((int) (where >>> Integer.SIZE), (int) where, what, nowNanos);
             case ANSWER -> exchanges.answered(what, (int) where, nowNanos);
             case RESET -> exchanges.reset(what, nowNanos);
             case REFUSAL -> exchanges.refused(what, nowNanos);
             case RESULT -> clients.result(Flights.flightOf(what), nowNanos);
+            case TUNNEL_OPENED -> clients.opened(what, nowNanos);
+            case TUNNEL_ENDED -> exchanges.tunnelEnded(what, nowNanos);
+            case PASSAGE, PASSAGE_ON_TLS -> passThrough.came(what, nowNanos);
+            case PASSAGE_CONNECT -> passThrough.connect(backends, what, nowNanos);
+            case PASSAGE_OPEN, PASSAGE_OPEN_ON_TLS -> passThrough.opened(what, nowNanos);
+            case PASSAGE_REFUSED -> passThrough.refused(what, nowNanos);
+            case PASSED -> passThrough.read(backends, what, nowNanos);
+            case PASSAGE_LEFT -> passThrough.left(what, nowNanos);
+            case PASSAGE_ENDED -> passThrough.ended(what, nowNanos);
+            case PASSAGE_RESET -> passThrough.reset(what, nowNanos);
+            case PASSAGE_BROKEN -> clients.broken(what, nowNanos);
             case PROBE_CONNECT -> probes.connect(backends, (int) where, what, nowNanos);
-            case PROBE -> probes.read(backends, (int) where, what, nowNanos);
+            case PROBE, PROBE_ON_TLS -> probes.read(backends, (int) where, what, nowNanos);
+            case READING_CONNECT -> readings.connect(backends, (int) where, what, nowNanos);
+            case READING, READING_ON_TLS -> readings.read(backends, (int) where, what, nowNanos);
+            case READING_RESULT -> readings.result(decider, (int) (where >> 1), what, (where & 1) == 1, nowNanos);
             case PROBE_RESULT -> decider.probeAnswered((int) (where >> 1), what, (where & 1) == 1, nowNanos);
         }
     }
@@ -129,8 +160,14 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
     }
 
     @Override
+    public void readingReplied(int backend, long reading, Reply reply, Map<String, Double> gauges, long atNanos) {
+        readings.replied(backend, reading, reply, gauges, atNanos);
+    }
+
+    @Override
     public void connectionsReset(int backend, long atNanos) {
         attempts.connectionsReset(backend, atNanos);
+        passThrough.connectionsReset(backend, atNanos);
     }
 
     // --- for hands --------------------------------------------------------------------------------------------------

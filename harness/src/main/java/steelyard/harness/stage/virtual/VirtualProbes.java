@@ -9,13 +9,16 @@ import steelyard.harness.stage.virtual.Post.Kind;
 final class VirtualProbes {
     private final Post post;
     private final boolean[] asks;
+    private final boolean[] speaksTls;
 
     VirtualProbes(BalancerSettings settings, Post post) {
         this.post = post;
         asks = new boolean[settings.backends().size()];
+        speaksTls = new boolean[asks.length];
         int backend = 0;
         for (PoolSettings pool : settings.pools()) {
             for (int member = 0; member < pool.backends().size(); member++) {
+                speaksTls[backend] = pool.front().backendTls();
                 asks[backend++] = pool.probe() != null && pool.probe().path() != null;
             }
         }
@@ -30,7 +33,7 @@ final class VirtualProbes {
         if (!backends.listening(backend)) {
             result(backend, probe, false, nowNanos);
         } else if (asks[backend]) {
-            post.send(Kind.PROBE, nowNanos, probe, backend);
+            post.send(speaksTls[backend] ? Kind.PROBE_ON_TLS : Kind.PROBE, nowNanos, probe, backend);
         } else {
             result(backend, probe, true, nowNanos);
         }

@@ -5,6 +5,7 @@ import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Figures;
 import steelyard.backends.fleet.BackendSpec;
 import steelyard.drills.model.Drill;
+import steelyard.drills.model.Pool;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.record.Sample;
 import steelyard.harness.stage.Agenda;
@@ -54,7 +55,7 @@ public final class VirtualStage implements Stage {
             }
         }
         Chance chance = new Chance(seed);
-        Post post = new Post(transport);
+        Post post = new Post(transport, speaksTls());
         VirtualBalancer balancer = new VirtualBalancer(drill, chance, listener, post);
         VirtualBackends backends = new VirtualBackends(
                 StageSettings.backends(drill).stream()
@@ -63,6 +64,12 @@ public final class VirtualStage implements Stage {
                 chance,
                 balancer);
         opened = new Listening(listener, post, backends, balancer, new VirtualHands(listener, backends, balancer));
+    }
+
+    private boolean speaksTls() {
+        return drill.stage().pools().stream()
+                .map(Pool::wire)
+                .anyMatch(wire -> wire.backendTls() || wire.front().tls() != null);
     }
 
     @Override
@@ -100,6 +107,7 @@ public final class VirtualStage implements Stage {
         } else {
             sample(stage);
         }
+        stage.balancer.carryOut(nowNanos);
     }
 
     private void sample(Listening stage) {
