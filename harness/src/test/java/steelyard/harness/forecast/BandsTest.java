@@ -9,6 +9,7 @@ import steelyard.balancer.core.standing.Transition;
 import steelyard.drills.model.Drill;
 import steelyard.drills.read.DrillReader;
 import steelyard.harness.record.Cast;
+import steelyard.harness.record.TestDrill;
 
 class BandsTest {
     /** @param backends in each of two zones */
@@ -67,6 +68,29 @@ class BandsTest {
         Bands few = new Bands(Series.of(drill(3, "zone: south"), 1, 5));
         assertThat(few.slicesOf(4)).isNotNull();
         assertThat(few.slicesOf(5)).isNull();
+    }
+
+    @Test
+    void columns_thatOnlySomeStagesHave_areBehindTheSharesWithBandsOfTheirOwn() {
+        Drill byLoad =
+                new TestDrill().load(TestDrill.S).waiting(20).lasts(TestDrill.S).build();
+        Bands bands = new Bands(Series.of(byLoad, 1, 2));
+
+        assertThat(bands.extras())
+                .containsExactly(
+                        "pool seats:offered",
+                        "pool seats:failed",
+                        "pool seats:waiting",
+                        "pool cargo:offered",
+                        "pool cargo:failed",
+                        "fulmar:headroom",
+                        "gannet:headroom",
+                        "petrel:headroom");
+        assertThat(List.of(new SliceFile(bands).text().strip().split(",")))
+                .containsSubsequence(
+                        "skua:standing-share", "pool seats:offered", "petrel:headroom", "offered:low", "offered:high")
+                .contains("pool seats:waiting:high", "fulmar:headroom:mean");
+        assertThat(new Bands(Series.of(drill(3, ""), 1, 2)).extras()).isEmpty();
     }
 
     @Test
