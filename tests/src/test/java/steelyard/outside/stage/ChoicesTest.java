@@ -7,6 +7,7 @@ import java.util.Map;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
 import steelyard.outside.CheckTable;
 import steelyard.outside.behave.Sample;
 import steelyard.outside.stage.OpenStage.Setting;
@@ -54,6 +55,23 @@ class ChoicesTest {
     @CsvSource({"random, 8", "weighted-random, 3"})
     void sojourn_byLot_isThatOfOneWorkerAlone(String method, int backends) {
         sojourns(method, backends, 0.7, 40_000).mustAgreeWith("mean time in system", 1 / (1 - 0.7), WIDEST_ERROR);
+    }
+
+    /**
+     * Nobody beats looking at all: of equal exponential backends the shortest queue is best (Winston, Journal of Applied
+     * Probability 14(1) 1977, abstract read). And any look at what is in flight beats none by far.
+     */
+    @ParameterizedTest
+    @ValueSource(strings = {"two-choices", "join-idle-queue", "expected-delay"})
+    void sojourn_equalBackends_liesBetweenAllLooksAndNone(String method) {
+        Map<String, String> all = CheckTable.row(
+                ChoicesTest.class,
+                "supermarket_finite_n.csv",
+                r -> number(r, "backends_n") == 8
+                        && number(r, "lambda") == 0.9
+                        && r.get("choices_d").startsWith("all"));
+        assertThat(sojourns(method, 8, 0.9, 40_000).mean())
+                .isBetween(number(all, "mean_time_in_system"), 0.5 / (1 - 0.9));
     }
 
     /** The more backends, the closer to the limit: of the way from 4 to infinitely many, 100 leave less than a tenth. */
