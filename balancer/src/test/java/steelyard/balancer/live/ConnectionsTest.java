@@ -15,10 +15,12 @@ import java.util.concurrent.TimeUnit;
 import java.util.concurrent.atomic.AtomicInteger;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
 
 /** When connections are opened, kept and closed. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class ConnectionsTest {
     private static final String OK = "HTTP/1.1 200 OK\r\nContent-Length: 2\r\n\r\nok";
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";

@@ -6,10 +6,12 @@ import java.util.List;
 import java.util.concurrent.CopyOnWriteArrayList;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.live.control.CueTaker;
 
 /** The control page. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class ControlPageTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
     private static final String OK = "HTTP/1.1 200 OK\r\nContent-Length: 2\r\n\r\nok";

@@ -6,12 +6,14 @@ import static org.awaitility.Awaitility.await;
 import java.util.concurrent.CountDownLatch;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.core.standing.Standing;
 import steelyard.balancer.live.guard.BackendReadings;
 
 /** Taking backends out by hand. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class DrainTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
     private static final String OK = "HTTP/1.1 200 OK\r\nContent-Length: 2\r\n\r\nok";

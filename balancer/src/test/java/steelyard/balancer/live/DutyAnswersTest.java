@@ -4,8 +4,10 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.List;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Answers of backends: RFC 9112, 6 and 7; RFC 9110, 6.6.1, 8.6, 9.3.2 and 15. */
+@ExtendWith(Accounting.class)
 class DutyAnswersTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
     private static final String CHUNKED =

@@ -3,8 +3,10 @@ package steelyard.balancer.live;
 import static org.assertj.core.api.Assertions.assertThat;
 
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Header fields on their way through: RFC 9110, 5, 6.5, 7.6.1 and 10.1.4. */
+@ExtendWith(Accounting.class)
 class DutyFieldsTest {
     private static String get(String fields) {
         return "GET /sailings HTTP/1.1\r\nHost: a\r\n" + fields + "\r\n\r\n";

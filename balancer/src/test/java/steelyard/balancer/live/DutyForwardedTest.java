@@ -6,8 +6,10 @@ import java.util.Arrays;
 import java.util.List;
 import java.util.Locale;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** The Forwarded field: RFC 7239. */
+@ExtendWith(Accounting.class)
 class DutyForwardedTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a.example:81\r\n\r\n";
 

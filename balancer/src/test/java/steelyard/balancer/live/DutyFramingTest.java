@@ -4,8 +4,10 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.List;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Where a request's content ends: RFC 9112, 6 and 7; RFC 9110, 8.6. */
+@ExtendWith(Accounting.class)
 class DutyFramingTest {
     private static String post(String fields, String content) {
         return "POST /holds HTTP/1.1\r\nHost: a\r\n" + fields + "\r\n\r\n" + content;
@@ -137,6 +139,12 @@ class DutyFramingTest {
             assertThat(seen.request().trailers()).isEmpty();
             assertThat(seen.harmless()).isTrue();
         });
+    }
+
+    @Test
+    void trailer_folded_is400() throws Exception { // RFC 9112, 5.2
+        Duties.of().aborting().refuses(chunked("5\r\nhello\r\n0\r\nX-T: a\r\n b\r\n\r\n"), 400);
+        Duties.of().aborting().refuses(chunked("5\r\nhello\r\n00;x\r\nX-T: a\nX-U: b\r\n\r\n"), 400);
     }
 
     @Test

@@ -4,8 +4,10 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.List;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** The grammar of heads: RFC 9112, 2.2, 2.3, 4 and 5; RFC 9110, 5.5 and 6.2. */
+@ExtendWith(Accounting.class)
 class DutyGrammarTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
 

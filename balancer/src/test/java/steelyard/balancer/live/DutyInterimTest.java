@@ -5,9 +5,11 @@ import static org.assertj.core.api.Assertions.assertThat;
 import java.util.List;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Expect, interim answers and Max-Forwards: RFC 9110, 7.6.2, 9.3, 10.1.1 and 15.2. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class DutyInterimTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
 

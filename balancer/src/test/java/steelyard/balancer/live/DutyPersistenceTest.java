@@ -11,9 +11,11 @@ import java.util.concurrent.TimeUnit;
 import java.util.concurrent.atomic.AtomicInteger;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Connections, pipelining, retries and slow clients: RFC 9112, 8 and 9; RFC 9110, 9.2.2 and 15.5. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class DutyPersistenceTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
     private static final String POST = "POST / HTTP/1.1\r\nHost: a\r\nContent-Length: 4\r\n\r\nhold";

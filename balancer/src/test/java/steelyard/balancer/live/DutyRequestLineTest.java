@@ -4,8 +4,10 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.List;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Request lines, Host and limits: RFC 9112, 3; RFC 9110, 5.4, 7.6, 7.7 and 9.3.6; RFC 6585, 5. */
+@ExtendWith(Accounting.class)
 class DutyRequestLineTest {
     @Test
     @Duty("H030")

@@ -4,8 +4,10 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.List;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Via and loops: RFC 9110, 7.6 and 7.6.3. */
+@ExtendWith(Accounting.class)
 class DutyViaTest {
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";
 

@@ -8,12 +8,14 @@ import java.util.List;
 import java.util.concurrent.CountDownLatch;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import steelyard.balancer.core.decide.Outcome;
 
 /** What a client sees, and what is reported, when the backend or the client fails. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class FailuresTest {
     private static final String OK = "HTTP/1.1 200 OK\r\nContent-Length: 2\r\n\r\nok";
     private static final String GET = "GET / HTTP/1.1\r\nHost: a\r\n\r\n";

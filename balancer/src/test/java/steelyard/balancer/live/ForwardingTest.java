@@ -9,10 +9,12 @@ import java.util.concurrent.LinkedBlockingQueue;
 import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
 
 /** What passes through, and how it is changed on the way. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class ForwardingTest {
     private static final String OK = "HTTP/1.1 200 OK\r\nContent-Length: 2\r\n\r\nok";
     private static final String GET = "GET /sailings HTTP/1.1\r\nHost: skerry.example\r\n\r\n";

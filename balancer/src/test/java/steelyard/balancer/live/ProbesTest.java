@@ -9,11 +9,13 @@ import java.util.concurrent.LinkedBlockingQueue;
 import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.standing.Standing;
 import steelyard.balancer.core.standing.Transition;
 
 /** Probes on the wire; one miss makes a backend down here, one pass up. */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class ProbesTest {
     private static final String GOOD = "HTTP/1.1 204 No Content\r\n\r\n";
     private static final String BAD = "HTTP/1.1 500 Bad\r\nContent-Length: 0\r\n\r\n";

@@ -13,9 +13,11 @@ import java.util.concurrent.TimeUnit;
 import java.util.concurrent.atomic.AtomicLong;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
 
 /** Large content: it flows, and a side that does not read slows the other down instead of filling memory. */
 @Timeout(120)
+@ExtendWith(Accounting.class)
 class StreamingTest {
     private static final int PIECE = 64 * 1024;
     private static final int PIECES = 800; // 50 MiB

@@ -8,9 +8,11 @@ import java.io.IOException;
 import java.net.SocketException;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
 
 /** Connections that are passed through as they are. */
+@ExtendWith(Accounting.class)
 class TcpFrontTest {
     private static final int MUCH = 1 << 20;
 

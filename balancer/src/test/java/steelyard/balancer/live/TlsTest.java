@@ -24,6 +24,7 @@ import javax.net.ssl.SSLSocket;
 import javax.net.ssl.TrustManagerFactory;
 import org.awaitility.Awaitility;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
@@ -31,6 +32,7 @@ import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.settings.TlsSettings;
 
 /** TLS on both sides, with the sockets of the JDK at the other ends. */
+@ExtendWith(Accounting.class)
 class TlsTest {
     private static final String REQUEST = "GET / HTTP/1.1\r\nHost: quay\r\n\r\n";
     private static final String ANSWER = "HTTP/1.1 200 OK\r\nContent-Length: 4\r\n\r\ntern";

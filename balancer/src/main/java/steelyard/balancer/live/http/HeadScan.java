@@ -34,6 +34,12 @@ final class HeadScan implements ByteProcessor {
         target = 0;
     }
 
+    /** The next octet is the first of a line of trailer fields. */
+    void trailers() {
+        reset();
+        at = At.LINE_START;
+    }
+
     /** Whether anything but empty lines was seen. */
     boolean begun() {
         return octets > 0;

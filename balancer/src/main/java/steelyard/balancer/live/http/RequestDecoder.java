@@ -37,6 +37,8 @@ final class RequestDecoder extends HttpRequestDecoder {
     private final LimitSettings limits;
     private final HeadScan scan = new HeadScan();
     private boolean inContent;
+    private boolean chunked;
+    private boolean inTrailers;
     private boolean waiting;
     private long content;
     private long framing;
@@ -71,15 +73,26 @@ final class RequestDecoder extends HttpRequestDecoder {
         boolean head = !inContent;
         super.decode(context, buffer, out);
         int consumed = buffer.readerIndex() - from;
-        if (head) {
+        framing += consumed;
+        if (head || inTrailers) {
             buffer.forEachByte(from, consumed, scan);
-        } else {
-            framing += consumed;
+        } else if (out.size() == before && lastChunk(buffer, from, buffer.readerIndex())) {
+            inTrailers = true;
+            scan.trailers();
         }
         for (int i = before; i < out.size(); i++) {
             out.set(i, checked(out.get(i)));
         }
         waiting = !inContent && buffer.isReadable();
+    }
+
+    /** Whether this is the line of a chunk of size 0, behind which trailer fields follow. */
+    private boolean lastChunk(ByteBuf buffer, int from, int to) {
+        int at = from;
+        while (at < to && buffer.getByte(at) == '0') {
+            at++;
+        }
+        return chunked && at > from && at < to && "\r; \t".indexOf(buffer.getByte(at)) >= 0;
     }
 
     private Object checked(Object part) {
@@ -91,6 +104,7 @@ final class RequestDecoder extends HttpRequestDecoder {
 
     private void begun(HttpRequest request) {
         inContent = true;
+        chunked = HttpUtil.isTransferEncodingChunked(request);
         content = 0;
         framing = 0;
         Refusal refusal = refusal(request);
@@ -126,11 +140,17 @@ final class RequestDecoder extends HttpRequestDecoder {
         int octets = piece.content().readableBytes();
         content += octets;
         framing -= octets;
-        inContent = !(piece instanceof LastHttpContent);
+        boolean faulty = inTrailers && scan.faulty();
+        if (piece instanceof LastHttpContent) {
+            inContent = false;
+            inTrailers = false;
+            scan.reset();
+        }
         if (content > limits.bodyBytes()) {
             return refused(piece, OwnAnswer.TOO_LARGE_CONTENT);
         }
-        return framing > MOST_FRAMING + FRAMING_EACH * content ? refused(piece, OwnAnswer.FAULTY) : piece;
+        faulty |= framing > MOST_FRAMING + FRAMING_EACH * content;
+        return faulty ? refused(piece, OwnAnswer.FAULTY) : piece;
     }
 
     private static HttpContent refused(HttpContent piece, OwnAnswer answer) {
