@@ -132,11 +132,11 @@ class ControlPageTest {
                     .containsIgnoringCase("content-type: application/json\r\n")
                     .containsIgnoringCase("cache-control: no-store\r\n");
             assertThat(page.substring(page.indexOf("\r\n\r\n") + 4))
-                    .startsWith("{\"pools\":[{\"pool\":\"terns\",")
+                    .startsWith("{\"pools\":[{\"pool\":\"terns\",\"waiting\":0,\"backends\":[")
                     .contains("{\"backend\":\"tern-1\",\"standing\":\"withdrawn\",\"pickable\":false,\"in-flight\":0,"
                             + "\"weight\":1,")
                     .contains("{\"backend\":\"tern-2\",\"standing\":\"up\",\"pickable\":true,\"in-flight\":0,"
-                            + "\"weight\":7,\"effective-weight\":1.0,\"entitled-share\":1.0");
+                            + "\"weight\":7,\"headroom\":1.0,\"effective-weight\":1.0,\"entitled-share\":1.0");
         }
     }
 

@@ -33,7 +33,9 @@ final class Meters {
             Map.entry("steelyard.transitions", "Changes of the standing of a backend, by the new one"),
             Map.entry("steelyard.standing", "1 for the standing that a backend has now, 0 for the others"),
             Map.entry("steelyard.in.flight", "Attempts in flight on a backend"),
+            Map.entry("steelyard.waiting", "Requests that wait for a backend of a pool to be free"),
             Map.entry("steelyard.weight", "Set weight of a backend"),
+            Map.entry("steelyard.headroom", "What load readings leave of the weight of a backend, from 0 to 1"),
             Map.entry(
                     "steelyard.effective.weight",
                     "Weight of a backend after warm-up and host weights; of one that may not be picked, if it came"
@@ -50,7 +52,8 @@ final class Meters {
         this.decider = decider;
         this.counts = counts;
         this.figures = new Figures(settings);
-        this.readings = new BackendReadings(settings.backends().size());
+        this.readings =
+                new BackendReadings(settings.backends().size(), settings.pools().size());
         int backend = 0;
         for (int pool = 0; pool < settings.pools().size(); pool++) {
             PoolSettings of = settings.pools().get(pool);
@@ -78,6 +81,7 @@ final class Meters {
     }
 
     private void pool(Tags tags, int pool) {
+        gauge("steelyard.waiting", tags, () -> readings.waiting(pool));
         counter("steelyard.nobody", tags, () -> figures.nobody[pool]);
         counter("steelyard.retries", tags.and("answer", "granted"), () -> figures.retriesGranted[pool]);
         counter("steelyard.retries", tags.and("answer", "denied"), () -> figures.retriesDenied[pool]);
@@ -100,6 +104,7 @@ final class Meters {
         }
         gauge("steelyard.in.flight", tags, () -> readings.inFlight(backend));
         gauge("steelyard.weight", tags, () -> readings.weight(backend));
+        gauge("steelyard.headroom", tags, () -> readings.headroom(backend));
         gauge("steelyard.effective.weight", tags, () -> readings.effectiveWeight(backend));
         gauge("steelyard.entitled.share", tags, () -> readings.entitledShare(backend));
     }

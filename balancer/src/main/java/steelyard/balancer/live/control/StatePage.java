@@ -22,7 +22,8 @@ final class StatePage {
     StatePage(BalancerSettings settings, GuardedDecider decider) {
         this.settings = settings;
         this.decider = decider;
-        this.readings = new BackendReadings(settings.backends().size());
+        this.readings =
+                new BackendReadings(settings.backends().size(), settings.pools().size());
     }
 
     /** The page; the lock is held only to copy the figures. */
@@ -41,9 +42,11 @@ final class StatePage {
         to.writeStartObject();
         to.writeArrayFieldStart("pools");
         int backend = 0;
-        for (PoolSettings pool : settings.pools()) {
+        for (int number = 0; number < settings.pools().size(); number++) {
+            PoolSettings pool = settings.pools().get(number);
             to.writeStartObject();
             to.writeStringField("pool", pool.name());
+            to.writeNumberField("waiting", readings.waiting(number));
             to.writeArrayFieldStart("backends");
             for (BackendSettings each : pool.backends()) {
                 write(each.name(), backend++, to);
@@ -62,6 +65,7 @@ final class StatePage {
         to.writeBooleanField("pickable", readings.pickable(backend));
         to.writeNumberField("in-flight", readings.inFlight(backend));
         to.writeNumberField("weight", readings.weight(backend));
+        to.writeNumberField("headroom", readings.headroom(backend));
         to.writeNumberField("effective-weight", readings.effectiveWeight(backend));
         to.writeNumberField("entitled-share", readings.entitledShare(backend));
         to.writeEndObject();
