@@ -8,7 +8,8 @@ function weighRow(members) {
 /** The end of the rows' scale for shares: no second of the play has a larger one. */
 function shareEnd(run, members) {
   run.bySecond = run.bySecond || binned(run, 10);
-  const largest = (bin) => Math.max(...members.map((each) => Math.max(weightShare(run, bin, each), pickedShare(run, bin, each) || 0)));
+  const weight = (bin, each) => (run.bands ? bin.backends[each.index].bands.entitled.high : weightShare(run, bin, each));
+  const largest = (bin) => Math.max(...members.map((each) => Math.max(weight(bin, each), pickedShare(run, bin, each) || 0)));
   const most = Math.max(...run.bySecond.map(largest).filter(Number.isFinite), 0.01);
   return Math.min(1, Math.ceil(most * 20) / 20);
 }
