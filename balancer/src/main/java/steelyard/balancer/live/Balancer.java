@@ -22,11 +22,14 @@ import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.live.guard.WaitingRooms;
 import steelyard.balancer.live.http.Forwarding;
 import steelyard.balancer.live.probe.Probes;
+import steelyard.balancer.live.probe.Readings;
 import steelyard.balancer.live.tcp.TcpFronts;
 import steelyard.balancer.live.tcp.Transport;
 import steelyard.balancer.live.tls.FrontTls;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 
 /**
  * A running balancer: one front a pool on 127.0.0.1.
@@ -46,6 +49,7 @@ public final class Balancer implements AutoCloseable {
     private final Forwarding forwarding;
     private final TcpFronts tcpFronts;
     private final Probes probes;
+    private final Readings readings;
     private final List<InetSocketAddress> fronts = new ArrayList<>();
     private @Nullable ControlPage control;
     private boolean closed;
@@ -68,6 +72,7 @@ public final class Balancer implements AutoCloseable {
                 new Forwarding(settings, decider, transport, rooms, addresses, certificates::backends, numbers);
         this.tcpFronts = new TcpFronts(decider, transport, rooms, addresses, numbers);
         this.probes = new Probes(settings, decider, transport, addresses, certificates::backends);
+        this.readings = new Readings(settings, decider, transport, addresses, certificates::backends);
     }
 
     /**
@@ -211,6 +216,21 @@ public final class Balancer implements AutoCloseable {
         decider.change((core, now) -> core.reweighHost(host, weight, now));
     }
 
+    /** Changes how the backends of a pool are probed; probes under way and runs so far go on. */
+    public void retune(int pool, ProbeSettings probe) {
+        decider.change((core, now) -> core.retune(pool, probe, now));
+    }
+
+    /** Changes what the drains of a pool keep to; one under way keeps its limit. */
+    public void retune(int pool, DrainSettings drain) {
+        decider.change((core, now) -> core.retune(pool, drain, now));
+    }
+
+    /** Changes how a pool picks; what is in flight goes on. */
+    public void retune(int pool, PoolSettings.Method method) {
+        decider.change((core, now) -> core.retune(pool, method, now));
+    }
+
     /** Fills {@code readings}, made for as many backends as there are, with the figures of this instant. */
     public void sample(BackendReadings readings) {
         decider.read(readings);
@@ -234,6 +254,7 @@ public final class Balancer implements AutoCloseable {
         step(failures, tcpFronts::close);
         step(failures, decider::end);
         step(failures, () -> transport.home().submit(probes::close).awaitUninterruptibly());
+        step(failures, () -> transport.home().submit(readings::close).awaitUninterruptibly());
         ControlPage page = control;
         if (page != null) {
             step(failures, page::close);
@@ -268,12 +289,12 @@ public final class Balancer implements AutoCloseable {
 
         @Override
         public void startReading(int backend, long number) {
-            throw new IllegalStateException("not asked for");
+            readings.start(backend, number);
         }
 
         @Override
         public void dropReading(int backend, long number) {
-            throw new IllegalStateException("not asked for");
+            readings.drop(backend, number);
         }
 
         @Override

@@ -25,6 +25,13 @@ public record BalancerSettings(String name, int loops, List<HostSettings> hosts,
         }
     }
 
+    /** The number of a pool's first backend. */
+    public int firstBackend(int pool) {
+        return pools.subList(0, pool).stream()
+                .mapToInt(before -> before.backends().size())
+                .sum();
+    }
+
     /** Every backend, by number. */
     public List<BackendSettings> backends() {
         return pools.stream().flatMap(pool -> pool.backends().stream()).toList();

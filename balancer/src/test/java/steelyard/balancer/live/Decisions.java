@@ -13,6 +13,9 @@ final class Decisions implements DecisionSink {
     private final List<Transition> transitions = new ArrayList<>();
     private final List<Boolean> retries = new ArrayList<>();
     private final List<Boolean> probes = new ArrayList<>();
+    private final List<Boolean> fresh = new ArrayList<>();
+    private int headroomMilli = -1;
+    private int waited;
     private int nobody;
 
     record Pick(int backend, long request, int attempt) {}
@@ -51,6 +54,17 @@ final class Decisions implements DecisionSink {
     }
 
     @Override
+    public synchronized void waited(long nowNanos, int pool, long request, int attempt, int waiting) {
+        waited++;
+    }
+
+    @Override
+    public synchronized void loadRead(long nowNanos, int backend, long number, int headroom, boolean isFresh) {
+        fresh.add(isFresh);
+        headroomMilli = headroom;
+    }
+
+    @Override
     public void reweighed(long nowNanos, boolean host, int number, int weight) {
         // no test of the live side asks for it
     }
@@ -77,6 +91,19 @@ final class Decisions implements DecisionSink {
 
     synchronized List<Boolean> probes() {
         return List.copyOf(probes);
+    }
+
+    synchronized int waited() {
+        return waited;
+    }
+
+    synchronized List<Boolean> fresh() {
+        return List.copyOf(fresh);
+    }
+
+    /** As of the last reading; -1 before it. */
+    synchronized int headroomMilli() {
+        return headroomMilli;
     }
 
     synchronized int nobody() {

@@ -2,12 +2,14 @@ package steelyard.balancer.live;
 
 import java.util.List;
 import java.util.Set;
+import java.util.function.UnaryOperator;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.FrontSettings;
 import steelyard.balancer.settings.LimitSettings;
 import steelyard.balancer.settings.PickSettings;
+import steelyard.balancer.settings.PoolBuilder;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.RetrySettings;
@@ -25,6 +27,7 @@ final class Pool {
     private FrontSettings.Kind kind = FrontSettings.Kind.HTTP;
     private @Nullable TlsSettings tls;
     private boolean backendTls;
+    private UnaryOperator<PoolBuilder> also = UnaryOperator.identity();
     private long drainLimitNanos = 30 * LivePlay.SECOND;
 
     Pool countingConnections() {
@@ -81,6 +84,12 @@ final class Pool {
         return this;
     }
 
+    /** Everything else, in the words of the settings. */
+    Pool with(UnaryOperator<PoolBuilder> more) {
+        also = more;
+        return this;
+    }
+
     /** Octets are passed through, a connection as a whole. */
     Pool passing() {
         kind = FrontSettings.Kind.TCP;
@@ -101,15 +110,15 @@ final class Pool {
     }
 
     PoolSettings settings(List<BackendSettings> backends) {
-        return PoolSettings.named(
-                        "terns",
-                        PickSettings.of(PoolSettings.Method.ROUND_ROBIN).with(count))
-                .probe(probe)
-                .drain(new DrainSettings(drainLimitNanos, false))
-                .retry(retry)
-                .timeouts(timeouts)
-                .limits(limits)
-                .front(new FrontSettings(0, kind, tls, backendTls, forwarded))
+        return also.apply(PoolSettings.named(
+                                "terns",
+                                PickSettings.of(PoolSettings.Method.ROUND_ROBIN).with(count))
+                        .probe(probe)
+                        .drain(new DrainSettings(drainLimitNanos, false))
+                        .retry(retry)
+                        .timeouts(timeouts)
+                        .limits(limits)
+                        .front(new FrontSettings(0, kind, tls, backendTls, forwarded)))
                 .of(backends);
     }
 }

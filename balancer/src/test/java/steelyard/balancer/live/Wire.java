@@ -7,6 +7,7 @@ import java.io.InputStream;
 import java.io.OutputStream;
 import java.net.InetSocketAddress;
 import java.net.Socket;
+import java.net.SocketTimeoutException;
 import java.nio.charset.StandardCharsets;
 import org.jspecify.annotations.Nullable;
 
@@ -98,6 +99,21 @@ final class Wire implements AutoCloseable {
     /** Exactly so many octets. */
     byte[] readOctets(int octets) throws IOException {
         return in.readNBytes(octets);
+    }
+
+    /** Whether anything comes within so many milliseconds. */
+    boolean answers(int millis) throws IOException {
+        socket.setSoTimeout(millis);
+        in.mark(1);
+        try {
+            in.read();
+            in.reset();
+            return true;
+        } catch (SocketTimeoutException e) {
+            return false;
+        } finally {
+            socket.setSoTimeout(LIMIT_MILLIS);
+        }
     }
 
     /** How many octets came, of so many at most. */

@@ -5,9 +5,11 @@ import steelyard.backends.behave.Change;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Pool;
+import steelyard.drills.model.Retune;
 import steelyard.drills.model.Target;
 import steelyard.harness.record.Cast;
 import steelyard.harness.stage.Hands;
+import steelyard.harness.stage.Retuned;
 import steelyard.harness.traffic.ArrivalPlan;
 
 /** Turns cues, and the ends of their {@code for:}, into calls of hands. */
@@ -15,6 +17,7 @@ final class CueActions {
     private final Cast cast;
     private final String[] poolOfTraffic;
     private final ArrivalPlan arrivals;
+    private final Retuned retuned;
     private final Terms faults;
     private final Terms surges;
 
@@ -22,6 +25,7 @@ final class CueActions {
         this.cast = new Cast(drill);
         this.poolOfTraffic = drill.traffic().stream().map(each -> each.pool()).toArray(String[]::new);
         this.arrivals = arrivals;
+        this.retuned = new Retuned(drill);
         this.faults = new Terms(cast.backends().size());
         this.surges = new Terms(poolOfTraffic.length);
     }
@@ -48,7 +52,7 @@ final class CueActions {
                 backends(cue).forEach(each -> hands.drain(each, cue.settings().limitNanos()));
             case ADMIT -> backends(cue).forEach(hands::admit);
             case WITHDRAW -> backends(cue).forEach(hands::withdraw);
-            case RETUNE -> throw new IllegalArgumentException("no stage can retune a pool");
+            case RETUNE -> retune(cue, hands);
             case SURGE -> surge(cue, number, atNanos);
         }
     }
@@ -93,6 +97,14 @@ final class CueActions {
             arrivals.surge(stream, 1, atNanos);
         }
         return left.length > 0;
+    }
+
+    private void retune(Cue cue, Hands hands) {
+        Retune change = cue.settings().retune();
+        if (change == null) {
+            throw new IllegalArgumentException("a retune says what changes");
+        }
+        backends(cue).map(cast::poolOf).distinct().forEach(pool -> retuned.apply(pool, change, hands));
     }
 
     /** A host is reweighed itself where a pool on it counts weights by host; all else is reweighed backend by backend. */

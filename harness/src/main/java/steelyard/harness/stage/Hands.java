@@ -1,6 +1,9 @@
 package steelyard.harness.stage;
 
 import steelyard.backends.behave.Change;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 import steelyard.drills.model.Cue;
 import steelyard.harness.record.PlayListener;
 
@@ -31,6 +34,15 @@ public interface Hands {
     void reweigh(int backend, int weight);
 
     void reweighHost(int host, int weight);
+
+    /** Changes how the backends of a pool are probed; those under way go on. */
+    void retune(int pool, ProbeSettings probe);
+
+    /** Changes what drains of a pool keep to, from the next one on. */
+    void retune(int pool, DrainSettings drain);
+
+    /** Changes how a pool picks. */
+    void retune(int pool, PoolSettings.Method method);
 
     /** Tells the listener that a cue has been carried out. */
     void applied(long dueNanos, Cue cue, PlayListener.By by);

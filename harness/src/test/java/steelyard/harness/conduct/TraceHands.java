@@ -3,6 +3,9 @@ package steelyard.harness.conduct;
 import java.util.ArrayList;
 import java.util.List;
 import steelyard.backends.behave.Change;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 import steelyard.drills.model.Cue;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.Hands;
@@ -46,6 +49,21 @@ final class TraceHands implements Hands {
     @Override
     public void reweighHost(int host, int weight) {
         trace.add("reweigh host " + host + " to " + weight);
+    }
+
+    @Override
+    public void retune(int pool, ProbeSettings probe) {
+        trace.add("retune " + pool + " to " + probe);
+    }
+
+    @Override
+    public void retune(int pool, DrainSettings drain) {
+        trace.add("retune " + pool + " to " + drain);
+    }
+
+    @Override
+    public void retune(int pool, PoolSettings.Method method) {
+        trace.add("retune " + pool + " to " + method);
     }
 
     @Override

@@ -63,6 +63,16 @@ public final class Counts implements DecisionSink {
     }
 
     @Override
+    public void waited(long nowNanos, int pool, long request, int attempt, int waiting) {
+        next.waited(nowNanos, pool, request, attempt, waiting);
+    }
+
+    @Override
+    public void loadRead(long nowNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        next.loadRead(nowNanos, backend, number, headroomMilli, fresh);
+    }
+
+    @Override
     public void reweighed(long nowNanos, boolean host, int number, int weight) {
         next.reweighed(nowNanos, host, number, weight);
         (host ? figures.hostReweighs : figures.reweighs)[number]++;

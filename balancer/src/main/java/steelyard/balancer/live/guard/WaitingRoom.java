@@ -25,7 +25,7 @@ public final class WaitingRoom {
      * @param first ticket
      * @param step from one ticket to the next
      */
-    WaitingRoom(int first, int step) {
+    public WaitingRoom(int first, int step) {
         this.next = first;
         this.step = step;
     }

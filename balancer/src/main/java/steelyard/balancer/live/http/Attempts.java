@@ -1,9 +1,12 @@
 package steelyard.balancer.live.http;
 
 import io.netty.handler.codec.http.HttpMethod;
+import io.netty.handler.codec.http.HttpRequest;
+import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.live.guard.WaitingRoom;
 
 /**
  * The attempts at one request as the Decider counts them.
@@ -16,36 +19,94 @@ final class Attempts {
     private final HttpMethod method;
     private final Ask ask = new Ask();
     private int backend = Decider.NOBODY;
+    private final WaitingRoom room;
     private boolean inFlight;
+    private boolean waiting;
+    private boolean left;
     private int status;
 
-    Attempts(PoolFront pool, HttpMethod method, long number) {
+    /**
+     * @param head prepared for the backend
+     * @param room where a try waits when every backend is full
+     * @param client the key of the client's address
+     */
+    Attempts(PoolFront pool, HttpRequest head, long number, WaitingRoom room, long client) {
         this.pool = pool;
-        this.method = method;
+        this.method = head.method();
+        this.room = room;
         ask.pool = pool.number();
         ask.request = number;
+        ask.client = client;
+        ask.key = RequestKey.of(pool.settings().pick().hash(), head, client);
+        Berths berths = pool.berths();
+        if (berths != null) {
+            ask.held = berths.held(head.headers());
+        }
     }
 
-    /** Picks for the first attempt; gives the backend or {@link Decider#NOBODY}. */
-    int pick(int pinned) {
+    /**
+     * Picks for the first attempt.
+     *
+     * @param waiter is told when the answer is {@link Decider#WAITING}
+     * @return the backend, {@link Decider#NOBODY} or {@link Decider#WAITING}
+     */
+    int pick(int pinned, WaitingRoom.Waiter waiter) {
         ask.pinned = pinned;
-        backend = pool.decider().pick(ask);
-        inFlight = backend != Decider.NOBODY;
-        return backend;
+        return pick(waiter);
     }
 
-    /** Picks a backend that was not tried yet; false if there is none. */
-    boolean pickAnother() {
+    /** Picks a backend that was not tried yet; see {@link #pick(int, WaitingRoom.Waiter)}. */
+    int pickAnother(WaitingRoom.Waiter waiter) {
         ask.again(backend);
         ask.pinned = Decider.NOBODY;
-        int next = pool.decider().pick(ask);
-        if (next == Decider.NOBODY) {
-            return false;
+        return pick(waiter);
+    }
+
+    private int pick(WaitingRoom.Waiter waiter) {
+        ask.ticket = room.ticket();
+        int picked = pool.decider().pick(ask);
+        if (picked == Decider.WAITING) {
+            waiting = true;
+            room.enter(ask.ticket, placed -> placed(placed, waiter));
+        } else {
+            take(picked);
         }
-        backend = next;
-        inFlight = true;
-        status = 0;
-        return true;
+        return picked;
+    }
+
+    private void placed(int picked, WaitingRoom.Waiter waiter) {
+        waiting = false;
+        take(picked);
+        if (left) {
+            ended(Outcome.ABANDONED);
+        } else {
+            waiter.placed(picked);
+        }
+    }
+
+    private void take(int picked) {
+        if (picked != Decider.NOBODY) {
+            backend = picked;
+            inFlight = true;
+            status = 0;
+        }
+    }
+
+    /** The client went away. */
+    void abandon() {
+        left = true;
+        if (waiting && pool.decider().leave(ask.ticket)) {
+            waiting = false;
+            room.leave(ask.ticket);
+        }
+        ended(Outcome.ABANDONED);
+    }
+
+    /** The cookie that the answer has to bring, or null when the client has it or is not held by one. */
+    @Nullable
+    String newCookie() {
+        Berths berths = pool.berths();
+        return berths != null && ask.held != backend ? berths.field(backend) : null;
     }
 
     /** Which attempt this is, from 1. */

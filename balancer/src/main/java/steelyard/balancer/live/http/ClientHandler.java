@@ -10,6 +10,7 @@ import io.netty.handler.codec.http.HttpUtil;
 import io.netty.util.ReferenceCountUtil;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Decider;
+import steelyard.balancer.live.guard.ClientKeys;
 
 /**
  * One client connection: takes its requests one after the other, and answers in their order.
@@ -28,6 +29,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     private final SentAhead ahead = new SentAhead();
     private @Nullable Exchange exchange;
     private int pinned = Decider.NOBODY;
+    private long clientKey;
     private boolean catchingUp;
 
     /** @param decoder what the requests of this connection come from */
@@ -51,6 +53,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     @Override
     public void channelActive(ChannelHandlerContext context) {
+        clientKey = ClientKeys.of(channel.remoteAddress());
         clock.idle();
     }
 
@@ -188,6 +191,11 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     }
 
     // ---- picking
+
+    /** What the client is known by. */
+    long clientKey() {
+        return clientKey;
+    }
 
     int pinned() {
         return pinned;

@@ -5,16 +5,18 @@ import io.netty.handler.codec.http.DefaultFullHttpRequest;
 import io.netty.handler.codec.http.DefaultLastHttpContent;
 import io.netty.handler.codec.http.EmptyHttpHeaders;
 import io.netty.handler.codec.http.HttpContent;
+import io.netty.handler.codec.http.HttpHeaderNames;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.LastHttpContent;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.live.guard.WaitingRoom;
 import steelyard.balancer.settings.RetrySettings;
 
 /** One request of a client and the attempts at it, one after the other. */
-final class Exchange {
+final class Exchange implements WaitingRoom.Waiter {
     private final ClientHandler client;
     private final PoolFront pool;
     private final LoopConnections connections;
@@ -27,6 +29,9 @@ final class Exchange {
     private @Nullable BackendConnection connection;
     private boolean connected;
     private boolean headSent;
+
+    /** What the client gets when a try waits in vain. */
+    private OwnAnswer otherwise = OwnAnswer.NOBODY;
 
     /**
      * @param head prepared for the backend
@@ -48,7 +53,7 @@ final class Exchange {
         if (number < 0) { // of our own; one that was given stands there already
             head.headers().set(Fields.REQUEST, Long.toString(number));
         }
-        this.attempts = new Attempts(pool, head.method(), number);
+        this.attempts = new Attempts(pool, head, number, connections.room(), client.clientKey());
         this.answer = new AnswerPath(pool, client.output(), head.method(), oldClient);
         this.keepClient = keepClient && !oldClient;
     }
@@ -57,12 +62,42 @@ final class Exchange {
 
     /** Makes the first attempt. */
     void begin() {
-        int backend = attempts.pick(client.pinned());
+        int backend = attempts.pick(client.pinned(), this);
         if (backend == Decider.NOBODY) {
             client.answer(OwnAnswer.NOBODY);
-        } else {
+        } else if (backend != Decider.WAITING) {
             client.pin(backend);
             attempt();
+        }
+    }
+
+    /** The try that waited has its answer. */
+    @Override
+    public void placed(int backend) {
+        if (backend == Decider.NOBODY) {
+            giveUp();
+        } else {
+            if (attempts.attempt() == 1) {
+                client.pin(backend);
+            }
+            resume();
+        }
+    }
+
+    private void giveUp() {
+        if (answer.holds()) {
+            passHeld();
+        } else {
+            client.answer(otherwise);
+        }
+    }
+
+    private void resume() {
+        answer.drop();
+        attempt();
+        if (connected) {
+            flushRequest();
+            client.updateReading();
         }
     }
 
@@ -123,7 +158,7 @@ final class Exchange {
             return;
         }
         answer.drop();
-        if (!mayRetry(outcome) || !again()) {
+        if (!mayRetry(outcome) || !again(own)) {
             client.answer(own);
         }
     }
@@ -132,16 +167,20 @@ final class Exchange {
         return attempts.mayRetry(outcome, headSent, body.replayable());
     }
 
-    private boolean again() {
-        if (!attempts.pickAnother()) {
-            return false;
+    /**
+     * Makes another attempt, now or once a place is free.
+     *
+     * @param own what the client gets if none becomes free
+     * @return false when there is no other backend
+     */
+    private boolean again(OwnAnswer own) {
+        int backend = attempts.pickAnother(this);
+        if (backend == Decider.WAITING) {
+            otherwise = own;
+        } else if (backend != Decider.NOBODY) {
+            resume();
         }
-        attempt();
-        if (connected) {
-            flushRequest();
-            client.updateReading();
-        }
-        return true;
+        return backend != Decider.NOBODY;
     }
 
     // ---- from the client
@@ -192,7 +231,7 @@ final class Exchange {
         if (left != null) {
             left.abandon();
         }
-        attempts.ended(Outcome.ABANDONED);
+        attempts.abandon();
         drop();
     }
 
@@ -231,6 +270,10 @@ final class Exchange {
     void answerHead(HttpResponse response) {
         int status = response.status().code();
         attempts.status(status);
+        String cookie = attempts.newCookie();
+        if (cookie != null) {
+            response.headers().add(HttpHeaderNames.SET_COOKIE, cookie);
+        }
         RetrySettings retry = pool.settings().retry();
         if (retry != null && retry.also().contains(status) && attempts.attempt() <= retry.atMost()) {
             answer.hold(response);
@@ -263,10 +306,13 @@ final class Exchange {
     void settled() {
         connection = null;
         connected = false;
-        if (answer.holds() && mayRetry(Outcome.ANSWERED) && again()) {
-            answer.drop();
+        if (answer.holds() && mayRetry(Outcome.ANSWERED) && again(OwnAnswer.NOBODY)) {
             return;
         }
+        passHeld();
+    }
+
+    private void passHeld() {
         if (answer.holds()) {
             answer.release(closesClient());
         }

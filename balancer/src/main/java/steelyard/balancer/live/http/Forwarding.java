@@ -10,6 +10,7 @@ import io.netty.util.concurrent.GlobalEventExecutor;
 import java.io.IOException;
 import java.net.InetAddress;
 import java.net.InetSocketAddress;
+import java.security.SecureRandom;
 import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
@@ -24,14 +25,17 @@ import steelyard.balancer.live.tcp.Transport;
 import steelyard.balancer.live.tls.BackendTls;
 import steelyard.balancer.live.tls.FrontTls;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.PoolSettings;
 
 /** The fronts of all pools and the connections behind them. Methods may be called from any thread but a loop's own. */
 public final class Forwarding {
+    private static final int SECRET_BYTES = 32;
+
     private final BalancerSettings settings;
     private final GuardedDecider decider;
     private final Transport transport;
     private final RequestNumbers numbers;
-    private final WaitingRooms rooms;
+    private final byte[] secret = new byte[SECRET_BYTES];
     private final List<Channel> fronts = new ArrayList<>();
     private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
     private final Map<EventLoop, LoopConnections> connections = new HashMap<>();
@@ -52,10 +56,12 @@ public final class Forwarding {
         this.settings = settings;
         this.decider = decider;
         this.transport = transport;
-        this.rooms = rooms;
+        new SecureRandom().nextBytes(secret);
         this.numbers = new RequestNumbers(own);
         for (EventLoop loop : transport.loops()) {
-            connections.put(loop, new LoopConnections(transport.client(loop), settings.pools(), addresses, tls));
+            connections.put(
+                    loop,
+                    new LoopConnections(transport.client(loop), rooms.of(loop), settings.pools(), addresses, tls));
         }
     }
 
@@ -67,7 +73,9 @@ public final class Forwarding {
      * @throws IOException when the port cannot be had
      */
     public InetSocketAddress bind(int pool, @Nullable FrontTls tls, int port) throws IOException {
-        PoolFront front = PoolFront.of(pool, settings.pools().get(pool), decider, numbers, settings.name());
+        PoolSettings of = settings.pools().get(pool);
+        PoolFront front = PoolFront.of(pool, of, decider, numbers, settings.name())
+                .with(Berths.of(of, settings.firstBackend(pool), secret));
         var binding = transport
                 .server()
                 .option(ChannelOption.AUTO_READ, false)

@@ -12,6 +12,7 @@ import java.util.concurrent.TimeUnit;
 import java.util.function.IntFunction;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.live.guard.WaitingRoom;
 import steelyard.balancer.live.tls.BackendTls;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.TimeoutSettings;
@@ -19,23 +20,32 @@ import steelyard.balancer.settings.TimeoutSettings;
 /** The connections of one event loop to all backends; idle ones are taken again last used first. Used on its loop only. */
 final class LoopConnections {
     private final List<Lane> lanes = new ArrayList<>();
+    private final WaitingRoom room;
 
     /**
      * @param client makes channels on this loop
+     * @param room of this loop
      * @param addresses by backend number
      * @param tls by pool number; null for a pool without it
      */
     LoopConnections(
             Bootstrap client,
+            WaitingRoom room,
             List<PoolSettings> pools,
             List<InetSocketAddress> addresses,
             IntFunction<@Nullable BackendTls> tls) {
+        this.room = room;
         for (int pool = 0; pool < pools.size(); pool++) {
             PoolSettings of = pools.get(pool);
             for (int member = 0; member < of.backends().size(); member++) {
                 lanes.add(new Lane(client, addresses.get(lanes.size()), of.timeouts(), tls.apply(pool)));
             }
         }
+    }
+
+    /** Where tries of this loop wait for a place. */
+    WaitingRoom room() {
+        return room;
     }
 
     /** An idle connection that is still open, or null. */

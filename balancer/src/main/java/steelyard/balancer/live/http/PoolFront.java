@@ -1,6 +1,7 @@
 package steelyard.balancer.live.http;
 
 import io.netty.util.AsciiString;
+import org.jspecify.annotations.Nullable;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.settings.PoolSettings;
 
@@ -9,6 +10,7 @@ import steelyard.balancer.settings.PoolSettings;
  *
  * @param number of the pool
  * @param balancer the pseudonym in Via and Proxy-Status
+ * @param berths null for a pool that holds nobody by cookie
  */
 record PoolFront(
         int number,
@@ -18,7 +20,8 @@ record PoolFront(
         String balancer,
         AsciiString via11,
         AsciiString via10,
-        HiddenNames hiddenNames) {
+        HiddenNames hiddenNames,
+        @Nullable Berths berths) {
 
     static PoolFront of(
             int number, PoolSettings settings, GuardedDecider decider, RequestNumbers numbers, String balancer) {
@@ -30,7 +33,12 @@ record PoolFront(
                 balancer,
                 AsciiString.cached("1.1 " + balancer),
                 AsciiString.cached("1.0 " + balancer),
-                new HiddenNames());
+                new HiddenNames(),
+                null);
+    }
+
+    PoolFront with(@Nullable Berths set) {
+        return new PoolFront(number, settings, decider, numbers, balancer, via11, via10, hiddenNames, set);
     }
 
     boolean pins() {

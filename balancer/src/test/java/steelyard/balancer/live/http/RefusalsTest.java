@@ -17,6 +17,7 @@ import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.live.Leaks;
 import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.live.guard.WaitingRoom;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.HostSettings;
@@ -76,8 +77,8 @@ class RefusalsTest {
         PoolFront front = PoolFront.of(0, POOL, decider, new RequestNumbers(new AtomicLong()), "steelyard");
         EmbeddedChannel channel = new EmbeddedChannel();
         ClientEncoder encoder = new ClientEncoder();
-        LoopConnections none =
-                new LoopConnections(new io.netty.bootstrap.Bootstrap(), List.of(), List.of(), pool -> null);
+        LoopConnections none = new LoopConnections(
+                new io.netty.bootstrap.Bootstrap(), new WaitingRoom(0, 1), List.of(), List.of(), pool -> null);
         RequestDecoder decoder = Codecs.requests(POOL.limits());
         channel.pipeline().addLast(decoder, encoder, new ClientHandler(front, none, decoder, encoder, channel));
         return channel;

@@ -44,7 +44,7 @@ final class BalancerAccount implements DecisionSink {
     @Override
     public void ended(
             long nowNanos, int backend, long request, int attempt, Outcome outcome, int status, int inFlight) {
-        if (outcome == Outcome.CUT || outcome == Outcome.STALLED) {
+        if (request >= 0 && (outcome == Outcome.CUT || outcome == Outcome.STALLED)) {
             brokenOff.put(request, outcome);
         }
         tell(nowNanos, (to, at) -> to.attemptEnded(at, backend, request, attempt, outcome, status, inFlight));

@@ -1,12 +1,35 @@
 package steelyard.harness.stage.live;
 
+import java.net.InetSocketAddress;
 import java.util.ArrayDeque;
 import java.util.Iterator;
 import org.jspecify.annotations.Nullable;
 
 /** One client of a stream: the connections that it holds idle, the last used first. Lives on the generator's loop. */
 final class Client {
+    private final int numberInStream;
+    private final @Nullable InetSocketAddress from;
+    private final ClientCookies cookies = new ClientCookies();
     private final ArrayDeque<ClientConnection> idle = new ArrayDeque<>();
+
+    /** @param from where it connects from; null for wherever the system chooses */
+    Client(int numberInStream, @Nullable InetSocketAddress from) {
+        this.numberInStream = numberInStream;
+        this.from = from;
+    }
+
+    int numberInStream() {
+        return numberInStream;
+    }
+
+    @Nullable
+    InetSocketAddress from() {
+        return from;
+    }
+
+    ClientCookies cookies() {
+        return cookies;
+    }
 
     /** The idle connection that was used last, or null. It is no longer idle then. */
     @Nullable

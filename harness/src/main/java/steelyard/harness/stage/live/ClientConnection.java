@@ -3,11 +3,13 @@ package steelyard.harness.stage.live;
 import io.netty.channel.Channel;
 import io.netty.channel.ChannelHandlerContext;
 import io.netty.channel.ChannelInboundHandlerAdapter;
+import io.netty.channel.socket.DuplexChannel;
 import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.HttpStatusClass;
 import io.netty.handler.codec.http.HttpUtil;
 import io.netty.handler.codec.http.LastHttpContent;
+import io.netty.handler.ssl.SslHandler;
 import io.netty.util.ReferenceCountUtil;
 import org.jspecify.annotations.Nullable;
 
@@ -18,6 +20,7 @@ import org.jspecify.annotations.Nullable;
  */
 final class ClientConnection extends ChannelInboundHandlerAdapter {
     private static final String PROXY_STATUS = "Proxy-Status";
+    private static final int SWITCHING = 101;
 
     /** What a connection tells its client. */
     interface Owner {
@@ -26,6 +29,12 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
 
         /** The connection closed before the whole answer was there. {@code status} is 0 if not even its head was. */
         void brokeOff(ClientConnection connection, Exchange exchange, int status);
+
+        /** The connection has become a tunnel, which is now the exchange's. */
+        void upgraded(ClientConnection connection, Exchange exchange);
+
+        /** A tunnel is closed; {@code orderly} when this end had said first that nothing more comes. */
+        void tunnelEnded(ClientConnection connection, Exchange exchange, boolean orderly);
 
         /** The connection is closed. */
         void closed(ClientConnection connection);
@@ -36,6 +45,8 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
     private final Channel channel;
     private @Nullable Exchange exchange;
     private @Nullable HttpResponse head;
+    private boolean tunnel;
+    private boolean finished;
     private long idleSinceNanos;
 
     ClientConnection(Owner owner, Client client, Channel channel) {
@@ -53,6 +64,25 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
         exchange = next;
         head = null;
         channel.writeAndFlush(message, channel.voidPromise());
+    }
+
+    /** Says through a tunnel that nothing more comes, and waits for the other end to say so too. */
+    void finish() {
+        finished = true;
+        SslHandler tls = channel.pipeline().get(SslHandler.class);
+        if (tls == null) {
+            shutDown();
+        } else {
+            tls.closeOutbound().addListener(said -> shutDown());
+        }
+    }
+
+    private void shutDown() {
+        if (channel instanceof DuplexChannel duplex) {
+            duplex.shutdownOutput();
+        } else {
+            channel.close();
+        }
     }
 
     boolean usable() {
@@ -80,7 +110,9 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
     @Override
     public void channelRead(ChannelHandlerContext context, Object message) {
         try {
-            read((HttpObject) message);
+            if (!tunnel) { // what comes through a tunnel is thrown away
+                read((HttpObject) message);
+            }
         } finally {
             ReferenceCountUtil.release(message);
         }
@@ -103,7 +135,16 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
     private void complete() {
         HttpResponse answer = head;
         Exchange done = exchange;
-        if (answer == null || done == null || answer.status().codeClass() == HttpStatusClass.INFORMATIONAL) {
+        if (answer == null || done == null) {
+            return;
+        }
+        client.cookies().take(answer.headers());
+        if (answer.status().code() == SWITCHING && done.asks.upgrade() != null) {
+            tunnel = true;
+            owner.upgraded(this, done);
+            return;
+        }
+        if (answer.status().codeClass() == HttpStatusClass.INFORMATIONAL) {
             return;
         }
         exchange = null;
@@ -117,7 +158,9 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
     public void channelInactive(ChannelHandlerContext context) {
         Exchange open = exchange;
         exchange = null;
-        if (open != null) {
+        if (open != null && tunnel) {
+            owner.tunnelEnded(this, open, finished);
+        } else if (open != null) {
             owner.brokeOff(this, open, head == null ? 0 : head.status().code());
         }
         owner.closed(this);
@@ -126,6 +169,7 @@ final class ClientConnection extends ChannelInboundHandlerAdapter {
     @Override
     public void exceptionCaught(ChannelHandlerContext context, Throwable cause) {
         // A reset, most likely. The request learns of it when the channel becomes inactive.
+        finished = false;
         channel.close();
     }
 }

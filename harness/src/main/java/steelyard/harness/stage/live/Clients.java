@@ -1,45 +1,52 @@
 package steelyard.harness.stage.live;
 
 import io.netty.handler.codec.http.FullHttpRequest;
-import java.net.InetSocketAddress;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Traffic;
+import steelyard.harness.stage.Clientele;
 
 /** The clients of one traffic stream, and what they send. Lives on the generator's loop. */
 final class Clients {
     private static final long LONGEST_IDLE_NANOS = TimeUnit.SECONDS.toNanos(30);
 
     private final Traffic traffic;
-    private final InetSocketAddress front;
+    private final int stream;
+    private final Way way;
+    private final Clientele clientele;
+    private final ClientAddresses addresses;
     private final RequestMaker maker;
     private final @Nullable Client[] byNumber;
     private final List<Client> seen = new ArrayList<>();
     private final long idleNanos;
 
     /**
-     * @param front where they connect to
-     * @param idleLimitNanos after how long the balancer closes an idle connection; clients close theirs in half of that,
-     *     so that it never closes one just as it is taken up again
+     * Clients close idle connections in half of the time in which the balancer would, so that it never closes one just as
+     * it is taken up again.
+     *
+     * @param stream the number of the traffic
      */
-    Clients(Traffic traffic, InetSocketAddress front, long idleLimitNanos) {
+    Clients(Clientele clientele, int stream, Traffic traffic, Way way, ClientAddresses addresses) {
+        this.clientele = clientele;
+        this.stream = stream;
         this.traffic = traffic;
-        this.front = front;
-        this.maker = new RequestMaker(traffic, front.getAddress().getHostAddress() + ":" + front.getPort());
+        this.way = way;
+        this.addresses = addresses;
+        this.maker = new RequestMaker(clientele, stream, traffic, way.authority());
         this.byNumber = new Client[traffic.clients()];
-        this.idleNanos = Math.min(LONGEST_IDLE_NANOS, idleLimitNanos / 2);
+        this.idleNanos = Math.min(LONGEST_IDLE_NANOS, way.idleLimitNanos() / 2);
     }
 
-    InetSocketAddress front() {
-        return front;
+    Way way() {
+        return way;
     }
 
     Client client(int number) {
         Client client = byNumber[number];
         if (client == null) {
-            client = new Client();
+            client = new Client(number, addresses.of(clientele.number(stream, number)));
             byNumber[number] = client;
             seen.add(client);
         }
@@ -50,12 +57,13 @@ final class Clients {
         return new Exchange(request, dueNanos, stream, kind, traffic.requests().get(kind), traffic.giveUpNanos());
     }
 
-    FullHttpRequest message(Exchange exchange) {
-        return maker.make(exchange.request, exchange.kind);
+    FullHttpRequest message(Exchange exchange, Client client) {
+        return maker.make(exchange.request, exchange.kind, client);
     }
 
-    /** Closes connections that were idle for long enough by {@code nowNanos}. */
+    /** Closes connections that were idle for long enough by {@code nowNanos}; all of them at {@link Long#MAX_VALUE}. */
     void closeIdle(long nowNanos) {
-        seen.forEach(client -> client.closeIdle(nowNanos - idleNanos));
+        long since = nowNanos == Long.MAX_VALUE ? Long.MAX_VALUE : nowNanos - idleNanos;
+        seen.forEach(client -> client.closeIdle(since));
     }
 }

@@ -15,6 +15,7 @@ final class Exchange {
 
     private boolean ended;
     private @Nullable ClientConnection connection;
+    private boolean tunnel;
 
     Exchange(long request, long dueNanos, int traffic, int kind, Request asks, long giveUpNanos) {
         this.request = request;
@@ -34,6 +35,15 @@ final class Exchange {
         boolean first = !ended;
         ended = true;
         return first;
+    }
+
+    /** Whether its connection has become a tunnel: its client no longer gives up then. */
+    boolean tunnel() {
+        return tunnel;
+    }
+
+    void tunnelOpened() {
+        tunnel = true;
     }
 
     /** The connection that carries it, once it was sent. */

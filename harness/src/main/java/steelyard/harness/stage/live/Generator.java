@@ -13,14 +13,16 @@ import io.netty.channel.socket.SocketChannel;
 import io.netty.channel.socket.nio.NioSocketChannel;
 import io.netty.handler.codec.http.HttpClientCodec;
 import io.netty.util.concurrent.Future;
-import java.net.InetSocketAddress;
+import java.util.HashSet;
 import java.util.List;
+import java.util.Set;
 import java.util.concurrent.TimeUnit;
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.stub.Transport;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.drills.model.Cause;
 import steelyard.drills.model.Traffic;
+import steelyard.harness.stage.Clientele;
 
 /**
  * The open-loop side of a play: sends each request when it is told to, whatever is still open, and tells what becomes of
@@ -33,6 +35,7 @@ import steelyard.drills.model.Traffic;
  * <p>Lives on one event loop; everything but the constructor is called there.
  */
 final class Generator implements ClientConnection.Owner {
+    private static final int SWITCHING = 101;
     private static final long SWEEP_NANOS = TimeUnit.MILLISECONDS.toNanos(250);
 
     private final EventLoop loop;
@@ -43,6 +46,7 @@ final class Generator implements ClientConnection.Owner {
     private final Clients[] streams;
     private final GiveUps giveUps;
     private final ChannelGroup channels;
+    private final Set<Exchange> tunnels = new HashSet<>();
     private final int mostConnections;
     private int connections;
     private int open;
@@ -56,9 +60,8 @@ final class Generator implements ClientConnection.Owner {
     }
 
     /**
-     * @param fronts where each traffic stream goes, by its number
+     * @param ways where each traffic stream goes, by its number
      * @param mostConnections of all clients together
-     * @param idleLimitNanos after how long the balancer closes an idle connection of each stream
      * @param brokenOff asked about every request that has ended
      */
     Generator(
@@ -67,9 +70,9 @@ final class Generator implements ClientConnection.Owner {
             PlayClock clock,
             Account account,
             List<Traffic> traffic,
-            List<InetSocketAddress> fronts,
+            List<Way> ways,
+            ClientAddresses addresses,
             int mostConnections,
-            List<Long> idleLimitNanos,
             BrokenOff brokenOff) {
         this.loop = loop;
         this.clock = clock;
@@ -79,8 +82,9 @@ final class Generator implements ClientConnection.Owner {
         this.giveUps = new GiveUps(traffic.size());
         this.channels = new DefaultChannelGroup(loop);
         this.streams = new Clients[traffic.size()];
+        Clientele clientele = new Clientele(traffic);
         for (int i = 0; i < streams.length; i++) {
-            streams[i] = new Clients(traffic.get(i), fronts.get(i), idleLimitNanos.get(i));
+            streams[i] = new Clients(clientele, i, traffic.get(i), ways.get(i), addresses);
         }
         this.bootstrap = new Bootstrap()
                 .group(loop)
@@ -107,6 +111,7 @@ final class Generator implements ClientConnection.Owner {
     /** Drops every open request without telling of an end: what an interruption cuts off has not failed. */
     void drop() {
         giveUps.expire(Long.MAX_VALUE, this::drop);
+        List.copyOf(tunnels).forEach(this::drop);
     }
 
     /** Sends a request; parameters as of {@link steelyard.harness.stage.Hands#send}. */
@@ -121,14 +126,14 @@ final class Generator implements ClientConnection.Owner {
         if (idle != null) {
             send(exchange, idle);
         } else if (connections < mostConnections) {
-            connect(exchange, sender, stream.front());
+            connect(exchange, sender, stream.way());
         } else {
             account.tell(Account.Source.TRAFFIC, clock.playNow(), (to, at) -> to.connectionCapHit(at));
             end(exchange, Cause.GAVE_UP, 0);
         }
     }
 
-    private void connect(Exchange exchange, Client sender, InetSocketAddress front) {
+    private void connect(Exchange exchange, Client sender, Way way) {
         connections++;
         ChannelFuture connecting = bootstrap
                 .clone()
@@ -138,9 +143,10 @@ final class Generator implements ClientConnection.Owner {
                         channels.add(channel);
                         channel.pipeline().addLast(new HttpClientCodec());
                         channel.pipeline().addLast(new ClientConnection(Generator.this, sender, channel));
+                        way.secure(channel);
                     }
                 })
-                .connect(front);
+                .connect(way.front(), sender.from());
         Channel channel = connecting.channel();
         channel.closeFuture().addListener(closed -> connections--);
         connecting.addListener(done -> {
@@ -162,10 +168,13 @@ final class Generator implements ClientConnection.Owner {
                 Account.Source.TRAFFIC,
                 clock.playNow(),
                 (to, at) -> to.requestSent(at, exchange.request, exchange.dueNanos));
-        connection.send(exchange, streams[exchange.traffic].message(exchange));
+        connection.send(exchange, streams[exchange.traffic].message(exchange, connection.client()));
     }
 
     private void giveUp(Exchange exchange) {
+        if (exchange.tunnel()) {
+            return;
+        }
         end(exchange, Cause.GAVE_UP, 0);
         leave(exchange);
     }
@@ -173,6 +182,7 @@ final class Generator implements ClientConnection.Owner {
     private void drop(Exchange exchange) {
         if (exchange.end()) {
             open--;
+            tunnels.remove(exchange);
             leave(exchange);
         }
     }
@@ -194,6 +204,43 @@ final class Generator implements ClientConnection.Owner {
     @Override
     public void brokeOff(ClientConnection connection, Exchange exchange, int status) {
         end(exchange, Answer.cutShort(brokenOff.take(exchange.request)), status);
+    }
+
+    @Override
+    public void upgraded(ClientConnection connection, Exchange exchange) {
+        exchange.tunnelOpened();
+        tunnels.add(exchange);
+        loop.schedule(() -> finish(connection, exchange), exchange.asks.openNanos(), TimeUnit.NANOSECONDS);
+    }
+
+    /** The other end gets as long as an answer to close its side too. */
+    private void finish(ClientConnection connection, Exchange exchange) {
+        if (!exchange.hasEnded()) {
+            connection.finish();
+            long patience = exchange.deadlineNanos - exchange.dueNanos;
+            loop.schedule(() -> tooLong(exchange), patience, TimeUnit.NANOSECONDS);
+        }
+    }
+
+    private void tooLong(Exchange exchange) {
+        if (!exchange.hasEnded()) {
+            tunnels.remove(exchange);
+            end(exchange, Cause.GAVE_UP, SWITCHING);
+            leave(exchange);
+        }
+    }
+
+    @Override
+    public void tunnelEnded(ClientConnection connection, Exchange exchange, boolean orderly) {
+        tunnels.remove(exchange);
+        end(exchange, orderly ? null : Answer.cutShort(brokenOff.take(exchange.request)), SWITCHING);
+    }
+
+    /** Closes what is idle, and by that ends the units of work that are connections. */
+    void closeIdle() {
+        for (Clients stream : streams) {
+            stream.closeIdle(Long.MAX_VALUE);
+        }
     }
 
     @Override

@@ -59,6 +59,7 @@ public final class LiveStage implements Stage {
     private @Nullable Balancer balancer;
     private @Nullable EventLoopGroup loops;
     private @Nullable Generator generator;
+    private @Nullable ClientAddresses addresses;
 
     /** @param seed of every draw of balancer and backends; the agenda should be of the same */
     public LiveStage(Drill drill, long seed) {
@@ -73,6 +74,7 @@ public final class LiveStage implements Stage {
             throw new IllegalStateException("a stage is opened once");
         }
         refuseTooMuch();
+        addresses = ClientAddresses.of(drill);
         Account told = new Account(listener, clock::playNow, this::failed);
         account = told;
         decisions = new BalancerAccount(told, clock);
@@ -107,7 +109,16 @@ public final class LiveStage implements Stage {
             ports[pool] = asked == 0 ? Ports.ofThisProcess().next() : asked;
         }
         Chance chance = new Chance(seed);
-        return Balancer.start(settings, fleet::address, pool -> ports[pool], clock::nanos, Draws.of(chance), sink);
+        return Balancer.start(
+                settings, new FleetAddresses(fleet), pool -> ports[pool], clock::nanos, Draws.of(chance), sink);
+    }
+
+    /**
+     * Whether each client connects from an address of its own, as the drill's clients do; where the system has but one
+     * they all come from 127.0.0.1. Only while the stage is open.
+     */
+    public boolean clientsHaveAddresses() {
+        return opened(addresses).own();
     }
 
     /** Where the front of a pool listens, by the pool's number. Only while the stage is open. */
@@ -157,6 +168,7 @@ public final class LiveStage implements Stage {
             balancing.begin(clock.begin(LEAD_NANOS));
             sampler.start();
             complete = await(playing.start());
+            loop.submit(sending::closeIdle).awaitUninterruptibly();
             settle(balancing);
         } finally {
             sampler.stop();
@@ -166,11 +178,13 @@ public final class LiveStage implements Stage {
 
     private Generator generator(EventLoop loop) {
         Balancer balancing = opened(balancer);
-        List<InetSocketAddress> fronts = new ArrayList<>();
-        List<Long> idleLimits = new ArrayList<>();
+        List<Way> ways = new ArrayList<>();
         for (Traffic each : drill.traffic()) {
-            fronts.add(balancing.frontAddress(cast.poolNumber(each.pool())));
-            idleLimits.add(drill.stage().pool(each.pool()).timeouts().idleNanos());
+            int pool = cast.poolNumber(each.pool());
+            ways.add(Way.to(
+                    balancing.frontAddress(pool),
+                    drill.stage().pool(each.pool()).timeouts().idleNanos(),
+                    balancing.frontCertificate(pool)));
         }
         return new Generator(
                 loop,
@@ -178,9 +192,9 @@ public final class LiveStage implements Stage {
                 clock,
                 opened(account),
                 drill.traffic(),
-                fronts,
+                ways,
+                opened(addresses),
                 drill.stage().connections(),
-                idleLimits,
                 opened(decisions)::takeBrokenOff);
     }
 

@@ -8,6 +8,9 @@ import java.util.concurrent.TimeUnit;
 import steelyard.backends.behave.Change;
 import steelyard.backends.fleet.Fleet;
 import steelyard.balancer.live.Balancer;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 import steelyard.drills.model.Cue;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.Agenda;
@@ -167,6 +170,24 @@ final class Play implements Hands {
     public void reweighHost(int host, int weight) {
         noteCue();
         balancer.reweighHost(host, weight);
+    }
+
+    @Override
+    public void retune(int pool, ProbeSettings probe) {
+        noteCue();
+        balancer.retune(pool, probe);
+    }
+
+    @Override
+    public void retune(int pool, DrainSettings drain) {
+        noteCue();
+        balancer.retune(pool, drain);
+    }
+
+    @Override
+    public void retune(int pool, PoolSettings.Method method) {
+        noteCue();
+        balancer.retune(pool, method);
     }
 
     /**

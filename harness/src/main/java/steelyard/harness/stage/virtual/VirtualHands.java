@@ -2,6 +2,9 @@ package steelyard.harness.stage.virtual;
 
 import steelyard.backends.behave.Change;
 import steelyard.balancer.core.decide.Decider;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 import steelyard.drills.model.Cue;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.Hands;
@@ -60,6 +63,21 @@ final class VirtualHands implements Hands {
     @Override
     public void reweighHost(int host, int weight) {
         decider.reweighHost(host, weight, nowNanos);
+    }
+
+    @Override
+    public void retune(int pool, ProbeSettings probe) {
+        decider.retune(pool, probe, nowNanos);
+    }
+
+    @Override
+    public void retune(int pool, DrainSettings drain) {
+        decider.retune(pool, drain, nowNanos);
+    }
+
+    @Override
+    public void retune(int pool, PoolSettings.Method method) {
+        decider.retune(pool, method, nowNanos);
     }
 
     @Override

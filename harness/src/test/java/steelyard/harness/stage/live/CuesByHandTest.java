@@ -9,6 +9,9 @@ import org.junit.jupiter.api.Test;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.behave.Change;
 import steelyard.balancer.live.control.CueTaker;
+import steelyard.balancer.settings.DrainSettings;
+import steelyard.balancer.settings.PoolSettings;
+import steelyard.balancer.settings.ProbeSettings;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
 import steelyard.drills.read.DrillReader;
@@ -59,6 +62,15 @@ class CuesByHandTest {
 
         @Override
         public void reweighHost(int host, int weight) {}
+
+        @Override
+        public void retune(int pool, ProbeSettings probe) {}
+
+        @Override
+        public void retune(int pool, DrainSettings drain) {}
+
+        @Override
+        public void retune(int pool, PoolSettings.Method method) {}
 
         @Override
         public void applied(long dueNanos, Cue cue, PlayListener.By by) {

@@ -1,0 +1,154 @@
+package steelyard.balancer.live;
+
+import static org.assertj.core.api.Assertions.assertThat;
+import static org.awaitility.Awaitility.await;
+
+import java.io.IOException;
+import java.util.concurrent.CountDownLatch;
+import org.junit.jupiter.api.Test;
+import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.settings.InFlightSettings;
+
+/** Requests and connections that wait for a place on a backend. */
+class WaitingTest {
+    private static final String REQUEST = "GET / HTTP/1.1\r\nHost: quay\r\n\r\n";
+    private static final String ANSWER = "HTTP/1.1 200 OK\r\nContent-Length: 4\r\n\r\ntern";
+
+    private static Pool oneAtATime(Pool pool, int waiting, double seconds) {
+        InFlightSettings settings = new InFlightSettings(1, waiting, (long) (seconds * LivePlay.SECOND));
+        return pool.with(builder -> builder.inFlight(settings));
+    }
+
+    /** Answers once it may. */
+    private static FakeBackend held(CountDownLatch may) throws IOException {
+        return FakeBackend.playing(wire -> {
+            while (wire.readHead() != null) {
+                try {
+                    may.await();
+                } catch (InterruptedException e) {
+                    Thread.currentThread().interrupt();
+                }
+                wire.send(ANSWER);
+            }
+        });
+    }
+
+    @Test
+    void request_thatWaited_isServedWhenAPlaceIsFree() throws Exception {
+        CountDownLatch may = new CountDownLatch(1);
+        try (FakeBackend backend = held(may);
+                LivePlay play = LivePlay.of(pool -> oneAtATime(pool, 5, 20), backend.address());
+                Wire first = play.client();
+                Wire second = play.client()) {
+            first.send(REQUEST);
+            await().until(() -> play.inFlight() == 1);
+            second.send(REQUEST);
+            await().until(() -> play.decisions.waited() == 1);
+            may.countDown();
+            assertThat(first.readAnswer()).endsWith("tern");
+            assertThat(second.readAnswer()).endsWith("tern");
+            play.settle();
+            assertThat(play.decisions.outcomes()).containsExactly(Outcome.ANSWERED, Outcome.ANSWERED);
+        }
+    }
+
+    @Test
+    void request_thatWaitsTooLong_gets503() throws Exception {
+        CountDownLatch may = new CountDownLatch(1);
+        try (FakeBackend backend = held(may);
+                LivePlay play = LivePlay.of(pool -> oneAtATime(pool, 5, 0.2), backend.address());
+                Wire first = play.client();
+                Wire second = play.client()) {
+            first.send(REQUEST);
+            await().until(() -> play.inFlight() == 1);
+            second.send(REQUEST);
+            assertThat(second.readAnswer())
+                    .contains("503")
+                    .contains("error=destination_unavailable")
+                    .contains("retry-after");
+            may.countDown();
+            assertThat(first.readAnswer()).endsWith("tern");
+            second.send(REQUEST);
+            assertThat(second.readAnswer()).endsWith("tern");
+        }
+    }
+
+    @Test
+    void request_beyondTheRoom_gets503AtOnce() throws Exception {
+        CountDownLatch may = new CountDownLatch(1);
+        try (FakeBackend backend = held(may);
+                LivePlay play = LivePlay.of(pool -> oneAtATime(pool, 0, 20), backend.address());
+                Wire first = play.client();
+                Wire second = play.client()) {
+            first.send(REQUEST);
+            await().until(() -> play.inFlight() == 1);
+            second.send(REQUEST);
+            assertThat(second.readAnswer()).contains("503");
+            assertThat(play.decisions.waited()).isZero();
+            may.countDown();
+            first.readAnswer();
+        }
+    }
+
+    @Test
+    void client_thatLeavesWhileItWaits_losesItsTurn() throws Exception {
+        CountDownLatch may = new CountDownLatch(1);
+        try (FakeBackend backend = held(may);
+                LivePlay play = LivePlay.of(pool -> oneAtATime(pool, 1, 20), backend.address());
+                Wire first = play.client();
+                Wire third = play.client()) {
+            first.send(REQUEST);
+            await().until(() -> play.inFlight() == 1);
+            try (Wire second = play.client()) {
+                second.send(REQUEST);
+                await().until(() -> play.decisions.waited() == 1);
+            }
+            // There is room for one: the third can wait only once the second has left.
+            await().until(() -> {
+                third.send(REQUEST);
+                boolean waits = !third.answers(200);
+                if (!waits) {
+                    third.readAnswer();
+                }
+                return waits;
+            });
+            may.countDown();
+            assertThat(first.readAnswer()).endsWith("tern");
+            assertThat(third.readAnswer()).endsWith("tern");
+            play.settle();
+            assertThat(play.decisions.outcomes()).containsOnly(Outcome.ANSWERED);
+        }
+    }
+
+    @Test
+    void connection_thatWaited_isPassedOnWhenAPlaceIsFree() throws Exception {
+        try (FakeBackend backend = FakeBackend.playing(wire -> wire.send("got " + wire.readToEnd()));
+                LivePlay play = LivePlay.of(pool -> oneAtATime(pool.passing(), 5, 20), backend.address());
+                Wire first = play.client();
+                Wire second = play.client()) {
+            first.send("one");
+            await().until(() -> play.inFlight() == 1);
+            second.send("two");
+            second.finish();
+            await().until(() -> play.decisions.waited() == 1);
+            first.finish();
+            assertThat(first.readToEnd()).isEqualTo("got one");
+            assertThat(second.readToEnd()).isEqualTo("got two");
+        }
+    }
+
+    @Test
+    void connection_thatWaitsTooLong_isClosed() throws Exception {
+        try (FakeBackend backend = FakeBackend.playing(Wire::readToEnd);
+                LivePlay play = LivePlay.of(pool -> oneAtATime(pool.passing(), 5, 0.2), backend.address());
+                Wire first = play.client()) {
+            first.send("one");
+            await().until(() -> play.inFlight() == 1);
+            try (Wire second = play.client()) {
+                assertThat(second.readToEnd()).isEmpty();
+            }
+            first.finish();
+            first.readToEnd();
+        }
+    }
+}
