@@ -11,12 +11,14 @@ import org.junit.jupiter.params.provider.CsvSource;
 import org.junit.jupiter.params.provider.EnumSource;
 import steelyard.balancer.core.pick.Ramp;
 import steelyard.balancer.core.standing.Transition.Cause;
+import steelyard.balancer.settings.BenchSettings;
 import steelyard.balancer.settings.ProbeSettings;
 import steelyard.balancer.settings.WarmUpSettings;
 
 /** The standing machine: every shown state with every event, then what the ramp does. */
 class BackendStandingTest {
     private static final long ORIGIN = Long.MAX_VALUE - 500;
+    private static final BenchSettings BENCH = new BenchSettings(1, 0, 10, 1, 5_000, 5_000, 1, 1);
     private static final WarmUpSettings RAMP = new WarmUpSettings(1_000, 0.1);
 
     /** What can happen to a backend. PASS and MISS reach their limit at once. */
@@ -27,23 +29,30 @@ class BackendStandingTest {
         DRAIN,
         LIMIT,
         ADMIT,
-        WITHDRAW
+        WITHDRAW,
+        FAIL,
+        BENCH_OVER
     }
 
     /**
-     * The table: from a state, each event leads to the state named, or changes nothing (-). DRAINING and WITHDRAWN come
-     * in two kinds, since a backend that people took out still has its probes' verdict (d: down).
+     * The table: from a state, each event leads to the state named. DOWN, DRAINING and WITHDRAWN come in kinds, since a
+     * backend that people took out still has its probes' verdict (d: down), and any of them may be benched (b). One failure
+     * benches.
      */
     @ParameterizedTest
     @CsvSource({
-        // state      PASS       MISS       RAMP_FULL  DRAIN      LIMIT      ADMIT      WITHDRAW
-        "UP,          UP,        DOWN,      UP,        DRAINING,  UP,        UP,        WITHDRAWN",
-        "WARMING,     WARMING,   DOWN,      UP,        DRAINING,  WARMING,   WARMING,   WITHDRAWN",
-        "DOWN,        WARMING,   DOWN,      DOWN,      DRAINING,  DOWN,      DOWN,      WITHDRAWN",
-        "DRAINING,    DRAINING,  DRAINING,  DRAINING,  DRAINING,  DRAINING,  WARMING,   WITHDRAWN",
-        "DRAINING_d,  DRAINING,  DRAINING,  DRAINING,  DRAINING,  DRAINING,  DOWN,      WITHDRAWN",
-        "WITHDRAWN,   WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WARMING,   WITHDRAWN",
-        "WITHDRAWN_d, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, DOWN,      WITHDRAWN",
+        // state      PASS       MISS       RAMP_FULL  DRAIN     LIMIT      ADMIT      WITHDRAW   FAIL       BENCH_OVER
+        "UP,          UP,        DOWN,      UP,        DRAINING, UP,        UP,        WITHDRAWN, BENCHED,   UP",
+        "WARMING,     WARMING,   DOWN,      UP,        DRAINING, WARMING,   WARMING,   WITHDRAWN, BENCHED,   WARMING",
+        "BENCHED,     BENCHED,   DOWN,      BENCHED,   DRAINING, BENCHED,   BENCHED,   WITHDRAWN, BENCHED,   WARMING",
+        "DOWN,        WARMING,   DOWN,      DOWN,      DRAINING, DOWN,      DOWN,      WITHDRAWN, DOWN,      DOWN",
+        "DOWN_b,      BENCHED,   DOWN,      DOWN,      DRAINING, DOWN,      DOWN,      WITHDRAWN, DOWN,      DOWN",
+        "DRAINING,    DRAINING,  DRAINING,  DRAINING,  DRAINING, DRAINING,  WARMING,   WITHDRAWN, DRAINING,  DRAINING",
+        "DRAINING_b,  DRAINING,  DRAINING,  DRAINING,  DRAINING, DRAINING,  BENCHED,   WITHDRAWN, DRAINING,  DRAINING",
+        "DRAINING_d,  DRAINING,  DRAINING,  DRAINING,  DRAINING, DRAINING,  DOWN,      WITHDRAWN, DRAINING,  DRAINING",
+        "WITHDRAWN,   WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WARMING,  WITHDRAWN, WITHDRAWN, WITHDRAWN",
+        "WITHDRAWN_b, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, BENCHED,  WITHDRAWN, WITHDRAWN, WITHDRAWN",
+        "WITHDRAWN_d, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, WITHDRAWN, DOWN,     WITHDRAWN, WITHDRAWN, WITHDRAWN",
     })
     void event_inEveryState_leadsWhereTheTableSays(
             String state,
@@ -53,7 +62,9 @@ class BackendStandingTest {
             Standing drain,
             Standing limit,
             Standing admit,
-            Standing withdraw) {
+            Standing withdraw,
+            Standing fail,
+            Standing benchOver) {
         Map<Event, Standing> expected = new EnumMap<>(Event.class);
         expected.put(Event.PASS, pass);
         expected.put(Event.MISS, miss);
@@ -62,17 +73,19 @@ class BackendStandingTest {
         expected.put(Event.LIMIT, limit);
         expected.put(Event.ADMIT, admit);
         expected.put(Event.WITHDRAW, withdraw);
+        expected.put(Event.FAIL, fail);
+        expected.put(Event.BENCH_OVER, benchOver);
         for (Event event : Event.values()) {
-            Bench bench = new Bench();
-            bench.reach(state);
-            Standing from = bench.standing.shown();
-            @Nullable Transition change = bench.happen(event);
+            Rig rig = new Rig();
+            rig.reach(state);
+            Standing from = rig.standing.shown();
+            @Nullable Transition change = rig.happen(event);
 
-            assertThat(bench.standing.shown()).as("%s after %s", state, event).isEqualTo(expected.get(event));
+            assertThat(rig.standing.shown()).as("%s after %s", state, event).isEqualTo(expected.get(event));
             if (from == expected.get(event)) {
                 assertThat(change).as("%s after %s", state, event).isNull();
             } else {
-                assertThat(change).isEqualTo(new Transition(4, from, expected.get(event), cause(event), bench.now));
+                assertThat(change).isEqualTo(new Transition(4, from, expected.get(event), cause(event), rig.now));
             }
         }
     }
@@ -85,54 +98,54 @@ class BackendStandingTest {
 
     @Test
     void cuts_atTheLimit_saysSoOnce() {
-        Bench bench = new Bench();
-        bench.standing.drain(100, bench.now);
+        Rig rig = new Rig();
+        rig.standing.drain(100, rig.now);
 
-        assertThat(bench.standing.cuts(bench.now + 99)).isFalse();
-        assertThat(bench.standing.cuts(bench.now + 100)).isTrue();
-        assertThat(bench.standing.cuts(bench.now + 101)).isFalse();
+        assertThat(rig.standing.cuts(rig.now + 99)).isFalse();
+        assertThat(rig.standing.cuts(rig.now + 100)).isTrue();
+        assertThat(rig.standing.cuts(rig.now + 101)).isFalse();
     }
 
     @Test
     void cuts_drainOrderedAgain_countsFromTheNewOrder() {
-        Bench bench = new Bench();
-        bench.standing.drain(100, bench.now);
-        bench.standing.drain(100, bench.now + 60);
+        Rig rig = new Rig();
+        rig.standing.drain(100, rig.now);
+        rig.standing.drain(100, rig.now + 60);
 
-        assertThat(bench.standing.cuts(bench.now + 100)).isFalse();
-        assertThat(bench.standing.cuts(bench.now + 160)).isTrue();
+        assertThat(rig.standing.cuts(rig.now + 100)).isFalse();
+        assertThat(rig.standing.cuts(rig.now + 160)).isTrue();
     }
 
     @Test
     void cuts_admittedBeforeTheLimit_never() {
-        Bench bench = new Bench();
-        bench.standing.drain(100, bench.now);
-        bench.standing.admit(bench.now + 50);
+        Rig rig = new Rig();
+        rig.standing.drain(100, rig.now);
+        rig.standing.admit(rig.now + 50);
 
-        assertThat(bench.standing.cuts(bench.now + 100)).isFalse();
+        assertThat(rig.standing.cuts(rig.now + 100)).isFalse();
     }
 
     @Test
     void rampFraction_afterAReturn_isTheGreaterOfFloorAndTime() {
-        Bench bench = new Bench();
-        bench.standing.withdraw(bench.now);
-        bench.standing.admit(bench.now);
+        Rig rig = new Rig();
+        rig.standing.withdraw(rig.now);
+        rig.standing.admit(rig.now);
 
-        assertThat(bench.standing.rampFraction(bench.now)).isEqualTo(Ramp.FULL / 10);
-        assertThat(bench.standing.rampFraction(bench.now + 99)).isEqualTo(Ramp.FULL / 10);
-        assertThat(bench.standing.rampFraction(bench.now + 500)).isEqualTo(Ramp.FULL / 2);
-        assertThat(bench.standing.rampFraction(bench.now + 1_000)).isEqualTo(Ramp.FULL);
+        assertThat(rig.standing.rampFraction(rig.now)).isEqualTo(Ramp.FULL / 10);
+        assertThat(rig.standing.rampFraction(rig.now + 99)).isEqualTo(Ramp.FULL / 10);
+        assertThat(rig.standing.rampFraction(rig.now + 500)).isEqualTo(Ramp.FULL / 2);
+        assertThat(rig.standing.rampFraction(rig.now + 1_000)).isEqualTo(Ramp.FULL);
     }
 
     @Test
     void rampFraction_awayAgainDuringTheRamp_beginsAnew() {
-        Bench bench = new Bench();
-        bench.reach("WARMING");
-        bench.now += 700;
-        bench.happen(Event.MISS);
-        bench.happen(Event.PASS);
+        Rig rig = new Rig();
+        rig.reach("WARMING");
+        rig.now += 700;
+        rig.happen(Event.MISS);
+        rig.happen(Event.PASS);
 
-        assertThat(bench.standing.rampFraction(bench.now)).isEqualTo(Ramp.FULL / 10);
+        assertThat(rig.standing.rampFraction(rig.now)).isEqualTo(Ramp.FULL / 10);
     }
 
     @Test
@@ -153,18 +166,20 @@ class BackendStandingTest {
             case DRAIN -> Cause.DRAIN;
             case ADMIT -> Cause.ADMIT;
             case WITHDRAW -> Cause.WITHDRAW;
+            case FAIL -> Cause.BENCHED;
+            case BENCH_OVER -> Cause.FREED;
             case LIMIT -> throw new AssertionError("a limit changes no word");
         };
     }
 
     /** A backend with a ramp of 1000, probes of one miss and one pass every 10 within 5, at a clock near its end. */
-    private static final class Bench {
+    private static final class Rig {
         final BackendStanding standing = new BackendStanding(
                 4,
                 new ProbeTracker(new ProbeSettings(null, 10, 5, 1, 1), true, ORIGIN, probe -> 0.5),
                 true,
                 RAMP,
-                null);
+                BENCH);
         long now = ORIGIN;
 
         void reach(String state) {
@@ -175,13 +190,19 @@ class BackendStandingTest {
             if (state.equals("WARMING")) {
                 happen(Event.PASS);
             }
+            if (state.endsWith("_b") || state.equals("BENCHED")) {
+                happen(Event.FAIL);
+            }
+            if (state.equals("DOWN_b")) {
+                happen(Event.MISS);
+            }
             if (state.startsWith("DRAINING")) {
                 happen(Event.DRAIN);
             }
             if (state.startsWith("WITHDRAWN")) {
                 happen(Event.WITHDRAW);
             }
-            assertThat(standing.shown().name()).isEqualTo(state.replace("_d", ""));
+            assertThat(standing.shown().name()).isEqualTo(state.replaceFirst("_.", ""));
         }
 
         @Nullable
@@ -200,6 +221,11 @@ class BackendStandingTest {
                     yield null;
                 }
                 case ADMIT -> standing.admit(now);
+                case FAIL -> standing.ended(true, () -> true, now);
+                case BENCH_OVER -> {
+                    now += 5_000;
+                    yield standing.pollBench(now);
+                }
                 case WITHDRAW -> standing.withdraw(now);
             };
         }

@@ -2,6 +2,7 @@ package steelyard.balancer.core.standing;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import steelyard.balancer.core.standing.ProbeTracker.Step;
@@ -132,6 +133,21 @@ class ProbeTrackerTest {
 
         boolean up() {
             return probes.up();
+        }
+    }
+
+    /** Draws 0, 1/2 and almost 1 at a jitter of a tenth: periods of 90, 100 and 110. */
+    @Test
+    void deadline_withJitter_isOffByTheDrawOfTheProbe() {
+        double[] draws = {0, 0.5, 1 - 0x1.0p-53};
+        ProbeTracker probes =
+                new ProbeTracker(new ProbeSettings(null, 100, 40, 3, 2, 0.1), true, 0, probe -> draws[(int) probe]);
+        long now = 0;
+        for (long period : new long[] {90, 100, 110}) {
+            probes.poll(now);
+            probes.answered(probes.number(), true, now + 1);
+            assertThat(probes.deadlineNanos() - now).isEqualTo(period);
+            now = probes.deadlineNanos();
         }
     }
 }
