@@ -15,6 +15,7 @@ import java.util.concurrent.atomic.AtomicLong;
 import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.live.guard.GuardedDecider;
+import steelyard.balancer.live.guard.WaitingRoom;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.HostSettings;
@@ -43,7 +44,8 @@ final class EmbeddedBalancer {
         decider.begin(0);
         front = PoolFront.of(0, POOL, decider, new RequestNumbers(new AtomicLong()), "steelyard");
         InetSocketAddress nowhere = new InetSocketAddress(InetAddress.getLoopbackAddress(), 1);
-        connections = new LoopConnections(new Opening(), List.of(POOL), List.of(nowhere), pool -> null);
+        connections = new LoopConnections(
+                new Opening(), new WaitingRoom(0, 1), List.of(POOL), List.of(nowhere), pool -> null);
         client = opened();
     }
 
