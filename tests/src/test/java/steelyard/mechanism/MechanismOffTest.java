@@ -40,7 +40,37 @@ class MechanismOffTest {
                 off("which-probe", "period", "every: 500ms", "every: 3s", "detected-in of fulmar"),
                 off("which-probe", "limit", "within: 250ms", "within: 2500ms", "detected-in of fulmar"),
                 off("which-probe", "misses", "misses: 3", "misses: 8", "failed"),
-                off("which-probe", "misses", "misses: 3", "misses: 1", "standing-changes"));
+                off("which-probe", "misses", "misses: 3", "misses: 1", "standing-changes"),
+                off("flapping-probe", "misses", "misses: 3", "misses: 1", "standing-changes of fulmar, from 6 s"),
+                off("flapping-probe", "passes", "passes: 10", "passes: 2", "standing-changes of fulmar, from 20 s"),
+                off("retry-storm", "budget", "budget: 10%", "budget: 100%, bucket: 1000", "retry-load, from 13 s"),
+                off("lose-a-zone", "standby tier", "standby: 50%", "standby: 10%", "share of tern, from 11 s"),
+                off("lose-a-zone", "last resort", " *last-resort: .*\n", "", "failed, from 42 s"),
+                off("cold-return", "warm-up", " *warm-up: .*\n", "", "latency 99 % of pool gentle"),
+                off("cold-return", "cold caches", "factor: 6", "factor: 1", "latency 95 % of pool abrupt"),
+                off("sticky-drain", "keeping clients", ", keep-clients: true", "", "share of fulmar, from 16 s"),
+                off(
+                        "sticky-drain",
+                        "affinity",
+                        "affinity: cookie",
+                        "affinity: {by: cookie, lasts: 1ms}",
+                        "share of fulmar, from 37 s"),
+                off("silent-berth", "bench", "after: 3,", "after: 100000,", "failed, from 12 s"),
+                off("silent-berth", "bench", "after: 3,", "after: 100000,", "latency 98 %"),
+                off("silent-berth", "time limit", "first-byte: 500ms", "first-byte: 5s", "detected-in as benched"),
+                off(
+                        "long-connections",
+                        "count",
+                        "count: connections",
+                        "count: requests",
+                        "fairness of pool by-connection"),
+                off("stale-load", "load weights", "floor: 5%", "floor: 100%", "share of petrel"),
+                off(
+                        "stale-load",
+                        "interval",
+                        "every: 250ms, within: 240ms, stale-after: 2s",
+                        "every: 4s, within: 2s, stale-after: 12s",
+                        "latency 95 % of pool quick"));
     }
 
     private static Arguments off(

@@ -10,11 +10,19 @@ import java.util.Optional;
 /** The bundled drills. Stateless; any thread may call. */
 public final class DrillLibrary {
     private static final List<String> NAMES = List.of(
+            "cold-return",
             "drain-for-patching",
+            "flapping-probe",
+            "long-connections",
+            "lose-a-zone",
             "lose-one-of-three",
             "many-quays",
+            "retry-storm",
             "reweigh-live",
+            "silent-berth",
             "slow-one",
+            "stale-load",
+            "sticky-drain",
             "uneven-hosts",
             "which-probe");
 
