@@ -116,6 +116,11 @@ final class Wire implements AutoCloseable {
         }
     }
 
+    /** Whether something has come that was not read. */
+    boolean hasInput() throws IOException {
+        return in.available() > 0;
+    }
+
     /** How many octets came, of so many at most. */
     int skip(byte[] into) throws IOException {
         return in.read(into);
