@@ -1,5 +1,5 @@
 /**
- * Benchmarks, run by {@code tests/bench/run}; none of them is part of the tests.
+ * Benchmarks, run by {@code tests/bench/run}; of the tests only a short soak is a part, which looks at no times.
  *
  * <p>Purpose: figures that can be compared within one run on one machine, and say nothing beyond it. Allowed
  * dependencies: all modules. Thread rule: each says its own. First class to read: the one named after the benchmark.
