@@ -47,6 +47,18 @@ final class PassageClients {
         }
     }
 
+    /** The play is over: closes what is idle. */
+    void closeIdle(long nowNanos) {
+        for (int passage = 0; passage < passages.used(); passage++) {
+            if (passages.state[passage] != Passages.State.FREE
+                    && !passages.left[passage]
+                    && passages.flight[passage] == Passages.NONE) {
+                connections.closeIdle(passages.connection[passage]);
+                leave(passage, nowNanos);
+            }
+        }
+    }
+
     /** A request goes out on a connection, which may be a new one. */
     void sent(int flight, boolean fresh, long nowNanos) {
         int stream = flights.traffic[flight];

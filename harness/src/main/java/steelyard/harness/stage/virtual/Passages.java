@@ -50,6 +50,11 @@ final class Passages {
     private int used;
     private long latest;
 
+    /** How many there are, whoever is not yet done with them. */
+    int open() {
+        return used - freedCount;
+    }
+
     /** Upper end of the passages ever used. */
     int used() {
         return used;

@@ -26,6 +26,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
     private final VirtualReadings readings;
     private final Streams streams;
     private final Flights flights;
+    private final Passages passages = new Passages();
     private final PassThrough passThrough;
     private final Attempts attempts;
     private final Exchanges exchanges;
@@ -35,7 +36,6 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
         List<PoolSettings> pools = settings.pools();
         streams = new Streams(drill, settings);
         flights = new Flights(mostAttempts(pools));
-        Passages passages = new Passages();
         clients = new VirtualClients(listener, post, flights, passages, streams, drill, idleLimitNanos(pools));
         probes = new VirtualProbes(settings, post);
         readings = new VirtualReadings(settings, post);
@@ -65,9 +65,16 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
 
     // --- time -------------------------------------------------------------------------------------------------------
 
-    /** Whether any request is still open. */
+    /** Whether any request, or connection that is passed through, is still open. */
     boolean busy() {
-        return flights.open() > 0;
+        return flights.open() > 0 || passages.open() > 0;
+    }
+
+    /** Nothing more is sent: once the last request is over, clients close the connections that count as work. */
+    void finish(long nowNanos) {
+        if (flights.open() == 0 && passages.open() > 0) {
+            clients.closeIdle(nowNanos);
+        }
     }
 
     /** When a client, a limit on a first byte or the Decider has something to do. */

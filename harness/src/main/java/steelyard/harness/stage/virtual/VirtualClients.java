@@ -130,6 +130,11 @@ final class VirtualClients {
         }
     }
 
+    /** Nothing more is sent: what is idle is closed where that ends something in flight. */
+    void closeIdle(long nowNanos) {
+        passages.closeIdle(nowNanos);
+    }
+
     // --- results ----------------------------------------------------------------------------------------------------
 
     /** The balancer's answer has come. */

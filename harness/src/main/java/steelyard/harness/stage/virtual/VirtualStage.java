@@ -77,6 +77,9 @@ public final class VirtualStage implements Stage {
         Listening stage = opened();
         while (!interrupted && (agenda.hasNext() || stage.balancer.busy() || nextSliceNanos != Lane.NEVER)) {
             step(agenda, stage);
+            if (!agenda.hasNext()) {
+                stage.balancer.finish(nowNanos);
+            }
         }
         boolean complete = !interrupted;
         if (!complete) {
