@@ -38,8 +38,10 @@ final class Streams {
         keys = new RequestKeys(drill, byNumber);
         hashes = new boolean[pools.length];
         says = new boolean[pools.length];
-        for (int pool = 0; pool < byNumber.size(); pool++) {
-            picksBy(pool, byNumber.get(pool).method());
+        for (int stream = 0; stream < pools.length; stream++) {
+            // Only a pool that begins with keys can come back to them when it is retuned.
+            hashes[stream] = byNumber.get(pools[stream]).method() == PoolSettings.Method.HASH;
+            says[stream] = hashes[stream] || rules[stream].byAddress() || rules[stream].berthNanos() > 0;
         }
     }
 
@@ -49,16 +51,6 @@ final class Streams {
             each[kind] = IDEMPOTENT.contains(traffic.requests().get(kind).method());
         }
         return each;
-    }
-
-    /** From now on a pool picks by that method. */
-    void picksBy(int pool, PoolSettings.Method method) {
-        for (int stream = 0; stream < pools.length; stream++) {
-            if (pools[stream] == pool) {
-                hashes[stream] = method == PoolSettings.Method.HASH;
-                says[stream] = hashes[stream] || rules[stream].byAddress() || rules[stream].berthNanos() > 0;
-            }
-        }
     }
 
     /** The number of the pool that a stream goes to. */
