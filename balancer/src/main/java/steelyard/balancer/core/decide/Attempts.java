@@ -1,7 +1,6 @@
 package steelyard.balancer.core.decide;
 
-import org.jspecify.annotations.Nullable;
-import steelyard.balancer.core.standing.Transition;
+import steelyard.balancer.core.standing.BackendStanding;
 
 /**
  * Attempts from the pick to their end: who gets them, who waits for a place, and what their ends say of a backend.
@@ -56,12 +55,17 @@ final class Attempts {
         int count = desk.ended(member, outcome == Outcome.ANSWERED, nowNanos);
         roster.sink.ended(nowNanos, backend, request, attempt, outcome, status, count);
         if (outcome.saysOfBackend()) {
-            boolean failure = outcome != Outcome.ANSWERED || status >= 500;
-            @Nullable Transition change = roster.standing(backend).ended(failure, desk.benchRoom, nowNanos);
-            if (change != null) {
-                roster.stood(backend, change, nowNanos);
-                roster.reschedule(backend, nowNanos);
-            }
+            said(backend, outcome != Outcome.ANSWERED || status >= 500, nowNanos);
+        }
+    }
+
+    /** One that is benched while it drains or is down shows no change, and is freed in time all the same. */
+    private void said(int backend, boolean failure, long nowNanos) {
+        BackendStanding standing = roster.standing(backend);
+        boolean wasBenched = standing.benched();
+        roster.stood(backend, standing.ended(failure, roster.deskOf(backend).benchRoom, nowNanos), nowNanos);
+        if (standing.benched() != wasBenched) {
+            roster.reschedule(backend, nowNanos);
         }
     }
 

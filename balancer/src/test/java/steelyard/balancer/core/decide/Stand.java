@@ -4,15 +4,20 @@ import java.util.List;
 import java.util.Set;
 import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.settings.AffinitySettings;
 import steelyard.balancer.settings.BackendSettings;
 import steelyard.balancer.settings.BalancerSettings;
+import steelyard.balancer.settings.BenchSettings;
 import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.HostSettings;
+import steelyard.balancer.settings.InFlightSettings;
+import steelyard.balancer.settings.LoadSettings;
 import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 import steelyard.balancer.settings.PoolSettings.Method;
 import steelyard.balancer.settings.PoolSettings.Weights;
 import steelyard.balancer.settings.ProbeSettings;
+import steelyard.balancer.settings.ReserveSettings;
 import steelyard.balancer.settings.RetrySettings;
 import steelyard.balancer.settings.WarmUpSettings;
 
@@ -25,6 +30,12 @@ final class Stand {
     private @Nullable ProbeSettings probe;
     private @Nullable WarmUpSettings warmUp;
     private @Nullable RetrySettings retry;
+    private @Nullable BenchSettings bench;
+    private @Nullable InFlightSettings inFlight;
+    private @Nullable AffinitySettings affinity;
+    private @Nullable LoadSettings load;
+    private ReserveSettings reserve = ReserveSettings.NONE;
+    private boolean keepsClients;
     private List<BackendSettings> backends = List.of();
 
     static Stand of(Method method, int members) {
@@ -58,6 +69,47 @@ final class Stand {
         return this;
     }
 
+    Stand bench(BenchSettings settings) {
+        bench = settings;
+        return this;
+    }
+
+    Stand inFlight(int most, int waiting, long wait) {
+        inFlight = new InFlightSettings(most, waiting, wait);
+        return this;
+    }
+
+    /** Clients are held for 1000. */
+    Stand affinity(AffinitySettings.By by) {
+        affinity = new AffinitySettings(by, "berth", 1_000);
+        return this;
+    }
+
+    Stand keepingClients() {
+        keepsClients = true;
+        return this;
+    }
+
+    Stand load(LoadSettings settings) {
+        weights = Weights.LOAD;
+        load = settings;
+        return this;
+    }
+
+    Stand reserve(double lastResort, double standby) {
+        reserve = new ReserveSettings(lastResort, standby);
+        return this;
+    }
+
+    /** The last so many members stand by. */
+    Stand standingBy(int last) {
+        int first = backends.size() - last;
+        backends = IntStream.range(0, backends.size())
+                .mapToObj(i -> new BackendSettings("backend-" + i, 1, 0, false, i < first ? 1 : 2))
+                .toList();
+        return this;
+    }
+
     Stand startingDown() {
         backends = backends.stream()
                 .map(each -> new BackendSettings(each.name(), each.weight(), each.host(), true))
@@ -69,8 +121,13 @@ final class Stand {
         return PoolSettings.named(name, PickSettings.of(method).with(weights))
                 .probe(probe)
                 .warmUp(warmUp)
-                .drain(new DrainSettings(30_000, false))
+                .drain(new DrainSettings(30_000, keepsClients))
                 .retry(retry)
+                .bench(bench)
+                .inFlight(inFlight)
+                .affinity(affinity)
+                .load(load)
+                .reserve(reserve)
                 .of(backends);
     }
 

@@ -63,6 +63,16 @@ final class Trace implements DecisionSink, Orders {
     }
 
     @Override
+    public void waited(long now, int pool, long request, int attempt, int waiting) {
+        note("%d waits in %d: %d/%d, %d of them", now - origin, pool, request, attempt, waiting);
+    }
+
+    @Override
+    public void loadRead(long now, int backend, long number, int headroomMilli, boolean fresh) {
+        note("%d reading %d of %d: %d%s", now - origin, number, backend, headroomMilli, fresh ? "" : ", stale");
+    }
+
+    @Override
     public void startProbe(int backend, long probe) {
         lastProbe[backend] = probe;
         note("start probe %d of %d", probe, backend);
