@@ -28,6 +28,9 @@ public final class Heard implements PlayListener {
     /** An attempt as it ended. */
     public record Over(long atNanos, int backend, long request, int attempt, Outcome outcome) {}
 
+    /** What a reading made of a weight. */
+    public record Read(long atNanos, int backend, int headroomMilli, boolean fresh) {}
+
     /** A cue as it was applied. */
     public record Applied(long atNanos, long dueNanos, Cue cue, By by) {}
 
@@ -37,6 +40,8 @@ public final class Heard implements PlayListener {
     public final List<End> ends = new ArrayList<>();
     public final List<Transition> transitions = new ArrayList<>();
     public final List<Applied> cues = new ArrayList<>();
+    public final List<Read> readings = new ArrayList<>();
+    public final List<Long> waited = new ArrayList<>();
     public final List<Long> sampledNanos = new ArrayList<>();
     public final Map<Integer, Integer> received = new TreeMap<>();
     public boolean monotone = true;
@@ -73,6 +78,13 @@ public final class Heard implements PlayListener {
     /** The backends picked, in order. */
     public List<Integer> backendsPicked() {
         return picks.stream().map(Pick::backend).toList();
+    }
+
+    /** The backend of each request's first attempt, by request. */
+    public Map<Long, Integer> backendByRequest() {
+        Map<Long, Integer> first = new TreeMap<>();
+        picks.forEach(each -> first.putIfAbsent(each.request(), each.backend()));
+        return first;
     }
 
     private void at(long nanos) {
@@ -115,6 +127,18 @@ public final class Heard implements PlayListener {
     public void stood(Transition transition) {
         at(transition.atNanos());
         transitions.add(transition);
+    }
+
+    @Override
+    public void waited(long atNanos, int pool, long request, int waiting) {
+        at(atNanos);
+        waited.add(request);
+    }
+
+    @Override
+    public void loadRead(long atNanos, int backend, long number, int headroomMilli, boolean fresh) {
+        at(atNanos);
+        readings.add(new Read(atNanos, backend, headroomMilli, fresh));
     }
 
     @Override

@@ -204,6 +204,97 @@ public abstract class StageContract {
     }
 
     @Test
+    void cookie_keepsEachClientOnItsBackend() throws CannotPlay {
+        Heard heard = play(drill(roundRobin("fixed: 1ms") + "affinity: cookie\n", "clients: 1, rate: 20/s", "2s", ""));
+        assertThat(heard.count(null)).isEqualTo(40);
+        // Requests that a stall lets go out together carry no cookie yet; none may be left without one after that.
+        assertThat(heard.backendsPicked().subList(20, 40))
+                .containsOnly(heard.backendsPicked().get(39));
+    }
+
+    @Test
+    void fullBackends_letRequestsWaitInOrder() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 150ms") + "in-flight: {most: 1, waiting: 100, wait: 20s}\n",
+                "rate: 20/s",
+                "1s",
+                ""));
+        assertThat(heard.count(null)).isEqualTo(20);
+        // Two at a time, 150 ms each, is 13.3 a second: the rest of the 20 wait.
+        assertThat(heard.waited).hasSizeBetween(10, 18).isSorted();
+        assertThat(heard.picks).extracting(Heard.Pick::request).isSorted();
+    }
+
+    @Test
+    void waitThatIsTooLong_isNobodysTurn() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 4s") + "in-flight: {most: 1, waiting: 100, wait: 300ms}\n", "rate: 20/s", "1s", ""));
+        assertThat(heard.count(null)).isEqualTo(2);
+        assertThat(heard.count(Cause.NO_BACKEND)).isEqualTo(18);
+        assertThat(heard.ends.stream().filter(each -> each.cause() != null))
+                .allMatch(each -> each.status() == 503 && each.atNanos() - each.dueNanos() >= 300 * MILLI);
+    }
+
+    @Test
+    void connectionPassedThrough_staysWhereItWasPicked() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms") + "count: connections\nfront: {kind: tcp}\n",
+                "clients: 2, rate: 20/s",
+                "2s",
+                ""));
+        assertThat(heard.count(null)).isEqualTo(40);
+        // A client that meets a stall may need another connection.
+        assertThat(heard.picks).hasSizeBetween(2, 8).allMatch(each -> each.request() < 0 && each.attempt() == 1);
+        assertThat(heard.overs)
+                .hasSameSizeAs(heard.picks)
+                .allMatch(each -> each.outcome() == Outcome.ANSWERED && each.request() < 0);
+        assertThat(heard.received.values().stream().mapToInt(each -> each).sum())
+                .isEqualTo(40);
+    }
+
+    @Test
+    void failures_benchABackend_andItsTimeFreesIt() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms") + "bench: {after: 3, time: 1s}\n",
+                "rate: 40/s",
+                "3s",
+                "  - {at: 0s, fail: fulmar, status: 500, for: 500ms}"));
+        assertThat(heard.transitions)
+                .extracting(Transition::backend, Transition::to)
+                .startsWith(tuple(0, Standing.BENCHED), tuple(0, Standing.UP))
+                .hasSize(2);
+        long benched =
+                heard.transitions.get(1).atNanos() - heard.transitions.get(0).atNanos();
+        assertThat(benched).isBetween(1_000 * MILLI, 1_000 * MILLI + SLACK);
+        assertThat(heard.count(Cause.BACKEND_ERROR)).isBetween(3L, 12L);
+    }
+
+    @Test
+    void load_thatACueSets_lowersTheWeightAtTheNextReading() throws CannotPlay {
+        Heard heard = play(drill("""
+                method: stride
+                weights: load
+                load: {every: 200ms, within: 150ms, stale-after: 10s, gauges: {memory: 100%}}
+                serves: {workers: 64, time: {fixed: 1ms}, gauges: {memory: 20%}}
+                backends: {fulmar: {}, gannet: {}}
+                """, "rate: 100/s", "4s", "  - {at: 1s, load: fulmar, gauge: memory, to: 70%}"));
+        assertThat(heard.readings).allMatch(Heard.Read::fresh);
+        assertThat(heard.readings.stream().filter(each -> each.backend() == 0))
+                .extracting(Heard.Read::headroomMilli)
+                .startsWith(800)
+                .endsWith(300)
+                .containsOnly(800, 300);
+        assertThat(heard.readings.stream().filter(each -> each.backend() == 1))
+                .extracting(Heard.Read::headroomMilli)
+                .containsOnly(800);
+        long late = heard.picks.stream()
+                .filter(each -> each.atNanos() >= 3_000 * MILLI && each.backend() == 0)
+                .count();
+        // 100 requests x 3 / 11 = 27.3, and a second that a stall moves over its edge holds some more or fewer.
+        assertThat(late).isBetween(20L, 36L);
+    }
+
+    @Test
     void cueByHand_takesEffectLikeThoseOfTheDrill() throws CannotPlay {
         Drill drill = drill(roundRobin("fixed: 1ms"), "rate: 50/s", "3s", "");
         Conductor conductor = new Conductor(drill, new Chance(SEED), new ConcurrentLinkedQueue<>());

@@ -52,6 +52,32 @@ class StagesAgreeTest {
         }
     }
 
+    // Lots are drawn by request, and keys come of the same text, whatever the wire does to the order.
+    @Test
+    void picks_byLotAndByKey_areEqualRequestByRequest() throws CannotPlay {
+        for (String method : List.of(
+                "random",
+                "weighted-random",
+                "hash, hash: {by: client}",
+                "hash, hash: {by: path, table: rendezvous}",
+                "hash, hash: {by: {header: x-cabin}, table: permutation}",
+                "hash, hash: {by: {cookie: cabin}}")) {
+            Both both = play(
+                    "{method: %s, serves: {workers: 64, time: 1ms}, backends: {fulmar: {weight: 2}, gannet: {weight: 5},"
+                                    .formatted(method)
+                            + " petrel: {weight: 3}}}",
+                    "arrivals: even, rate: 200/s, clients: 50, requests: [{get: '/holds/{client}', headers: {X-Cabin:"
+                            + " 'deck-{client}', Cookie: 'line=7; cabin={client}'}}]",
+                    "1s",
+                    "");
+            assertThat(both.live.backendByRequest())
+                    .as(method)
+                    .isEqualTo(both.virtual.backendByRequest())
+                    .hasSize(200)
+                    .containsValues(0, 1, 2);
+        }
+    }
+
     // Whether a fault strikes is drawn by request and attempt, so the same requests are tried again, as often, and
     // fail.
     @Test
