@@ -134,6 +134,19 @@ final class PlaySlices implements PlayListener {
     }
 
     @Override
+    public void tunnelEnded(
+            long atNanos,
+            long openedNanos,
+            long request,
+            long dueNanos,
+            int traffic,
+            int kind,
+            @Nullable Cause cause,
+            int status) {
+        book.tunnelEnded(atNanos, openedNanos, request, dueNanos, traffic, kind, cause, status);
+    }
+
+    @Override
     public void attemptPicked(long atNanos, int pool, int backend, long request, int attempt, int inFlight) {
         book.attemptPicked(atNanos, pool, backend, request, attempt, inFlight);
     }

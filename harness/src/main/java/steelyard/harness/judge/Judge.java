@@ -103,11 +103,30 @@ public final class Judge implements PlayListener {
     public void requestEnded(
             long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
         checks.requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
+        count(atNanos, request, dueNanos, traffic, kind, cause, status);
+    }
+
+    @Override
+    public void tunnelEnded(
+            long atNanos,
+            long openedNanos,
+            long request,
+            long dueNanos,
+            int traffic,
+            int kind,
+            @Nullable Cause cause,
+            int status) {
+        checks.requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
+        count(openedNanos, request, dueNanos, traffic, kind, cause, status);
+    }
+
+    private void count(
+            long answeredNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
         for (WindowLatencies each : latencies) {
-            each.ended(atNanos, dueNanos, traffic, cause);
+            each.ended(answeredNanos, dueNanos, traffic, cause);
         }
         for (Meter each : onRequests) {
-            each.requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
+            each.requestEnded(answeredNanos, request, dueNanos, traffic, kind, cause, status);
         }
     }
 

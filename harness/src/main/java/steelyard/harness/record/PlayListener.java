@@ -36,6 +36,24 @@ public interface PlayListener {
     default void requestEnded(
             long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {}
 
+    /**
+     * A request whose connection had become a tunnel has its end: that of the tunnel. Its latency is that of the answer that
+     * opened it.
+     *
+     * @param openedNanos when that answer was there
+     */
+    default void tunnelEnded(
+            long atNanos,
+            long openedNanos,
+            long request,
+            long dueNanos,
+            int traffic,
+            int kind,
+            @Nullable Cause cause,
+            int status) {
+        requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
+    }
+
     /** A client would have needed one connection more than the cap allows. */
     default void connectionCapHit(long atNanos) {}
 

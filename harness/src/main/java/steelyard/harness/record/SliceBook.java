@@ -75,6 +75,24 @@ public final class SliceBook implements PlayListener {
     @Override
     public void requestEnded(
             long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
+        ended(atNanos, atNanos, request, dueNanos, traffic, cause);
+    }
+
+    @Override
+    public void tunnelEnded(
+            long atNanos,
+            long openedNanos,
+            long request,
+            long dueNanos,
+            int traffic,
+            int kind,
+            @Nullable Cause cause,
+            int status) {
+        ended(atNanos, openedNanos, request, dueNanos, traffic, cause);
+    }
+
+    private void ended(
+            long atNanos, long answeredNanos, long request, long dueNanos, int traffic, @Nullable Cause cause) {
         at(atNanos / Slice.NANOS);
         Slice slice = at(Math.max(base, dueNanos / Slice.NANOS));
         int pool = poolOfTraffic[traffic];
@@ -82,7 +100,7 @@ public final class SliceBook implements PlayListener {
         slice.failedOf[pool] += cause == null ? 0 : 1;
         if (cause == null) {
             slice.ok++;
-            long tookNanos = Math.max(0, atNanos - dueNanos);
+            long tookNanos = Math.max(0, answeredNanos - dueNanos);
             slice.latency.recordValue(tookNanos);
             if (byPool) {
                 slice.latencyOf[pool].recordValue(tookNanos);

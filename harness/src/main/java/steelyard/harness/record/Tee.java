@@ -42,6 +42,21 @@ public final class Tee implements PlayListener {
     }
 
     @Override
+    public void tunnelEnded(
+            long atNanos,
+            long openedNanos,
+            long request,
+            long dueNanos,
+            int traffic,
+            int kind,
+            @Nullable Cause cause,
+            int status) {
+        for (PlayListener each : listeners) {
+            each.tunnelEnded(atNanos, openedNanos, request, dueNanos, traffic, kind, cause, status);
+        }
+    }
+
+    @Override
     public void connectionCapHit(long atNanos) {
         for (PlayListener each : listeners) {
             each.connectionCapHit(atNanos);

@@ -16,6 +16,7 @@ final class Exchange {
     private boolean ended;
     private @Nullable ClientConnection connection;
     private boolean tunnel;
+    private long openedNanos;
 
     Exchange(long request, long dueNanos, int traffic, int kind, Request asks, long giveUpNanos) {
         this.request = request;
@@ -42,8 +43,14 @@ final class Exchange {
         return tunnel;
     }
 
-    void tunnelOpened() {
+    /** When its tunnel stood, in play time; only while there is, or was, one. */
+    long openedNanos() {
+        return openedNanos;
+    }
+
+    void tunnelOpened(long nowNanos) {
         tunnel = true;
+        openedNanos = nowNanos;
     }
 
     /** The connection that carries it, once it was sent. */

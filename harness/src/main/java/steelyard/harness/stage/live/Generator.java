@@ -22,6 +22,7 @@ import steelyard.backends.stub.Transport;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.drills.model.Cause;
 import steelyard.drills.model.Traffic;
+import steelyard.harness.record.PlayListener;
 import steelyard.harness.stage.Clientele;
 
 /**
@@ -208,7 +209,7 @@ final class Generator implements ClientConnection.Owner {
 
     @Override
     public void upgraded(ClientConnection connection, Exchange exchange) {
-        exchange.tunnelOpened();
+        exchange.tunnelOpened(clock.playNow());
         tunnels.add(exchange);
         loop.schedule(() -> finish(connection, exchange), exchange.asks.openNanos(), TimeUnit.NANOSECONDS);
     }
@@ -260,11 +261,17 @@ final class Generator implements ClientConnection.Owner {
         }
         open--;
         brokenOff.take(exchange.request);
-        account.tell(
-                Account.Source.TRAFFIC,
-                clock.playNow(),
-                (to, at) -> to.requestEnded(
-                        at, exchange.request, exchange.dueNanos, exchange.traffic, exchange.kind, cause, status));
+        account.tell(Account.Source.TRAFFIC, clock.playNow(), (to, at) -> tell(exchange, cause, status, to, at));
+    }
+
+    private static void tell(Exchange exchange, @Nullable Cause cause, int status, PlayListener to, long at) {
+        long request = exchange.request;
+        long due = exchange.dueNanos;
+        if (exchange.tunnel()) {
+            to.tunnelEnded(at, exchange.openedNanos(), request, due, exchange.traffic, exchange.kind, cause, status);
+        } else {
+            to.requestEnded(at, request, due, exchange.traffic, exchange.kind, cause, status);
+        }
     }
 
     private void sweep() {

@@ -195,6 +195,18 @@ final class VirtualClients {
 
     private void end(int flight, @Nullable Cause cause, int status, long nowNanos) {
         flights.told[flight] = true;
+        if (flights.openedNanos[flight] != Lane.NEVER) {
+            listener.tunnelEnded(
+                    nowNanos,
+                    flights.openedNanos[flight],
+                    flights.request[flight],
+                    flights.dueNanos[flight],
+                    flights.traffic[flight],
+                    flights.kind[flight],
+                    cause,
+                    status);
+            return;
+        }
         listener.requestEnded(
                 nowNanos,
                 flights.request[flight],

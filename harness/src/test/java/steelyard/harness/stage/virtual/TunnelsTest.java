@@ -28,6 +28,14 @@ class TunnelsTest {
         assertThat(told.ends.get(0).atNanos()).isEqualTo(closed + 4 * HOP);
     }
 
+    // Its end is 400 ms later, but what its client waited for is the 101.
+    @Test
+    void latency_isThatOfThe101() {
+        assertThat(Witness.measured(POOL, TRAFFIC, "1s", "{measure: latency, quantile: mean, at-most: 1s}"))
+                .isEqualTo("1.4 ms");
+        assertThat(Witness.of(POOL, TRAFFIC, "1s", "").opened.get(0)).isEqualTo(250 * MILLI + MILLI + 8 * HOP);
+    }
+
     @Test
     void kill_resetsTheTunnel() {
         Witness told = Witness.of(POOL, TRAFFIC, "1s", "{at: 500ms, kill: fulmar}");

@@ -17,6 +17,7 @@ import steelyard.harness.record.Cast;
 import steelyard.harness.record.PlayListener;
 import steelyard.harness.record.SelfCheck;
 import steelyard.harness.record.Tee;
+import steelyard.harness.record.Verdict;
 import steelyard.harness.stage.CannotPlay;
 
 /** A small play and what was told in it, with hops of 50 us; the account has to add up whatever the play is about. */
@@ -48,10 +49,25 @@ final class Witness implements PlayListener {
     final List<Reading> readings = new ArrayList<>();
     final List<Transition> transitions = new ArrayList<>();
     final List<Long> waited = new ArrayList<>();
+    final List<Long> opened = new ArrayList<>();
     int received;
 
     /** @param pool its settings as a flow mapping, without the braces */
     static Witness of(String pool, String traffic, String lasts, String cues) {
+        Witness witness = new Witness();
+        judged(drill(pool, traffic, lasts, cues, ""), witness);
+        return witness;
+    }
+
+    /** What the one expectation of a play was measured to be, in words. */
+    static String measured(String pool, String traffic, String lasts, String expectation) {
+        return judged(drill(pool, traffic, lasts, "", expectation), new Witness())
+                .expectations()
+                .get(0)
+                .measured();
+    }
+
+    private static Drill drill(String pool, String traffic, String lasts, String cues, String expectation) {
         String text = """
                 drill: Small
                 about: Worked out by hand.
@@ -59,13 +75,13 @@ final class Witness implements PlayListener {
                 traffic: [{to: seats, arrivals: even, %s}]
                 lasts: %s
                 cues: [%s]
-                """.formatted(pool, traffic, lasts, cues);
+                expect: [%s]
+                """.formatted(pool, traffic, lasts, cues, expectation);
         Parsed<Drill> parsed = DrillReader.read("drill", text);
-        return of(parsed.value().orElseThrow(() -> new AssertionError(parsed.problems())));
+        return parsed.value().orElseThrow(() -> new AssertionError(parsed.problems()));
     }
 
-    static Witness of(Drill drill) {
-        Witness witness = new Witness();
+    private static Verdict judged(Drill drill, Witness witness) {
         Judge judge = new Judge(drill, new Cast(drill));
         try (VirtualStage stage = new VirtualStage(drill, 1, new Transport(HOP))) {
             stage.open(new Tee(judge, witness));
@@ -78,7 +94,7 @@ final class Witness implements PlayListener {
         if (!wrong.isEmpty()) {
             throw new AssertionError(wrong);
         }
-        return witness;
+        return judge.verdict();
     }
 
     List<Integer> backendsPicked() {
@@ -104,6 +120,20 @@ final class Witness implements PlayListener {
     public void requestEnded(
             long atNanos, long request, long dueNanos, int traffic, int kind, @Nullable Cause cause, int status) {
         ends.add(new End(request, dueNanos, atNanos, cause, status));
+    }
+
+    @Override
+    public void tunnelEnded(
+            long atNanos,
+            long openedNanos,
+            long request,
+            long dueNanos,
+            int traffic,
+            int kind,
+            @Nullable Cause cause,
+            int status) {
+        opened.add(openedNanos);
+        requestEnded(atNanos, request, dueNanos, traffic, kind, cause, status);
     }
 
     @Override
