@@ -2,7 +2,11 @@ package steelyard.balancer.live;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import java.util.HashMap;
+import java.util.HashSet;
 import java.util.List;
+import java.util.Map;
+import java.util.Set;
 import java.util.concurrent.CopyOnWriteArrayList;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
@@ -186,6 +190,40 @@ class ControlPageTest {
                         .startsWith("HTTP/1.1 401 ")
                         .doesNotContain("tern");
             }
+        }
+    }
+
+    /** By the text format of OpenMetrics 1.0, from memory: families in one piece, counters in _total, an end. */
+    @Test
+    void metrics_always_keepToTheTextFormat() throws Exception {
+        try (LivePlay play = LivePlay.of(FakeBackend.deadAddress())) {
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
+            String page = read(control, "/metrics", bearer(control));
+            String text = page.substring(page.indexOf("\r\n\r\n") + 4);
+            assertThat(text).endsWith("\n# EOF\n").doesNotContain("\r").doesNotContain("\n\n");
+            Map<String, String> types = new HashMap<>();
+            Set<String> samples = new HashSet<>();
+            String family = "";
+            for (String line : text.split("\n")) {
+                if (line.startsWith("# TYPE ")) {
+                    String[] words = line.split(" ");
+                    family = words[2];
+                    assertThat(types.put(family, words[3]))
+                            .as("type of %s", family)
+                            .isNull();
+                    assertThat(words[3]).isIn("counter", "gauge");
+                } else if (!line.startsWith("#")) {
+                    assertThat(line)
+                            .matches("[a-z_]+\\{([a-z_]+=\"[^\"\\\\]*\"(,(?=[a-z]))?)+\\} -?[0-9.]+(E-?[0-9]+)?");
+                    String name = line.substring(0, line.indexOf('{'));
+                    String suffix = "counter".equals(types.get(family)) ? "_total" : "";
+                    assertThat(name).isEqualTo(family + suffix);
+                    assertThat(samples.add(line.substring(0, line.indexOf('}'))))
+                            .as("said once: %s", line)
+                            .isTrue();
+                }
+            }
+            assertThat(samples).hasSizeGreaterThan(20);
         }
     }
 }
