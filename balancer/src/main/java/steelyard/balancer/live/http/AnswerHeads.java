@@ -24,6 +24,12 @@ final class AnswerHeads {
         prepareFields(response, pool);
     }
 
+    /** Prepares the head behind which a tunnel begins. */
+    static void prepareUpgrade(HttpResponse response, PoolFront pool, String protocol) {
+        prepareFields(response, pool);
+        Upgrade.set(response.headers(), protocol);
+    }
+
     /**
      * @param empty whether the answer has no content by its status or method
      * @param oldClient whether the client speaks HTTP/1.0, which knows no chunks

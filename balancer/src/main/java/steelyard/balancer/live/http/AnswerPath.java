@@ -51,6 +51,15 @@ final class AnswerPath {
         }
     }
 
+    /** Passes a 101 on; what follows it is no longer HTTP. */
+    void upgrade(HttpResponse response, String protocol) {
+        AnswerHeads.prepareUpgrade(response, pool, protocol);
+        passedOn = true;
+        output.write(response);
+        output.write(LastHttpContent.EMPTY_LAST_CONTENT);
+        output.flush();
+    }
+
     /** Holds the answer back until it is whole. */
     void hold(HttpResponse response) {
         held = new HeldAnswer(response);

@@ -4,6 +4,7 @@ import io.netty.channel.Channel;
 import io.netty.channel.ChannelFuture;
 import io.netty.channel.ChannelHandler;
 import io.netty.channel.ChannelInitializer;
+import io.netty.channel.ChannelPipeline;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpRequest;
@@ -12,6 +13,7 @@ import io.netty.util.concurrent.Future;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.live.tcp.Deadline;
+import steelyard.balancer.live.tcp.Relay;
 import steelyard.balancer.live.tls.BackendTls;
 import steelyard.balancer.live.tls.Ends;
 import steelyard.balancer.settings.TimeoutSettings;
@@ -29,6 +31,9 @@ final class BackendConnection {
 
     /** What it serves; null while it is idle. */
     private @Nullable Exchange exchange;
+
+    /** What its last exchange became, if it became one. */
+    private @Nullable Relay tunnel;
 
     private boolean awaitsFirstByte;
 
@@ -94,8 +99,32 @@ final class BackendConnection {
         }
     }
 
+    /** Its exchange becomes a tunnel: the channel is the relay's from here on, and nothing on it is HTTP. */
+    void become(Relay relay) {
+        exchange = null;
+        tunnel = relay;
+        if (deadline != null) {
+            deadline.stop();
+        }
+    }
+
+    /** What is written from here on goes out as it is. */
+    void removeEncoder() {
+        ChannelPipeline pipeline = opened().pipeline();
+        pipeline.remove(reader);
+        pipeline.remove(HttpRequestEncoder.class);
+    }
+
+    /** What is read from here on, and what came behind the last answer, is passed on as it is. */
+    void removeDecoder() {
+        opened().pipeline().remove(decoder);
+    }
+
     /** Ends what it serves, if anything, and closes. */
     void fail(Outcome outcome, OwnAnswer answer) {
+        if (tunnel != null && outcome == Outcome.CUT) {
+            tunnel.cut();
+        }
         Exchange served = exchange;
         if (served != null) {
             exchange = null;
@@ -175,7 +204,8 @@ final class BackendConnection {
         }
     }
 
-    private Channel opened() {
+    /** The channel, once it is being opened. */
+    Channel opened() {
         if (channel == null) {
             throw new IllegalStateException("not opened");
         }

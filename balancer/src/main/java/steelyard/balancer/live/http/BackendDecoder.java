@@ -42,6 +42,7 @@ final class BackendDecoder extends HttpResponseDecoder {
 
     @Override
     protected boolean isContentAlwaysEmpty(HttpMessage message) {
-        return head && ((HttpResponse) message).status().code() >= 200 || super.isContentAlwaysEmpty(message);
+        int status = ((HttpResponse) message).status().code();
+        return status == 101 || head && status >= 200 || super.isContentAlwaysEmpty(message);
     }
 }

@@ -23,6 +23,7 @@ final class BackendReader extends ChannelInboundHandlerAdapter {
     private final BackendConnection connection;
     private final BackendDecoder decoder;
     private boolean reusable = true;
+    private @Nullable HttpResponse switching;
     private boolean interim;
     private boolean answered;
     private boolean headSeen;
@@ -60,6 +61,9 @@ final class BackendReader extends ChannelInboundHandlerAdapter {
             faulty(part.decoderResult().cause());
         } else if (part instanceof HttpResponse response) {
             head(served, response);
+        } else if (switching != null) {
+            ReferenceCountUtil.release(message);
+            served.upgraded(switching);
         } else if (interim) {
             interim = false;
             ReferenceCountUtil.release(message);
@@ -79,7 +83,9 @@ final class BackendReader extends ChannelInboundHandlerAdapter {
 
     private void head(Exchange served, HttpResponse response) {
         int status = response.status().code();
-        if (status == 101 || !AnswerHeads.codingKnown(response)) {
+        if (status == 101 && served.agreesTo(response)) {
+            switching = response;
+        } else if (status == 101 || !AnswerHeads.codingKnown(response)) {
             connection.fail(Outcome.MALFORMED, OwnAnswer.MALFORMED);
         } else if (status < 200) {
             interim = true;

@@ -11,6 +11,7 @@ import io.netty.util.ReferenceCountUtil;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.live.guard.ClientKeys;
+import steelyard.balancer.live.tcp.Relay;
 
 /**
  * One client connection: takes its requests one after the other, and answers in their order.
@@ -24,6 +25,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     private final Channel channel;
     private final ClientOutput output;
     private final RequestDecoder decoder;
+    private final ClientEncoder encoder;
     private final ClientClock clock;
     private final ClientEnding ending;
     private final SentAhead ahead = new SentAhead();
@@ -44,6 +46,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         this.channel = channel;
         this.output = new ClientOutput(channel, encoder, pool.balancer());
         this.decoder = decoder;
+        this.encoder = encoder;
         this.clock = new ClientClock(channel.eventLoop(), pool.settings().timeouts(), this::timePassed);
         this.ending = new ClientEnding(
                 channel, output, clock, pool.settings().timeouts().idleNanos());
@@ -127,6 +130,9 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     @Override
     public void channelReadComplete(ChannelHandlerContext context) {
+        if (decoder.holds()) {
+            updateReading();
+        }
         if (exchange != null) {
             exchange.flushRequest();
         } else if (!ending.begun() && decoder.headOpen()) {
@@ -162,7 +168,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     /** Reads on while nothing was sent ahead and what comes can be passed on. */
     void updateReading() {
         boolean content = !ending.begun() && exchange != null && !exchange.requestComplete();
-        boolean reading = ending.begun() || ahead.isEmpty() && (!content || takesContent());
+        boolean reading = ending.begun() || !decoder.holds() && ahead.isEmpty() && (!content || takesContent());
         if (channel.config().isAutoRead() != reading) {
             channel.config().setAutoRead(reading);
         }
@@ -231,11 +237,41 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         closeGently();
     }
 
+    /** The exchange became a tunnel: both channels are the relay's, whatever came behind the heads included. */
+    void tunnel(BackendConnection backend, Attempts attempts) {
+        exchange = null;
+        clock.stop();
+        Relay relay =
+                new Relay(channel, backend.opened(), pool.settings().timeouts().idleNanos(), outcome -> {
+                    attempts.ended(outcome);
+                    backend.gone();
+                });
+        backend.become(relay);
+        relay.join();
+        // The decoders come last: what they hold is passed on at once, and no encoder may see it.
+        channel.pipeline().remove(this);
+        channel.pipeline().remove(encoder);
+        backend.removeEncoder();
+        backend.removeDecoder();
+        channel.pipeline().remove(decoder);
+        relay.start();
+    }
+
+    private void released() {
+        ChannelHandlerContext context = channel.pipeline().context(decoder);
+        try {
+            decoder.release(context);
+        } catch (Exception e) { // as its reading declares; it tells of failures by messages
+            context.fireExceptionCaught(e);
+        }
+    }
+
     /** The answer was written to its end. */
     void answered(boolean keep) {
         boolean whole = exchange == null || exchange.requestComplete();
         exchange = null;
         if (keep) {
+            released();
             clock.idle();
             catchUp();
         } else if (whole && ahead.isEmpty()) {

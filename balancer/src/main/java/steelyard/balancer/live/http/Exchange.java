@@ -267,18 +267,43 @@ final class Exchange implements WaitingRoom.Waiter {
         answer.interim(response);
     }
 
+    /** Whether a 101 goes over to what the client asked for, and comes when the whole request was sent. */
+    boolean agreesTo(HttpResponse response) {
+        return body.complete() && Upgrade.agreed(head.headers(), response) != null;
+    }
+
+    /** The backend went over: the client is told, and both ends are joined. */
+    void upgraded(HttpResponse response) {
+        BackendConnection to = connection;
+        String protocol = Upgrade.agreed(head.headers(), response);
+        if (to == null || protocol == null) {
+            return; // the client has left
+        }
+        attempts.status(response.status().code());
+        hold(response);
+        answer.upgrade(response, protocol);
+        connection = null;
+        drop();
+        client.tunnel(to, attempts);
+    }
+
     void answerHead(HttpResponse response) {
         int status = response.status().code();
         attempts.status(status);
-        String cookie = attempts.newCookie();
-        if (cookie != null) {
-            response.headers().add(HttpHeaderNames.SET_COOKIE, cookie);
-        }
+        hold(response);
         RetrySettings retry = pool.settings().retry();
         if (retry != null && retry.also().contains(status) && attempts.attempt() <= retry.atMost()) {
             answer.hold(response);
         } else {
             answer.pass(response, closesClient());
+        }
+    }
+
+    /** Adds the cookie that holds the client, where it has to be given one. */
+    private void hold(HttpResponse response) {
+        String cookie = attempts.newCookie();
+        if (cookie != null) {
+            response.headers().add(HttpHeaderNames.SET_COOKIE, cookie);
         }
     }
 

@@ -42,6 +42,8 @@ final class RequestDecoder extends HttpRequestDecoder {
     private boolean waiting;
     private long content;
     private long framing;
+    private boolean upgrading;
+    private boolean held;
 
     RequestDecoder(HttpDecoderConfig config, LimitSettings limits) {
         super(config);
@@ -58,6 +60,22 @@ final class RequestDecoder extends HttpRequestDecoder {
         return !inContent && (scan.begun() || waiting);
     }
 
+    /** Whether octets came behind a request to upgrade: they are left alone until its answer. */
+    boolean holds() {
+        return held && actualReadableBytes() > 0;
+    }
+
+    /** No upgrade came of it: what came behind is requests. */
+    void release(ChannelHandlerContext context) throws Exception {
+        boolean more = holds();
+        upgrading = false;
+        held = false;
+        if (more) {
+            channelRead(context, Unpooled.EMPTY_BUFFER);
+            channelReadComplete(context);
+        }
+    }
+
     @Override
     protected HttpMessage createMessage(String[] line) throws Exception {
         if (!line[2].startsWith("HTTP/")) { // the decoder itself would take small letters
@@ -68,6 +86,9 @@ final class RequestDecoder extends HttpRequestDecoder {
 
     @Override
     protected void decode(ChannelHandlerContext context, ByteBuf buffer, List<Object> out) throws Exception {
+        if (held) {
+            return; // what follows may be of another protocol
+        }
         int from = buffer.readerIndex();
         int before = out.size();
         boolean head = !inContent;
@@ -104,6 +125,7 @@ final class RequestDecoder extends HttpRequestDecoder {
 
     private void begun(HttpRequest request) {
         inContent = true;
+        upgrading = request.decoderResult().isSuccess() && Upgrade.asked(request) != null;
         chunked = HttpUtil.isTransferEncodingChunked(request);
         content = 0;
         framing = 0;
@@ -143,6 +165,7 @@ final class RequestDecoder extends HttpRequestDecoder {
         boolean faulty = inTrailers && scan.faulty();
         if (piece instanceof LastHttpContent) {
             inContent = false;
+            held = upgrading;
             inTrailers = false;
             scan.reset();
         }

@@ -20,6 +20,7 @@ final class RequestHeads {
     static @Nullable OwnAnswer prepare(HttpRequest request, PoolFront pool, Channel channel) {
         HttpHeaders headers = request.headers();
         boolean oldClient = request.protocolVersion().minorVersion() == 0;
+        String upgrade = Upgrade.asked(request);
         OwnAnswer here = countForward(request, headers);
         if (here == null && !Fields.removeHopByHop(headers)) {
             here = OwnAnswer.FAULTY;
@@ -42,6 +43,9 @@ final class RequestHeads {
         headers.add(HttpHeaderNames.VIA, oldClient ? pool.via10() : pool.via11());
         if (pool.settings().front().forwarded() != FrontSettings.Forwarded.NOT) {
             headers.add(Fields.FORWARDED, ForwardedElement.of(channel, headers.get(HttpHeaderNames.HOST), pool));
+        }
+        if (upgrade != null) {
+            Upgrade.set(headers, upgrade);
         }
         request.setProtocolVersion(HttpVersion.HTTP_1_1);
         return null;
