@@ -1,7 +1,6 @@
 package steelyard.harness.stage.virtual;
 
 import java.util.Arrays;
-import steelyard.balancer.core.decide.Decider;
 
 /**
  * Requests on their way, in columns: a flight is an index into all of them, reused when its request is over for client and
@@ -36,7 +35,7 @@ final class Flights {
     int[] connection = new int[FIRST_CAPACITY];
     /** The connection through the balancer that it is on; only where connections are passed through. */
     int[] passage = new int[FIRST_CAPACITY];
-    /** The backend that the client's cookie names. */
+    /** The backend that the client's cookie names; only where cookies hold clients. */
     int[] held = new int[FIRST_CAPACITY];
 
     int[] attempt = new int[FIRST_CAPACITY];
@@ -50,8 +49,8 @@ final class Flights {
 
     int[] cause = new int[FIRST_CAPACITY];
     boolean[] closes = new boolean[FIRST_CAPACITY];
-    /** When the client's tunnel stood, or {@link Lane#NEVER}. */
-    long[] openedNanos = new long[FIRST_CAPACITY];
+    /** When the client's tunnel stood, or {@link Lane#NEVER}. Who ends it clears that: most flights have none. */
+    long[] openedNanos = never(FIRST_CAPACITY);
     /** The client has its end, good or bad. */
     boolean[] told = new boolean[FIRST_CAPACITY];
 
@@ -95,7 +94,6 @@ final class Flights {
         kind[flight] = kindNumber;
         client[flight] = clientNumber;
         connection[flight] = connectionNumber;
-        held[flight] = Decider.NOBODY;
         attempt[flight] = 0;
         backend[flight] = -1;
         place[flight] = -1;
@@ -103,7 +101,6 @@ final class Flights {
         status[flight] = 0;
         cause[flight] = -1;
         closes[flight] = false;
-        openedNanos[flight] = Lane.NEVER;
         told[flight] = false;
         triedCount[flight] = 0;
         return flight;
@@ -197,6 +194,12 @@ final class Flights {
         return used++;
     }
 
+    private static long[] never(int capacity) {
+        long[] all = new long[capacity];
+        Arrays.fill(all, Lane.NEVER);
+        return all;
+    }
+
     private static State[] newStates(int capacity) {
         State[] states = new State[capacity];
         Arrays.fill(states, State.FREE);
@@ -223,6 +226,7 @@ final class Flights {
         cause = Arrays.copyOf(cause, capacity);
         closes = Arrays.copyOf(closes, capacity);
         openedNanos = Arrays.copyOf(openedNanos, capacity);
+        Arrays.fill(openedNanos, old, capacity, Lane.NEVER);
         told = Arrays.copyOf(told, capacity);
         triedCount = Arrays.copyOf(triedCount, capacity);
         tried = Arrays.copyOf(tried, capacity);

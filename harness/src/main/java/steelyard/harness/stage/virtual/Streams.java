@@ -63,6 +63,11 @@ final class Streams {
         return rules[stream];
     }
 
+    /** Whether any goes through on connections as they are. */
+    boolean anyOctets() {
+        return Arrays.stream(rules).anyMatch(PoolRules::octets);
+    }
+
     boolean idempotent(int stream, int kind) {
         return idempotent[stream][kind];
     }
@@ -85,6 +90,8 @@ final class Streams {
         if (rules[stream].byAddress()) {
             ask.client = keys.address(stream, client);
         }
-        ask.held = held;
+        if (rules[stream].berthNanos() > 0) {
+            ask.held = held;
+        }
     }
 }

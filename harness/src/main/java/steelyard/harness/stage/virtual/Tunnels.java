@@ -34,6 +34,11 @@ final class Tunnels {
         return lanes.size() - 1;
     }
 
+    /** Whether any request asks for one. */
+    boolean any() {
+        return !lanes.isEmpty();
+    }
+
     /** When the next one is closed. */
     long nextNanos() {
         long next = Lane.NEVER;

@@ -90,6 +90,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
             exchanges.late(flight, nowNanos);
         }
         decider.poll(nowNanos);
+        carryOut(nowNanos);
     }
 
     /** Carries out what the Decider has ordered; to be called after everything that may have told it something. */
@@ -154,6 +155,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
             case READING_RESULT -> readings.result(decider, (int) (where >> 1), what, (where & 1) == 1, nowNanos);
             case PROBE_RESULT -> decider.probeAnswered((int) (where >> 1), what, (where & 1) == 1, nowNanos);
         }
+        carryOut(nowNanos);
     }
 
     @Override

@@ -24,6 +24,9 @@ final class VirtualClients {
     private final Tunnels tunnels;
     private final Berths berths;
     private final Lane[] giveUps;
+    /** Whether any client closes anything at an instant that matters. */
+    private final boolean closes;
+
     private long nextNanos = Lane.NEVER;
 
     VirtualClients(
@@ -43,6 +46,7 @@ final class VirtualClients {
         this.passages = new PassageClients(post, flights, passages, connections, streams, idleLimitNanos);
         tunnels = new Tunnels(post, flights, traffic);
         berths = new Berths(traffic, streams);
+        closes = streams.anyOctets() || tunnels.any();
         giveUps = traffic.stream().map(each -> new Lane(each.giveUpNanos())).toArray(Lane[]::new);
     }
 
@@ -92,7 +96,7 @@ final class VirtualClients {
     }
 
     private void findNext() {
-        long next = Math.min(passages.nextNanos(), tunnels.nextNanos());
+        long next = closes ? Math.min(passages.nextNanos(), tunnels.nextNanos()) : Lane.NEVER;
         for (Lane lane : giveUps) {
             next = Math.min(next, lane.nextNanos());
         }
@@ -196,15 +200,7 @@ final class VirtualClients {
     private void end(int flight, @Nullable Cause cause, int status, long nowNanos) {
         flights.told[flight] = true;
         if (flights.openedNanos[flight] != Lane.NEVER) {
-            listener.tunnelEnded(
-                    nowNanos,
-                    flights.openedNanos[flight],
-                    flights.request[flight],
-                    flights.dueNanos[flight],
-                    flights.traffic[flight],
-                    flights.kind[flight],
-                    cause,
-                    status);
+            endTunnel(flight, cause, status, nowNanos);
             return;
         }
         listener.requestEnded(
@@ -215,6 +211,19 @@ final class VirtualClients {
                 flights.kind[flight],
                 cause,
                 status);
+    }
+
+    private void endTunnel(int flight, @Nullable Cause cause, int status, long nowNanos) {
+        listener.tunnelEnded(
+                nowNanos,
+                flights.openedNanos[flight],
+                flights.request[flight],
+                flights.dueNanos[flight],
+                flights.traffic[flight],
+                flights.kind[flight],
+                cause,
+                status);
+        flights.openedNanos[flight] = Lane.NEVER;
     }
 
     // --- connections ------------------------------------------------------------------------------------------------

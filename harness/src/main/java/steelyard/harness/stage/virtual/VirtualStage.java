@@ -75,9 +75,11 @@ public final class VirtualStage implements Stage {
     @Override
     public void play(Agenda agenda) {
         Listening stage = opened();
-        while (!interrupted && (agenda.hasNext() || stage.balancer.busy() || nextSliceNanos != Lane.NEVER)) {
-            step(agenda, stage);
-            if (!agenda.hasNext()) {
+        boolean more = agenda.hasNext();
+        while (!interrupted && (more || stage.balancer.busy() || nextSliceNanos != Lane.NEVER)) {
+            step(agenda, more, stage);
+            more = agenda.hasNext();
+            if (!more) {
                 stage.balancer.finish(nowNanos);
             }
         }
@@ -90,9 +92,9 @@ public final class VirtualStage implements Stage {
     }
 
     /** Does the one thing that comes next; at one instant the agenda first, then messages, backends, balancer, samples. */
-    private void step(Agenda agenda, Listening stage) {
+    private void step(Agenda agenda, boolean more, Listening stage) {
         // A cue by hand is due at an instant that has passed: when it is found.
-        long agendaNanos = agenda.hasNext() ? Math.max(nowNanos, agenda.nextNanos()) : Lane.NEVER;
+        long agendaNanos = more ? Math.max(nowNanos, agenda.nextNanos()) : Lane.NEVER;
         Lane post = stage.post.next();
         long postNanos = post.nextNanos();
         long backendNanos = stage.backends.nextNanos();
@@ -101,6 +103,7 @@ public final class VirtualStage implements Stage {
                 Math.min(Math.min(agendaNanos, postNanos), Math.min(backendNanos, balancerNanos)), nextSliceNanos);
         if (agendaNanos == nowNanos) {
             agenda.poll(nowNanos, stage.hands.at(nowNanos), MOST_AT_ONCE);
+            stage.balancer.carryOut(nowNanos);
         } else if (postNanos == nowNanos) {
             stage.balancer.deliver(post, stage.backends, nowNanos);
         } else if (backendNanos == nowNanos) {
@@ -110,7 +113,6 @@ public final class VirtualStage implements Stage {
         } else {
             sample(stage);
         }
-        stage.balancer.carryOut(nowNanos);
     }
 
     private void sample(Listening stage) {
