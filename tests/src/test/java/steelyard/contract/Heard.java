@@ -35,6 +35,7 @@ public final class Heard implements PlayListener {
     public record Applied(long atNanos, long dueNanos, Cue cue, By by) {}
 
     public final List<Long> dues = new ArrayList<>();
+    private final Map<Long, Integer> clients = new TreeMap<>();
     public final List<Pick> picks = new ArrayList<>();
     public final List<Over> overs = new ArrayList<>();
     public final List<End> ends = new ArrayList<>();
@@ -87,6 +88,11 @@ public final class Heard implements PlayListener {
         return first;
     }
 
+    /** The client of a request within its stream. */
+    public int clientOf(long request) {
+        return clients.get(request);
+    }
+
     private void at(long nanos) {
         monotone &= nanos >= latestNanos && endings == 0;
         latestNanos = nanos;
@@ -96,6 +102,7 @@ public final class Heard implements PlayListener {
     public void requestDue(long atNanos, long request, int traffic, int kind, int client) {
         at(atNanos);
         dues.add(atNanos);
+        clients.put(request, client);
     }
 
     @Override

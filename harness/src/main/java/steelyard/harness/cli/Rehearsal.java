@@ -114,6 +114,10 @@ final class Rehearsal {
     private void open(LiveStage stage, CuesByHand cues) throws CommandFailure {
         try {
             stage.open(listener);
+            if (!stage.clientsHaveAddresses()) {
+                err.println(
+                        "steelyard: this system has no loopback network but 127.0.0.1: all clients connect from there");
+            }
             ControlAddress control = stage.openControl(cues);
             out.println("metrics %s (bearer token %s)".formatted(control.url(), control.token()));
             out.println("control %s/state, %s/cues".formatted(control.base(), control.base()));
