@@ -6,6 +6,7 @@ import steelyard.drills.model.Drill;
 /**
  * A long play whose cues never stop: every one and a half seconds something is done to the next backend, and undone two
  * seconds later. There are six things to do and seven backends, so that everything happens to everybody in turn.
+ * Connections are not kept for long: what an act made necessary is gone before the next but one.
  */
 final class SoakDrill {
     private static final List<String> BACKENDS =
@@ -27,12 +28,14 @@ final class SoakDrill {
                   method: weighted-round-robin
                   warm-up: 1s
                   retry: {at-most: 1, budget: 20%%}
+                  timeouts: {idle: 4s}
                   probe: {path: /afloat, every: 500ms, within: 400ms, misses: 2, passes: 1}
                   serves: {workers: 600, queue: 400, time: {exponential: 4ms}}
                   backends: {fulmar: {weight: 2}, gannet: {weight: 3}, petrel: {weight: 2}, kittiwake: {weight: 1}}
                 holds:
                   method: least-connections
                   retry: {at-most: 1, budget: 20%%}
+                  timeouts: {idle: 4s}
                   probe: {path: /afloat, every: 500ms, within: 400ms, misses: 2, passes: 1}
                   serves: {workers: 600, queue: 400, time: {exponential: 4ms}}
                   backends: {puffin: , razorbill: , guillemot: }
