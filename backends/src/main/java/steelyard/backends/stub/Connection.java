@@ -100,7 +100,10 @@ final class Connection extends ChannelInboundHandlerAdapter {
         exchanges.clear();
         ChannelHandlerContext open = context;
         if (open != null) {
-            open.channel().config().setOption(ChannelOption.SO_LINGER, 0);
+            // One that is closed already is told so a moment later, and takes no options any more.
+            if (open.channel().isActive()) {
+                open.channel().config().setOption(ChannelOption.SO_LINGER, 0);
+            }
             // Past the handler of TLS, if there is one: a process that dies says nothing more.
             ChannelHandlerContext tls = open.pipeline().context(SslHandler.class);
             (tls == null ? open : tls).close();

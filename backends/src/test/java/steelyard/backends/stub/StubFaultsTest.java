@@ -48,6 +48,25 @@ class StubFaultsTest {
         }
     }
 
+    /** An answer is due when the kill comes: it is sent first, and the kill finds its connection closed. */
+    @Test
+    void kill_connectionThatHasJustClosed_isLeftAlone() throws Exception {
+        try (OneStub stub = OneStub.of(OneStub.TEN_SECONDS);
+                RawClient last = stub.client();
+                RawClient idle = stub.client()) {
+            last.send("GET / HTTP/1.1\r\nHost: gannet\r\nConnection: close\r\n\r\n");
+            stub.until(figures -> figures.inService() == 1);
+            idle.send(PROBE).receive();
+
+            stub.clock.addAndGet(SERVICE.toNanos());
+            stub.apply(new Kill());
+            assertThat(last.receive().status()).isEqualTo(200);
+            assertThatExceptionOfType(SocketException.class)
+                    .isThrownBy(idle::readByte)
+                    .withMessageContaining("reset");
+        }
+    }
+
     @Test
     void revive_samePortServesAgain() throws Exception {
         try (OneStub stub = OneStub.of(OneStub.NO_TIME)) {
