@@ -20,6 +20,8 @@ public final class SliceBook implements PlayListener {
     /** Lateness of the telling that costs nothing, in slices. */
     static final int GRACE = 3;
 
+    private static final int MOST_SPARE = 64;
+
     /** A timer that fires that little before the end of a slice still closes it. */
     private static final long EARLY_NANOS = 1_000_000L;
 
@@ -32,6 +34,9 @@ public final class SliceBook implements PlayListener {
     private final ArrayDeque<Slice> spare = new ArrayDeque<>();
     private final Sample last;
     private final long[] busyBefore;
+
+    /** Stands where a slice was that has been handed out. */
+    private final Slice released;
 
     private Slice[] ring = new Slice[64];
     private long base;
@@ -59,6 +64,7 @@ public final class SliceBook implements PlayListener {
         poolOfTraffic = cast.poolsOfTraffic();
         last = new Sample(backends, pools);
         busyBefore = new long[backends];
+        released = new Slice(backends, pools, false);
         for (int b = 0; b < backends; b++) {
             last.standing[b] = cast.backends().get(b).startsDown() ? Standing.DOWN : Standing.UP;
         }
@@ -166,9 +172,17 @@ public final class SliceBook implements PlayListener {
             if (base <= lastIndex) {
                 receiver.accept(slice);
             }
-            spare.add(slice);
+            release(slice);
             base++;
         }
+    }
+
+    /** Slices of a long lag go: a machine that was stopped for a while would carry them to the end of the play. */
+    private void release(Slice slice) {
+        if (spare.size() < MOST_SPARE) {
+            spare.add(slice);
+        }
+        ring[place(slice.index)] = released;
     }
 
     private boolean settled() {
