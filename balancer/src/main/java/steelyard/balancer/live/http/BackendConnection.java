@@ -8,7 +8,6 @@ import io.netty.channel.ChannelPipeline;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpRequest;
-import io.netty.handler.codec.http.HttpRequestEncoder;
 import io.netty.util.concurrent.Future;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Outcome;
@@ -65,7 +64,7 @@ final class BackendConnection {
         return new ChannelInitializer<Channel>() {
             @Override
             protected void initChannel(Channel opened) {
-                opened.pipeline().addLast(decoder, new HttpRequestEncoder(), reader);
+                opened.pipeline().addLast(decoder, new BackendEncoder(), reader);
                 BackendTls.secure(tls, opened);
             }
         };
@@ -112,7 +111,7 @@ final class BackendConnection {
     void removeEncoder() {
         ChannelPipeline pipeline = opened().pipeline();
         pipeline.remove(reader);
-        pipeline.remove(HttpRequestEncoder.class);
+        pipeline.remove(BackendEncoder.class);
     }
 
     /** What is read from here on, and what came behind the last answer, is passed on as it is. */
