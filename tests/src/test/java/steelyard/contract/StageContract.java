@@ -253,6 +253,47 @@ public abstract class StageContract {
     }
 
     @Test
+    void tunnel_staysInFlightUntilItsClientClosesIt() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms"),
+                "rate: 10/s, requests: [{get: /bridge, upgrade: websocket, open: 500ms}]",
+                "1s",
+                ""));
+        assertThat(heard.ends).hasSize(10).allMatch(each -> each.cause() == null && each.status() == 101);
+        assertThat(heard.ends).allMatch(each -> each.atNanos() - each.dueNanos() >= 500 * MILLI);
+        assertThat(heard.overs).hasSize(10).allMatch(each -> each.outcome() == Outcome.ANSWERED);
+        for (Heard.Over over : heard.overs) {
+            long picked = heard.picks.stream()
+                    .filter(each -> each.request() == over.request())
+                    .findFirst()
+                    .orElseThrow()
+                    .atNanos();
+            assertThat(over.atNanos() - picked).isBetween(500 * MILLI, 500 * MILLI + SLACK);
+        }
+    }
+
+    @Test
+    void tunnel_isCutAtTheLimitOfADrain() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms"),
+                "rate: 10/s, requests: [{get: /bridge, upgrade: websocket, open: 8s}]",
+                "1s",
+                "  - {at: 800ms, drain: [fulmar, gannet], limit: 2s}"));
+        // Nobody is left to be picked once both drain.
+        assertThat(heard.count(Cause.CUT) + heard.count(Cause.NO_BACKEND)).isEqualTo(10);
+        assertThat(heard.count(Cause.CUT)).isBetween(5L, 8L);
+        assertThat(heard.overs).allMatch(each -> each.outcome() == Outcome.CUT);
+    }
+
+    @Test
+    void tls_onBothSides_changesNothingElse() throws CannotPlay {
+        Heard heard = play(
+                drill(roundRobin("fixed: 1ms") + "front: {tls: true}\nbackend-tls: true\n", "rate: 20/s", "2s", ""));
+        assertThat(heard.count(null)).isEqualTo(40);
+        assertThat(heard.received).containsEntry(0, 20).containsEntry(1, 20);
+    }
+
+    @Test
     void failures_benchABackend_andItsTimeFreesIt() throws CannotPlay {
         Heard heard = play(drill(
                 roundRobin("fixed: 1ms") + "bench: {after: 3, time: 1s}\n",

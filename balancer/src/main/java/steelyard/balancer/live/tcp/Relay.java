@@ -20,7 +20,7 @@ import steelyard.balancer.live.tls.Ends;
  * everything here is used on it. TLS before version 1.3 knows no half of an end: there the first end closes both ways.
  */
 public final class Relay {
-    /** Told when both connections are closed. */
+    /** Told once: when both connections are closed, or just before both are reset. */
     @FunctionalInterface
     public interface Owner {
         /** {@link Outcome#ANSWERED} when both ways came to their own end. */
@@ -75,8 +75,11 @@ public final class Relay {
     }
 
     private void stop(Outcome why) {
-        if (outcome == null) {
+        if (outcome == null && open > 0) {
             outcome = why;
+            idle.stop();
+            // Told before either end can see the reset: whoever asks why it broke off then finds the answer.
+            owner.ended(why);
             Ends.reset(client.channel);
             Ends.reset(backend.channel);
         }
@@ -84,9 +87,9 @@ public final class Relay {
 
     private void closed() {
         open--;
-        if (open == 0) {
+        if (open == 0 && outcome == null) {
             idle.stop();
-            owner.ended(outcome == null ? Outcome.ANSWERED : outcome);
+            owner.ended(Outcome.ANSWERED);
         }
     }
 
