@@ -42,7 +42,7 @@ public final class LiveStage implements Stage {
     public static final int MOST_REQUESTS_A_SECOND = 20_000;
 
     private static final long LEAD_NANOS = TimeUnit.MILLISECONDS.toNanos(20);
-    private static final long LONGEST_SETTLING_NANOS = TimeUnit.SECONDS.toNanos(2);
+    private static final long LONGEST_SETTLING_NANOS = TimeUnit.SECONDS.toNanos(10);
     private static final long SETTLING_STEP_NANOS = TimeUnit.MILLISECONDS.toNanos(20);
     private static final long LONGEST_CLOSE_SECONDS = 5;
 
