@@ -137,8 +137,8 @@ final class SoakPlay {
         say("%-45s %s %s", "plain counts", counts.balanced() ? "ok " : "NOT", counts.text());
         say("");
         say("requests: %d", counts.offered());
-        say("counts-exact: %s", sound ? "yes" : "no");
-        say("kept-pace: %s", kept ? "yes" : "no");
+        say("counts-exact: %s", sound);
+        say("kept-pace: %s", kept);
     }
 
     private void tellLeftovers(long socketsBefore, double growth) throws InterruptedException {

@@ -30,7 +30,7 @@ class SoakTest {
         assertThat(process.exitValue()).as(lines).isZero();
         assertThat(lines)
                 .containsPattern("\nrequests: [6-9][0-9]{4}\n")
-                .contains("\ncounts-exact: yes\n", "\nsockets-left: 0\n", "\nbuffers-lost: 0\n")
+                .contains("\ncounts-exact: true\n", "\nsockets-left: 0\n", "\nbuffers-lost: 0\n")
                 .containsPattern("\nheap-growth: [0-9.]+\n");
     }
 
