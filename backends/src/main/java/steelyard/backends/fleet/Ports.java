@@ -56,7 +56,7 @@ public final class Ports {
     }
 
     /**
-     * A port that nothing listens on now.
+     * A port that nobody listens on or keeps for later.
      *
      * @throws CannotStart if none is left
      */
@@ -73,7 +73,7 @@ public final class Ports {
 
     private static boolean isFree(int port) {
         try (ServerSocket socket = new ServerSocket()) {
-            socket.setReuseAddress(true);
+            socket.setReuseAddress(false); // else a port that is kept for a dead backend would look free
             socket.bind(new InetSocketAddress("127.0.0.1", port));
             return true;
         } catch (IOException busy) {

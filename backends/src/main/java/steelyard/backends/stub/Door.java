@@ -24,6 +24,7 @@ final class Door {
     private final EventLoop loop;
     private final ServerBootstrap bootstrap;
     private final InetSocketAddress address;
+    private final KeptPort kept;
     private @Nullable Channel listening;
     private boolean wanted;
     /** The opening under way, or the last one. */
@@ -33,20 +34,30 @@ final class Door {
         this.loop = loop;
         this.bootstrap = bootstrap;
         this.address = address;
+        kept = new KeptPort(address);
     }
 
     /** Completes when the port is open, fails with the {@link IOException} of the last try. */
     CompletableFuture<Void> open() {
         if (!wanted) {
             wanted = true;
+            kept.letGo();
             opening = new CompletableFuture<>();
             tryToOpen(opening, MOST_TRIES);
         }
         return opening;
     }
 
+    /** Shuts it for a while: nobody else gets the port. */
     void shut() {
+        close();
+        kept.keep();
+    }
+
+    /** Shuts it for good. */
+    void close() {
         wanted = false;
+        kept.letGo();
         Channel open = listening;
         listening = null;
         if (open != null) {

@@ -173,7 +173,7 @@ final class PlanRunner implements ReplySink {
 
     /** Stops everything; what is open ends as abandoned. Returns the connections, to be waited for. */
     List<Connection> stop() {
-        door.shut();
+        door.close();
         timer.cancel();
         return new ArrayList<>(connections);
     }

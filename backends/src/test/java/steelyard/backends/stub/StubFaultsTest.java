@@ -3,7 +3,9 @@ package steelyard.backends.stub;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatExceptionOfType;
 
+import java.net.BindException;
 import java.net.ConnectException;
+import java.net.ServerSocket;
 import java.net.SocketException;
 import java.net.SocketTimeoutException;
 import java.time.Duration;
@@ -64,6 +66,20 @@ class StubFaultsTest {
             assertThatExceptionOfType(SocketException.class)
                     .isThrownBy(idle::readByte)
                     .withMessageContaining("reset");
+        }
+    }
+
+    @Test
+    void kill_whileNobodyListens_nobodyElseGetsThePort() throws Exception {
+        try (OneStub stub = OneStub.of(OneStub.NO_TIME);
+                ServerSocket other = new ServerSocket()) {
+            other.setReuseAddress(false);
+            stub.apply(new Kill());
+            assertThatExceptionOfType(BindException.class).isThrownBy(() -> other.bind(stub.address()));
+            stub.apply(new Revive());
+            try (RawClient client = stub.client()) {
+                assertThat(client.get("/", 0).receive().status()).isEqualTo(200);
+            }
         }
     }
 
