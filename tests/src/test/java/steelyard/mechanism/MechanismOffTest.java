@@ -48,9 +48,9 @@ class MechanismOffTest {
                 off("lose-a-zone", "last resort", " *last-resort: .*\n", "", "failed, from 42 s"),
                 off("cold-return", "warm-up", " *warm-up: .*\n", "", "latency 99 % of pool gentle"),
                 off("cold-return", "cold caches", "factor: 6", "factor: 1", "latency 95 % of pool abrupt"),
-                off("sticky-drain", "keeping clients", ", keep-clients: true", "", "share of fulmar, from 16 s"),
+                off("drain-held-clients", "keeping clients", ", keep-clients: true", "", "share of fulmar, from 16 s"),
                 off(
-                        "sticky-drain",
+                        "drain-held-clients",
                         "affinity",
                         "affinity: cookie",
                         "affinity: {by: cookie, lasts: 1ms}",

@@ -117,8 +117,8 @@ public sealed interface Change {
     }
 
     /**
-     * A killed backend starts again at its old address: empty, with cold caches, and without any fault, whether that was set before the
-     * kill or since. A running one is left as it is.
+     * A killed backend starts again at its old address: empty, with cold caches, and without any fault, whether that was
+     * set before the kill or since. A running one is left as it is.
      */
     record Revive() implements Change {
         @Override

@@ -27,8 +27,8 @@ final class InForce {
     private static boolean undoes(Cue.Kind later, Cue.Kind kind) {
         return switch (kind) {
             case KILL -> later == Cue.Kind.REVIVE;
-            case SURGE -> false;
-            default -> later == Cue.Kind.HEAL;
+            case SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, LOAD, FILL -> later == Cue.Kind.HEAL;
+            case REVIVE, HEAL, REWEIGH, DRAIN, ADMIT, WITHDRAW, RETUNE, SURGE -> false;
         };
     }
 }

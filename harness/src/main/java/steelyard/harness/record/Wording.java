@@ -12,7 +12,10 @@ public final class Wording {
 
     private Wording() {}
 
-    /** A measured value, to three significant digits; counts in full, what lies between two counts to two decimals, plain numbers to four. */
+    /**
+     * A measured value, to three significant digits; counts in full, what lies between two counts to two decimals, plain
+     * numbers to four.
+     */
     public static String value(Unit unit, double value) {
         return switch (unit) {
             case SHARE -> plain(rounded(BigDecimal.valueOf(value).movePointRight(2))) + " %";

@@ -1,8 +1,8 @@
 package steelyard.balancer.core.pick;
 
 /**
- * The shortest expected delay of all, (in flight + 1) x mean service time / weight; ties in rotation, members not seen first (Banawan, Zahorjan,
- * INFOCOM 1989, from memory). {@link ServiceTimes} says what the mean is.
+ * The shortest expected delay of all, (in flight + 1) x mean service time / weight; ties in rotation, members not seen first
+ * (Banawan, Zahorjan, INFOCOM 1989, from memory). {@link ServiceTimes} says what the mean is.
  *
  * <p>A mean moves only when an answer comes, so a tournament replayed at events knows the best at any time. But the members of
  * which nothing was seen count at the mean of the others, which moves with every answer of anybody. They have a tournament
