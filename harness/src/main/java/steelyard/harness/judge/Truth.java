@@ -1,19 +1,28 @@
 package steelyard.harness.judge;
 
 import java.util.Arrays;
+import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.standing.Standing;
 import steelyard.balancer.core.standing.Transition;
 import steelyard.drills.model.Cue;
+import steelyard.drills.model.Retune;
 import steelyard.harness.record.Cast;
 import steelyard.harness.record.PlayListener.By;
 
 /**
  * Who should be served from, whatever the balancer has noticed: the set weights of the backends that are admitted and
- * can truly serve. A backend cannot after a kill, refuse or hang until revive, heal or the end of the fault.
+ * can truly serve, all alike under a method that does not weigh. A backend cannot after a kill, refuse or hang until
+ * revive, heal or the end of the fault.
  */
 final class Truth {
+    /** Shares are compared with whole counts, as the balancer does; what decimal fractions lose in binary must not decide. */
+    private static final double SLACK = 1e-9;
+
     private final Cast cast;
-    private final int[] weight;
+    private final int[] set;
+    /** By backend: whether set weights play a part in the method that its pool goes by now. */
+    private final boolean[] weighs;
+
     private final boolean[] outByHand;
     private final boolean[] killed;
     private final boolean[] refusing;
@@ -22,8 +31,12 @@ final class Truth {
     Truth(Cast cast) {
         this.cast = cast;
         int backends = cast.backends().size();
-        weight = new int[backends];
-        Arrays.setAll(weight, b -> weighs(b) ? cast.backends().get(b).weight() : 1);
+        set = new int[backends];
+        Arrays.setAll(set, backend -> cast.backends().get(backend).weight());
+        weighs = new boolean[backends];
+        for (int backend = 0; backend < backends; backend++) {
+            weighs[backend] = cast.pools().get(cast.poolOf(backend)).method().weighs();
+        }
         outByHand = new boolean[backends];
         killed = new boolean[backends];
         refusing = new boolean[backends];
@@ -33,7 +46,8 @@ final class Truth {
     /** The weight that a backend should be served by now; 0 for one that is not admitted or cannot serve. */
     int weight(int backend) {
         boolean asked = cast.backends().get(backend).tier() == 1 || tooFewOfTierOne(cast.poolOf(backend));
-        return asked && serves(backend) ? weight[backend] : 0;
+        int full = weighs[backend] ? set[backend] : 1;
+        return asked && serves(backend) ? full : 0;
     }
 
     private boolean serves(int backend) {
@@ -44,13 +58,13 @@ final class Truth {
     private boolean tooFewOfTierOne(int pool) {
         int all = 0;
         int serving = 0;
-        for (int backend = 0; backend < weight.length; backend++) {
+        for (int backend = 0; backend < set.length; backend++) {
             if (cast.poolOf(backend) == pool && cast.backends().get(backend).tier() == 1) {
                 all++;
                 serving += serves(backend) ? 1 : 0;
             }
         }
-        return serving < cast.pools().get(pool).reserve().standby() * all;
+        return serving < cast.pools().get(pool).reserve().standby() * all - SLACK;
     }
 
     void stood(Transition transition) {
@@ -59,9 +73,7 @@ final class Truth {
     }
 
     void reweighed(int backend, int newWeight) {
-        if (weighs(backend)) {
-            weight[backend] = newWeight;
-        }
+        set[backend] = newWeight;
     }
 
     void applied(Cue cue, By by) {
@@ -69,19 +81,20 @@ final class Truth {
             if (by == By.END) {
                 end(cue.kind(), backend);
             } else {
-                apply(cue.kind(), backend);
+                apply(cue, backend);
             }
         }
     }
 
-    private void apply(Cue.Kind kind, int backend) {
-        switch (kind) {
+    private void apply(Cue cue, int backend) {
+        switch (cue.kind()) {
             case KILL -> killed[backend] = true;
             case REFUSE -> refusing[backend] = true;
             case HANG -> hanging[backend] = true;
             case REVIVE -> revive(backend);
             case HEAL -> heal(backend);
-            case SLOW, FAIL, FAIL_PROBE, FLAP_PROBE, REWEIGH, DRAIN, ADMIT, WITHDRAW, LOAD, FILL, RETUNE, SURGE -> {}
+            case RETUNE -> retune(cue.settings().retune(), backend);
+            case SLOW, FAIL, FAIL_PROBE, FLAP_PROBE, REWEIGH, DRAIN, ADMIT, WITHDRAW, LOAD, FILL, SURGE -> {}
         }
     }
 
@@ -120,7 +133,9 @@ final class Truth {
         hanging[backend] = false;
     }
 
-    private boolean weighs(int backend) {
-        return cast.pools().get(cast.poolOf(backend)).method().weighs();
+    private void retune(@Nullable Retune change, int backend) {
+        if (change != null && change.method() != null) {
+            weighs[backend] = change.method().weighs();
+        }
     }
 }
