@@ -4,6 +4,7 @@ import java.util.List;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Affinity;
 import steelyard.drills.model.Backend;
+import steelyard.drills.model.Bench;
 import steelyard.drills.model.Front;
 import steelyard.drills.model.Hashing;
 import steelyard.drills.model.Health;
@@ -19,6 +20,8 @@ import steelyard.drills.model.Wire;
 /** Looks for parts of one pool that do not go together, or of which one plays no part. */
 final class PoolChecks {
     private static final long MOST_POINTS = 5_000_000;
+    /** What decimal fractions lose in binary must not decide. */
+    private static final double SLACK = 1e-9;
 
     private final Problems problems;
     private final Fields pool;
@@ -82,6 +85,18 @@ final class PoolChecks {
                     "probe-loss plays no part, since "
                             + (probe == null ? "nothing probes" : "a tcp probe only connects"),
                     "write probe: {path: /afloat} for the pool");
+        }
+    }
+
+    /** A cap is rounded down to whole backends, so that in a small pool it can leave none. */
+    void bench(@Nullable Bench bench) {
+        int members = ofPool.backends().size();
+        if (bench != null && members > 0 && bench.cap() * members < 1 - SLACK) {
+            problems.notice(
+                    pool.valuePlace("bench"),
+                    "none is ever benched, since cap is less than one of the pool's " + members
+                            + (members == 1 ? " backend" : " backends"),
+                    "write a larger cap, at least " + (100 + members - 1) / members + "%");
         }
     }
 

@@ -52,6 +52,7 @@ final class PoolReader {
         checks.weights(picking);
         checks.hash(picking);
         checks.probes(health.probe());
+        checks.bench(health.bench());
         checks.readings(picking, health);
         boolean standsBy = checks.tiers(reserve);
         boolean passes = checks.front(picking, retry, wire);

@@ -59,6 +59,20 @@ class NoticesTest {
     }
 
     @Test
+    void read_ofACapBelowOneBackend_givesTheNotice() {
+        // Of two backends 49 % are none, and 50 % are one.
+        assertThat(DrillReader.read("d", withBench("49%")).problems().stream().map(Problem::toString))
+                .containsExactly(
+                        "d:7:14: notice: none is ever benched, since cap is less than one of the pool's 2 backends;"
+                                + " write a larger cap, at least 50%");
+        assertThat(DrillReader.read("d", withBench("50%")).problems()).isEmpty();
+    }
+
+    private static String withBench(String cap) {
+        return TEXT.replace("      probe:", "      bench: {cap: " + cap + "}\n      probe:");
+    }
+
+    @Test
     void read_ofGoodThatTheBackendsAnswer_givesNone() {
         String text = TEXT.replace("rate: 10/s}", "rate: 10/s, requests: [{get: /x, good: [200, 503]}]}");
         assertThat(DrillReader.read("d", text).problems()).isEmpty();
