@@ -102,11 +102,14 @@ final class Attempts {
         ended(Outcome.ABANDONED);
     }
 
-    /** The cookie that the answer has to bring, or null when the client has it or is not held by one. */
+    /**
+     * The cookie that the answer has to bring, or null where none holds clients. Every answer brings it, also to a client
+     * that has it: how long it lasts counts from the last visit.
+     */
     @Nullable
-    String newCookie() {
+    String cookie() {
         Berths berths = pool.berths();
-        return berths != null && ask.held != backend ? berths.field(backend) : null;
+        return berths == null ? null : berths.field(backend);
     }
 
     /** Which attempt this is, from 1. */

@@ -299,9 +299,9 @@ final class Exchange implements WaitingRoom.Waiter {
         }
     }
 
-    /** Adds the cookie that holds the client, where it has to be given one. */
+    /** Adds the cookie that holds the client, where one does. */
     private void hold(HttpResponse response) {
-        String cookie = attempts.newCookie();
+        String cookie = attempts.cookie();
         if (cookie != null) {
             response.headers().add(HttpHeaderNames.SET_COOKIE, cookie);
         }

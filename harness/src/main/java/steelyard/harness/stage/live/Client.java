@@ -3,17 +3,22 @@ package steelyard.harness.stage.live;
 import java.net.InetSocketAddress;
 import java.util.ArrayDeque;
 import java.util.Iterator;
+import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
 
 /** One client of a stream: the connections that it holds idle, the last used first. Lives on the generator's loop. */
 final class Client {
     private final int numberInStream;
     private final @Nullable InetSocketAddress from;
-    private final ClientCookies cookies = new ClientCookies();
+    private final ClientCookies cookies;
     private final ArrayDeque<ClientConnection> idle = new ArrayDeque<>();
 
-    /** @param from where it connects from; null for wherever the system chooses */
-    Client(int numberInStream, @Nullable InetSocketAddress from) {
+    /**
+     * @param from where it connects from; null for wherever the system chooses
+     * @param nanoClock what its cookies run out by
+     */
+    Client(int numberInStream, @Nullable InetSocketAddress from, LongSupplier nanoClock) {
+        this.cookies = new ClientCookies(nanoClock);
         this.numberInStream = numberInStream;
         this.from = from;
     }

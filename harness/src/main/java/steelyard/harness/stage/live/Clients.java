@@ -4,6 +4,7 @@ import io.netty.handler.codec.http.FullHttpRequest;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
+import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.drills.model.Traffic;
 import steelyard.harness.stage.Clientele;
@@ -17,6 +18,7 @@ final class Clients {
     private final Way way;
     private final Clientele clientele;
     private final ClientAddresses addresses;
+    private final LongSupplier nanoClock;
     private final RequestMaker maker;
     private final @Nullable Client[] byNumber;
     private final List<Client> seen = new ArrayList<>();
@@ -27,13 +29,21 @@ final class Clients {
      * it is taken up again.
      *
      * @param stream the number of the traffic
+     * @param nanoClock what the cookies of clients run out by
      */
-    Clients(Clientele clientele, int stream, Traffic traffic, Way way, ClientAddresses addresses) {
+    Clients(
+            Clientele clientele,
+            int stream,
+            Traffic traffic,
+            Way way,
+            ClientAddresses addresses,
+            LongSupplier nanoClock) {
         this.clientele = clientele;
         this.stream = stream;
         this.traffic = traffic;
         this.way = way;
         this.addresses = addresses;
+        this.nanoClock = nanoClock;
         this.maker = new RequestMaker(clientele, stream, traffic, way.authority());
         this.byNumber = new Client[traffic.clients()];
         this.idleNanos = Math.min(LONGEST_IDLE_NANOS, way.idleLimitNanos() / 2);
@@ -46,7 +56,7 @@ final class Clients {
     Client client(int number) {
         Client client = byNumber[number];
         if (client == null) {
-            client = new Client(number, addresses.of(clientele.number(stream, number)));
+            client = new Client(number, addresses.of(clientele.number(stream, number)), nanoClock);
             byNumber[number] = client;
             seen.add(client);
         }

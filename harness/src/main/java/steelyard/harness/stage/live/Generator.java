@@ -85,7 +85,7 @@ final class Generator implements ClientConnection.Owner {
         this.streams = new Clients[traffic.size()];
         Clientele clientele = new Clientele(traffic);
         for (int i = 0; i < streams.length; i++) {
-            streams[i] = new Clients(clientele, i, traffic.get(i), ways.get(i), addresses);
+            streams[i] = new Clients(clientele, i, traffic.get(i), ways.get(i), addresses, clock::nanos);
         }
         this.bootstrap = new Bootstrap()
                 .group(loop)
