@@ -176,7 +176,7 @@ public final class Balancer implements AutoCloseable {
         byte[] random = new byte[TOKEN_BYTES];
         new SecureRandom().nextBytes(random);
         String token = HexFormat.of().formatHex(random);
-        ControlPage page = new ControlPage(settings, decider, counts, cues, token);
+        ControlPage page = new ControlPage(settings, decider, counts, this::failedHandshakes, cues, token);
         try {
             InetSocketAddress address = page.bind(transport, port);
             control = page;

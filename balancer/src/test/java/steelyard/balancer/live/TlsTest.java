@@ -29,6 +29,7 @@ import org.junit.jupiter.api.io.TempDir;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import steelyard.balancer.core.decide.Outcome;
+import steelyard.balancer.live.control.CueTaker;
 import steelyard.balancer.settings.TlsSettings;
 
 /** TLS on both sides, with the sockets of the JDK at the other ends. */
@@ -158,6 +159,11 @@ class TlsTest {
             client.send(REQUEST);
             assertThat(client.readToEnd()).doesNotContain("HTTP/1.1");
             Awaitility.await().until(() -> play.balancer.failedHandshakes(0) == 1);
+            ControlAddress control = play.balancer.openControl(0, CueTaker.NOBODY);
+            try (Wire page = Wire.to(control.address())) {
+                page.send("GET /metrics HTTP/1.1\r\nHost: a\r\nAuthorization: Bearer " + control.token() + "\r\n\r\n");
+                assertThat(page.readToEnd()).contains("steelyard_failed_handshakes_total{pool=\"terns\"} 1.0\n");
+            }
         }
     }
 

@@ -25,6 +25,7 @@ import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
+import java.util.function.IntToLongFunction;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.live.tcp.Transport;
@@ -44,6 +45,7 @@ public final class ControlPage {
     private final BalancerSettings settings;
     private final GuardedDecider decider;
     private final Counts counts;
+    private final IntToLongFunction failedHandshakes;
     private final CueTaker cues;
     private final byte[] authorization;
     private final ChannelGroup channels = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
@@ -56,13 +58,21 @@ public final class ControlPage {
     private @Nullable Meters meters;
 
     /**
+     * @param failedHandshakes how many there were at the front of a pool, by its number; from any thread
      * @param cues where the cues go that are sent here
      * @param token that a reader has to show
      */
-    public ControlPage(BalancerSettings settings, GuardedDecider decider, Counts counts, CueTaker cues, String token) {
+    public ControlPage(
+            BalancerSettings settings,
+            GuardedDecider decider,
+            Counts counts,
+            IntToLongFunction failedHandshakes,
+            CueTaker cues,
+            String token) {
         this.settings = settings;
         this.decider = decider;
         this.counts = counts;
+        this.failedHandshakes = failedHandshakes;
         this.cues = cues;
         this.state = new StatePage(settings, decider);
         this.authorization = ("Bearer " + token).getBytes(StandardCharsets.US_ASCII);
@@ -174,7 +184,7 @@ public final class ControlPage {
 
     private Meters meters() {
         if (meters == null) {
-            meters = new Meters(settings, decider, counts);
+            meters = new Meters(settings, decider, counts, failedHandshakes);
         }
         return meters;
     }

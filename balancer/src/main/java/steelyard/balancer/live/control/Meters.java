@@ -9,6 +9,7 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.function.DoubleSupplier;
+import java.util.function.IntToLongFunction;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.core.standing.Standing;
 import steelyard.balancer.live.guard.BackendReadings;
@@ -24,6 +25,7 @@ final class Meters {
     /** What each meter says, by its name. */
     static final Map<String, String> HELP = Map.ofEntries(
             Map.entry("steelyard.host.reweighs", "Changes of the weight of a host"),
+            Map.entry("steelyard.failed.handshakes", "Connections to the front of a pool whose TLS handshake failed"),
             Map.entry("steelyard.nobody", "Requests for which no backend could be picked"),
             Map.entry("steelyard.retries", "Retries asked for, by whether the budget granted them"),
             Map.entry("steelyard.picks", "Attempts picked for a backend"),
@@ -48,7 +50,8 @@ final class Meters {
     private final BackendReadings readings;
     private final PrometheusMeterRegistry registry = new PrometheusMeterRegistry(PrometheusConfig.DEFAULT);
 
-    Meters(BalancerSettings settings, GuardedDecider decider, Counts counts) {
+    /** @param failedHandshakes how many there were at the front of a pool, by its number; from any thread */
+    Meters(BalancerSettings settings, GuardedDecider decider, Counts counts, IntToLongFunction failedHandshakes) {
         this.decider = decider;
         this.counts = counts;
         this.figures = new Figures(settings);
@@ -57,7 +60,14 @@ final class Meters {
         int backend = 0;
         for (int pool = 0; pool < settings.pools().size(); pool++) {
             PoolSettings of = settings.pools().get(pool);
+            int number = pool;
             pool(Tags.of("pool", of.name()), pool);
+            if (of.front().tls() != null) {
+                counter(
+                        "steelyard.failed.handshakes",
+                        Tags.of("pool", of.name()),
+                        () -> failedHandshakes.applyAsLong(number));
+            }
             for (var one : of.backends()) {
                 backend(Tags.of("pool", of.name(), "backend", one.name()), backend);
                 backend++;
