@@ -48,9 +48,9 @@ class MechanismOffTest {
                 off("lose-a-zone", "last resort", " *last-resort: .*\n", "", "failed, from 42 s"),
                 off("cold-return", "warm-up", " *warm-up: .*\n", "", "latency 99 % of pool gentle"),
                 off("cold-return", "cold caches", "factor: 6", "factor: 1", "latency 95 % of pool abrupt"),
-                off("drain-held-clients", "keeping clients", ", keep-clients: true", "", "share of fulmar, from 16 s"),
+                off("sticky-drain", "keeping clients", ", keep-clients: true", "", "share of fulmar, from 16 s"),
                 off(
-                        "drain-held-clients",
+                        "sticky-drain",
                         "affinity",
                         "affinity: cookie",
                         "affinity: {by: cookie, lasts: 1ms}",
@@ -64,7 +64,7 @@ class MechanismOffTest {
                         "count: connections",
                         "count: requests",
                         "fairness of pool by-connection"),
-                off("stale-load", "load weights", "floor: 5%", "floor: 100%", "share of petrel"),
+                off("stale-load", "load weights", "floor: 37%", "floor: 100%", "share of petrel"),
                 off(
                         "stale-load",
                         "interval",

@@ -12,7 +12,6 @@ public final class DrillLibrary {
     private static final List<String> NAMES = List.of(
             "cold-return",
             "drain-for-patching",
-            "drain-held-clients",
             "flapping-probe",
             "long-connections",
             "lose-a-zone",
@@ -23,6 +22,7 @@ public final class DrillLibrary {
             "silent-berth",
             "slow-one",
             "stale-load",
+            "sticky-drain",
             "uneven-hosts",
             "which-probe");
 

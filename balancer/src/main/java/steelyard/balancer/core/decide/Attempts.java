@@ -11,7 +11,7 @@ import steelyard.balancer.core.standing.BackendStanding;
  *   <li>the backend that its connection follows, while that may be picked, is not full and was not tried yet;
  *   <li>the backend that affinity holds its client to, likewise, or while that drains and keeps its clients;
  *   <li>whom the method picks among those that may be picked and are not full;
- *   <li>nobody yet, where a full one could serve it and the line has room;
+ *   <li>nobody yet, where the line has room: a full one may free a place, one that is away may return;
  *   <li>nobody.
  * </ol>
  *
@@ -36,7 +36,7 @@ final class Attempts {
             begin(desk, ask, backend, nowNanos);
             return backend;
         }
-        if (desk.line.hasRoom() && placeMayFree(desk, ask, nowNanos)) {
+        if (desk.line.hasRoom() && ask.triedCount() < desk.members()) {
             desk.line.join(ask, nowNanos);
             roster.rescheduleLine(ask.pool);
             roster.sink.waited(nowNanos, ask.pool, ask.request, ask.attempt, desk.line.waiting());
@@ -180,15 +180,5 @@ final class Attempts {
         if (ask.attempt > 1) {
             desk.retries.giveBack();
         }
-    }
-
-    private boolean placeMayFree(PoolDesk desk, Ask ask, long nowNanos) {
-        int first = roster.firstOf(ask.pool);
-        for (int backend = first; backend < roster.endOf(ask.pool); backend++) {
-            if (desk.worthWaitingFor(backend - first, nowNanos) && !ask.tried(backend)) {
-                return true;
-            }
-        }
-        return false;
     }
 }

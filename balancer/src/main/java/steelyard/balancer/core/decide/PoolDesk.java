@@ -130,9 +130,9 @@ final class PoolDesk {
         return inFlight[member] >= mostInFlight;
     }
 
-    /** Whether a place that frees on this member could serve somebody who finds none now. */
-    boolean worthWaitingFor(int member, long nowNanos) {
-        return open(member) && full(member) && weights.effectiveWeight(member, nowNanos) > 0;
+    /** How many backends the pool has. */
+    int members() {
+        return set.length;
     }
 
     int inFlight(int member) {

@@ -6,7 +6,7 @@ import steelyard.balancer.settings.LoadSettings;
 /**
  * What a backend's utilisations leave of its weight, in thousandths.
  *
- * <p>headroom = min over gauges k of max(floor, 1 - min(u_k, ceiling_k) / ceiling_k) ^ gain_k, and never below the floor. A
+ * <p>headroom = min over gauges k of max(floor, 1 - min(u_k, ceiling_k) / ceiling_k) ^ gain_k, at least a thousandth. A
  * gauge above its ceiling counts as at its ceiling, so that no term turns negative (common practice).
  *
  * <pre>
@@ -23,7 +23,7 @@ public final class Headroom {
     private Headroom() {}
 
     /**
-     * The headroom in thousandths, from the floor to {@link #FULL}.
+     * The headroom in thousandths, from 1 to {@link #FULL}.
      *
      * @param utilisations of the gauges, in the settings' order; below 0 counts as 0
      */
@@ -33,7 +33,7 @@ public final class Headroom {
         for (int k = 0; k < gauges.size(); k++) {
             least = Math.min(least, term(gauges.get(k), utilisations[k], settings.floor()));
         }
-        return (int) Math.round(FULL * Math.max(settings.floor(), least));
+        return (int) Math.max(1, Math.round(FULL * least));
     }
 
     private static double term(LoadSettings.Gauge gauge, double utilisation, double floor) {

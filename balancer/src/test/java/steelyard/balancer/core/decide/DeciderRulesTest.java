@@ -182,12 +182,17 @@ class DeciderRulesTest {
     }
 
     @Test
-    void pick_nobodyOpen_doesNotWait() {
+    void pick_nobodyOpen_waitsForOneThatReturns() {
         Decider decider = decider(Stand.of(Method.STRIDE, 2).inFlight(1, 2, 50));
         decider.withdraw(0, 1);
         decider.reweigh(1, 0, 1);
 
-        assertThat(pick(decider, 0, 2)).isEqualTo(Decider.NOBODY);
+        assertThat(pick(decider, 0, 2)).isEqualTo(Decider.WAITING);
+        decider.admit(0, 3);
+        assertThat(trace.last()).isEqualTo("ticket 0 gets 0");
+        assertThat(pick(decider, 1, 4)).isEqualTo(Decider.WAITING);
+        decider.reweigh(1, 1, 5);
+        assertThat(trace.last()).isEqualTo("ticket 1 gets 1");
     }
 
     // --- affinity ---------------------------------------------------------------------------------------------------

@@ -22,7 +22,8 @@ class HeadroomTest {
      * cpu  0 %, memory  0 %                                                  -> 1000
      * cpu 95 %, memory 10 %: at its ceiling, 0, so the floor                 -> 50
      * cpu 32 %, memory  9 %, gain 2 on cpu: 0.6^2 = 0.36, 0.9                -> 360
-     * cpu 76 %, gain 2: 0.05^2 = 0.0025, below the floor                     -> 50
+     * cpu 76 %, gain 2: 0.05^2 = 0.0025, 2.5 thousandths rounded up          -> 3
+     * cpu 90 %, gain 3: the floor, 0.05^3 = 0.000125, at least a thousandth  -> 1
      * cpu 32 %, gain 0.5: sqrt(0.6) = 0.774597                               -> 775
      * cpu -5 % counts as 0                                                   -> 1000
      * </pre>
@@ -35,7 +36,8 @@ class HeadroomTest {
         "0,    0,    1,   1000",
         "0.95, 0.10, 1,   50",
         "0.32, 0.09, 2,   360",
-        "0.76, 0.09, 2,   50",
+        "0.76, 0.09, 2,   3",
+        "0.90, 0.09, 3,   1",
         "0.32, 0.09, 0.5, 775",
         "-0.05,0,    1,   1000",
     })
