@@ -336,6 +336,72 @@ public abstract class StageContract {
     }
 
     @Test
+    void retunedMethod_picksFromThenOn() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms").replace("gannet: {}", "gannet: {weight: 3}"),
+                "rate: 40/s",
+                "3s",
+                "  - {at: 1s, retune: {pool: seats}, method: stride}"));
+        long retuned = heard.cues.get(0).atNanos();
+        // Half of the picks are the first backend's before, a quarter afterwards; a few may be told on the other side.
+        List<Heard.Pick> before =
+                heard.picks.stream().filter(each -> each.atNanos() < retuned).toList();
+        List<Heard.Pick> after =
+                heard.picks.stream().filter(each -> each.atNanos() >= retuned).toList();
+        assertThat(before.stream().filter(each -> each.backend() == 0).count())
+                .isBetween(before.size() / 2L - 4, before.size() / 2L + 4);
+        assertThat(after.stream().filter(each -> each.backend() == 0).count())
+                .isBetween(after.size() / 4L - 4, after.size() / 4L + 4);
+        assertThat(after).hasSizeGreaterThan(60);
+    }
+
+    @Test
+    void retunedProbes_findABackendSooner() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 3ms") + "probe: {path: /afloat, every: 2s, within: 300ms, misses: 3, passes: 2}\n",
+                "rate: 20/s, give-up: 500ms",
+                "7s",
+                "  - {at: 500ms, retune: {pool: seats}, probe: {every: 400ms}}\n  - {at: 3s, hang: gannet}"));
+        long hung = heard.cues.get(1).atNanos();
+        Transition found = heard.transitions.stream()
+                .filter(each -> each.backend() == 1 && each.to() == Standing.DOWN && each.atNanos() > hung)
+                .findFirst()
+                .orElseThrow();
+        // Three misses at the old period take two periods and more: 4 s.
+        assertThat(found.atNanos() - hung).isLessThanOrEqualTo((3 * 400 + 300) * MILLI + SLACK);
+    }
+
+    @Test
+    void retunedDrain_cutsAtItsNewLimit() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 3s") + "drain: {limit: 30s}\n",
+                "rate: 10/s",
+                "2s",
+                "  - {at: 500ms, retune: {pool: seats}, drain: {limit: 300ms}}\n  - {at: 1s, drain: gannet}"));
+        long drained = heard.cues.get(1).atNanos();
+        assertThat(heard.overs.stream().filter(each -> each.outcome() == Outcome.CUT))
+                .isNotEmpty()
+                .allMatch(each -> each.backend() == 1)
+                .allMatch(each -> each.atNanos() >= drained + 290 * MILLI)
+                .allMatch(each -> each.atNanos() <= drained + 300 * MILLI + SLACK);
+    }
+
+    @Test
+    void drainThatKeepsClients_servesThoseHeldByCookieUntilItsLimit() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 1ms") + "affinity: cookie\ndrain: {limit: 2s, keep-clients: true}\n",
+                "clients: 8, rate: 40/s",
+                "6s",
+                "  - {at: 1s, drain: gannet}"));
+        long drained = heard.cues.get(0).atNanos();
+        List<Heard.Pick> kept = heard.picks.stream()
+                .filter(each -> each.backend() == 1 && each.atNanos() > drained)
+                .toList();
+        assertThat(kept).hasSizeGreaterThan(5).allMatch(each -> each.atNanos() <= drained + 2_000 * MILLI + SLACK);
+        assertThat(heard.ends).allMatch(each -> each.cause() == null);
+    }
+
+    @Test
     void cueByHand_takesEffectLikeThoseOfTheDrill() throws CannotPlay {
         Drill drill = drill(roundRobin("fixed: 1ms"), "rate: 50/s", "3s", "");
         Conductor conductor = new Conductor(drill, new Chance(SEED), new ConcurrentLinkedQueue<>());

@@ -44,13 +44,21 @@ class ConductorTest {
                 Arguments.of("{drain: gannet, limit: 3s}", "drain 1 within 3000 ms"),
                 Arguments.of("{drain: gannet}", "drain 1 within 0 ms"),
                 Arguments.of("{admit: gannet}", "admit 1"),
-                Arguments.of("{withdraw: gannet}", "withdraw 1"));
+                Arguments.of("{withdraw: gannet}", "withdraw 1"),
+                Arguments.of(
+                        "{retune: {pool: seats}, probe: {every: 500ms}}",
+                        "retune 0 to ProbeSettings[path=/afloat, everyNanos=500000000, withinNanos=100000000, misses=3,"
+                                + " passes=2, jitter=0.0]"),
+                Arguments.of(
+                        "{retune: {pool: seats}, drain: {limit: 3s}}",
+                        "retune 0 to DrainSettings[limitNanos=3000000000, keepsClients=false]"),
+                Arguments.of("{retune: {pool: seats}, method: stride}", "retune 0 to STRIDE"));
     }
 
     @ParameterizedTest
     @MethodSource("everyKind")
     void cue_ofTheFile_isDoneThenTold(String cue, String done) {
-        Drill drill = drill("  - " + cue.replace("{", "{at: 1s, "));
+        Drill drill = drill("  - " + "{at: 1s, " + cue.substring(1));
         play(conductor(drill), SECOND);
         assertThat(notSent()).containsExactly(done, applied(drill.cues().get(0), 1_000, "DRILL"));
     }
@@ -72,8 +80,7 @@ class ConductorTest {
         List<Cue.Kind> seen = everyKind()
                 .map(each -> byHand((String) each.get()[0], drill).kind())
                 .toList();
-        assertThat(Cue.Kind.values())
-                .allMatch(kind -> seen.contains(kind) || kind == Cue.Kind.SURGE || kind == Cue.Kind.RETUNE);
+        assertThat(Cue.Kind.values()).allMatch(kind -> seen.contains(kind) || kind == Cue.Kind.SURGE);
     }
 
     @Test
