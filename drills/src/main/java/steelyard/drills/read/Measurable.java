@@ -93,6 +93,12 @@ final class Measurable {
         if (pools.stream().anyMatch(pool -> pool.weights() == Pool.Weights.LOAD)) {
             never(draft, "under weights: load the shares of a pool have no set value", "use share instead");
         }
+        if (pools.stream().anyMatch(pool -> pool.method() == Pool.Method.HASH)) {
+            never(draft, "under method: hash the keys that come make the shares", "use share instead");
+        }
+        if (pools.stream().anyMatch(pool -> pool.picking().affinity() != null)) {
+            never(draft, "under affinity the clients that come make the shares", "use share instead");
+        }
         room(
                 draft,
                 cue,
