@@ -6,7 +6,9 @@ import static org.awaitility.Awaitility.await;
 
 import java.io.IOException;
 import java.net.SocketException;
+import java.time.Duration;
 import java.util.Random;
+import java.util.concurrent.atomic.AtomicBoolean;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
@@ -218,16 +220,16 @@ class TcpFrontTest {
     @Test
     void tcp_clientTakesNothing_backendIsSlowedDown() throws Exception {
         byte[] sent = octets(16 * MUCH);
-        boolean[] allOut = {false};
+        AtomicBoolean allOut = new AtomicBoolean();
         try (FakeBackend backend = FakeBackend.playing(wire -> {
                     wire.send(sent);
-                    allOut[0] = true;
+                    allOut.set(true);
                 });
                 LivePlay play = LivePlay.of(Pool::passing, backend.address());
                 Wire client = play.client()) {
             await().until(() -> play.inFlight() == 1);
-            Thread.sleep(500); // far longer than 16 MiB need on the loopback network
-            assertThat(allOut[0]).isFalse();
+            // Far longer than 16 MiB need on the loopback network.
+            await().during(Duration.ofMillis(500)).until(() -> !allOut.get());
             assertThat(client.readOctets(sent.length)).isEqualTo(sent);
         }
     }

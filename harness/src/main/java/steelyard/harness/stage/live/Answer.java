@@ -53,7 +53,7 @@ final class Answer {
     private static Cause ofError(String error, boolean cut) {
         return switch (error) {
             case "destination_unavailable" -> Cause.NO_BACKEND;
-            case "connection_refused", "connection_timeout" -> Cause.REFUSED;
+            case "connection_refused", "connection_timeout", "tls_protocol_error" -> Cause.REFUSED;
             case "connection_terminated" -> cut ? Cause.CUT : Cause.RESET;
             case "http_response_timeout" -> Cause.GATEWAY_TIMEOUT;
             case "connection_read_timeout" -> Cause.TIMED_OUT;
