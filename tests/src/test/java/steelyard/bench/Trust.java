@@ -10,6 +10,7 @@ import java.util.HashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
+import java.util.TreeMap;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Measure.Unit;
 import steelyard.drills.read.DrillLibrary;
@@ -41,10 +42,8 @@ public final class Trust {
     private final Path launcher;
     private final Path work;
     private final Transport transport;
-    private final List<String> lines = new ArrayList<>();
-    private final List<String> misses = new ArrayList<>();
-    private int compared;
-    private int inside;
+    /** The lines of the table, by drill. */
+    private final Map<String, List<String>> lines = new TreeMap<>();
 
     private Trust(Path launcher, Path work, Transport transport) {
         this.launcher = launcher;
@@ -52,17 +51,23 @@ public final class Trust {
         this.transport = transport;
     }
 
-    /** Takes the file for the table and the launcher. */
+    /** Takes the file for the table, the launcher, and, to redo these alone in a table that is there, names of drills. */
     public static void main(String[] args) throws Exception {
         Path table = Path.of(args[0]);
         Transport transport = MeasuredTransport.now();
         say("a hop takes %.0f us here", transport.hopNanos() / 1e3);
         Trust trust = new Trust(Path.of(args[1]), Files.createTempDirectory("trust"), transport);
-        for (String name : DrillLibrary.names()) {
+        List<String> names = List.of(args).subList(2, args.length);
+        if (!names.isEmpty()) {
+            trust.keep(table);
+        }
+        for (String name : names.isEmpty() ? DrillLibrary.names() : names) {
             trust.compare(name);
         }
-        trust.write(table);
-        say("inside-band: %.3f", (double) trust.inside / trust.compared);
+        List<String> all = trust.lines.values().stream().flatMap(List::stream).toList();
+        trust.write(table, all);
+        all.stream().filter(line -> line.contains("**")).forEach(Trust::sayLine);
+        say("inside-band: %.3f", (double) inside(all) / compared(all));
     }
 
     private void compare(String name) throws IOException, InterruptedException, CannotPlay {
@@ -80,12 +85,33 @@ public final class Trust {
         for (int i = 0; i < REHEARSALS; i++) {
             rehearsed.add(rehearse(name, FIRST_LIVE_SEED + i));
         }
-        int before = compared;
-        int insideBefore = inside;
+        lines.put(name, new ArrayList<>());
         for (int figure = 0; figure < forecast.figures().size(); figure++) {
             compare(name, forecast.figures().get(figure), forecast.spread(figure), rehearsed);
         }
-        say("%-22s %d of %d inside", name, inside - insideBefore, compared - before);
+        say("%-22s %d of %d inside", name, inside(lines.get(name)), compared(lines.get(name)));
+    }
+
+    /** The lines of an earlier table; those of drills that are compared anew are replaced. */
+    private void keep(Path table) throws IOException {
+        for (String line : Files.readAllLines(table)) {
+            String drill = line.startsWith("| ") ? line.split(" \\| ")[0].substring(2) : "";
+            if (DrillLibrary.names().contains(drill)) {
+                lines.computeIfAbsent(drill, d -> new ArrayList<>()).add(line);
+            }
+        }
+    }
+
+    private static int compared(List<String> of) {
+        return of.size() * REHEARSALS;
+    }
+
+    /** Values outside stand between two pairs of stars. */
+    private static int inside(List<String> of) {
+        int stars = of.stream()
+                .mapToInt(line -> line.split("\\*\\*", -1).length - 1)
+                .sum();
+        return compared(of) - stars / 2;
     }
 
     private static double rate(Drill drill) {
@@ -100,16 +126,12 @@ public final class Trust {
             return;
         }
         StringBuilder live = new StringBuilder();
-        int held = 0;
         for (Map<String, Double> run : rehearsed) {
             double value = run.getOrDefault(figure.text(), Double.NaN);
             boolean in = value >= spread.low95() && value <= spread.high95();
-            held += in ? 1 : 0;
             live.append(live.isEmpty() ? "" : ", ")
                     .append(in ? words(figure, value) : "**" + words(figure, value) + "**");
         }
-        compared += REHEARSALS;
-        inside += held;
         String line = "| %s | %s | %s | %s to %s | %s |"
                 .formatted(
                         drill,
@@ -118,10 +140,7 @@ public final class Trust {
                         words(figure, spread.low95()),
                         words(figure, spread.high95()),
                         live);
-        lines.add(line);
-        if (held < REHEARSALS) {
-            misses.add(line);
-        }
+        lines.get(drill).add(line);
     }
 
     private static String words(Figure figure, double value) {
@@ -163,7 +182,7 @@ public final class Trust {
         return values;
     }
 
-    private void write(Path table) throws IOException {
+    private void write(Path table, List<String> all) throws IOException {
         List<String> text = new ArrayList<>();
         text.add("# Forecast beside rehearsal");
         text.add("");
@@ -171,18 +190,17 @@ public final class Trust {
                 Locale.ROOT,
                 "%d of %d values of %d rehearsals a drill lie in the 95 %% band of a forecast of %d plays (%.1f %%). "
                         + "A hop took %.0f us, measured before. Values outside are bold.",
-                inside,
-                compared,
+                inside(all),
+                compared(all),
                 REHEARSALS,
                 PLAYS,
-                100.0 * inside / compared,
+                100.0 * inside(all) / compared(all),
                 transport.hopNanos() / 1e3));
         text.add("");
         text.add("| drill | measure | median | 95 % band | rehearsals |");
         text.add("|---|---|---:|---:|---|");
-        text.addAll(lines);
+        text.addAll(all);
         Files.write(table, text);
-        misses.forEach(Trust::sayLine);
     }
 
     private static void sayLine(String line) {
