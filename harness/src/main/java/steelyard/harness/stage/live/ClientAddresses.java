@@ -27,7 +27,12 @@ final class ClientAddresses {
      * @throws CannotPlay when it has but one address and the drill tells clients apart by theirs
      */
     static ClientAddresses of(Drill drill) throws CannotPlay {
-        if (allowed()) {
+        return of(drill, new InetSocketAddress(Clientele.address(0), 0));
+    }
+
+    /** As {@link #of(Drill)}; {@code tried} stands for all that clients would connect from. */
+    static ClientAddresses of(Drill drill, InetSocketAddress tried) throws CannotPlay {
+        if (allowed(tried)) {
             return new ClientAddresses(true);
         }
         for (Pool pool : drill.stage().pools()) {
@@ -47,9 +52,9 @@ final class ClientAddresses {
                 || affinity != null && affinity.by() == Affinity.By.CLIENT;
     }
 
-    private static boolean allowed() {
+    private static boolean allowed(InetSocketAddress tried) {
         try (Socket socket = new Socket()) {
-            socket.bind(new InetSocketAddress(Clientele.address(0), 0));
+            socket.bind(tried);
             return true;
         } catch (IOException e) {
             return false;
