@@ -9,6 +9,7 @@ import java.util.Set;
 import java.util.concurrent.ConcurrentLinkedQueue;
 import java.util.concurrent.TimeUnit;
 import java.util.stream.Stream;
+import steelyard.accounting.OpenSockets;
 import steelyard.backends.behave.Chance;
 import steelyard.drills.model.Drill;
 import steelyard.harness.conduct.Conductor;

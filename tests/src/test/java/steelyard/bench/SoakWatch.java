@@ -9,6 +9,7 @@ import java.lang.management.MemoryUsage;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
+import steelyard.accounting.OpenSockets;
 
 /**
  * Collects everything every so often and notes what lives on: once before the play, then from a thread of its own.

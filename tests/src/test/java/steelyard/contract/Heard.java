@@ -69,6 +69,11 @@ public final class Heard implements PlayListener {
         return ends.stream().filter(each -> each.cause() == cause).count();
     }
 
+    /** Attempts that were picked and have not ended. */
+    public int inFlight() {
+        return picks.size() - overs.size();
+    }
+
     /** Ends of the requests due in [from, to) milliseconds. */
     public List<End> dueBetween(long fromMillis, long toMillis) {
         return ends.stream()

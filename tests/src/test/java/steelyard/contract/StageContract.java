@@ -336,6 +336,61 @@ public abstract class StageContract {
     }
 
     @Test
+    void fill_lowersTheWeightAtTheNextReading_untilItIsHealed() throws CannotPlay {
+        Heard heard = play(drill("""
+                method: stride
+                weights: load
+                load: {every: 200ms, within: 150ms, stale-after: 10s, gauges: {disk: 100%}}
+                serves: {workers: 64, time: {fixed: 1ms}, gauges: {disk: 20%}}
+                backends: {fulmar: {}, gannet: {}}
+                """, "rate: 50/s", "8s", "  - {at: 1s, fill: fulmar, to: 95%, for: 4s}"));
+        // 1 - 95 % would be 5 %; no headroom falls below a tenth.
+        assertThat(heard.readings.stream().filter(each -> each.backend() == 0))
+                .extracting(Heard.Read::headroomMilli)
+                .startsWith(800)
+                .contains(100)
+                .containsOnly(800, 100)
+                .endsWith(800);
+        assertThat(heard.readings.stream().filter(each -> each.backend() == 1))
+                .extracting(Heard.Read::headroomMilli)
+                .containsOnly(800);
+        // Of requests 150 to 249, due from the third second to the fifth, 100 x 1 / 9 = 11.1; a stride is off by one.
+        assertThat(heard.backendsPicked().subList(150, 250).stream().filter(each -> each == 0))
+                .hasSizeBetween(9, 13);
+        // Both the same again: every other one of the last fifty.
+        assertThat(heard.backendsPicked().subList(350, 400).stream().filter(each -> each == 0))
+                .hasSizeBetween(23, 27);
+    }
+
+    @Test
+    void loadThatCannotBeRead_goesStaleOnce_andTheSetWeightStandsAgain() throws CannotPlay {
+        Heard heard = play(drill("""
+                method: stride
+                weights: load
+                load: {every: 300ms, within: 250ms, stale-after: 3s, gauges: {memory: 100%}}
+                serves: {workers: 64, time: {fixed: 1ms}, gauges: {memory: 80%}}
+                backends: {fulmar: {}, gannet: {}}
+                """, "rate: 20/s, give-up: 500ms", "8s", "  - {at: 1s, hang: fulmar}"));
+        long hung = heard.cues.get(0).atNanos();
+        List<Heard.Read> read =
+                heard.readings.stream().filter(each -> each.backend() == 0).toList();
+        assertThat(read.stream().filter(Heard.Read::fresh))
+                .isNotEmpty()
+                .allMatch(each -> each.headroomMilli() == 200 && each.atNanos() <= hung + MILLI);
+        assertThat(read.stream().filter(each -> !each.fresh())).singleElement().satisfies(stale -> {
+            assertThat(stale.headroomMilli()).isEqualTo(1_000);
+            // The last that was read began a period and a time limit before the hang at the earliest.
+            assertThat(stale.atNanos() - hung)
+                    .isBetween((3_000 - 300 - 250) * MILLI - SLACK, 3_000 * MILLI + MILLI + SLACK);
+        });
+        assertThat(heard.readings.stream().filter(each -> each.backend() == 1))
+                .allMatch(each -> each.fresh() && each.headroomMilli() == 200);
+        // From then on 1 to 0.2: of the 40 requests of the last two seconds 40 x 5 / 6 = 33.3.
+        assertThat(heard.backendsPicked().subList(120, 160).stream().filter(each -> each == 0))
+                .hasSizeBetween(31, 36);
+    }
+
+    @Test
     void retunedMethod_picksFromThenOn() throws CannotPlay {
         Heard heard = play(drill(
                 roundRobin("fixed: 1ms").replace("gannet: {}", "gannet: {weight: 3}"),

@@ -12,6 +12,8 @@ import java.util.TreeMap;
 import java.util.stream.Collectors;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.Timeout;
+import org.junit.jupiter.api.extension.ExtendWith;
+import steelyard.accounting.Accounting;
 import steelyard.backends.behave.Chance;
 import steelyard.balancer.core.standing.Transition;
 import steelyard.drills.model.Cause;
@@ -29,6 +31,7 @@ import steelyard.harness.stage.virtual.VirtualStage;
  * equal; where it has, both lie in bounds that leave room for a machine that stands still for a second.
  */
 @Timeout(60)
+@ExtendWith(Accounting.class)
 class StagesAgreeTest {
     private static final long SEED = 9;
     private static final long MILLI = 1_000_000;
@@ -149,6 +152,7 @@ class StagesAgreeTest {
             stage.open(heard);
             stage.play(new Conductor(drill, new Chance(SEED), new ArrayDeque<>()));
         }
+        assertThat(heard.inFlight()).isZero();
         return heard;
     }
 

@@ -6,6 +6,8 @@ import java.util.HashMap;
 import java.util.Map;
 import java.util.concurrent.ConcurrentLinkedQueue;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
+import steelyard.accounting.Accounting;
 import steelyard.backends.behave.Chance;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.contract.Heard;
@@ -16,6 +18,7 @@ import steelyard.harness.stage.CannotPlay;
 import steelyard.harness.stage.live.LiveStage;
 
 /** What only a wire has: TLS, tunnels, clients with addresses and cookies of their own. */
+@ExtendWith(Accounting.class)
 class LiveWireTest {
     private static final long SEED = 7;
 
@@ -27,6 +30,7 @@ class LiveWireTest {
                           pools:
                             seats:
                               serves: {workers: 64, time: {fixed: 1ms}}
+                              timeouts: {connect: 10s, first-byte: 15s}
                               backends: {fulmar: {}, gannet: {}, petrel: {}}
                         %s
                         traffic:
@@ -46,6 +50,7 @@ class LiveWireTest {
         }
         assertThat(heard.dues).hasSize(80);
         assertThat(heard.ends).hasSize(80);
+        assertThat(heard.inFlight()).isZero();
         assertThat(heard.ends.stream().filter(each -> each.cause() != null)).isEmpty();
         return heard;
     }
@@ -64,7 +69,7 @@ class LiveWireTest {
     void tlsOnBothSides_serves() throws CannotPlay {
         Heard heard = play(drill(
                 "method: round-robin\nfront: {tls: true}\nbackend-tls: true\n"
-                        + "probe: {path: /afloat, every: 200ms, within: 150ms, misses: 1, passes: 1}",
+                        + "probe: {path: /afloat, every: 200ms, within: 10s, misses: 1, passes: 1}",
                 "{get: /sailings}"));
         assertThat(heard.transitions).isEmpty();
     }
@@ -79,7 +84,16 @@ class LiveWireTest {
 
     @Test
     void upgrade_staysInFlightAsLongAsItIsOpen() throws CannotPlay {
-        Heard heard = play(drill("method: round-robin", "{get: /berths, upgrade: websocket, open: 500ms}"));
+        assertTunnelsStayOpen("method: round-robin");
+    }
+
+    @Test
+    void upgrade_overTlsOnBothSides_staysInFlightAsLongAsItIsOpen() throws CannotPlay {
+        assertTunnelsStayOpen("method: round-robin\nfront: {tls: true}\nbackend-tls: true");
+    }
+
+    private static void assertTunnelsStayOpen(String pool) throws CannotPlay {
+        Heard heard = play(drill(pool, "{get: /berths, upgrade: websocket, open: 500ms}"));
         assertThat(heard.ends).allMatch(each -> each.status() == 101);
         assertThat(heard.overs).hasSize(80).allMatch(each -> each.outcome() == Outcome.ANSWERED);
         Map<Long, Long> picked = new HashMap<>();
