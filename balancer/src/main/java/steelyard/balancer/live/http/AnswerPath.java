@@ -5,10 +5,12 @@ import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.LastHttpContent;
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.decide.Outcome;
 
 /** The way of an answer from a backend to the client: straight through, or held back while it may be tried elsewhere. */
 final class AnswerPath {
     private final PoolFront pool;
+    private final Attempts attempts;
     private final ClientOutput output;
     private final HttpMethod method;
     private final boolean oldClient;
@@ -17,8 +19,9 @@ final class AnswerPath {
     private boolean closesClient;
     private boolean endShownByClosing;
 
-    AnswerPath(PoolFront pool, ClientOutput output, HttpMethod method, boolean oldClient) {
+    AnswerPath(PoolFront pool, Attempts attempts, ClientOutput output, HttpMethod method, boolean oldClient) {
         this.pool = pool;
+        this.attempts = attempts;
         this.output = output;
         this.method = method;
         this.oldClient = oldClient;
@@ -53,6 +56,7 @@ final class AnswerPath {
 
     /** Passes a 101 on; what follows it is no longer HTTP. */
     void upgrade(HttpResponse response, String protocol) {
+        attempts.answered(response);
         AnswerHeads.prepareUpgrade(response, pool, protocol);
         passedOn = true;
         output.write(response);
@@ -60,38 +64,51 @@ final class AnswerPath {
         output.flush();
     }
 
-    /** Holds the answer back until it is whole. */
-    void hold(HttpResponse response) {
-        held = new HeldAnswer(response);
+    /**
+     * Passes the head of an answer on, or holds the answer back until it is whole.
+     *
+     * @param keeps whether the client's connection may stay open behind it
+     */
+    void head(HttpResponse response, boolean keeps) {
+        attempts.answered(response);
+        if (attempts.triesElsewhere(response.status().code())) {
+            held = new HeldAnswer(response);
+        } else {
+            pass(response, keeps);
+        }
     }
 
-    /** @param close whether the client's connection closes behind it */
-    void pass(HttpResponse response, boolean close) {
+    private void pass(HttpResponse response, boolean keeps) {
         int status = response.status().code();
         boolean empty = HttpMethod.HEAD.equals(method) || status == 204 || status == 304;
         endShownByClosing = AnswerHeads.prepare(response, pool, empty, oldClient);
-        closesClient = close;
+        closesClient = !keeps || attempts.saysClose();
         passedOn = true;
-        output.passHead(response, close);
+        output.passHead(response, closesClient);
     }
 
-    /** Takes a piece of content; true if an answer that is held became too large for that and has to be passed on. */
-    boolean content(HttpContent piece) {
+    /** Takes a piece of content; one that is held and becomes too large for that is passed on. */
+    void content(HttpContent piece, boolean keeps) {
+        HttpContent bare = Trailers.dropped(piece);
         HeldAnswer answer = held;
         if (answer == null) {
-            output.write(piece);
-            return false;
+            output.write(bare);
+        } else {
+            answer.add(bare);
         }
-        answer.add(piece);
-        return answer.full();
+        if (bare instanceof LastHttpContent) {
+            attempts.ended(Outcome.ANSWERED);
+        } else if (answer != null && answer.full()) {
+            release(keeps);
+        }
     }
 
     /** Passes on what is held. */
-    void release(boolean close) {
+    void release(boolean keeps) {
         HeldAnswer answer = held;
         if (answer != null) {
             held = null;
-            pass(answer.head(), close);
+            pass(answer.head(), keeps);
             answer.pieces().forEach(output::write);
         }
     }

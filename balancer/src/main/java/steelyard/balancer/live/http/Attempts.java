@@ -1,12 +1,14 @@
 package steelyard.balancer.live.http;
 
+import io.netty.handler.codec.http.HttpHeaderNames;
 import io.netty.handler.codec.http.HttpMethod;
 import io.netty.handler.codec.http.HttpRequest;
-import org.jspecify.annotations.Nullable;
+import io.netty.handler.codec.http.HttpResponse;
 import steelyard.balancer.core.decide.Ask;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.live.guard.WaitingRoom;
+import steelyard.balancer.settings.RetrySettings;
 
 /**
  * The attempts at one request as the Decider counts them.
@@ -26,22 +28,30 @@ final class Attempts {
     private int status;
 
     /**
-     * @param head prepared for the backend
+     * @param head prepared for the backend, and given a number here unless it has one
      * @param room where a try waits when every backend is full
      * @param client the key of the client's address
      */
-    Attempts(PoolFront pool, HttpRequest head, long number, WaitingRoom room, long client) {
+    Attempts(PoolFront pool, HttpRequest head, WaitingRoom room, long client) {
         this.pool = pool;
         this.method = head.method();
         this.room = room;
         ask.pool = pool.number();
-        ask.request = number;
+        ask.request = number(head, pool);
         ask.client = client;
         ask.key = RequestKey.of(pool.settings().pick().hash(), head, client);
         Berths berths = pool.berths();
         if (berths != null) {
             ask.held = berths.held(head.headers());
         }
+    }
+
+    private static long number(HttpRequest head, PoolFront pool) {
+        long number = pool.numbers().of(head.headers());
+        if (number < 0) { // of our own; one that was given stands there already
+            head.headers().set(Fields.REQUEST, Long.toString(number));
+        }
+        return number;
     }
 
     /**
@@ -102,16 +112,6 @@ final class Attempts {
         ended(Outcome.ABANDONED);
     }
 
-    /**
-     * The cookie that the answer has to bring, or null where none holds clients. Every answer brings it, also to a client
-     * that has it: how long it lasts counts from the last visit.
-     */
-    @Nullable
-    String cookie() {
-        Berths berths = pool.berths();
-        return berths == null ? null : berths.field(backend);
-    }
-
     /** Which attempt this is, from 1. */
     int attempt() {
         return ask.attempt;
@@ -121,13 +121,27 @@ final class Attempts {
         return backend;
     }
 
-    int status() {
-        return status;
+    /**
+     * The head of an answer came. It is given the cookie that holds the client where one does: every answer brings it, also
+     * to a client that has it, as how long it lasts counts from the last visit.
+     */
+    void answered(HttpResponse response) {
+        status = response.status().code();
+        Berths berths = pool.berths();
+        if (berths != null) {
+            response.headers().add(HttpHeaderNames.SET_COOKIE, berths.field(backend));
+        }
     }
 
-    /** The status of the answer whose head came. */
-    void status(int given) {
-        status = given;
+    /** Whether the drill has an answer of this status tried elsewhere, as long as attempts are left. */
+    boolean triesElsewhere(int answered) {
+        RetrySettings retry = pool.settings().retry();
+        return retry != null && retry.also().contains(answered) && ask.attempt <= retry.atMost();
+    }
+
+    /** Whether the answer should tell the client to close its connection. */
+    boolean saysClose() {
+        return pool.decider().saysClose(backend);
     }
 
     /** The attempt in flight has ended; nothing happens when none is. */

@@ -76,7 +76,7 @@ final class BackendConnection {
         channel = connecting.channel();
         deadline = new Deadline(channel.eventLoop(), this::timePassed);
         if (exchange != null) {
-            exchange.opening(this);
+            exchange.request().opening(this);
         }
         Ends.whenUsable(connecting, this::opened);
     }

@@ -83,7 +83,7 @@ final class BackendReader extends ChannelInboundHandlerAdapter {
 
     private void head(Exchange served, HttpResponse response) {
         int status = response.status().code();
-        if (status == 101 && served.agreesTo(response)) {
+        if (status == 101 && served.request().agreed(response) != null) {
             switching = response;
         } else if (status == 101 || !AnswerHeads.codingKnown(response)) {
             connection.fail(Outcome.MALFORMED, OwnAnswer.MALFORMED);
@@ -106,13 +106,13 @@ final class BackendReader extends ChannelInboundHandlerAdapter {
         if (answered) {
             settle(served);
         } else {
-            served.flushAnswer();
+            served.client().output().flush();
         }
     }
 
     private void settle(Exchange served) {
         answered = false;
-        connection.release(reusable && served.requestComplete() && decoder.isDrained());
+        connection.release(reusable && served.request().complete() && decoder.isDrained());
         served.settled();
     }
 
@@ -120,7 +120,7 @@ final class BackendReader extends ChannelInboundHandlerAdapter {
     public void channelWritabilityChanged(ChannelHandlerContext context) {
         Exchange served = connection.served();
         if (served != null) {
-            served.backendWritable();
+            served.client().updateReading();
         }
     }
 

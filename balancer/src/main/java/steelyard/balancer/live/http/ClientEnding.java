@@ -13,14 +13,16 @@ final class ClientEnding {
 
     private final Channel channel;
     private final ClientOutput output;
+    private final SentAhead ahead;
     private final ClientClock clock;
     private final long idleNanos;
     private boolean begun;
 
     /** @param idleNanos how long what was written may take to leave */
-    ClientEnding(Channel channel, ClientOutput output, ClientClock clock, long idleNanos) {
+    ClientEnding(Channel channel, ClientOutput output, SentAhead ahead, ClientClock clock, long idleNanos) {
         this.channel = channel;
         this.output = output;
+        this.ahead = ahead;
         this.clock = clock;
         this.idleNanos = idleNanos;
     }
@@ -32,6 +34,7 @@ final class ClientEnding {
     /** The client is gone. */
     void gone() {
         begun = true;
+        ahead.drop();
         clock.stop();
     }
 
@@ -48,6 +51,7 @@ final class ClientEnding {
      */
     void gently() {
         begun = true;
+        ahead.drop();
         channel.config().setAutoRead(true);
         if (!(channel instanceof DuplexChannel)) {
             afterFlush();

@@ -8,10 +8,6 @@ import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpUtil;
 import io.netty.util.ReferenceCountUtil;
-import org.jspecify.annotations.Nullable;
-import steelyard.balancer.core.decide.Decider;
-import steelyard.balancer.live.guard.ClientKeys;
-import steelyard.balancer.live.tcp.Relay;
 
 /**
  * One client connection: takes its requests one after the other, and answers in their order.
@@ -23,15 +19,10 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
     private final PoolFront pool;
     private final LoopConnections connections;
     private final Channel channel;
-    private final ClientOutput output;
     private final RequestDecoder decoder;
-    private final ClientEncoder encoder;
     private final ClientClock clock;
-    private final ClientEnding ending;
     private final SentAhead ahead = new SentAhead();
-    private @Nullable Exchange exchange;
-    private int pinned = Decider.NOBODY;
-    private long clientKey;
+    private final ClientSide client;
     private boolean catchingUp;
 
     /** @param decoder what the requests of this connection come from */
@@ -44,106 +35,44 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         this.pool = pool;
         this.connections = connections;
         this.channel = channel;
-        this.output = new ClientOutput(channel, encoder, pool.balancer());
         this.decoder = decoder;
-        this.encoder = encoder;
         this.clock = new ClientClock(channel.eventLoop(), pool.settings().timeouts(), this::timePassed);
-        this.ending = new ClientEnding(
-                channel, output, clock, pool.settings().timeouts().idleNanos());
+        this.client = new ClientSide(pool, channel, decoder, encoder, clock, ahead, this::catchUp);
     }
 
-    // ---- from the client
+    // ---- what the channel tells
 
     @Override
     public void channelActive(ChannelHandlerContext context) {
-        clientKey = ClientKeys.of(channel.remoteAddress());
-        clock.idle();
+        client.opened();
     }
 
     @Override
     public void channelRead(ChannelHandlerContext context, Object message) {
         HttpObject part = (HttpObject) message;
-        if (ending.begun()) {
+        if (client.ends()) {
             ReferenceCountUtil.release(message);
         } else if (!ahead.isEmpty() || waitsItsTurn(part)) {
             ahead.add(part);
-            updateReading();
+            client.updateReading();
         } else {
             accept(part);
-        }
-    }
-
-    /** A request waits for the answer before it, and for a client that takes answers: none may pile up here. */
-    private boolean waitsItsTurn(HttpObject part) {
-        return part instanceof HttpRequest && (exchange != null && exchange.requestComplete() || !channel.isWritable());
-    }
-
-    private void accept(HttpObject part) {
-        if (part instanceof HttpRequest request) {
-            begin(request);
-        } else if (exchange == null || exchange.requestComplete()) {
-            ReferenceCountUtil.release(part); // the empty end of a request without content
-        } else if (part.decoderResult().isFailure()) {
-            ReferenceCountUtil.release(part);
-            contentFaulty(exchange, RequestCheck.faulty(part.decoderResult().cause()));
-        } else {
-            clock.clear();
-            exchange.content((HttpContent) part);
-            updateReading();
-        }
-    }
-
-    private void begin(HttpRequest request) {
-        clock.clear();
-        output.answers(request);
-        boolean oldClient = request.protocolVersion().minorVersion() == 0;
-        boolean keep = !oldClient && HttpUtil.isKeepAlive(request);
-        boolean content = request.decoderResult().isSuccess() && RequestCheck.hasContent(request);
-        OwnAnswer here = RequestCheck.refusal(request);
-        if (here == null) {
-            here = RequestHeads.prepare(request, pool, channel);
-            if (here != null && here.status().code() != 400 && keep && !content) {
-                output.own(here, false);
-                answered(true);
-                return;
-            }
-        }
-        if (here != null) {
-            answerAndClose(here);
-            return;
-        }
-        exchange = new Exchange(this, pool, connections, request, keep, oldClient);
-        exchange.begin();
-        updateReading();
-    }
-
-    private void contentFaulty(Exchange running, OwnAnswer answer) {
-        boolean silent = !running.passedOn();
-        running.abandon();
-        exchange = null;
-        if (silent) {
-            answerAndClose(answer);
-        } else {
-            truncate(false);
         }
     }
 
     @Override
     public void channelReadComplete(ChannelHandlerContext context) {
         if (decoder.holds()) {
-            updateReading();
+            client.updateReading();
         }
-        if (exchange != null) {
-            exchange.flushRequest();
-        } else if (!ending.begun() && decoder.headOpen()) {
-            clock.head();
-        }
+        client.readOut();
     }
 
     @Override
     public void channelWritabilityChanged(ChannelHandlerContext context) {
-        if (exchange != null) {
-            exchange.clientWritable(channel.isWritable());
+        Exchange running = client.exchange();
+        if (running != null) {
+            running.request().clientWritable(channel.isWritable());
         } else {
             catchUp();
         }
@@ -151,13 +80,7 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
 
     @Override
     public void channelInactive(ChannelHandlerContext context) {
-        ending.gone();
-        ahead.drop();
-        Exchange running = exchange;
-        exchange = null;
-        if (running != null) {
-            running.abandon();
-        }
+        client.gone();
     }
 
     @Override
@@ -165,119 +88,71 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
         channel.close();
     }
 
-    /** Reads on while nothing was sent ahead and what comes can be passed on. */
-    void updateReading() {
-        boolean content = !ending.begun() && exchange != null && !exchange.requestComplete();
-        boolean reading = ending.begun() || !decoder.holds() && ahead.isEmpty() && (!content || takesContent());
-        if (channel.config().isAutoRead() != reading) {
-            channel.config().setAutoRead(reading);
-        }
-        if (content && reading) {
-            clock.content();
-        } else if (exchange != null) {
-            clock.clear();
-        }
-    }
-
-    private boolean takesContent() {
-        return exchange != null && exchange.takesContent();
-    }
-
     private void timePassed(ClientClock.Limit limit) {
         switch (limit) {
             case NONE -> {}
             case IDLE, END -> channel.close();
-            case HEAD -> answerAndClose(OwnAnswer.SLOW_HEAD);
+            case HEAD -> client.answerAndClose(OwnAnswer.SLOW_HEAD);
             case CONTENT -> {
-                if (exchange != null) {
-                    exchange.clientStalled();
+                Exchange running = client.exchange();
+                if (running != null) {
+                    running.clientStalled();
                 }
             }
         }
     }
 
-    // ---- picking
+    // ---- requests
 
-    /** What the client is known by. */
-    long clientKey() {
-        return clientKey;
+    /** A request waits for the answer before it, and for a client that takes answers: none may pile up here. */
+    private boolean waitsItsTurn(HttpObject part) {
+        return part instanceof HttpRequest
+                && (client.exchange() != null && client.requestComplete() || !channel.isWritable());
     }
 
-    int pinned() {
-        return pinned;
-    }
-
-    void pin(int backend) {
-        if (pool.pins()) {
-            pinned = backend;
-        }
-    }
-
-    // ---- towards the client
-
-    ClientOutput output() {
-        return output;
-    }
-
-    /** Ends the running exchange with an answer of our own; the connection stays where the request was whole. */
-    void answer(OwnAnswer answer) {
-        Exchange running = exchange;
-        if (running == null) {
-            return; // the client left while the attempt failed
-        }
-        boolean keep = running.keepsClient();
-        running.drop();
-        output.own(answer, !keep);
-        answered(keep);
-    }
-
-    private void answerAndClose(OwnAnswer answer) {
-        output.own(answer, true);
-        exchange = null;
-        closeGently();
-    }
-
-    /** The exchange became a tunnel: both channels are the relay's, whatever came behind the heads included. */
-    void tunnel(BackendConnection backend, Attempts attempts) {
-        exchange = null;
-        clock.stop();
-        Relay relay =
-                new Relay(channel, backend.opened(), pool.settings().timeouts().idleNanos(), outcome -> {
-                    attempts.ended(outcome);
-                    backend.gone();
-                });
-        backend.become(relay);
-        relay.join();
-        // The decoders come last: what they hold is passed on at once, and no encoder may see it.
-        channel.pipeline().remove(this);
-        channel.pipeline().remove(encoder);
-        backend.removeEncoder();
-        backend.removeDecoder();
-        channel.pipeline().remove(decoder);
-        relay.start();
-    }
-
-    private void released() {
-        ChannelHandlerContext context = channel.pipeline().context(decoder);
-        try {
-            decoder.release(context);
-        } catch (Exception e) { // as its reading declares; it tells of failures by messages
-            context.fireExceptionCaught(e);
-        }
-    }
-
-    /** The answer was written to its end. */
-    void answered(boolean keep) {
-        boolean whole = exchange == null || exchange.requestComplete();
-        exchange = null;
-        if (keep) {
-            released();
-            clock.idle();
-            catchUp();
-        } else if (whole && ahead.isEmpty()) {
-            ending.afterFlush();
+    private void accept(HttpObject part) {
+        Exchange running = client.exchange();
+        if (part instanceof HttpRequest request) {
+            begin(request);
+        } else if (running == null || running.request().complete()) {
+            ReferenceCountUtil.release(part); // the empty end of a request without content
+        } else if (part.decoderResult().isFailure()) {
+            ReferenceCountUtil.release(part);
+            client.contentFaulty(
+                    running, RequestCheck.faulty(part.decoderResult().cause()));
         } else {
-            closeGently();
+            clock.clear();
+            running.request().content((HttpContent) part);
+            client.updateReading();
+        }
+    }
+
+    private void begin(HttpRequest request) {
+        clock.clear();
+        client.output().answers(request);
+        OwnAnswer refusal = RequestCheck.refusal(request);
+        if (refusal != null) {
+            client.answerAndClose(refusal);
+            return;
+        }
+        boolean oldClient = request.protocolVersion().minorVersion() == 0;
+        boolean keep = !oldClient && HttpUtil.isKeepAlive(request);
+        boolean content = RequestCheck.hasContent(request);
+        OwnAnswer here = RequestHeads.prepare(request, pool, channel);
+        if (here == null) {
+            client.begin(connections, request, keep, oldClient);
+        } else {
+            answerHere(here, keep && !content);
+        }
+    }
+
+    /** @param keep whether the connection may stay open behind an answer that finds no fault */
+    private void answerHere(OwnAnswer here, boolean keep) {
+        if (keep && here.status().code() != 400) {
+            client.output().own(here, false);
+            client.answered(true);
+        } else {
+            client.answerAndClose(here);
         }
     }
 
@@ -287,34 +162,17 @@ final class ClientHandler extends ChannelInboundHandlerAdapter {
             return;
         }
         catchingUp = true;
-        while (!ending.begun() && !ahead.isEmpty() && !waitsItsTurn(ahead.first())) {
+        while (!client.ends() && !ahead.isEmpty() && !waitsItsTurn(ahead.first())) {
             accept(ahead.take());
         }
         catchingUp = false;
-        if (ending.begun()) {
+        if (client.ends()) {
             ahead.drop();
-        } else {
-            updateReading();
-            if (exchange != null) {
-                exchange.flushRequest();
-            } else if (ahead.isEmpty() && decoder.headOpen()) {
-                clock.head();
-            }
+            return;
         }
-    }
-
-    /**
-     * Closes inside an answer, so that the client sees that it is not whole.
-     *
-     * @param byReset whether an orderly close would look like the end of the content
-     */
-    void truncate(boolean byReset) {
-        exchange = null;
-        ending.truncate(byReset);
-    }
-
-    private void closeGently() {
-        ahead.drop();
-        ending.gently();
+        client.updateReading();
+        if (client.exchange() != null || ahead.isEmpty()) {
+            client.readOut();
+        }
     }
 }

@@ -1,34 +1,24 @@
 package steelyard.balancer.live.http;
 
-import io.netty.buffer.Unpooled;
-import io.netty.handler.codec.http.DefaultFullHttpRequest;
-import io.netty.handler.codec.http.DefaultLastHttpContent;
-import io.netty.handler.codec.http.EmptyHttpHeaders;
 import io.netty.handler.codec.http.HttpContent;
-import io.netty.handler.codec.http.HttpHeaderNames;
 import io.netty.handler.codec.http.HttpRequest;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.LastHttpContent;
-import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Decider;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.live.guard.WaitingRoom;
-import steelyard.balancer.settings.RetrySettings;
 
-/** One request of a client and the attempts at it, one after the other. */
+/**
+ * One request of a client and the attempts at it, one after the other. {@link RequestPath} carries it to a backend,
+ * {@link AnswerPath} the answer back; here is decided which attempt comes next and when it is over.
+ */
 final class Exchange implements WaitingRoom.Waiter {
-    private final ClientHandler client;
-    private final PoolFront pool;
+    private final ClientSide client;
     private final LoopConnections connections;
-    private final HttpRequest head;
-    private final RequestBody body;
+    private final RequestPath request;
     private final Attempts attempts;
     private final AnswerPath answer;
     private final boolean keepClient;
-
-    private @Nullable BackendConnection connection;
-    private boolean connected;
-    private boolean headSent;
 
     /** What the client gets when a try waits in vain. */
     private OwnAnswer otherwise = OwnAnswer.NOBODY;
@@ -38,23 +28,17 @@ final class Exchange implements WaitingRoom.Waiter {
      * @param keepClient whether the client's connection is to stay open
      */
     Exchange(
-            ClientHandler client,
+            ClientSide client,
             PoolFront pool,
             LoopConnections connections,
             HttpRequest head,
             boolean keepClient,
             boolean oldClient) {
         this.client = client;
-        this.pool = pool;
         this.connections = connections;
-        this.head = head;
-        this.body = new RequestBody(pool.retries(), RequestCheck.hasContent(head));
-        long number = pool.numbers().of(head.headers());
-        if (number < 0) { // of our own; one that was given stands there already
-            head.headers().set(Fields.REQUEST, Long.toString(number));
-        }
-        this.attempts = new Attempts(pool, head, number, connections.room(), client.clientKey());
-        this.answer = new AnswerPath(pool, client.output(), head.method(), oldClient);
+        this.request = new RequestPath(head, pool.retries());
+        this.attempts = new Attempts(pool, head, connections.room(), client.key());
+        this.answer = new AnswerPath(pool, attempts, client.output(), head.method(), oldClient);
         this.keepClient = keepClient && !oldClient;
     }
 
@@ -94,66 +78,36 @@ final class Exchange implements WaitingRoom.Waiter {
 
     private void resume() {
         answer.drop();
-        attempt();
-        if (connected) {
-            flushRequest();
+        if (attempt()) {
+            request.flush();
             client.updateReading();
         }
     }
 
-    private void attempt() {
-        connected = false;
-        headSent = false;
-        head.headers().set(Fields.ATTEMPT, Fields.attempt(attempts.attempt()));
+    /** Whether it was sent at once, on a connection that stood idle. */
+    private boolean attempt() {
+        request.attempt(attempts.attempt());
         BackendConnection idle = connections.take(attempts.backend());
         if (idle == null) {
             connections.connect(attempts.backend(), this);
         } else {
-            send(idle);
+            request.send(idle, this);
         }
-    }
-
-    void opening(BackendConnection opened) {
-        connection = opened;
+        return idle != null;
     }
 
     void connected(BackendConnection opened) {
-        send(opened);
+        request.send(opened, this);
         opened.flush();
         client.updateReading();
     }
 
-    private void send(BackendConnection to) {
-        connection = to;
-        connected = true;
-        headSent = true;
-        to.serve(this, body.empty() ? whole() : head);
-        body.sendAll(to);
-        if (body.complete()) {
-            to.awaitFirstByte();
-        } else {
-            to.moved();
-        }
-    }
-
-    /** Head and empty content in one, which is encoded into one buffer. */
-    private HttpRequest whole() {
-        return new DefaultFullHttpRequest(
-                head.protocolVersion(),
-                head.method(),
-                head.uri(),
-                Unpooled.EMPTY_BUFFER,
-                head.headers(),
-                EmptyHttpHeaders.INSTANCE);
-    }
-
     /** The attempt failed; its connection is already gone. */
     void failed(Outcome outcome, OwnAnswer own) {
-        connection = null;
-        connected = false;
+        request.leave();
         attempts.ended(outcome);
         if (answer.passedOn()) {
-            body.drop();
+            request.drop();
             client.truncate(answer.endShownByClosing());
             return;
         }
@@ -164,7 +118,7 @@ final class Exchange implements WaitingRoom.Waiter {
     }
 
     private boolean mayRetry(Outcome outcome) {
-        return attempts.mayRetry(outcome, headSent, body.replayable());
+        return attempts.mayRetry(outcome, request.headSent(), request.replayable());
     }
 
     /**
@@ -185,13 +139,17 @@ final class Exchange implements WaitingRoom.Waiter {
 
     // ---- from the client
 
-    boolean requestComplete() {
-        return body.complete();
+    RequestPath request() {
+        return request;
+    }
+
+    ClientSide client() {
+        return client;
     }
 
     /** Whether the client's connection may stay open after an answer that is given now. */
     boolean keepsClient() {
-        return keepClient && body.complete();
+        return keepClient && request.complete();
     }
 
     /** Whether the client got the head of an answer. */
@@ -199,35 +157,9 @@ final class Exchange implements WaitingRoom.Waiter {
         return answer.passedOn();
     }
 
-    /** Whether more content of the request can be taken now. */
-    boolean takesContent() {
-        return connected && connection != null && connection.writable();
-    }
-
-    void content(HttpContent piece) {
-        HttpContent bare = withoutTrailers(piece);
-        if (connection == null || !connected) {
-            body.await(bare);
-            return;
-        }
-        body.sent(bare);
-        connection.moved();
-        connection.write(bare);
-        if (body.complete()) {
-            connection.awaitFirstByte();
-        }
-    }
-
-    void flushRequest() {
-        if (connection != null && connected) {
-            connection.flush();
-        }
-    }
-
     /** The client went away. */
     void abandon() {
-        BackendConnection left = connection;
-        connection = null;
+        BackendConnection left = request.leave();
         if (left != null) {
             left.abandon();
         }
@@ -237,7 +169,7 @@ final class Exchange implements WaitingRoom.Waiter {
 
     /** Whether the silence is the client's: it does not take the answer, or owes content that could be passed on. */
     boolean awaitsClient() {
-        return answer.passedOn() ? !client.output().writable() : !body.complete() && takesContent();
+        return answer.passedOn() ? !client.output().writable() : !request.complete() && request.takesContent();
     }
 
     void clientStalled() {
@@ -249,88 +181,39 @@ final class Exchange implements WaitingRoom.Waiter {
         }
     }
 
-    /** The client takes answers again, or no longer. */
-    void clientWritable(boolean writable) {
-        if (connection != null && connected) {
-            connection.moved();
-            connection.read(writable);
-        }
-    }
-
     // ---- from the backend
-
-    void backendWritable() {
-        client.updateReading();
-    }
 
     void interim(HttpResponse response) {
         answer.interim(response);
     }
 
-    /** Whether a 101 goes over to what the client asked for, and comes when the whole request was sent. */
-    boolean agreesTo(HttpResponse response) {
-        return body.complete() && Upgrade.agreed(head.headers(), response) != null;
-    }
-
     /** The backend went over: the client is told, and both ends are joined. */
     void upgraded(HttpResponse response) {
-        BackendConnection to = connection;
-        String protocol = Upgrade.agreed(head.headers(), response);
+        String protocol = request.agreed(response);
+        BackendConnection to = request.leave();
         if (to == null || protocol == null) {
             return; // the client has left
         }
-        attempts.status(response.status().code());
-        hold(response);
         answer.upgrade(response, protocol);
-        connection = null;
         drop();
         client.tunnel(to, attempts);
     }
 
     void answerHead(HttpResponse response) {
-        int status = response.status().code();
-        attempts.status(status);
-        hold(response);
-        RetrySettings retry = pool.settings().retry();
-        if (retry != null && retry.also().contains(status) && attempts.attempt() <= retry.atMost()) {
-            answer.hold(response);
-        } else {
-            answer.pass(response, closesClient());
-        }
-    }
-
-    /** Adds the cookie that holds the client, where one does. */
-    private void hold(HttpResponse response) {
-        String cookie = attempts.cookie();
-        if (cookie != null) {
-            response.headers().add(HttpHeaderNames.SET_COOKIE, cookie);
-        }
-    }
-
-    private boolean closesClient() {
-        return !keepsClient() || pool.decider().saysClose(attempts.backend());
+        answer.head(response, keepsClient());
     }
 
     void answerContent(HttpContent piece) {
-        HttpContent bare = withoutTrailers(piece);
-        boolean tooLargeToHold = answer.content(bare);
-        if (bare instanceof LastHttpContent) {
-            attempts.ended(Outcome.ANSWERED);
-        } else if (tooLargeToHold) {
-            answer.release(closesClient());
-        } else if (connection != null && !answer.holds() && !client.output().writable()) {
-            connection.read(false);
+        boolean last = piece instanceof LastHttpContent;
+        answer.content(piece, keepsClient());
+        if (!last && !answer.holds() && !client.output().writable()) {
+            request.holdBack();
         }
-    }
-
-    void flushAnswer() {
-        client.output().flush();
     }
 
     /** The answer is whole and the connection went back or was closed. */
     void settled() {
-        connection = null;
-        connected = false;
+        request.leave();
         if (answer.holds() && mayRetry(Outcome.ANSWERED) && again(OwnAnswer.NOBODY)) {
             return;
         }
@@ -339,7 +222,7 @@ final class Exchange implements WaitingRoom.Waiter {
 
     private void passHeld() {
         if (answer.holds()) {
-            answer.release(closesClient());
+            answer.release(keepsClient());
         }
         drop();
         client.output().flush();
@@ -348,15 +231,7 @@ final class Exchange implements WaitingRoom.Waiter {
 
     /** Gives back all that is kept. */
     void drop() {
-        body.drop();
+        request.drop();
         answer.drop();
-    }
-
-    /** Trailer fields are dropped, as RFC 9112, 7.1.2, allows: none can then be taken for a header field. */
-    private static HttpContent withoutTrailers(HttpContent piece) {
-        if (piece instanceof LastHttpContent last && !last.trailingHeaders().isEmpty()) {
-            return new DefaultLastHttpContent(last.content());
-        }
-        return piece;
     }
 }

@@ -17,16 +17,23 @@ import org.jspecify.annotations.Nullable;
 final class RequestBody {
     static final int MOST_KEPT = 64 * 1024;
 
+    /** Of every request without content: there is nothing to keep, so that it never changes. */
+    private static final RequestBody NONE = new RequestBody(false, true);
+
     private final boolean keeps;
     private @Nullable List<HttpContent> pieces;
     private int bytes;
     private boolean complete;
     private boolean dropped;
 
-    /** @param keeps whether another attempt may come to need it */
-    RequestBody(boolean keeps, boolean hasContent) {
+    private RequestBody(boolean keeps, boolean complete) {
         this.keeps = keeps;
-        this.complete = !hasContent;
+        this.complete = complete;
+    }
+
+    /** @param keeps whether another attempt may come to need it */
+    static RequestBody of(boolean keeps, boolean hasContent) {
+        return hasContent ? new RequestBody(keeps, false) : NONE;
     }
 
     /** Whether the last piece came. */
@@ -79,6 +86,9 @@ final class RequestBody {
 
     /** Gives back what is kept. */
     void drop() {
+        if (this == NONE) {
+            return;
+        }
         dropped = true;
         if (pieces != null) {
             pieces.forEach(HttpContent::release);

@@ -2,6 +2,7 @@ package steelyard.balancer.live.http;
 
 import io.netty.buffer.ByteBuf;
 import io.netty.buffer.Unpooled;
+import io.netty.channel.Channel;
 import io.netty.channel.ChannelHandlerContext;
 import io.netty.handler.codec.DecoderResult;
 import io.netty.handler.codec.http.DefaultLastHttpContent;
@@ -66,13 +67,21 @@ final class RequestDecoder extends HttpRequestDecoder {
     }
 
     /** No upgrade came of it: what came behind is requests. */
-    void release(ChannelHandlerContext context) throws Exception {
+    void release(Channel channel) {
         boolean more = holds();
         upgrading = false;
         held = false;
         if (more) {
+            readOn(channel.pipeline().context(this));
+        }
+    }
+
+    private void readOn(ChannelHandlerContext context) {
+        try {
             channelRead(context, Unpooled.EMPTY_BUFFER);
             channelReadComplete(context);
+        } catch (Exception e) { // as reading declares; it tells of failures by messages
+            context.fireExceptionCaught(e);
         }
     }
 
