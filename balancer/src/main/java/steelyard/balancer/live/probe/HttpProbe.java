@@ -15,9 +15,7 @@ import io.netty.handler.codec.http.HttpObject;
 import io.netty.handler.codec.http.HttpResponse;
 import io.netty.handler.codec.http.HttpVersion;
 import io.netty.util.AsciiString;
-import java.net.InetSocketAddress;
-import org.jspecify.annotations.Nullable;
-import steelyard.balancer.live.tls.BackendTls;
+import java.util.function.Consumer;
 
 /** Asks for the probe's path on a connection that is used for nothing else, and looks at the status. */
 final class HttpProbe extends ChannelInitializer<Channel> {
@@ -25,30 +23,31 @@ final class HttpProbe extends ChannelInitializer<Channel> {
     private static final AsciiString PROBE = AsciiString.cached("steelyard-probe");
 
     private final String path;
-    private final InetSocketAddress address;
-    private final @Nullable BackendTls tls;
-    private final Probes.Probe probe;
+    private final Lane<?> lane;
+    private final long number;
+    private final Consumer<Boolean> answered;
 
-    HttpProbe(String path, InetSocketAddress address, @Nullable BackendTls tls, Probes.Probe probe) {
+    /** @param answered told whether the answer was good; more than once, maybe */
+    HttpProbe(String path, Lane<?> lane, long number, Consumer<Boolean> answered) {
         this.path = path;
-        this.address = address;
-        this.tls = tls;
-        this.probe = probe;
+        this.lane = lane;
+        this.number = number;
+        this.answered = answered;
     }
 
     @Override
     protected void initChannel(Channel channel) {
         channel.pipeline().addLast(new HttpClientCodec(), new Answer());
-        BackendTls.secure(tls, channel);
+        lane.secure(channel);
     }
 
     private FullHttpRequest request() {
         FullHttpRequest request =
                 new DefaultFullHttpRequest(HttpVersion.HTTP_1_1, HttpMethod.GET, path, Unpooled.EMPTY_BUFFER);
         request.headers()
-                .set(HttpHeaderNames.HOST, address.getHostString() + ":" + address.getPort())
+                .set(HttpHeaderNames.HOST, lane.host())
                 .set(HttpHeaderNames.CONNECTION, HttpHeaderValues.CLOSE)
-                .set(PROBE, probe.number());
+                .set(PROBE, number);
         return request;
     }
 
@@ -61,22 +60,22 @@ final class HttpProbe extends ChannelInitializer<Channel> {
         @Override
         protected void channelRead0(ChannelHandlerContext context, HttpObject part) {
             if (part.decoderResult().isFailure()) {
-                probe.answered(false);
+                answered.accept(false);
             } else if (part instanceof HttpResponse response
                     && response.status().code() >= 200) {
                 int status = response.status().code();
-                probe.answered(status <= 299);
+                answered.accept(status <= 299);
             }
         }
 
         @Override
         public void channelInactive(ChannelHandlerContext context) {
-            probe.answered(false);
+            answered.accept(false);
         }
 
         @Override
         public void exceptionCaught(ChannelHandlerContext context, Throwable cause) {
-            probe.answered(false);
+            answered.accept(false);
         }
     }
 }
