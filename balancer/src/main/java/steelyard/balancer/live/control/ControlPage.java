@@ -19,7 +19,6 @@ import io.netty.util.concurrent.DefaultEventExecutor;
 import io.netty.util.concurrent.DefaultThreadFactory;
 import io.netty.util.concurrent.GlobalEventExecutor;
 import java.io.IOException;
-import java.net.InetAddress;
 import java.net.InetSocketAddress;
 import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
@@ -85,16 +84,9 @@ public final class ControlPage {
      * @throws IOException when the port cannot be had
      */
     public InetSocketAddress bind(Transport transport, int port) throws IOException {
-        var binding = transport
-                .server()
-                .childHandler(new Connections())
-                .bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), port))
-                .awaitUninterruptibly();
-        if (!binding.isSuccess()) {
-            throw new IOException(String.valueOf(binding.cause().getMessage()), binding.cause());
-        }
-        channels.add(binding.channel());
-        return (InetSocketAddress) binding.channel().localAddress();
+        Channel listening = Transport.listen(transport.server().childHandler(new Connections()), port);
+        channels.add(listening);
+        return (InetSocketAddress) listening.localAddress();
     }
 
     /** Closes the port and its connections, and waits for it. */

@@ -2,16 +2,10 @@ package steelyard.balancer.live.http;
 
 import io.netty.channel.Channel;
 import io.netty.channel.ChannelInitializer;
-import io.netty.channel.ChannelOption;
 import io.netty.channel.EventLoop;
-import io.netty.channel.group.ChannelGroup;
-import io.netty.channel.group.DefaultChannelGroup;
-import io.netty.util.concurrent.GlobalEventExecutor;
 import java.io.IOException;
-import java.net.InetAddress;
 import java.net.InetSocketAddress;
 import java.security.SecureRandom;
-import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
@@ -21,6 +15,7 @@ import java.util.function.IntFunction;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.live.guard.GuardedDecider;
 import steelyard.balancer.live.guard.WaitingRooms;
+import steelyard.balancer.live.tcp.Fronts;
 import steelyard.balancer.live.tcp.Transport;
 import steelyard.balancer.live.tls.BackendTls;
 import steelyard.balancer.live.tls.FrontTls;
@@ -36,8 +31,7 @@ public final class Forwarding {
     private final Transport transport;
     private final RequestNumbers numbers;
     private final byte[] secret = new byte[SECRET_BYTES];
-    private final List<Channel> fronts = new ArrayList<>();
-    private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
+    private final Fronts fronts = new Fronts();
     private final Map<EventLoop, LoopConnections> connections = new HashMap<>();
 
     /**
@@ -76,22 +70,12 @@ public final class Forwarding {
         PoolSettings of = settings.pools().get(pool);
         PoolFront front = PoolFront.of(pool, of, decider, numbers, settings.name())
                 .with(Berths.of(of, settings.firstBackend(pool), secret));
-        var binding = transport
-                .server()
-                .option(ChannelOption.AUTO_READ, false)
-                .childHandler(new ClientInitializer(front, tls))
-                .bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), port))
-                .awaitUninterruptibly();
-        if (!binding.isSuccess()) {
-            throw new IOException(String.valueOf(binding.cause().getMessage()), binding.cause());
-        }
-        fronts.add(binding.channel());
-        return (InetSocketAddress) binding.channel().localAddress();
+        return fronts.bind(transport.server().childHandler(new ClientInitializer(front, tls)), port);
     }
 
     /** From now on the fronts answer. */
     public void begin() {
-        fronts.forEach(front -> front.config().setAutoRead(true));
+        fronts.begin();
     }
 
     /** Ends every attempt in flight on a backend; returns before it is done. */
@@ -99,10 +83,12 @@ public final class Forwarding {
         onEveryLoop(there -> there.cut(backend));
     }
 
-    /** Closes the fronts and the client connections, and waits for both; those to backends close on their loops a moment later. */
+    /**
+     * Closes the fronts and the client connections, and waits for both; those to backends close on their loops a moment
+     * later.
+     */
     public void close() {
-        fronts.forEach(front -> front.close().awaitUninterruptibly());
-        clients.close().awaitUninterruptibly();
+        fronts.close();
         onEveryLoop(LoopConnections::closeAll);
     }
 
@@ -125,7 +111,7 @@ public final class Forwarding {
             if (there == null) {
                 throw new IllegalStateException("a loop of another balancer");
             }
-            clients.add(channel);
+            fronts.came(channel);
             if (tls != null) {
                 channel.pipeline().addLast(tls.handler(channel));
             }

@@ -1,17 +1,13 @@
 package steelyard.balancer.live.tcp;
 
 import io.netty.bootstrap.Bootstrap;
+import io.netty.bootstrap.ServerBootstrap;
 import io.netty.channel.Channel;
 import io.netty.channel.ChannelInitializer;
 import io.netty.channel.ChannelOption;
 import io.netty.channel.EventLoop;
-import io.netty.channel.group.ChannelGroup;
-import io.netty.channel.group.DefaultChannelGroup;
-import io.netty.util.concurrent.GlobalEventExecutor;
 import java.io.IOException;
-import java.net.InetAddress;
 import java.net.InetSocketAddress;
-import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.HashSet;
 import java.util.List;
@@ -35,8 +31,7 @@ public final class TcpFronts {
     private final WaitingRooms rooms;
     private final List<InetSocketAddress> addresses;
     private final AtomicLong numbers;
-    private final List<Channel> fronts = new ArrayList<>();
-    private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
+    private final Fronts fronts = new Fronts();
     private final Map<EventLoop, Set<Passage>> passages = new HashMap<>();
 
     /**
@@ -67,23 +62,16 @@ public final class TcpFronts {
             int pool, PoolSettings settings, @Nullable FrontTls tls, @Nullable BackendTls backendTls, int port)
             throws IOException {
         TcpPool front = new TcpPool(pool, settings, decider, addresses, numbers, tls, backendTls);
-        var binding = transport
+        ServerBootstrap server = transport
                 .server()
-                .option(ChannelOption.AUTO_READ, false)
                 .childOption(ChannelOption.AUTO_READ, tls != null) // a handshake is read, octets wait for a backend
-                .childHandler(new Accepting(front))
-                .bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), port))
-                .awaitUninterruptibly();
-        if (!binding.isSuccess()) {
-            throw new IOException(String.valueOf(binding.cause().getMessage()), binding.cause());
-        }
-        fronts.add(binding.channel());
-        return (InetSocketAddress) binding.channel().localAddress();
+                .childHandler(new Accepting(front));
+        return fronts.bind(server, port);
     }
 
     /** From now on the fronts take connections. */
     public void begin() {
-        fronts.forEach(front -> front.config().setAutoRead(true));
+        fronts.begin();
     }
 
     /** Ends every connection on a backend; returns before it is done. */
@@ -95,8 +83,7 @@ public final class TcpFronts {
 
     /** Closes the fronts and the client connections, and waits for both; those to backends close a moment later. */
     public void close() {
-        fronts.forEach(front -> front.close().awaitUninterruptibly());
-        clients.close().awaitUninterruptibly();
+        fronts.close();
     }
 
     private final class Accepting extends ChannelInitializer<Channel> {
@@ -113,7 +100,7 @@ public final class TcpFronts {
             if (there == null) {
                 throw new IllegalStateException("a loop of another balancer");
             }
-            clients.add(channel);
+            fronts.came(channel);
             Bootstrap toBackends = transport
                     .client(loop)
                     .option(ChannelOption.AUTO_READ, pool.backendTls() != null)

@@ -2,6 +2,8 @@ package steelyard.balancer.live.tcp;
 
 import io.netty.bootstrap.Bootstrap;
 import io.netty.bootstrap.ServerBootstrap;
+import io.netty.channel.Channel;
+import io.netty.channel.ChannelFuture;
 import io.netty.channel.ChannelOption;
 import io.netty.channel.EventLoop;
 import io.netty.channel.IoHandlerFactory;
@@ -16,6 +18,9 @@ import io.netty.channel.socket.SocketChannel;
 import io.netty.channel.socket.nio.NioServerSocketChannel;
 import io.netty.channel.socket.nio.NioSocketChannel;
 import io.netty.util.concurrent.DefaultThreadFactory;
+import java.io.IOException;
+import java.net.InetAddress;
+import java.net.InetSocketAddress;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.TimeUnit;
@@ -69,6 +74,21 @@ public final class Transport {
                 .channel(serverChannel)
                 .option(ChannelOption.SO_BACKLOG, BACKLOG)
                 .childOption(ChannelOption.TCP_NODELAY, true);
+    }
+
+    /**
+     * Binds a server to a loopback port, and waits for it.
+     *
+     * @param port 0 for any that is free
+     * @throws IOException when the port cannot be had
+     */
+    public static Channel listen(ServerBootstrap server, int port) throws IOException {
+        ChannelFuture binding = server.bind(new InetSocketAddress(InetAddress.getLoopbackAddress(), port))
+                .awaitUninterruptibly();
+        if (!binding.isSuccess()) {
+            throw new IOException(String.valueOf(binding.cause().getMessage()), binding.cause());
+        }
+        return binding.channel();
     }
 
     /** A client whose channels live on {@code loop}; the caller adds the handler. */
