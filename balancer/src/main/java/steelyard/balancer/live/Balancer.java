@@ -8,23 +8,15 @@ import java.util.ArrayList;
 import java.util.HexFormat;
 import java.util.List;
 import java.util.Locale;
-import java.util.concurrent.atomic.AtomicLong;
 import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Chance;
 import steelyard.balancer.core.decide.DecisionSink;
-import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.live.control.ControlPage;
 import steelyard.balancer.live.control.Counts;
 import steelyard.balancer.live.control.CueTaker;
 import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.live.guard.GuardedDecider;
-import steelyard.balancer.live.guard.WaitingRooms;
-import steelyard.balancer.live.http.Forwarding;
-import steelyard.balancer.live.probe.Probes;
-import steelyard.balancer.live.probe.Readings;
-import steelyard.balancer.live.tcp.TcpFronts;
-import steelyard.balancer.live.tcp.Transport;
 import steelyard.balancer.live.tls.FrontTls;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.balancer.settings.DrainSettings;
@@ -41,15 +33,10 @@ public final class Balancer implements AutoCloseable {
     private static final int TOKEN_BYTES = 24;
 
     private final BalancerSettings settings;
-    private final Transport transport;
-    private final GuardedDecider decider;
     private final Counts counts;
-    private final WaitingRooms rooms;
     private final Certificates certificates;
-    private final Forwarding forwarding;
-    private final TcpFronts tcpFronts;
-    private final Probes probes;
-    private final Readings readings;
+    private final Works works;
+    private final GuardedDecider decider;
     private final List<InetSocketAddress> fronts = new ArrayList<>();
     private @Nullable ControlPage control;
     private boolean closed;
@@ -62,17 +49,10 @@ public final class Balancer implements AutoCloseable {
             Chance chance,
             DecisionSink listener) {
         this.settings = settings;
-        this.transport = Transport.open(settings.loops());
         this.counts = new Counts(settings, listener);
-        this.decider = new GuardedDecider(settings, nanoClock, chance, counts, transport.home(), new CarryOut());
         this.certificates = certificates;
-        this.rooms = new WaitingRooms(transport.loops());
-        AtomicLong numbers = new AtomicLong();
-        this.forwarding =
-                new Forwarding(settings, decider, transport, rooms, addresses, certificates::backends, numbers);
-        this.tcpFronts = new TcpFronts(decider, transport, rooms, addresses, numbers);
-        this.probes = new Probes(settings, decider, transport, addresses, certificates::backends);
-        this.readings = new Readings(settings, decider, transport, addresses, certificates::backends);
+        this.works = new Works(settings, addresses, certificates, nanoClock, chance, counts);
+        this.decider = works.decider();
     }
 
     /**
@@ -109,16 +89,11 @@ public final class Balancer implements AutoCloseable {
     }
 
     private void bind(int pool, int port) throws CannotStart {
-        PoolSettings of = settings.pools().get(pool);
-        FrontTls tls = certificates.front(pool);
         try {
-            fronts.add(
-                    switch (of.front().kind()) {
-                        case HTTP -> forwarding.bind(pool, tls, port);
-                        case TCP -> tcpFronts.bind(pool, of, tls, certificates.backends(pool), port);
-                    });
+            fronts.add(works.bind(pool, port));
         } catch (IOException e) {
-            throw new CannotStart("the front of pool " + of.name() + " cannot listen: " + reason(port, e), e);
+            String name = settings.pools().get(pool).name();
+            throw new CannotStart("the front of pool " + name + " cannot listen: " + reason(port, e), e);
         }
     }
 
@@ -139,9 +114,7 @@ public final class Balancer implements AutoCloseable {
      * @param nowNanos on the balancer's clock
      */
     public void begin(long nowNanos) {
-        decider.begin(nowNanos);
-        forwarding.begin();
-        tcpFronts.begin();
+        works.begin(nowNanos);
     }
 
     /** Where the front of a pool listens. */
@@ -178,7 +151,7 @@ public final class Balancer implements AutoCloseable {
         String token = HexFormat.of().formatHex(random);
         ControlPage page = new ControlPage(settings, decider, counts, this::failedHandshakes, cues, token);
         try {
-            InetSocketAddress address = page.bind(transport, port);
+            InetSocketAddress address = page.bind(works.transport(), port);
             control = page;
             return new ControlAddress(address, token);
         } catch (IOException e) {
@@ -250,16 +223,12 @@ public final class Balancer implements AutoCloseable {
         }
         closed = true;
         List<RuntimeException> failures = new ArrayList<>();
-        step(failures, forwarding::close);
-        step(failures, tcpFronts::close);
-        step(failures, decider::end);
-        step(failures, () -> transport.home().submit(probes::close).awaitUninterruptibly());
-        step(failures, () -> transport.home().submit(readings::close).awaitUninterruptibly());
+        works.stops().forEach(stop -> step(failures, stop));
         ControlPage page = control;
         if (page != null) {
             step(failures, page::close);
         }
-        step(failures, transport::close);
+        step(failures, works.transport()::close);
         if (!failures.isEmpty()) {
             IllegalStateException all = new IllegalStateException("the balancer did not close cleanly");
             failures.forEach(all::addSuppressed);
@@ -272,40 +241,6 @@ public final class Balancer implements AutoCloseable {
             step.run();
         } catch (RuntimeException e) {
             failures.add(e);
-        }
-    }
-
-    /** The core's orders, on the home loop. */
-    private final class CarryOut implements Orders {
-        @Override
-        public void startProbe(int backend, long probe) {
-            probes.start(backend, probe);
-        }
-
-        @Override
-        public void dropProbe(int backend, long probe) {
-            probes.drop(backend, probe);
-        }
-
-        @Override
-        public void startReading(int backend, long number) {
-            readings.start(backend, number);
-        }
-
-        @Override
-        public void dropReading(int backend, long number) {
-            readings.drop(backend, number);
-        }
-
-        @Override
-        public void place(long ticket, int backend) {
-            rooms.placed(ticket, backend);
-        }
-
-        @Override
-        public void cut(int backend) {
-            forwarding.cut(backend);
-            tcpFronts.cut(backend);
         }
     }
 }
