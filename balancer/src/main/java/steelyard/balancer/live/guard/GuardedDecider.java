@@ -1,8 +1,6 @@
 package steelyard.balancer.live.guard;
 
 import io.netty.util.concurrent.EventExecutor;
-import java.util.concurrent.Future;
-import java.util.concurrent.TimeUnit;
 import java.util.function.LongSupplier;
 import org.jspecify.annotations.Nullable;
 import steelyard.balancer.core.decide.Ask;
@@ -12,9 +10,6 @@ import steelyard.balancer.core.decide.DecisionSink;
 import steelyard.balancer.core.decide.Orders;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.settings.BalancerSettings;
-import steelyard.balancer.settings.DrainSettings;
-import steelyard.balancer.settings.PoolSettings;
-import steelyard.balancer.settings.ProbeSettings;
 
 /**
  * A Decider behind one lock.
@@ -22,22 +17,19 @@ import steelyard.balancer.settings.ProbeSettings;
  * <p>Time is read inside the lock, so that the Decider never sees it run backwards and the order of decisions is the
  * order of their instants. The sink is called inside the lock. Orders are handed, inside the lock, to one executor,
  * which carries them out in the order in which they were given. A timer on the same executor polls the Decider at its
- * deadlines. Every method may be called from any thread; before {@link #begin} nothing but {@link #hasBegun} and {@link #end} may be called,
- * and after {@link #end} the Decider still answers but orders and timers are dropped.
+ * deadlines. Every method may be called from any thread; before {@link #begin} nothing but {@link #hasBegun} and
+ * {@link #end} may be called, and after {@link #end} the Decider still answers but orders and timers are dropped.
  */
 public final class GuardedDecider {
     private final BalancerSettings settings;
     private final LongSupplier nanoClock;
     private final Chance chance;
     private final DecisionSink sink;
-    private final EventExecutor home;
-    private final Orders carriedOut;
+    private final HandedOn orders;
+    private final Alarm alarm;
 
     private final Object lock = new Object();
     private @Nullable Decider decider;
-    private @Nullable Future<?> armed;
-    private long armedFor;
-    private long alarm;
     private boolean ended;
 
     /**
@@ -56,8 +48,8 @@ public final class GuardedDecider {
         this.nanoClock = nanoClock;
         this.chance = chance;
         this.sink = sink;
-        this.home = home;
-        this.carriedOut = carriedOut;
+        this.orders = new HandedOn(home, carriedOut);
+        this.alarm = new Alarm(home, this::rung);
     }
 
     /** Creates the Decider; its times are counted from {@code nowNanos}. Once. */
@@ -66,7 +58,7 @@ public final class GuardedDecider {
             if (decider != null) {
                 throw new IllegalStateException("already begun");
             }
-            decider = new Decider(settings, chance, sink, new Noted(), nowNanos);
+            decider = new Decider(settings, chance, sink, orders, nowNanos);
             rearm(decider, nowNanos);
         }
     }
@@ -82,11 +74,8 @@ public final class GuardedDecider {
     public void end() {
         synchronized (lock) {
             ended = true;
-            alarm++;
-            if (armed != null) {
-                armed.cancel(false);
-                armed = null;
-            }
+            orders.end();
+            alarm.stop();
         }
     }
 
@@ -160,21 +149,6 @@ public final class GuardedDecider {
         change((begun, now) -> begun.read(backend, number, gauges, now));
     }
 
-    /** @see Decider#retune(int, ProbeSettings, long) */
-    public void retune(int pool, ProbeSettings settings) {
-        change((begun, now) -> begun.retune(pool, settings, now));
-    }
-
-    /** @see Decider#retune(int, DrainSettings, long) */
-    public void retune(int pool, DrainSettings settings) {
-        change((begun, now) -> begun.retune(pool, settings, now));
-    }
-
-    /** @see Decider#retune(int, PoolSettings.Method, long) */
-    public void retune(int pool, PoolSettings.Method method) {
-        change((begun, now) -> begun.retune(pool, method, now));
-    }
-
     /** Applies a change at the present instant: hand commands and probe answers, which are rare. */
     public void change(Change change) {
         synchronized (lock) {
@@ -205,71 +179,19 @@ public final class GuardedDecider {
         return decider;
     }
 
-    /** Only an earlier deadline moves the timer; one that fires too early finds nothing to do and is set again. */
     private void rearm(Decider begun, long nowNanos) {
-        if (ended || !begun.hasDeadline()) {
-            return;
+        if (!ended && begun.hasDeadline()) {
+            alarm.set(begun.nextDeadlineNanos(), nowNanos);
         }
-        long next = begun.nextDeadlineNanos();
-        if (armed != null) {
-            if (next - armedFor >= 0) {
-                return;
-            }
-            armed.cancel(false);
-        }
-        armedFor = next;
-        long number = ++alarm;
-        armed = home.schedule(() -> fire(number), Math.max(0, next - nowNanos), TimeUnit.NANOSECONDS);
     }
 
-    private void fire(long number) {
+    private void rung(long set) {
         synchronized (lock) {
-            if (number != alarm) {
-                return; // cancelled too late to keep it from running
-            }
-            armed = null;
-            Decider begun = begun();
-            long now = nanoClock.getAsLong();
-            begun.poll(now);
-            rearm(begun, now);
-        }
-    }
-
-    /** Orders as the Decider gives them, inside the lock. */
-    private final class Noted implements Orders {
-        @Override
-        public void startProbe(int backend, long probe) {
-            note(() -> carriedOut.startProbe(backend, probe));
-        }
-
-        @Override
-        public void dropProbe(int backend, long probe) {
-            note(() -> carriedOut.dropProbe(backend, probe));
-        }
-
-        @Override
-        public void startReading(int backend, long number) {
-            note(() -> carriedOut.startReading(backend, number));
-        }
-
-        @Override
-        public void dropReading(int backend, long number) {
-            note(() -> carriedOut.dropReading(backend, number));
-        }
-
-        @Override
-        public void place(long ticket, int backend) {
-            note(() -> carriedOut.place(ticket, backend));
-        }
-
-        @Override
-        public void cut(int backend) {
-            note(() -> carriedOut.cut(backend));
-        }
-
-        private void note(Runnable order) {
-            if (!ended) {
-                home.execute(order);
+            if (alarm.rings(set)) {
+                Decider begun = begun();
+                long now = nanoClock.getAsLong();
+                begun.poll(now);
+                rearm(begun, now);
             }
         }
     }
