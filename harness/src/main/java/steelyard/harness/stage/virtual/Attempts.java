@@ -69,7 +69,7 @@ final class Attempts {
     int late(long nowNanos) {
         for (long token = firstBytes.expired(nowNanos); token >= 0; token = firstBytes.expired(nowNanos)) {
             if (flights.current(token)) {
-                return Flights.flightOf(token);
+                return Slots.of(token);
             }
         }
         return -1;
@@ -126,7 +126,7 @@ final class Attempts {
         if (!flights.current(token)) {
             return;
         }
-        int backend = flights.backend[Flights.flightOf(token)];
+        int backend = flights.backend[Slots.of(token)];
         if (backends.listening(backend)) {
             post.send(speaksTls[backend] ? Kind.ATTEMPT_ON_TLS : Kind.ATTEMPT_ON_NEW, nowNanos, token, backend);
             firstBytes.acceptedNew(poolOf[backend], token, nowNanos);
@@ -140,7 +140,7 @@ final class Attempts {
         if (!flights.current(token)) {
             return;
         }
-        int flight = Flights.flightOf(token);
+        int flight = Slots.of(token);
         int backend = flights.backend[flight];
         if (backends.killed(backend)) {
             post.send(Kind.RESET, nowNanos, token, backend);
@@ -154,7 +154,7 @@ final class Attempts {
     /** A backend is done with what it read; see {@link VirtualBackends.Hearer#replied}. */
     void replied(int backend, long token, long request, int attempt, Reply reply, int answer, long atNanos) {
         boolean waitedFor = flights.current(token);
-        int status = waitedFor && reply == Reply.ANSWER && opensTunnel(Flights.flightOf(token)) ? SWITCHING : answer;
+        int status = waitedFor && reply == Reply.ANSWER && opensTunnel(Slots.of(token)) ? SWITCHING : answer;
         boolean inFull = switch (reply) {
             case ANSWER, TURNED_AWAY, FAULT -> true;
             case SILENCE, LOST, DROPPED -> false;
@@ -166,7 +166,7 @@ final class Attempts {
         switch (reply) {
             case ANSWER, TURNED_AWAY, FAULT -> post.send(Kind.ANSWER, atNanos, token, status);
             case LOST -> post.send(Kind.RESET, atNanos, token, backend);
-            case SILENCE -> flights.silent[Flights.flightOf(token)] = true;
+            case SILENCE -> flights.silent[Slots.of(token)] = true;
             case DROPPED -> throw new IllegalStateException("request " + request + " was not given up");
         }
     }

@@ -34,7 +34,7 @@ final class Exchanges {
 
     /** A request reaches the balancer. */
     void arrived(long token, long nowNanos) {
-        int flight = Flights.flightOf(token);
+        int flight = Slots.of(token);
         if (!flights.current(token) || flights.told[flight]) {
             // Its client gave up meanwhile, and the balancer may know it already.
             return;
@@ -55,7 +55,7 @@ final class Exchanges {
             passThrough.placed(ticket, backend, nowNanos);
             return;
         }
-        int flight = Flights.flightOf(ticket);
+        int flight = Slots.of(ticket);
         if (backend == Decider.NOBODY) {
             reply(flight, nowNanos);
         } else {
@@ -111,7 +111,7 @@ final class Exchanges {
         if (!flights.current(token)) {
             return;
         }
-        int flight = Flights.flightOf(token);
+        int flight = Slots.of(token);
         if (flights.state[flight] == State.PASSED) {
             passOn(flight, status, nowNanos);
         } else if (status == Attempts.SWITCHING) {
@@ -146,7 +146,7 @@ final class Exchanges {
 
     /** The connection of an attempt was reset; that of a passage is told by itself. */
     void reset(long token, long nowNanos) {
-        int flight = Flights.flightOf(token);
+        int flight = Slots.of(token);
         if (!flights.current(token) || flights.state[flight] == State.PASSED) {
             return;
         }
@@ -160,7 +160,7 @@ final class Exchanges {
     /** A tunnel has come to its own end, both ways. */
     void tunnelEnded(long token, long nowNanos) {
         if (flights.current(token)) {
-            tunnelEnds(Flights.flightOf(token), Outcome.ANSWERED, -1, nowNanos);
+            tunnelEnds(Slots.of(token), Outcome.ANSWERED, -1, nowNanos);
         }
     }
 
@@ -174,7 +174,7 @@ final class Exchanges {
     /** A backend took no connection. */
     void refused(long token, long nowNanos) {
         if (flights.current(token)) {
-            failed(Flights.flightOf(token), Outcome.REFUSED, BAD_GATEWAY, Cause.REFUSED, false, nowNanos);
+            failed(Slots.of(token), Outcome.REFUSED, BAD_GATEWAY, Cause.REFUSED, false, nowNanos);
         }
     }
 

@@ -4,12 +4,10 @@ import java.util.Arrays;
 
 /**
  * Requests on their way, in columns: a flight is an index into all of them, reused when its request is over for client and
- * balancer alike. A message names a flight together with the leg it was sent on ({@link #token}); the leg goes up with
- * every step that makes older messages stale, and never comes back.
+ * balancer alike.
  */
-final class Flights {
+final class Flights extends Slots {
     private static final int FIRST_CAPACITY = 64;
-    private static final int LEG_BITS = 31;
 
     /** Where a request is, as the balancer would say. */
     enum State {
@@ -57,15 +55,13 @@ final class Flights {
     int[] triedCount = new int[FIRST_CAPACITY];
     int[][] tried = new int[FIRST_CAPACITY][];
 
-    private int[] leg = new int[FIRST_CAPACITY];
-    private int[] freed = new int[FIRST_CAPACITY];
-    private int freedCount;
-    private int used;
     private final int mostTried;
 
     /** @param mostTried attempts a request */
     Flights(int mostTried) {
+        super(FIRST_CAPACITY);
         this.mostTried = mostTried;
+        makeTried(0);
     }
 
     /** Whether the client of a request still waits for its end. */
@@ -76,17 +72,8 @@ final class Flights {
                 && openedNanos[flight] == Lane.NEVER;
     }
 
-    int open() {
-        return used - freedCount;
-    }
-
-    /** Upper end of the flights ever used. */
-    int used() {
-        return used;
-    }
-
     int take(long requestNumber, long due, int trafficNumber, int kindNumber, int clientNumber, int connectionNumber) {
-        int flight = freedCount > 0 ? freed[--freedCount] : fresh();
+        int flight = takeSlot();
         state[flight] = State.TO_BALANCER;
         request[flight] = requestNumber;
         dueNanos[flight] = due;
@@ -164,34 +151,7 @@ final class Flights {
 
     void free(int flight) {
         state[flight] = State.FREE;
-        nextLeg(flight);
-        freed[freedCount++] = flight;
-    }
-
-    void nextLeg(int flight) {
-        leg[flight] = (leg[flight] + 1) & ((1 << LEG_BITS) - 1);
-    }
-
-    /** The flight and its leg in one number, at least 0. */
-    long token(int flight) {
-        return (long) leg[flight] << 32 | flight;
-    }
-
-    static int flightOf(long token) {
-        return (int) token;
-    }
-
-    /** Whether the flight is still on the leg of the token. */
-    boolean current(long token) {
-        return leg[(int) token] == (int) (token >>> 32);
-    }
-
-    private int fresh() {
-        if (used == request.length) {
-            grow(2 * used);
-        }
-        tried[used] = new int[mostTried];
-        return used++;
+        freeSlot(flight);
     }
 
     private static long[] never(int capacity) {
@@ -206,7 +166,14 @@ final class Flights {
         return states;
     }
 
-    private void grow(int capacity) {
+    private void makeTried(int from) {
+        for (int flight = from; flight < tried.length; flight++) {
+            tried[flight] = new int[mostTried];
+        }
+    }
+
+    @Override
+    void grow(int capacity) {
         int old = state.length;
         state = Arrays.copyOf(state, capacity);
         Arrays.fill(state, old, capacity, State.FREE);
@@ -230,7 +197,6 @@ final class Flights {
         told = Arrays.copyOf(told, capacity);
         triedCount = Arrays.copyOf(triedCount, capacity);
         tried = Arrays.copyOf(tried, capacity);
-        leg = Arrays.copyOf(leg, capacity);
-        freed = Arrays.copyOf(freed, capacity);
+        makeTried(old);
     }
 }

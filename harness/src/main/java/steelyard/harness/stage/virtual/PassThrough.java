@@ -40,10 +40,10 @@ final class PassThrough {
 
     /** A client's connection stands. */
     void came(long token, long nowNanos) {
-        if (!passages.current(token) || passages.state[Passages.passageOf(token)] != State.COMING) {
+        if (!passages.current(token) || passages.state[Slots.of(token)] != State.COMING) {
             return;
         }
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         int stream = passages.traffic[passage];
         ask.clear();
         ask.pool = streams.pool(stream);
@@ -66,7 +66,7 @@ final class PassThrough {
     }
 
     void placed(long ticket, int backend, long nowNanos) {
-        placed(Passages.passageOf(ticket(ticket)), backend, nowNanos);
+        placed(Slots.of(ticket(ticket)), backend, nowNanos);
     }
 
     private void placed(int passage, int backend, long nowNanos) {
@@ -81,7 +81,7 @@ final class PassThrough {
 
     /** The balancer's wish for a connection reaches the backend. */
     void connect(VirtualBackends backends, long token, long nowNanos) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (!passages.current(token) || passages.state[passage] != State.CONNECTING) {
             return;
         }
@@ -98,7 +98,7 @@ final class PassThrough {
 
     /** The connection to the backend stands. */
     void opened(long token, long nowNanos) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (!passages.current(token) || passages.state[passage] != State.CONNECTING) {
             return;
         }
@@ -109,7 +109,7 @@ final class PassThrough {
     }
 
     void refused(long token, long nowNanos) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (passages.current(token) && passages.state[passage] == State.CONNECTING) {
             end(passage, Outcome.REFUSED, nowNanos);
             breakOff(passage, nowNanos);
@@ -139,7 +139,7 @@ final class PassThrough {
 
     /** A request reaches the backend. */
     void read(VirtualBackends backends, long token, long nowNanos) {
-        int flight = Flights.flightOf(token);
+        int flight = Slots.of(token);
         if (!flights.current(token) || !passages.accepted[flights.passage[flight]]) {
             return;
         }
@@ -158,7 +158,7 @@ final class PassThrough {
 
     /** The client's end of the connection reaches the balancer. */
     void left(long token, long nowNanos) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (!passages.current(token)) {
             return;
         }
@@ -198,7 +198,7 @@ final class PassThrough {
 
     /** The backend has closed its side too. */
     void ended(long token, long nowNanos) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (passages.current(token) && passages.state[passage] == State.ENDING) {
             end(passage, Outcome.ANSWERED, nowNanos);
             passages.free(passage);
@@ -216,7 +216,7 @@ final class PassThrough {
     }
 
     void reset(long token, long nowNanos) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (passages.current(token) && passages.on(passage, passages.backend[passage])) {
             end(passage, Outcome.BROKEN, nowNanos);
             breakOff(passage, nowNanos);

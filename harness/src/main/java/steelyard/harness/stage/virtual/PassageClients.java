@@ -101,7 +101,7 @@ final class PassageClients {
      * @return the flight of the request on it, which has failed and is the caller's to end, or -1 when there is none
      */
     int broken(long token) {
-        int passage = Passages.passageOf(token);
+        int passage = Slots.of(token);
         if (!passages.current(token) || passages.left[passage]) {
             // The client has closed it meanwhile, and the balancer is about to learn of that.
             return Passages.NONE;

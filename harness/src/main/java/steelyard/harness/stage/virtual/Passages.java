@@ -5,10 +5,9 @@ import steelyard.balancer.core.decide.Decider;
 
 /**
  * Connections that are passed through as they are, in columns: a passage is an index into all of them, from the client's
- * wish to connect until both the client and the balancer are done with it. As with {@link Flights}, messages name it by a
- * token that is never the same again.
+ * wish to connect until both the client and the balancer are done with it.
  */
-final class Passages {
+final class Passages extends Slots {
     /** As the balancer would say. */
     enum State {
         FREE,
@@ -44,24 +43,14 @@ final class Passages {
     /** The client has closed it; the balancer learns of it a hop later. */
     boolean[] left = new boolean[FIRST_CAPACITY];
 
-    private int[] leg = new int[FIRST_CAPACITY];
-    private int[] freed = new int[FIRST_CAPACITY];
-    private int freedCount;
-    private int used;
     private long latest;
 
-    /** How many there are, whoever is not yet done with them. */
-    int open() {
-        return used - freedCount;
-    }
-
-    /** Upper end of the passages ever used. */
-    int used() {
-        return used;
+    Passages() {
+        super(FIRST_CAPACITY);
     }
 
     int open(int stream, int clientOfStream, int onConnection) {
-        int passage = freedCount > 0 ? freed[--freedCount] : fresh();
+        int passage = takeSlot();
         state[passage] = State.COMING;
         traffic[passage] = stream;
         client[passage] = clientOfStream;
@@ -85,8 +74,7 @@ final class Passages {
     void free(int passage) {
         state[passage] = State.FREE;
         accepted[passage] = false;
-        leg[passage] = (leg[passage] + 1) & Integer.MAX_VALUE;
-        freed[freedCount++] = passage;
+        freeSlot(passage);
     }
 
     /** Whether it counts in flight on a backend. */
@@ -98,33 +86,14 @@ final class Passages {
                 };
     }
 
-    /** The passage and its leg in one number, at least 0. */
-    long token(int passage) {
-        return (long) leg[passage] << 32 | passage;
-    }
-
-    static int passageOf(long token) {
-        return (int) token;
-    }
-
-    boolean current(long token) {
-        return leg[(int) token] == (int) (token >>> 32);
-    }
-
-    private int fresh() {
-        if (used == state.length) {
-            grow(2 * used);
-        }
-        return used++;
-    }
-
     private static State[] newStates(int capacity) {
         State[] states = new State[capacity];
         Arrays.fill(states, State.FREE);
         return states;
     }
 
-    private void grow(int capacity) {
+    @Override
+    void grow(int capacity) {
         int old = state.length;
         state = Arrays.copyOf(state, capacity);
         Arrays.fill(state, old, capacity, State.FREE);
@@ -137,7 +106,5 @@ final class Passages {
         backend = Arrays.copyOf(backend, capacity);
         accepted = Arrays.copyOf(accepted, capacity);
         left = Arrays.copyOf(left, capacity);
-        leg = Arrays.copyOf(leg, capacity);
-        freed = Arrays.copyOf(freed, capacity);
     }
 }

@@ -50,7 +50,7 @@ final class Tunnels {
 
     /** A client learns that its tunnel stands. */
     void opened(long token, long nowNanos) {
-        int flight = Flights.flightOf(token);
+        int flight = Slots.of(token);
         if (flights.current(token) && !flights.told[flight]) {
             flights.openedNanos[flight] = nowNanos;
             lanes.get(laneOf[flights.traffic[flight]][flights.kind[flight]]).send(nowNanos, token, 0, 0);

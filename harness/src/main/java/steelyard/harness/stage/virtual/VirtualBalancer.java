@@ -136,7 +136,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
             case ANSWER -> exchanges.answered(what, (int) where, nowNanos);
             case RESET -> exchanges.reset(what, nowNanos);
             case REFUSAL -> exchanges.refused(what, nowNanos);
-            case RESULT -> clients.result(Flights.flightOf(what), nowNanos);
+            case RESULT -> clients.result(Slots.of(what), nowNanos);
             case TUNNEL_OPENED -> clients.opened(what, nowNanos);
             case TUNNEL_ENDED -> exchanges.tunnelEnded(what, nowNanos);
             case PASSAGE, PASSAGE_ON_TLS -> passThrough.came(what, nowNanos);
