@@ -5,7 +5,8 @@ import java.net.InetSocketAddress;
 /**
  * Where the control page is and what opens it.
  *
- * @param token to be sent as {@code Authorization: Bearer <token>}; made for this run: to be shown to whoever plays, to be written to no file
+ * @param token to be sent as {@code Authorization: Bearer <token>}; made for this run: to be shown to whoever plays, to
+ *     be written to no file
  */
 public record ControlAddress(InetSocketAddress address, String token) {
     /** Where the metrics are read. */

@@ -11,7 +11,10 @@ import java.net.InetSocketAddress;
 import java.util.ArrayList;
 import java.util.List;
 
-/** Fronts that listen, and the client connections that came through them. Methods may be called from any thread but a loop's own. */
+/**
+ * Fronts that listen, and the client connections that came through them. Methods may be called from any thread but a
+ * loop's own.
+ */
 public final class Fronts {
     private final List<Channel> listening = new ArrayList<>();
     private final ChannelGroup clients = new DefaultChannelGroup(GlobalEventExecutor.INSTANCE, true);
