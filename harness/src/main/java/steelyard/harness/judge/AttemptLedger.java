@@ -1,8 +1,6 @@
 package steelyard.harness.judge;
 
-import java.util.Arrays;
 import steelyard.balancer.core.decide.Outcome;
-import steelyard.harness.record.Words;
 
 /**
  * Attempts as the balancer and the backends tell of them, matched by request and attempt number. An entry goes when
@@ -34,20 +32,7 @@ final class AttemptLedger extends LongTable {
     private final boolean[] byConnection;
 
     private final long[] timeNanos;
-    private final long[] apart = new long[OUTCOMES.length];
-    private final long[] unread = new long[OUTCOMES.length];
-    private long agreed;
-    private long differing;
-    private long pickedTwice;
-    private long endedUnpicked;
-    private long readUnsent;
-    private long leftUnread;
-    private long belated;
-    private long foreign;
-    private long openInBalancer;
-    private long openInBackend;
-    private long leftBehind;
-    private long connections;
+    private final AttemptTally tally = new AttemptTally();
 
     /** @param byConnection by backend: whether it is reached by connections that are passed on as they come */
     AttemptLedger(boolean[] byConnection) {
@@ -58,7 +43,7 @@ final class AttemptLedger extends LongTable {
     void picked(long atNanos, int backend, long request, int attempt) {
         long key = key(request, attempt);
         if (find(key) >= 0) {
-            pickedTwice++;
+            tally.pickedTwice++;
             return;
         }
         int place = add(key);
@@ -70,15 +55,15 @@ final class AttemptLedger extends LongTable {
     void ended(long atNanos, int backend, long request, int attempt, Outcome how, int status) {
         int place = find(key(request, attempt));
         if (place < 0 || (state[place] & ENDED) != 0) {
-            endedUnpicked++;
+            tally.endedUnpicked++;
             return;
         }
         if (backendOf[place] != backend) {
-            differing++;
+            tally.differing++;
         }
         timeNanos[backend] += atNanos - pickNanos[place];
         if (byConnection[backend]) {
-            connections++;
+            tally.connections++;
             remove(place);
             return;
         }
@@ -93,7 +78,7 @@ final class AttemptLedger extends LongTable {
             return;
         }
         if (foreign(request, attempt)) {
-            foreign++;
+            tally.foreign++;
             return;
         }
         int place = find(key(request, attempt));
@@ -102,9 +87,9 @@ final class AttemptLedger extends LongTable {
             backendOf[place] = backend;
             state[place] = ENDED | RECEIVED | BELATED;
             outcome[place] = (byte) Outcome.ABANDONED.ordinal();
-            belated++;
+            tally.belated++;
         } else if ((state[place] & RECEIVED) != 0 || backendOf[place] != backend) {
-            readUnsent++;
+            tally.readUnsent++;
         } else {
             state[place] |= RECEIVED;
         }
@@ -116,7 +101,7 @@ final class AttemptLedger extends LongTable {
         }
         int place = find(key(request, attempt));
         if (place < 0 || (state[place] & (RECEIVED | LEFT)) != RECEIVED || backendOf[place] != backend) {
-            leftUnread++;
+            tally.leftUnread++;
             return;
         }
         state[place] |= (byte) (LEFT | (inFull ? IN_FULL : 0));
@@ -132,12 +117,12 @@ final class AttemptLedger extends LongTable {
             }
             if ((state[place] & ENDED) == 0) {
                 timeNanos[backendOf[place]] += atNanos - pickNanos[place];
-                openInBalancer += byConnection[backendOf[place]] ? 0 : 1;
-                connections += byConnection[backendOf[place]] ? 1 : 0;
+                tally.openInBalancer += byConnection[backendOf[place]] ? 0 : 1;
+                tally.connections += byConnection[backendOf[place]] ? 1 : 0;
             } else if ((state[place] & BELATED) == 0 && OUTCOMES[outcome[place]] == Outcome.ANSWERED) {
-                openInBackend++;
+                tally.openInBackend++;
             } else {
-                leftBehind++;
+                tally.leftBehind++;
             }
         }
     }
@@ -147,36 +132,9 @@ final class AttemptLedger extends LongTable {
         return timeNanos[backend];
     }
 
-    /** @param complete whether the play was played to its end; otherwise attempts that it broke off are no mistake */
-    boolean agrees(boolean complete) {
-        long unreadSum = Arrays.stream(unread).sum();
-        return differing + pickedTwice + endedUnpicked + readUnsent + leftUnread == 0
-                && belated <= unreadSum - unread[Outcome.REFUSED.ordinal()]
-                && (!complete || openInBalancer + openInBackend == 0);
-    }
-
-    String text() {
-        StringBuilder text = new StringBuilder().append(agreed).append(" agree");
-        for (Outcome each : OUTCOMES) {
-            if (apart[each.ordinal()] > 0) {
-                text.append(", ").append(apart[each.ordinal()]).append(' ').append(Words.of(each));
-                if (unread[each.ordinal()] > 0) {
-                    text.append(" (").append(unread[each.ordinal()]).append(" not read)");
-                }
-            }
-        }
-        note(text, connections, "were connections, which the balancer alone counts");
-        note(text, belated, "read after they were given up");
-        note(text, foreign, "not of this play");
-        note(text, leftBehind, "given up and left in a backend");
-        note(text, differing, "told differently by balancer and backend");
-        note(text, pickedTwice, "picked twice");
-        note(text, endedUnpicked, "ended twice or never picked");
-        note(text, readUnsent, "read twice or by another backend");
-        note(text, leftUnread, "ended by a backend twice or without being read");
-        note(text, openInBalancer, "never ended by the balancer");
-        note(text, openInBackend, "answered but never ended by a backend");
-        return text.toString();
+    /** What matching has come to. */
+    AttemptTally tally() {
+        return tally;
     }
 
     @Override
@@ -225,23 +183,9 @@ final class AttemptLedger extends LongTable {
             return;
         }
         if ((bits & BELATED) == 0) {
-            count(how, received, (bits & IN_FULL) != 0 && told[place] == answered[place]);
+            tally.count(how, received, (bits & IN_FULL) != 0 && told[place] == answered[place]);
         }
         remove(place);
-    }
-
-    private void count(Outcome how, boolean received, boolean inFull) {
-        if (how == Outcome.ANSWERED) {
-            agreed += inFull ? 1 : 0;
-            differing += inFull ? 0 : 1;
-            return;
-        }
-        apart[how.ordinal()]++;
-        if (!received) {
-            unread[how.ordinal()]++;
-        } else if (how == Outcome.REFUSED) {
-            differing++;
-        }
     }
 
     private static boolean foreign(long request, int attempt) {
@@ -250,11 +194,5 @@ final class AttemptLedger extends LongTable {
 
     private static long key(long request, int attempt) {
         return (request << ATTEMPT_BITS) | attempt;
-    }
-
-    private static void note(StringBuilder text, long count, String what) {
-        if (count > 0) {
-            text.append(", ").append(count).append(' ').append(what);
-        }
     }
 }

@@ -125,6 +125,7 @@ final class SelfChecks implements PlayListener {
 
     /** What was found, once the play has ended. */
     List<SelfCheck> read() {
+        AttemptTally tally = attempts.tally();
         return List.of(
                 new SelfCheck(
                         SelfCheck.PLAYED_TO_ITS_END,
@@ -136,8 +137,7 @@ final class SelfChecks implements PlayListener {
                         capHits == 0,
                         capHits == 0 ? "never hit" : "hit " + Wording.count(capHits, "time", "times")),
                 new SelfCheck("requests add up", requests.balanced(complete), requests.text(complete)),
-                new SelfCheck(
-                        "attempts as balancer and backends count them", attempts.agrees(complete), attempts.text()),
+                new SelfCheck("attempts as balancer and backends count them", tally.agrees(complete), tally.text()),
                 littleCheck(),
                 backendsCheck());
     }
