@@ -5,12 +5,14 @@ import static org.assertj.core.api.Assertions.assertThat;
 import java.io.IOException;
 import java.util.function.UnaryOperator;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.settings.AffinitySettings;
 import steelyard.balancer.settings.HashSettings;
 import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 
 /** Clients that are held to a backend, by cookie or address, and keys that are. */
+@ExtendWith(Accounting.class)
 class AffinityTest {
     private static final long HALF_AN_HOUR = 1800 * LivePlay.SECOND;
 

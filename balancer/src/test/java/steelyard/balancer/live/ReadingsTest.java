@@ -9,11 +9,13 @@ import java.util.List;
 import java.util.concurrent.atomic.AtomicReference;
 import java.util.function.UnaryOperator;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.settings.LoadSettings;
 import steelyard.balancer.settings.PickSettings;
 import steelyard.balancer.settings.PoolSettings;
 
 /** Load pages on the wire. */
+@ExtendWith(Accounting.class)
 class ReadingsTest {
     private static UnaryOperator<Pool> weighingByLoad() {
         LoadSettings load = new LoadSettings(

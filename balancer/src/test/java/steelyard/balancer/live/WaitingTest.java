@@ -6,10 +6,12 @@ import static org.awaitility.Awaitility.await;
 import java.io.IOException;
 import java.util.concurrent.CountDownLatch;
 import org.junit.jupiter.api.Test;
+import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
 import steelyard.balancer.settings.InFlightSettings;
 
 /** Requests and connections that wait for a place on a backend. */
+@ExtendWith(Accounting.class)
 class WaitingTest {
     private static final String REQUEST = "GET / HTTP/1.1\r\nHost: quay\r\n\r\n";
     private static final String ANSWER = "HTTP/1.1 200 OK\r\nContent-Length: 4\r\n\r\ntern";
