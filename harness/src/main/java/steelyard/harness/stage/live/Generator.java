@@ -51,6 +51,7 @@ final class Generator implements ClientConnection.Owner {
     private final int mostConnections;
     private int connections;
     private int open;
+    private boolean keeping = true;
     private boolean closing;
 
     /** How the balancer broke off a request, if it did. Asking makes it forget. */
@@ -237,8 +238,9 @@ final class Generator implements ClientConnection.Owner {
         end(exchange, orderly ? null : Answer.cutShort(brokenOff.take(exchange.request)), SWITCHING);
     }
 
-    /** Closes what is idle, and by that ends the units of work that are connections. */
+    /** Closes what is idle now and from here on, and by that ends the units of work that are connections. */
     void closeIdle() {
+        keeping = false;
         for (Clients stream : streams) {
             stream.closeIdle(Long.MAX_VALUE);
         }
@@ -250,8 +252,13 @@ final class Generator implements ClientConnection.Owner {
     }
 
     private void kept(ClientConnection connection) {
-        if (connection.usable()) {
+        if (!connection.usable()) {
+            return;
+        }
+        if (keeping) {
             connection.client().keep(connection, clock.nanos());
+        } else {
+            connection.close();
         }
     }
 

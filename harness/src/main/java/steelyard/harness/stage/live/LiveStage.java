@@ -8,7 +8,6 @@ import java.util.List;
 import java.util.concurrent.CompletableFuture;
 import java.util.concurrent.ExecutionException;
 import java.util.concurrent.TimeUnit;
-import java.util.concurrent.locks.LockSupport;
 import org.jspecify.annotations.Nullable;
 import steelyard.backends.behave.Chance;
 import steelyard.backends.fleet.CannotStart;
@@ -19,7 +18,6 @@ import steelyard.backends.stub.Transport;
 import steelyard.balancer.live.Balancer;
 import steelyard.balancer.live.ControlAddress;
 import steelyard.balancer.live.control.CueTaker;
-import steelyard.balancer.live.guard.BackendReadings;
 import steelyard.balancer.settings.BalancerSettings;
 import steelyard.drills.model.Drill;
 import steelyard.drills.model.Traffic;
@@ -42,8 +40,6 @@ public final class LiveStage implements Stage {
     public static final int MOST_REQUESTS_A_SECOND = 20_000;
 
     private static final long LEAD_NANOS = TimeUnit.MILLISECONDS.toNanos(20);
-    private static final long LONGEST_SETTLING_NANOS = TimeUnit.SECONDS.toNanos(10);
-    private static final long SETTLING_STEP_NANOS = TimeUnit.MILLISECONDS.toNanos(20);
     private static final long LONGEST_CLOSE_SECONDS = 5;
 
     private final Drill drill;
@@ -169,7 +165,7 @@ public final class LiveStage implements Stage {
             sampler.start();
             complete = await(playing.start());
             loop.submit(sending::closeIdle).awaitUninterruptibly();
-            settle(balancing);
+            new Settling(balancing, fleet, cast.backends().size()).await();
         } finally {
             sampler.stop();
             told.finish(complete);
@@ -210,22 +206,6 @@ public final class LiveStage implements Stage {
             Thread.currentThread().interrupt();
             throw new CannotPlay("the play was stopped from outside: start it again", stop);
         }
-    }
-
-    /** Attempts whose clients have gone end a moment later; the account should have them. */
-    private void settle(Balancer balancing) {
-        BackendReadings readings = new BackendReadings(cast.backends().size());
-        long deadline = clock.nanos() + LONGEST_SETTLING_NANOS;
-        boolean busy = true;
-        while (busy && clock.nanos() - deadline < 0) {
-            LockSupport.parkNanos(SETTLING_STEP_NANOS);
-            balancing.sample(readings);
-            busy = false;
-            for (int backend = 0; backend < readings.backends(); backend++) {
-                busy |= readings.inFlight(backend) > 0;
-            }
-        }
-        LockSupport.parkNanos(SETTLING_STEP_NANOS);
     }
 
     /**
