@@ -11,7 +11,6 @@ import steelyard.balancer.core.standing.Eligibility;
 import steelyard.balancer.core.weigh.Headroom;
 import steelyard.balancer.core.weigh.PoolWeights;
 import steelyard.balancer.settings.AffinitySettings;
-import steelyard.balancer.settings.BenchSettings;
 import steelyard.balancer.settings.DrainSettings;
 import steelyard.balancer.settings.InFlightSettings;
 import steelyard.balancer.settings.PoolSettings;
@@ -24,11 +23,7 @@ import steelyard.balancer.settings.WarmUpSettings;
  * <p>Members are known by their place in the pool.
  */
 final class PoolDesk {
-    /** The ramp of a method that does not take turns is told in steps of a thousandth of its length. */
-    private static final int RAMP_STEPS = 1000;
-
     private static final int[] NONE_TRIED = {};
-    private static final double SLACK = 1e-9;
 
     final PoolWeights weights;
     final RetryRule retries;
@@ -36,8 +31,8 @@ final class PoolDesk {
     final @Nullable AffinitySettings affinity;
     /** There where clients are held by their address. */
     final @Nullable ClientTable clients;
-    /** What the pool's bench cap allows: whether one more may be benched. */
-    final BooleanSupplier benchRoom = this::benchesOneMore;
+    /** Whether one more may be benched. */
+    final BooleanSupplier benchRoom;
 
     private final Eligibility eligibility;
     private final BackendStanding[] standings;
@@ -49,18 +44,14 @@ final class PoolDesk {
 
     private final boolean[] blocked;
 
-    private final boolean[] warming;
+    private final RampSteps ramps;
     private final Methods methods;
     private final HostPlaces firstPlaces;
     private final HostPlaces againPlaces;
     private final int mostInFlight;
-    private final int mostBenched;
-    private final long rampStepNanos;
     private PoolSettings settings;
     private Picker first;
     private Picker again;
-    private int warmingCount;
-    private long nextRampStepNanos;
 
     PoolDesk(
             PoolSettings settings,
@@ -84,7 +75,6 @@ final class PoolDesk {
         inFlight = new int[members];
         entered = new boolean[members];
         blocked = new boolean[members];
-        warming = new boolean[members];
         eligibility = new Eligibility(standings, settings.backends(), settings.reserve());
         weights = new PoolWeights(settings, standings, eligibility, set, headroomMilli, hostOf, hostSet);
         retries = new RetryRule(settings.retry());
@@ -95,10 +85,9 @@ final class PoolDesk {
         clients = affinity != null && affinity.by() == AffinitySettings.By.CLIENT
                 ? new ClientTable(affinity.lastsNanos(), ClientTable.MOST)
                 : null;
-        BenchSettings bench = settings.bench();
-        mostBenched = bench == null ? 0 : (int) (bench.cap() * members + SLACK);
+        benchRoom = new BenchCap(standings, settings.bench());
         WarmUpSettings warmUp = settings.warmUp();
-        rampStepNanos = warmUp == null ? 0 : Math.max(1, warmUp.rampNanos() / RAMP_STEPS);
+        ramps = new RampSteps(members, warmUp == null ? 0 : warmUp.rampNanos());
         first = methods.picker(settings, firstPlaces);
         again = methods.picker(settings, againPlaces);
         weights.weighs(first.weighs());
@@ -186,12 +175,8 @@ final class PoolDesk {
     /** Takes over what changed in a member's standing. */
     void stood(int member, long nowNanos) {
         weights.stale();
-        boolean isWarming = standings[member].warming();
-        if (isWarming != warming[member]) {
-            warming[member] = isWarming;
-            warmingCount += isWarming ? 1 : -1;
+        if (ramps.note(member, standings[member].warming(), nowNanos)) {
             weigh(member, nowNanos);
-            nextRampStepNanos = nowNanos + rampStepNanos;
         }
         if (eligibility.changed(member)) {
             for (int each = 0; each < set.length; each++) {
@@ -233,14 +218,6 @@ final class PoolDesk {
     }
 
     // --- inside -----------------------------------------------------------------------------------------------------
-
-    private boolean benchesOneMore() {
-        int benched = 0;
-        for (BackendStanding each : standings) {
-            benched += each.benched() ? 1 : 0;
-        }
-        return benched < mostBenched;
-    }
 
     /** Brings the pickers to whether a member may be picked and has a free place. */
     private void settle(int member) {
@@ -288,12 +265,11 @@ final class PoolDesk {
     }
 
     private void stepRamps(long nowNanos) {
-        if (warmingCount == 0 || first.takesTurns() || nowNanos - nextRampStepNanos < 0) {
+        if (first.takesTurns() || !ramps.take(nowNanos)) {
             return;
         }
-        nextRampStepNanos = nowNanos + rampStepNanos;
         for (int member = 0; member < set.length; member++) {
-            if (warming[member]) {
+            if (ramps.warming(member)) {
                 weigh(member, nowNanos);
             }
         }
