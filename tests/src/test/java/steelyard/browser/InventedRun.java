@@ -481,7 +481,7 @@ final class InventedRun {
             return dead(death, back)
                     .stands(death + 2.612, "down", "misses")
                     .stands(back + 1.6, "warming", "passes")
-                    .stands(back + 1.6 + WARM_UP, "up", "warmed");
+                    .stands(back + 1.6 + WARM_UP, "up", "ramped");
         }
 
         private boolean deadAt(double at) {

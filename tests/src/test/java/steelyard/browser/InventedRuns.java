@@ -111,7 +111,7 @@ final class InventedRuns {
                     .stands(start, "draining", "drain")
                     .stands(start + 10, "withdrawn", "withdraw")
                     .stands(start + 40, "warming", "admit")
-                    .stands(start + 45, "up", "warmed");
+                    .stands(start + 45, "up", "ramped");
             run.cue(start, BIRDS.get(at) + " drains", "drain " + BIRDS.get(at));
             run.cue(start + 10, BIRDS.get(at) + " stops for its patches", "withdraw " + BIRDS.get(at));
             run.cue(start + 40, BIRDS.get(at) + " is back", "admit " + BIRDS.get(at));
@@ -159,7 +159,7 @@ final class InventedRuns {
         run.backend("kittiwake", "seats", 2, 900)
                 .stands(30, "benched", "failures")
                 .stands(35, "warming", "bench-over")
-                .stands(40, "up", "warmed");
+                .stands(40, "up", "ramped");
         run.backend("skua", "mail", 1, 60);
         run.backend("tern", "mail", 1, 60);
         return run.cue(20, "gannet gets slower", "slow gannet")

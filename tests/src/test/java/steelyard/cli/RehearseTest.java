@@ -96,7 +96,7 @@ class RehearseTest {
         assertThat(command.out())
                 .contains(
                         "cue: kill fulmar (fulmar dies)",
-                        "fulmar: up to down, misses",
+                        "fulmar: up to down (misses)",
                         "at most 60 s",
                         "run/report.html")
                 .containsPattern("run +run\\R");

@@ -121,6 +121,11 @@ public record Runs(Path path, List<RunData> runs, @Nullable PlayTable plays) {
         return runs.size() == 1 ? "rehearsal" : runs.size() + " rehearsals";
     }
 
+    /** How many cues a person sent, in all of the runs together. */
+    long handCues() {
+        return runs.stream().mapToLong(RunData::handCues).sum();
+    }
+
     /** Seeds in words: {@code 1 to 200}, {@code 1, 1, 2}. */
     String seeds() {
         if (plays == null || plays.rows().isEmpty()) {

@@ -46,6 +46,7 @@ public record SettingChange(String setting, String first, String second) {
         settings.put("(backends)", runs.first().backendsRun());
         settings.put("(plays)", runs.words());
         settings.put("(seeds)", runs.seeds());
+        settings.put("(cues by hand)", String.valueOf(runs.handCues()));
         settings.put("(version)", runs.first().version());
         return settings;
     }

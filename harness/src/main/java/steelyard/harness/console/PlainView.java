@@ -49,7 +49,7 @@ final class PlainView implements View {
 
     @Override
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
-        events.add(line(atNanos, "cue: " + Scene.text(cue, by)));
+        events.add(line(atNanos, (by == By.HAND ? "cue by hand: " : "cue: ") + Scene.text(cue, by)));
     }
 
     @Override
@@ -57,8 +57,8 @@ final class PlainView implements View {
         String name = drill.stage().backends().get(change.backend()).name();
         events.add(line(
                 change.atNanos(),
-                name + ": " + Words.of(change.from()) + " to " + Words.of(change.to()) + ", "
-                        + Words.of(change.cause())));
+                name + ": " + Words.of(change.from()) + " to " + Words.of(change.to()) + " (" + Words.of(change.cause())
+                        + ")"));
     }
 
     @Override

@@ -3,6 +3,7 @@ package steelyard.harness.record;
 import java.io.StringWriter;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Map;
 import javax.xml.stream.XMLOutputFactory;
 import javax.xml.stream.XMLStreamException;
 import javax.xml.stream.XMLStreamWriter;
@@ -26,11 +27,15 @@ public final class JunitXml {
 
     /** The file's text. */
     public static String text(String drill, List<Case> cases) {
+        return text(drill, Map.of(), cases);
+    }
+
+    private static String text(String drill, Map<String, String> properties, List<Case> cases) {
         StringWriter text = new StringWriter();
         try {
             XMLStreamWriter xml = XMLOutputFactory.newFactory().createXMLStreamWriter(text);
             xml.writeStartDocument("UTF-8", "1.0");
-            suite(xml, clean(drill), cases);
+            suite(xml, clean(drill), properties, cases);
             xml.writeEndDocument();
             xml.close();
         } catch (XMLStreamException e) {
@@ -50,7 +55,7 @@ public final class JunitXml {
                     new Case(finding.text() + ": " + finding.boundText(), finding.met(), !finding.reached(), failure));
         }
         cases.add(fitness(verdict.fit(), verdict.checks()));
-        return text(drill, cases);
+        return text(drill, Map.of(RunJson.HAND_CUES, String.valueOf(verdict.handCues())), cases);
     }
 
     /** The case that says whether it is fit to judge. */
@@ -58,7 +63,8 @@ public final class JunitXml {
         return new Case("fit to judge", fit, "unfit to judge: " + unfit(checks));
     }
 
-    private static void suite(XMLStreamWriter xml, String drill, List<Case> cases) throws XMLStreamException {
+    private static void suite(XMLStreamWriter xml, String drill, Map<String, String> properties, List<Case> cases)
+            throws XMLStreamException {
         long skipped = cases.stream().filter(Case::skipped).count();
         long failures = cases.stream().filter(each -> !each.ok()).count() - skipped;
         xml.writeCharacters("\n");
@@ -68,10 +74,25 @@ public final class JunitXml {
         xml.writeAttribute("failures", String.valueOf(failures));
         xml.writeAttribute("errors", "0");
         xml.writeAttribute("skipped", String.valueOf(skipped));
+        properties(xml, properties);
         for (Case each : cases) {
             testcase(xml, drill, each);
         }
         xml.writeCharacters("\n");
+        xml.writeEndElement();
+    }
+
+    private static void properties(XMLStreamWriter xml, Map<String, String> properties) throws XMLStreamException {
+        if (properties.isEmpty()) {
+            return;
+        }
+        xml.writeCharacters("\n  ");
+        xml.writeStartElement("properties");
+        for (Map.Entry<String, String> each : properties.entrySet()) {
+            xml.writeEmptyElement("property");
+            xml.writeAttribute("name", each.getKey());
+            xml.writeAttribute("value", each.getValue());
+        }
         xml.writeEndElement();
     }
 

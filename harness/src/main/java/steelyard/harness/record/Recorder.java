@@ -25,6 +25,7 @@ public final class Recorder implements PlayListener {
     private final SliceBook book;
     private long flushedNanos;
     private boolean complete;
+    private int handCues;
 
     /** Writes {@code run.json} and {@code machine.json} and opens the rest. Nothing here throws on a full disk. */
     public Recorder(RunFolder folder, RunHead head, Cast cast, Machine machine) {
@@ -112,6 +113,7 @@ public final class Recorder implements PlayListener {
 
     @Override
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
+        handCues += by == By.HAND ? 1 : 0;
         StringBuilder row = Fixed.seconds(cues.row(), dueNanos).append(',');
         Fixed.seconds(row, atNanos).append(',');
         Csv.field(row, CueWords.name(cue, by)).append(',');
@@ -166,7 +168,8 @@ public final class Recorder implements PlayListener {
 
     private Verdict judged(Verdict verdict) {
         String line = trouble.line();
-        return line == null ? verdict : verdict.with(new SelfCheck("record of the run", false, line));
+        Verdict whole = line == null ? verdict : verdict.with(new SelfCheck("record of the run", false, line));
+        return whole.withHandCues(handCues);
     }
 
     private void flush() {

@@ -53,6 +53,11 @@ public record RunData(
         return new RunReader(folder).read();
     }
 
+    /** How many cues a person sent while it was played. */
+    public long handCues() {
+        return cues.stream().filter(each -> each.by().equals("hand")).count();
+    }
+
     /** A host of the cast. */
     public record HostRow(String name, int weight, @Nullable String zone) {}
 

@@ -16,6 +16,7 @@ import steelyard.drills.model.Pool;
 /** The JSON files of a run as text: keys in a fixed order, no wall time outside {@code machine.json}. */
 public final class RunJson {
     static final int FORMAT = 1;
+    static final String HAND_CUES = "handCues";
 
     private static final ObjectMapper JSON = new ObjectMapper();
     private static final ObjectWriter PRETTY = JSON.writer(new Indent());
@@ -29,6 +30,7 @@ public final class RunJson {
             run.putNull("verdict");
         } else {
             putVerdict(run, verdict.met(), verdict.fit(), verdict.text());
+            run.put(HAND_CUES, verdict.handCues());
         }
         putFindings(run.putArray("expectations"), verdict == null ? List.of() : verdict.expectations());
         putFindings(run.putArray("measures"), verdict == null ? List.of() : verdict.measures());
@@ -75,6 +77,7 @@ public final class RunJson {
         node.put("fit", verdict.fit());
         node.put("exit", verdict.exit());
         node.put("text", verdict.text());
+        node.put(HAND_CUES, verdict.handCues());
         ArrayNode expectations = node.putArray("expectations");
         for (Finding finding : verdict.expectations()) {
             ObjectNode each = expectations

@@ -160,6 +160,20 @@ class ComparisonTest {
                         new SettingChange("(seeds)", "1", "2"));
     }
 
+    /** Two cues by hand and one of the drill; a run without cues.csv had none. */
+    @Test
+    void of_aRunWithCuesByHand_listsTheirNumber() throws IOException, CannotCompare {
+        Path first = runs.rehearsal("a", Rehearsal.of(1, 10, .05));
+        Path second = runs.rehearsal("b", Rehearsal.of(1, 10, .05));
+        Files.writeString(second.resolve("cues.csv"), """
+                due,at,cue,action,by
+                0.1,0.1,fulmar dies,kill fulmar,drill
+                0.2,0.2,drain gannet,drain gannet,hand
+                0.3,0.3,admit gannet,admit gannet,hand
+                """);
+        assertThat(compare(first, second).settings()).containsExactly(new SettingChange("(cues by hand)", "0", "2"));
+    }
+
     @Test
     void text_ofAComparison_isJsonWithNullForWhatThereIsNot() throws IOException, CannotCompare {
         Comparison comparison =

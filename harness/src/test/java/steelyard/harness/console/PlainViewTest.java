@@ -33,7 +33,7 @@ class PlainViewTest {
         assertThat(linesAtTheEnd())
                 .containsExactly(
                         "   15.0 s  cue: kill fulmar (the first dies)",
-                        "   17.4 s  fulmar: up to down, misses",
+                        "   17.4 s  fulmar: up to down (misses)",
                         "   35.0 s  cue: revive fulmar ends");
     }
 
@@ -74,6 +74,6 @@ class PlainViewTest {
     void close_twice_saysNothingTwice() {
         view.cueApplied(0, 0, drill.cues().get(0), By.HAND);
         view.close();
-        assertThat(linesAtTheEnd()).hasSize(1);
+        assertThat(linesAtTheEnd()).containsExactly("    0.0 s  cue by hand: kill fulmar (the first dies)");
     }
 }

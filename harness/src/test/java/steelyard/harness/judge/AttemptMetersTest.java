@@ -134,7 +134,7 @@ class AttemptMetersTest {
         Play play = new Play()
                 .stood(S, FULMAR, Standing.UP, Standing.DOWN, Transition.Cause.MISSES)
                 .stood(2 * S, FULMAR, Standing.DOWN, Standing.WARMING, Transition.Cause.PASSES)
-                .stood(3 * S, FULMAR, Standing.WARMING, Standing.UP, Transition.Cause.WARMED)
+                .stood(3 * S, FULMAR, Standing.WARMING, Standing.UP, Transition.Cause.RAMPED)
                 .stood(4 * S, GANNET, Standing.UP, Standing.DRAINING, Transition.Cause.DRAIN);
         Expect all = Expect.that(Measure.STANDING_CHANGES);
 

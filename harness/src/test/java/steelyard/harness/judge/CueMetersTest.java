@@ -47,7 +47,7 @@ class CueMetersTest {
                 .stood(S, FULMAR, Standing.UP, Standing.DOWN, Transition.Cause.MISSES)
                 .stood(2 * S, FULMAR, Standing.DOWN, Standing.WARMING, Transition.Cause.PASSES)
                 .cue(3_002 * MS, KILL)
-                .stood(4 * S, FULMAR, Standing.WARMING, Standing.UP, Transition.Cause.WARMED)
+                .stood(4 * S, FULMAR, Standing.WARMING, Standing.UP, Transition.Cause.RAMPED)
                 .stood(5_602 * MS, FULMAR, Standing.UP, Standing.DOWN, Transition.Cause.MISSES);
 
         Finding found = play.finding(drill(after(Measure.DETECTED_IN, KILL).build(), KILL));

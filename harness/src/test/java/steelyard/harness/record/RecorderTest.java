@@ -310,7 +310,7 @@ class RecorderTest {
         assertThat(Files.readString(dir.resolve("run/verdict.json"), StandardCharsets.UTF_8))
                 .isEqualToIgnoringWhitespace("""
                         {"drill": "Lose one, \\"at the peak\\" & <after>", "stage": "live", "met": false, "fit": true,
-                         "exit": 1, "text": "Not met: \\"both\\" missed.",
+                         "exit": 1, "text": "Not met: \\"both\\" missed.", "handCues": 0,
                          "expectations": [
                           {"measure": "failed", "of": null, "text": "failed, whole play", "bound": "at most 0.3 %",
                            "measured": "66.7 %", "met": false, "value": 0.6666666666666666, "least": null,
@@ -343,6 +343,28 @@ class RecorderTest {
         assertThat(Files.readString(dir.resolve("run/verdict.json"))).contains("\"met\": null", "\"exit\": 3");
         assertThat(Files.readString(dir.resolve("run/junit.xml")))
                 .contains("skipped=\"1\"", "<skipped message=\"not reached\"/>");
+    }
+
+    @Test
+    void finish_cuesByHand_areSaidInEveryFile(@TempDir Path dir) throws Exception {
+        Recorder recorder = recorder(dir.resolve("run"));
+        recorder.cueApplied(S, S, KILL, By.DRILL);
+        recorder.cueApplied(S, S, KILL, By.HAND);
+        recorder.cueApplied(2 * S, 2 * S, KILL, By.HAND);
+        recorder.cueApplied(2 * S, 2 * S, KILL, By.END);
+        recorder.ended(3 * S, true);
+
+        Verdict verdict = recorder.finish(verdict());
+
+        assertThat(verdict.text()).isEqualTo("Not met: \"both\" missed, with 2 cues by hand.");
+        assertThat(verdict.handCues()).isEqualTo(2);
+        RunData run = RunData.read(RunFolder.existing(dir.resolve("run")));
+        assertThat(run.verdict()).isEqualTo(new VerdictRow(false, true, verdict.text()));
+        assertThat(run.handCues()).isEqualTo(2);
+        assertThat(Files.readString(dir.resolve("run/run.json"))).contains("\"handCues\": 2");
+        assertThat(Files.readString(dir.resolve("run/verdict.json"))).contains("\"handCues\": 2");
+        assertThat(Files.readString(dir.resolve("run/junit.xml")))
+                .contains("<properties><property name=\"handCues\" value=\"2\"/></properties>");
     }
 
     @Test

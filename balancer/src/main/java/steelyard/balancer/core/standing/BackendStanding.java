@@ -114,7 +114,7 @@ public final class BackendStanding {
      */
     public @Nullable Transition ended(boolean failure, BooleanSupplier room, long nowNanos) {
         Standing from = shown();
-        return bench.ended(failure, room, nowNanos) ? changed(from, Cause.BENCHED, nowNanos) : null;
+        return bench.ended(failure, room, nowNanos) ? changed(from, Cause.FAILURES, nowNanos) : null;
     }
 
     /** Frees it when its bench time is over. */
@@ -151,7 +151,7 @@ public final class BackendStanding {
         }
         Standing from = shown();
         warmUp.end();
-        return changed(from, Cause.WARMED, nowNanos);
+        return changed(from, Cause.RAMPED, nowNanos);
     }
 
     /** Whether the limit of a drain is reached, so that what is in flight is to be cut; says so once a drain. */

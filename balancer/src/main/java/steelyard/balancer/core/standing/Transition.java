@@ -21,11 +21,11 @@ public record Transition(int backend, Standing from, Standing to, Cause cause, l
         /** Probes passed in a row. */
         PASSES,
         /** Attempts failed: the bench time began. */
-        BENCHED,
+        FAILURES,
         /** The bench time is over. */
         FREED,
         /** The ramp came to its end. */
-        WARMED,
+        RAMPED,
         /** A drain began. */
         DRAIN,
         /** Admitted by hand. */

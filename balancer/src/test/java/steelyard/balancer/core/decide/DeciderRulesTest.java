@@ -43,7 +43,7 @@ class DeciderRulesTest {
         decider.poll(102);
 
         assertThat(decider.standing(0)).isEqualTo(Standing.WARMING);
-        assertThat(trace.lines()).contains("2 0 UP -> BENCHED by BENCHED", "102 0 BENCHED -> WARMING by FREED");
+        assertThat(trace.lines()).contains("2 0 UP -> BENCHED by FAILURES", "102 0 BENCHED -> WARMING by FREED");
         end(decider, 1, Outcome.LATE, 0, 103);
         assertThat(decider.standing(1)).isEqualTo(Standing.BENCHED);
     }

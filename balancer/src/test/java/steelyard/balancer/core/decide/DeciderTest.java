@@ -168,7 +168,7 @@ class DeciderTest {
                         "1650 0 UP -> DOWN by MISSES",
                         "start probe 2 of 0",
                         "2260 0 DOWN -> WARMING by PASSES",
-                        "2760 0 WARMING -> UP by WARMED");
+                        "2760 0 WARMING -> UP by RAMPED");
         assertThat(decider.nextDeadlineNanos()).isEqualTo(origin + 3_250);
     }
 

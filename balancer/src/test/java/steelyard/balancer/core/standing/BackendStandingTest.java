@@ -162,11 +162,11 @@ class BackendStandingTest {
         return switch (event) {
             case PASS -> Cause.PASSES;
             case MISS -> Cause.MISSES;
-            case RAMP_FULL -> Cause.WARMED;
+            case RAMP_FULL -> Cause.RAMPED;
             case DRAIN -> Cause.DRAIN;
             case ADMIT -> Cause.ADMIT;
             case WITHDRAW -> Cause.WITHDRAW;
-            case FAIL -> Cause.BENCHED;
+            case FAIL -> Cause.FAILURES;
             case BENCH_OVER -> Cause.FREED;
             case LIMIT -> throw new AssertionError("a limit changes no word");
         };
