@@ -31,8 +31,8 @@ public final class Heard implements PlayListener {
     /** What a reading made of a weight. */
     public record Read(long atNanos, int backend, int headroomMilli, boolean fresh) {}
 
-    /** A cue as it was applied. */
-    public record Applied(long atNanos, long dueNanos, Cue cue, By by) {}
+    /** A cue as it was applied, and how many picks had been told before it. */
+    public record Applied(long atNanos, long dueNanos, Cue cue, By by, int picks) {}
 
     public final List<Long> dues = new ArrayList<>();
     private final Map<Long, Integer> clients = new TreeMap<>();
@@ -162,7 +162,7 @@ public final class Heard implements PlayListener {
     @Override
     public void cueApplied(long atNanos, long dueNanos, Cue cue, By by) {
         at(atNanos);
-        cues.add(new Applied(atNanos, dueNanos, cue, by));
+        cues.add(new Applied(atNanos, dueNanos, cue, by, picks.size()));
     }
 
     @Override

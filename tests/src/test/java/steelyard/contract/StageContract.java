@@ -226,6 +226,22 @@ public abstract class StageContract {
     }
 
     @Test
+    void admit_isToldBeforeThePlacesThatItGives() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 600ms") + "in-flight: {most: 2, waiting: 5, wait: 20s}\n",
+                "rate: 20/s",
+                "3s",
+                "  - {at: 300ms, drain: fulmar, limit: 20s}\n  - {at: 2500ms, admit: fulmar}"));
+        // Both are full from 175 ms on, and five wait at every later instant: two of them go to fulmar at the admit.
+        int drained = heard.cues.get(0).picks();
+        int admitted = heard.cues.get(1).picks();
+        assertThat(heard.backendsPicked().subList(drained, admitted))
+                .isNotEmpty()
+                .containsOnly(1);
+        assertThat(heard.backendsPicked().subList(admitted, heard.picks.size())).contains(0);
+    }
+
+    @Test
     void waitThatIsTooLong_isNobodysTurn() throws CannotPlay {
         Heard heard = play(drill(
                 roundRobin("fixed: 4s") + "in-flight: {most: 1, waiting: 100, wait: 300ms}\n", "rate: 20/s", "1s", ""));

@@ -117,17 +117,20 @@ public final class Conductor implements Agenda {
 
     private void carryOut(Cue cue, long dueNanos, PlayListener.By by, Hands hands) {
         int number = carriedOut++;
-        actions.carryOut(cue, number, dueNanos, hands);
+        hands.apply(dueNanos, cue, by, () -> actions.carryOut(cue, number, dueNanos, hands));
         if (cue.forNanos() > 0) {
             ends.add(new End(dueNanos + cue.forNanos(), number, cue));
         }
-        hands.applied(dueNanos, cue, by);
     }
 
     private void end(Hands hands) {
         End end = ends.remove();
-        if (actions.end(end.cue(), end.number(), end.atNanos(), hands)) {
-            hands.applied(end.atNanos(), end.cue(), PlayListener.By.END);
+        if (actions.stands(end.cue(), end.number())) {
+            hands.apply(
+                    end.atNanos(),
+                    end.cue(),
+                    PlayListener.By.END,
+                    () -> actions.end(end.cue(), end.number(), end.atNanos(), hands));
         }
     }
 

@@ -57,9 +57,27 @@ final class CueActions {
         }
     }
 
-    /** Ends what a cue set, where it still stands. Returns whether anything was left to end. */
-    boolean end(Cue cue, int number, long atNanos, Hands hands) {
-        return cue.kind() == Cue.Kind.SURGE ? endSurge(cue, number, atNanos) : endFault(cue, number, hands);
+    /** Whether anything that a cue set still stands, so that there is something to end. */
+    boolean stands(Cue cue, int number) {
+        return left(cue, number).length > 0;
+    }
+
+    /** Ends what a cue set, where it still stands. */
+    void end(Cue cue, int number, long atNanos, Hands hands) {
+        if (cue.kind() == Cue.Kind.SURGE) {
+            endSurge(cue, number, atNanos);
+        } else {
+            endFault(cue, number, hands);
+        }
+    }
+
+    /** Streams of a surge, otherwise backends, of which the cue still has the say. */
+    private int[] left(Cue cue, int number) {
+        boolean surge = cue.kind() == Cue.Kind.SURGE;
+        Terms terms = surge ? surges : faults;
+        return (surge ? streams(cue.target()) : backends(cue))
+                .filter(each -> terms.holds(cue.kind(), number, each))
+                .toArray();
     }
 
     private void change(Cue cue, int number, Change change, Hands hands) {
@@ -69,16 +87,12 @@ final class CueActions {
         });
     }
 
-    private boolean endFault(Cue cue, int number, Hands hands) {
-        int[] left = backends(cue)
-                .filter(each -> faults.holds(cue.kind(), number, each))
-                .toArray();
+    private void endFault(Cue cue, int number, Hands hands) {
         Change end = Changes.end(cue.kind());
-        for (int backend : left) {
+        for (int backend : left(cue, number)) {
             faults.ended(cue.kind(), backend);
             hands.change(backend, end);
         }
-        return left.length > 0;
     }
 
     private void surge(Cue cue, int number, long atNanos) {
@@ -88,15 +102,11 @@ final class CueActions {
         });
     }
 
-    private boolean endSurge(Cue cue, int number, long atNanos) {
-        int[] left = streams(cue.target())
-                .filter(each -> surges.holds(cue.kind(), number, each))
-                .toArray();
-        for (int stream : left) {
+    private void endSurge(Cue cue, int number, long atNanos) {
+        for (int stream : left(cue, number)) {
             surges.ended(cue.kind(), stream);
             arrivals.surge(stream, 1, atNanos);
         }
-        return left.length > 0;
     }
 
     private void retune(Cue cue, Hands hands) {

@@ -14,7 +14,7 @@ import steelyard.harness.record.Cast;
 final class DetectedIn extends SinceCue {
     private final @Nullable Standing until;
     private final long[] foundNanos;
-    /** The latest change that counts, by backend: a drain changes the standing just before it is told as applied. */
+    /** The latest change, by backend: another cue of the same instant may have brought it about just before. */
     private final long[] latestNanos;
 
     private final boolean[] holds;

@@ -98,7 +98,7 @@ public interface PlayListener {
     default void backendEnded(long atNanos, int backend, long request, int attempt, boolean inFull, int status) {}
 
     /**
-     * A cue was applied.
+     * A cue was applied. Told before whatever it brings about, also that of the same instant.
      *
      * @param dueNanos when it was due
      * @param by where it came from

@@ -44,6 +44,10 @@ public interface Hands {
     /** Changes how a pool picks. */
     void retune(int pool, PoolSettings.Method method);
 
-    /** Tells the listener that a cue has been carried out. */
-    void applied(long dueNanos, Cue cue, PlayListener.By by);
+    /**
+     * Carries a cue out and tells the listener of it, before anything that it brings about.
+     *
+     * @param carryOut what the cue does with these hands; run once, at once
+     */
+    void apply(long dueNanos, Cue cue, PlayListener.By by, Runnable carryOut);
 }

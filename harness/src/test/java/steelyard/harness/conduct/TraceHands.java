@@ -67,7 +67,8 @@ final class TraceHands implements Hands {
     }
 
     @Override
-    public void applied(long dueNanos, Cue cue, PlayListener.By by) {
+    public void apply(long dueNanos, Cue cue, PlayListener.By by, Runnable carryOut) {
+        carryOut.run();
         trace.add("applied " + cue.text() + ", due " + dueNanos / 1_000_000 + " ms, " + by);
     }
 }

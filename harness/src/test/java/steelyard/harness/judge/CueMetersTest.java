@@ -313,6 +313,22 @@ class CueMetersTest {
     }
 
     @Test
+    void drainedIn_whatItsNextCueLetsInAtOnce_isNoPartOfTheDrain() {
+        Cue drain = cue(3 * S, Cue.Kind.DRAIN, fulmar());
+        Cue admit = cue(7 * S, Cue.Kind.ADMIT, fulmar());
+        Play play = new Play()
+                .attempt(2_900 * MS, 400 * MS, FULMAR)
+                .cue(3 * S, drain)
+                .cue(7 * S, admit)
+                .attempt(7 * S, 100 * MS, FULMAR)
+                .attempt(7 * S, 200 * MS, FULMAR);
+
+        Finding found = play.finding(drill(after(Measure.DRAINED_IN, drain).build(), drain, admit));
+
+        assertThat(found.value()).isEqualTo(300 * MS); // 2.9 s + 0.4 s - 3 s
+    }
+
+    @Test
     void drainedIn_nothingInFlight_isZero_andStillInFlight_isNever() {
         Cue drain = cue(3 * S, Cue.Kind.DRAIN, fulmar());
         Expectation expectation = after(Measure.DRAINED_IN, drain).build();

@@ -195,7 +195,8 @@ final class Play implements Hands {
      * before it in the account. Backends say when that was, a moment later.
      */
     @Override
-    public void applied(long dueNanos, Cue cue, PlayListener.By by) {
+    public void apply(long dueNanos, Cue cue, PlayListener.By by, Runnable carryOut) {
+        carryOut.run();
         noteCue();
         long begun = cueNanos;
         cueNanos = Long.MAX_VALUE;

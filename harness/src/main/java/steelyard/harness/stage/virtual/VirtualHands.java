@@ -81,7 +81,8 @@ final class VirtualHands implements Hands {
     }
 
     @Override
-    public void applied(long dueNanos, Cue cue, PlayListener.By by) {
+    public void apply(long dueNanos, Cue cue, PlayListener.By by, Runnable carryOut) {
         listener.cueApplied(nowNanos, dueNanos, cue, by);
+        carryOut.run();
     }
 }

@@ -73,7 +73,8 @@ class CuesByHandTest {
         public void retune(int pool, PoolSettings.Method method) {}
 
         @Override
-        public void applied(long dueNanos, Cue cue, PlayListener.By by) {
+        public void apply(long dueNanos, Cue cue, PlayListener.By by, Runnable carryOut) {
+            carryOut.run();
             applied.add(by + " " + cue.name() + " at " + dueNanos / 1_000_000);
         }
     };
