@@ -3,6 +3,7 @@ package steelyard.harness.console;
 import java.math.BigDecimal;
 import java.math.MathContext;
 import java.util.Comparator;
+import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.stream.Collectors;
@@ -43,13 +44,42 @@ final class Figures {
         return String.format(Locale.ROOT, Math.abs(weight - Math.rint(weight)) < 0.05 ? "%.0f" : "%.1f", weight);
     }
 
-    /** What the balancer has to live with, where it has: {@code , 12 waiting, 1 backend without a fresh reading}. */
+    /**
+     * {@code 893/s}, of the last second; once traffic has ended {@code 20,000 offered}, with {@code , 3 open} for what the
+     * play runs on for.
+     */
+    static String traffic(PlayBoard.Figures figures, long lastsNanos) {
+        if (figures.atNanos() < lastsNanos) {
+            return count(figures.offeredLastSecond()) + "/s";
+        }
+        boolean runsOn = !figures.ended() && figures.open() > 0;
+        return count(figures.offered()) + " offered" + (runsOn ? ", " + count(figures.open()) + " open" : "");
+    }
+
+    /**
+     * What the balancer has to live with, where it has: {@code , last resort, 12 waiting, 1 backend without a fresh
+     * reading}.
+     */
     static String balancer(PlayBoard.Figures figures) {
         String waiting = figures.waiting() == 0 ? "" : ", " + count(figures.waiting()) + " waiting";
         String unread = figures.unread() == 0
                 ? ""
                 : ", " + Wording.count(figures.unread(), "backend", "backends") + " without a fresh reading";
-        return waiting + unread;
+        return lastResort(figures) + waiting + unread;
+    }
+
+    private static String lastResort(PlayBoard.Figures figures) {
+        List<String> pools = figures.backends().stream()
+                .filter(PlayBoard.BackendFigures::lastResort)
+                .map(PlayBoard.BackendFigures::pool)
+                .distinct()
+                .toList();
+        boolean one = figures.backends().stream()
+                        .map(PlayBoard.BackendFigures::pool)
+                        .distinct()
+                        .count()
+                == 1;
+        return pools.isEmpty() ? "" : ", last resort" + (one ? "" : " in " + String.join(" and ", pools));
     }
 
     /** {@code reset 23, refused 8}, the most first. */

@@ -92,14 +92,14 @@ final class PlainView implements View {
         out.flush();
     }
 
-    private static String status(PlayBoard.Figures figures) {
+    private String status(PlayBoard.Figures figures) {
         String failed = figures.failed() == 0
                 ? "0"
                 : Figures.count(figures.failed()) + " (" + Figures.causes(figures.failedBy()) + ")";
         long pickable = figures.backends().stream()
-                .filter(backend -> backend.standing().pickable())
+                .filter(PlayBoard.BackendFigures::pickable)
                 .count();
-        return Figures.count(figures.offeredLastSecond()) + "/s, " + Figures.count(figures.good()) + " good, failed "
+        return Figures.traffic(figures, drill.lastsNanos()) + ", " + Figures.count(figures.good()) + " good, failed "
                 + failed + ", pickable " + pickable + " of "
                 + figures.backends().size() + Figures.balancer(figures);
     }

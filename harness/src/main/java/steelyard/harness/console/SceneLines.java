@@ -54,7 +54,7 @@ final class SceneLines {
                 scene.next() == null
                         ? ""
                         : at(scene.next().atNanos(), scene.next().text())));
-        lines.add(plain("rate    " + rate(figures)));
+        lines.add(plain("rate    " + rate(scene)));
         lines.add(failures(figures));
         if (height - lines.size() >= 2) {
             backends(figures.backends(), lines);
@@ -69,8 +69,9 @@ final class SceneLines {
         return List.copyOf(lines.subList(0, Math.min(lines.size(), height)));
     }
 
-    private static String rate(PlayBoard.Figures figures) {
-        return Figures.count(figures.offeredLastSecond()) + "/s, " + Figures.count(figures.good()) + " good so far"
+    private static String rate(Scene scene) {
+        PlayBoard.Figures figures = scene.figures();
+        return Figures.traffic(figures, scene.lastsNanos()) + ", " + Figures.count(figures.good()) + " good so far"
                 + Figures.balancer(figures);
     }
 

@@ -120,6 +120,7 @@ public final class PlayBoard implements PlayListener {
                     cast.backends().get(b).name(),
                     cast.pools().get(cast.poolOf(b)).name(),
                     sample.standing[b],
+                    sample.pickable[b],
                     sample.setWeight[b],
                     sample.effectiveWeight[b],
                     pool == 0 ? 0 : (double) pickedOf[b].sum / pool,
@@ -192,18 +193,26 @@ public final class PlayBoard implements PlayListener {
     /**
      * A backend at the end of the last slice.
      *
+     * @param pickable whether new work may be given to it, be it for want of anybody better
      * @param share of its pool's attempts over the last second, from 0 to 1
      */
     public record BackendFigures(
             String name,
             String pool,
             Standing standing,
+            boolean pickable,
             int setWeight,
             double effectiveWeight,
             double share,
             double entitledShare,
             int inFlight,
-            int waiting) {}
+            int waiting) {
+
+        /** Whether it is picked from although its standing speaks against it: the last resort of its pool. */
+        public boolean lastResort() {
+            return pickable && !standing.pickable();
+        }
+    }
 
     /** A cue that was applied. */
     public record Played(long atNanos, Cue cue, By by) {}

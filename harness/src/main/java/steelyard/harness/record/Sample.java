@@ -13,6 +13,9 @@ public final class Sample {
 
     public final Standing[] standing;
 
+    /** Whether new work may be given to it: by its standing, its tier and the last resort. */
+    public final boolean[] pickable;
+
     /** The weight that was set. */
     public final int[] setWeight;
 
@@ -52,6 +55,8 @@ public final class Sample {
         inFlight = new int[backends];
         standing = new Standing[backends];
         Arrays.fill(standing, Standing.UP);
+        pickable = new boolean[backends];
+        Arrays.fill(pickable, true);
         setWeight = new int[backends];
         effectiveWeight = new double[backends];
         entitledShare = new double[backends];

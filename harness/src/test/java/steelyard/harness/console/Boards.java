@@ -55,6 +55,7 @@ final class Boards {
                     each.name(),
                     "seats",
                     first ? Standing.DOWN : Standing.UP,
+                    !first,
                     1,
                     first ? 0.25 : 1,
                     first ? 0.004 : 0.5,

@@ -67,7 +67,36 @@ class PlainViewTest {
     void state_atTheEnd_isOneLine() {
         board.sampled(60 * Boards.SECOND, new Sample(2));
         board.ended(60_100_000_000L, true);
-        assertThat(linesAtTheEnd()).containsExactly("   60.1 s  0/s, 0 good, failed 0, pickable 2 of 2");
+        assertThat(linesAtTheEnd()).containsExactly("   60.1 s  0 offered, 0 good, failed 0, pickable 2 of 2");
+    }
+
+    @Test
+    void state_longAfterTheTraffic_showsNoRate() {
+        board.requestDue(59_950_000_000L, 0, 0, 0, 0);
+        board.sampled(60 * Boards.SECOND, new Sample(2));
+        board.requestEnded(69_900_000_000L, 0, 59_950_000_000L, 0, 0, null, 200);
+        board.ended(69_900_000_000L, true);
+        assertThat(linesAtTheEnd()).containsExactly("   69.9 s  1 offered, 1 good, failed 0, pickable 2 of 2");
+    }
+
+    @Test
+    void state_inLastResort_saysThatAllAreStillPickedFrom() {
+        Sample sample = new Sample(2);
+        sample.standing[0] = Standing.DOWN;
+        sample.standing[1] = Standing.BENCHED;
+        board.sampled(5 * Boards.SECOND, sample);
+        assertThat(linesAtTheEnd()).containsExactly("    5.0 s  0/s, 0 good, failed 0, pickable 2 of 2, last resort");
+    }
+
+    @Test
+    void state_whereNobodyMayBePicked_saysSo() {
+        Sample sample = new Sample(2);
+        sample.standing[0] = Standing.DOWN;
+        sample.pickable[0] = false;
+        sample.standing[1] = Standing.DOWN;
+        sample.pickable[1] = false;
+        board.sampled(5 * Boards.SECOND, sample);
+        assertThat(linesAtTheEnd()).containsExactly("    5.0 s  0/s, 0 good, failed 0, pickable 0 of 2");
     }
 
     @Test

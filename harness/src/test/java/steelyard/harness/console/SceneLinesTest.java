@@ -11,6 +11,7 @@ import org.junit.jupiter.api.Test;
 import steelyard.drills.model.Cause;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
+import steelyard.harness.record.PlayBoard;
 
 class SceneLinesTest {
     private static final String RED = "38;5;160m";
@@ -88,6 +89,27 @@ class SceneLinesTest {
                         "rate    893/s, 15,412 good so far",
                         "failed  1 (0.0065 %)  reset 1",
                         "3 backends: 1 down, 2 up");
+    }
+
+    @Test
+    void traffic_onceItHasEnded_hasNoRateButWhatIsOpen() {
+        PlayBoard.Figures at = Boards.figures(three, Map.of(Cause.RESET, 88L));
+        PlayBoard.Figures last = new PlayBoard.Figures(
+                60 * Boards.SECOND,
+                false,
+                at.offered(),
+                at.good(),
+                at.failedBy(),
+                at.offeredLastSecond(),
+                at.failedLastSecond(),
+                0,
+                0,
+                at.backends(),
+                at.lastCue());
+
+        // 20,000 - 15,412 - 88 have no end yet.
+        assertThat(text(new SceneLines(79, 23, Colours.SOME).of(Scene.of(three, last))))
+                .contains("rate    20,000 offered, 4,500 open, 15,412 good so far");
     }
 
     @Test

@@ -80,6 +80,7 @@ final class Sampler {
         for (int backend = 0; backend < backends; backend++) {
             sample.inFlight[backend] = readings.inFlight(backend);
             sample.standing[backend] = readings.standing(backend);
+            sample.pickable[backend] = readings.pickable(backend);
             sample.setWeight[backend] = readings.weight(backend);
             sample.effectiveWeight[backend] = readings.effectiveWeight(backend);
             sample.entitledShare[backend] = readings.entitledShare(backend);

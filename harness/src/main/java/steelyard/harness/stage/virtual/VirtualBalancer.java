@@ -189,6 +189,7 @@ final class VirtualBalancer implements VirtualBackends.Hearer {
     void read(int backend, Sample sample, long nowNanos) {
         sample.inFlight[backend] = decider.inFlight(backend);
         sample.standing[backend] = decider.standing(backend);
+        sample.pickable[backend] = decider.pickable(backend);
         sample.setWeight[backend] = decider.weight(backend);
         sample.effectiveWeight[backend] = decider.effectiveWeight(backend, nowNanos);
         sample.entitledShare[backend] = decider.entitledShare(backend, nowNanos);
