@@ -26,6 +26,7 @@ final class Page {
         slots.put("changes", CueSection.changes(run));
         slots.put("stretches", StretchSection.html(run));
         slots.put("stretch-note", Html.text(StretchSection.note(run)));
+        slots.put("last-resort", LastResort.html(run));
         slots.put("readings", Readings.html(run));
         slots.put("measures", VerdictSection.measures(run));
         slots.put("settings", SettingsSection.settings(run));

@@ -54,7 +54,8 @@ final class StretchSection {
                         + " infinitely slow, so the two differ where requests failed."
                 : "Its latencies are the means of its slices\u2019 quantiles of good answers, weighted by their number: near"
                         + " to the quantiles of the whole stretch, not the same.";
-        return "A stretch runs from one cue to the next, to the slice of 100 ms. " + latencies;
+        return "A stretch runs from one cue to the next, to the slice of 100 ms. Requests are counted by due time, so one that"
+                + " was due before a cue and failed by it stands before it. " + latencies;
     }
 
     private static String caption(String words, RunFiles run) {

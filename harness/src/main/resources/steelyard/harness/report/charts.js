@@ -51,7 +51,7 @@ function chartsOf(run, narrow) {
     },
     {
       title: 'Failures a second, by cause',
-      note: !run.causes.length ? 'no request failed' : run.bands ? 'means over plays; dotted: 95 % of plays stay below' : '',
+      note: !run.causes.length ? 'no request failed' : run.bands ? 'by due time; means over plays; dotted: 95 % of plays stay below' : 'by due time',
       height: 110,
       empty: !run.causes.length,
       y: linear(),
