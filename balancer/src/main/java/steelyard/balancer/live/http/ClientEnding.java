@@ -38,8 +38,8 @@ final class ClientEnding {
         clock.stop();
     }
 
-    /** Closes as soon as all that was written is out; for a client that has sent nothing which was not read. */
-    void afterFlush() {
+    /** Closes as soon as all that was written is out. */
+    private void afterFlush() {
         begun = true;
         clock.end(idleNanos);
         output.drained().addListener(ChannelFutureListener.CLOSE);

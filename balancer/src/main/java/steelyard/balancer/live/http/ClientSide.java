@@ -142,14 +142,11 @@ final class ClientSide {
 
     /** The answer was written to its end. */
     void answered(boolean keep) {
-        boolean whole = requestComplete();
         exchange = null;
         if (keep) {
             decoder.release(channel);
             clock.idle();
             next.run();
-        } else if (whole && ahead.isEmpty()) {
-            ending.afterFlush();
         } else {
             ending.gently();
         }
