@@ -166,6 +166,9 @@ public final class LiveStage implements Stage {
             complete = await(playing.start());
             loop.submit(sending::closeIdle).awaitUninterruptibly();
             new Settling(balancing, fleet, cast.backends().size()).await();
+            if (complete) {
+                sampler.awaitLast();
+            }
         } finally {
             sampler.stop();
             told.finish(complete);

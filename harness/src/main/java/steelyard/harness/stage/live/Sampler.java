@@ -19,6 +19,7 @@ import steelyard.harness.record.Sample;
  */
 final class Sampler {
     static final long SLICE_NANOS = TimeUnit.MILLISECONDS.toNanos(100);
+    private static final long LONGEST_WAIT_SECONDS = 5;
 
     private final EventLoop loop;
     private final PlayClock clock;
@@ -30,6 +31,7 @@ final class Sampler {
     private final int backends;
     private final int pools;
     private final long[] busyNanos;
+    private final CompletableFuture<Void> last = new CompletableFuture<>();
     private long sliceEndNanos = SLICE_NANOS;
     private volatile boolean stopped;
 
@@ -56,7 +58,17 @@ final class Sampler {
 
     /** Samples from now to the end of the last slice. Any thread. */
     void start() {
+        if (lastsNanos < SLICE_NANOS) {
+            last.complete(null);
+        }
         loop.execute(this::rest);
+    }
+
+    /** Returns when the last slice was told, or when that takes too long. Any thread but the loop's. */
+    void awaitLast() {
+        last.copy()
+                .completeOnTimeout(null, LONGEST_WAIT_SECONDS, TimeUnit.SECONDS)
+                .join();
     }
 
     /** No more samples. Any thread. */
@@ -107,6 +119,9 @@ final class Sampler {
             sample.busyNanos[backend] = busyNanos(backend, of, endNanos);
         }
         account.tell(Account.Source.SAMPLES, endNanos, (to, at) -> to.sampled(at, sample));
+        if (endNanos > lastsNanos - SLICE_NANOS) {
+            last.complete(null);
+        }
     }
 
     private long busyNanos(int backend, Figures figures, long endNanos) {
