@@ -105,7 +105,7 @@ class StagesAgreeTest {
                 "[{at: 1s, kill: fulmar}, {at: 2s, revive: fulmar}]");
         assertThat(steps(both.live))
                 .isEqualTo(steps(both.virtual))
-                .containsExactly("0 up down misses", "0 down warming passes", "0 warming up warmed");
+                .containsExactly("0 up down misses", "0 down warming passes", "0 warming up ramped");
         long found = both.virtual.transitions.get(0).atNanos() - 1_000 * MILLI;
         // Two misses, of probes that are refused at once; a stall makes none, since there is time enough for an answer.
         assertThat(found).isBetween(300 * MILLI, 600 * MILLI + MILLI);
