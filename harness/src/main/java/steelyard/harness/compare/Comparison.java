@@ -44,8 +44,14 @@ public record Comparison(
      *
      * @param margin a smaller change, as a part of the first side's value, is no change; at least 0
      * @param only these measures; all of them when empty
+     * @throws CannotCompare for runs of two drills: what differs then are not the settings of one
      */
-    public static Comparison of(Runs first, Runs second, double margin, Set<Measure> only) {
+    public static Comparison of(Runs first, Runs second, double margin, Set<Measure> only) throws CannotCompare {
+        if (!first.first().drill().equals(second.first().drill())) {
+            throw CannotCompare.misnamed(second.path() + " is of the drill '"
+                    + second.first().drill() + "', " + first.path() + " of '"
+                    + first.first().drill() + "'; name two runs of one drill, under one title");
+        }
         List<Sample> before = samples(first, only);
         Map<String, Sample> after = new TreeMap<>();
         samples(second, only).forEach(each -> after.putIfAbsent(key(each), each));

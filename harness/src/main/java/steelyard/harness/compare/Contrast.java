@@ -16,7 +16,6 @@ import steelyard.harness.forecast.Spread;
 /** What two samples of one measure say about the difference of the sides they are of. */
 final class Contrast {
     private static final String ONE_EACH = "one run each: cannot be told from that";
-    private static final String ONE = "a single run beside several: play it more than once";
     /** From so many plays a 95 % band is more than the least and the most of them. */
     private static final int LEAST_PLAYS = 40;
 
@@ -65,14 +64,29 @@ final class Contrast {
         }
         Optional<Difference> shown = difference(one, two, value -> value);
         if (shown.isEmpty()) {
-            boolean single = one.values().length == 1 && two.values().length == 1;
-            return line(one, two, null, Word.CANNOT_BE_TOLD, single ? ONE_EACH : ONE);
+            return line(one, two, null, Word.CANNOT_BE_TOLD, why(one, two));
         }
         // Distances from a middle are compared where a middle is best; elsewhere the two are the same but for the sign.
         Difference judged = direction.side() == Direction.Side.MIDDLE
                 ? difference(one, two, direction::cost).orElseThrow()
                 : shown.get();
         return judge(one, two, shown.get(), judged, direction);
+    }
+
+    /** Why there is no difference to give, and what to do. */
+    private String why(Sample one, Sample two) {
+        if (one.values().length == 1 && two.values().length == 1) {
+            return ONE_EACH;
+        }
+        if (first.forecast() && second.forecast()) {
+            return "too few plays with a value: forecast more of them";
+        }
+        if (!first.forecast() && !second.forecast()) {
+            return "one rehearsal beside several: rehearse it twice at least";
+        }
+        Sample forecast = first.forecast() ? one : two;
+        return "one rehearsal beside a forecast of " + forecast.values().length + " plays, " + forecast.known().length
+                + " with a value: forecast " + LEAST_PLAYS + " at least";
     }
 
     /** A backend that does more of the work is no worse for it, unless its drill bounds that. */

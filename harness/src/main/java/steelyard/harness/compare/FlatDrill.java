@@ -1,12 +1,15 @@
 package steelyard.harness.compare;
 
+import java.util.Collections;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.stream.Collectors;
 import org.jspecify.annotations.Nullable;
+import org.snakeyaml.engine.v2.nodes.MappingNode;
 import org.snakeyaml.engine.v2.nodes.Node;
 import org.snakeyaml.engine.v2.nodes.NodeTuple;
+import org.snakeyaml.engine.v2.nodes.NodeType;
 
 /** The text of a drill as paths and single values; items of lists go by what names them, so that one more moves none. */
 final class FlatDrill {
@@ -14,17 +17,61 @@ final class FlatDrill {
     private static final List<String> BOUNDS = List.of("at-most", "at-least", "between");
 
     private final Map<String, String> values = new LinkedHashMap<>();
+    private final Map<String, Entry> entries = new LinkedHashMap<>();
+    private final @Nullable DrillMeaning meaning;
 
-    private FlatDrill() {}
-
-    /** In the order of the text; empty for a text that cannot be read. */
-    static Map<String, String> of(String source) {
-        FlatDrill flat = new FlatDrill();
+    /** Empty for a text that cannot be read. */
+    FlatDrill(String source) {
         Node root = DrillYaml.root(source);
+        meaning = root == null ? null : new DrillMeaning(source, root);
         if (root != null) {
-            flat.add("", root);
+            add("", root);
         }
-        return flat.values;
+    }
+
+    /** An entry of a map, which stands at a path. */
+    private record Entry(MappingNode map, NodeTuple tuple) {
+        Node value() {
+            return tuple.getValueNode();
+        }
+    }
+
+    /** Single values by path, in the order of the text. */
+    Map<String, String> values() {
+        return Collections.unmodifiableMap(values);
+    }
+
+    /**
+     * Whether what two texts have at a path is the same when it is read: a default that one of them writes down, or one
+     * value in two spellings.
+     */
+    static boolean sameAt(String path, FlatDrill one, FlatDrill two) {
+        for (int end = path.indexOf('.'); ; end = path.indexOf('.', end + 1)) {
+            String upTo = end < 0 ? path : path.substring(0, end);
+            Entry first = one.entries.get(upTo);
+            Entry second = two.entries.get(upTo);
+            if (first == null ^ second == null) {
+                return first == null ? two.sameWithout(second) : one.sameWithout(first);
+            }
+            if (first != null && second != null && !nested(first.value(), second.value())) {
+                return one.sameWith(first, second.value());
+            }
+            if (end < 0) {
+                return false;
+            }
+        }
+    }
+
+    private static boolean nested(Node one, Node two) {
+        return one.getNodeType() == two.getNodeType() && one.getNodeType() != NodeType.SCALAR;
+    }
+
+    private boolean sameWithout(@Nullable Entry entry) {
+        return entry != null && meaning != null && meaning.sameWithout(entry.map(), entry.tuple());
+    }
+
+    private boolean sameWith(Entry entry, Node value) {
+        return meaning != null && meaning.sameWith(entry.map(), entry.tuple(), value);
     }
 
     private void add(String path, Node node) {
@@ -34,7 +81,9 @@ final class FlatDrill {
             return;
         }
         for (NodeTuple each : DrillYaml.entries(node)) {
-            add(path.isEmpty() ? DrillYaml.key(each) : path + "." + DrillYaml.key(each), each.getValueNode());
+            String below = path.isEmpty() ? DrillYaml.key(each) : path + "." + DrillYaml.key(each);
+            entries.putIfAbsent(below, new Entry((MappingNode) node, each));
+            add(below, each.getValueNode());
         }
         List<Node> items = DrillYaml.items(node);
         for (int at = 0; at < items.size(); at++) {

@@ -17,13 +17,13 @@ import java.util.Set;
 public record SettingChange(String setting, String first, String second) {
     private static final String NONE = "-";
 
-    /** All that differ: those of the drill in the order of its text, then how it was played. */
+    /** All that differ as they are read: those of the drill in the order of its text, then how it was played. */
     static List<SettingChange> between(Runs first, Runs second) {
         List<SettingChange> changes = new ArrayList<>();
-        add(
-                changes,
-                FlatDrill.of(first.first().source()),
-                FlatDrill.of(second.first().source()));
+        FlatDrill one = new FlatDrill(first.first().source());
+        FlatDrill two = new FlatDrill(second.first().source());
+        add(changes, one.values(), two.values());
+        changes.removeIf(each -> FlatDrill.sameAt(each.setting(), one, two));
         add(changes, played(first), played(second));
         return changes;
     }

@@ -174,6 +174,56 @@ class ComparisonTest {
         assertThat(compare(first, second).settings()).containsExactly(new SettingChange("(cues by hand)", "0", "2"));
     }
 
+    /** {@code count: requests}, {@code passes: 2}, {@code drain: {limit: 30s}} and {@code weight: 1} are what holds without them, 1000ms is 1s. */
+    @Test
+    void of_writtenDefaultsAndOtherSpellings_listsNoneOfThem() throws IOException, CannotCompare {
+        String plain = RunsByHand.WHOLE;
+        String written = plain.replace("every: 1s,", "every: 1000ms, passes: 2,")
+                .replace("fulmar: ,", "fulmar: {weight: 1},")
+                .replace(
+                        "      probe:",
+                        "      count: requests\n      weights: backend\n      drain: {limit: 30s}\n      probe:");
+        Path first = runs.rehearsal("a", Rehearsal.of(1, 10, .05).from(plain));
+        assertThat(compare(first, runs.rehearsal("b", Rehearsal.of(1, 10, .05).from(written)))
+                        .settings())
+                .isEmpty();
+        assertThat(compare(
+                                first,
+                                runs.rehearsal(
+                                        "c",
+                                        Rehearsal.of(1, 10, .05)
+                                                .from(written.replace("limit: 30s", "limit: 5s")
+                                                        .replace(
+                                                                "misses: 3}",
+                                                                "misses: 3}\n      retry: {at-most: 1}"))))
+                        .settings())
+                .containsExactly(
+                        new SettingChange("stage.pools.seats.drain.limit", "-", "5s"),
+                        new SettingChange("stage.pools.seats.retry.at-most", "-", "1"));
+    }
+
+    @Test
+    void of_runsOfTwoDrills_isRefusedWithTheirTitles() throws IOException, CannotCompare {
+        Path first = runs.rehearsal("a", Rehearsal.of(1, 10, .05));
+        Path second = runs.rehearsal("b", Rehearsal.of(1, 10, .05));
+        Path json = second.resolve("run.json");
+        Files.writeString(json, Files.readString(json).replace("\"drill\": \"By hand\"", "\"drill\": \"By foot\""));
+        assertThatThrownBy(() -> compare(first, second))
+                .isInstanceOfSatisfying(
+                        CannotCompare.class, it -> assertThat(it.isMisnamed()).isTrue())
+                .hasMessage(second + " is of the drill 'By foot', " + first
+                        + " of 'By hand'; name two runs of one drill, under one title");
+    }
+
+    @Test
+    void of_aRehearsalAndAShortForecast_saysHowManyPlaysItTakes() throws IOException, CannotCompare {
+        Comparison comparison =
+                compare(runs.forecast("a", 1, plays(39, .01)), runs.rehearsal("b", Rehearsal.of(1, 40, .05)));
+        assertThat(line(comparison, "failed, whole play").word()).isEqualTo(Word.CANNOT_BE_TOLD);
+        assertThat(line(comparison, "failed, whole play").note())
+                .isEqualTo("one rehearsal beside a forecast of 39 plays, 39 with a value: forecast 40 at least");
+    }
+
     @Test
     void text_ofAComparison_isJsonWithNullForWhatThereIsNot() throws IOException, CannotCompare {
         Comparison comparison =

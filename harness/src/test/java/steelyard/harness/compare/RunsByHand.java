@@ -24,6 +24,26 @@ final class RunsByHand {
               - {measure: failed, at-most: 10%}
             """;
 
+    /** The same with all that a reader asks for. */
+    static final String WHOLE = """
+            drill: By hand
+            about: Two backends, and a title with a comma.
+            stage:
+              pools:
+                seats:
+                  method: round-robin
+                  probe: {path: /afloat, every: 1s, misses: 3}
+                  serves: {workers: 8, time: {lognormal: {median: 12ms, 99%: 60ms}}}
+                  backends: {fulmar: , gannet: }
+            traffic:
+              - {to: seats, rate: 300/s}
+            lasts: 3s
+            cues:
+              - {at: 1s, kill: fulmar, as: fulmar dies}
+            expect:
+              - {measure: failed, from: fulmar dies + 100ms, at-most: 10%}
+            """;
+
     private final Path folder;
 
     RunsByHand(Path folder) {
