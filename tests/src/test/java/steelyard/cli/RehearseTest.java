@@ -170,6 +170,7 @@ class RehearseTest {
         command.signal("INT");
         command.signal("INT");
         assertThat(command.status()).isEqualTo(130);
+        assertThat(command.err()).isEqualToIgnoringNewLines("steelyard: stopped; what was written stands in run");
         assertThat(command.running()).isFalse();
     }
 

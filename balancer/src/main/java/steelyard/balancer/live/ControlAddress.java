@@ -9,11 +9,6 @@ import java.net.InetSocketAddress;
  *     be written to no file
  */
 public record ControlAddress(InetSocketAddress address, String token) {
-    /** Where the metrics are read. */
-    public String url() {
-        return base() + "/metrics";
-    }
-
     /** What the paths {@code /metrics}, {@code /state} and {@code /cues} are put behind. */
     public String base() {
         return "http://" + address.getAddress().getHostAddress() + ":" + address.getPort();

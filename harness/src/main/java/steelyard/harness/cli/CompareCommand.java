@@ -24,6 +24,7 @@ import steelyard.harness.compare.CannotCompare;
 import steelyard.harness.compare.CompareJson;
 import steelyard.harness.compare.Comparison;
 import steelyard.harness.compare.Runs;
+import steelyard.harness.console.Terminals;
 
 /** {@code compare}: what changed from one run to another by more than chance. */
 @Command(
@@ -39,12 +40,13 @@ import steelyard.harness.compare.Runs;
             "Exit status 1: a measure is worse by more than the margin and by more than chance."
         })
 final class CompareCommand implements Callable<Integer> {
-    private static final String RUN = "A run folder, or a folder that holds run folders of one drill.";
-
-    @Parameters(index = "0", paramLabel = "RUN", description = RUN)
+    @Parameters(
+            index = "0",
+            paramLabel = "RUN",
+            description = "The first: a run folder, or a folder that holds run folders of one drill.")
     private Path first = Path.of("");
 
-    @Parameters(index = "1", paramLabel = "RUN", description = RUN)
+    @Parameters(index = "1", paramLabel = "RUN", description = "The second, which may be better or worse.")
     private Path second = Path.of("");
 
     @Option(
@@ -56,11 +58,7 @@ final class CompareCommand implements Callable<Integer> {
                     "A change by less than that part of the first value is no change; ${DEFAULT-VALUE} unless given.")
     private double margin;
 
-    @Option(
-            names = "--only",
-            paramLabel = "MEASURE,...",
-            split = ",",
-            description = "These measures alone: failed,latency")
+    @Option(names = "--only", paramLabel = "MEASURE", split = ",", description = "These measures alone: failed,latency")
     private List<String> only = new ArrayList<>();
 
     @Option(names = "--json", paramLabel = "FILE", description = "Write the comparison there too, as JSON.")
@@ -77,7 +75,8 @@ final class CompareCommand implements Callable<Integer> {
         Set<Measure> measures = measures();
         try {
             Comparison comparison = Comparison.of(Runs.read(first), Runs.read(second), margin, measures);
-            CompareText.lines(comparison).forEach(spec.commandLine().getOut()::println);
+            CompareText.lines(comparison, Terminals.width(Integer.MAX_VALUE))
+                    .forEach(spec.commandLine().getOut()::println);
             write(comparison);
             return comparison.worse() ? ExitStatus.NOT_MET : ExitStatus.MET;
         } catch (CannotCompare cannot) {

@@ -14,10 +14,15 @@ import steelyard.harness.tune.TuneWords;
 /** A comparison as a person reads it: in a sentence, the settings that differ, then each measure. */
 final class CompareText {
     private static final double NANOS = 1e9;
+    /** A setting's value shows so much of itself at least. */
+    private static final int LEAST_VALUE = 16;
+    /** A setting's value shows so much of itself where lines have no end. */
+    private static final int MOST_VALUE = 60;
 
     private CompareText() {}
 
-    static List<String> lines(Comparison comparison) {
+    /** @param width a table wider than that is written one row after the other */
+    static List<String> lines(Comparison comparison, int width) {
         List<String> lines = new ArrayList<>();
         lines.add(sentence(comparison));
         lines.add("");
@@ -26,12 +31,12 @@ final class CompareText {
         lines.add("second  " + comparison.second().words() + ", "
                 + comparison.second().path());
         lines.add("");
-        settings(comparison, lines);
+        settings(comparison, lines, width);
         lines.add("");
         if (comparison.lines().isEmpty()) {
             lines.add("There is no measure that both have.");
         } else {
-            measures(comparison, lines);
+            measures(comparison, lines, width);
         }
         comparison.missing().forEach(lines::add);
         return lines;
@@ -50,22 +55,32 @@ final class CompareText {
                 + (counts.isEmpty() ? "none" : String.join(", ", counts)) + ".";
     }
 
-    private static void settings(Comparison comparison, List<String> lines) {
+    private static void settings(Comparison comparison, List<String> lines, int width) {
         if (comparison.settings().isEmpty()) {
             lines.add("No setting differs.");
             return;
         }
+        int paths = comparison.settings().stream()
+                .mapToInt(each -> each.setting().length())
+                .max()
+                .orElse(0);
+        int most = Math.max(LEAST_VALUE, Math.min(MOST_VALUE, (width - paths) / 2 - 2));
         List<List<String>> rows = comparison.settings().stream()
-                .map(each -> List.of(each.setting(), each.first(), each.second()))
+                .map(each -> List.of(each.setting(), cut(each.first(), most), cut(each.second(), most)))
                 .toList();
-        lines.addAll(TextTable.lines(List.of("setting", "first", "second"), rows, Integer.MAX_VALUE));
+        lines.addAll(TextTable.lines(List.of("setting", "first", "second"), rows, width));
     }
 
-    private static void measures(Comparison comparison, List<String> lines) {
+    /** On one line, and no longer than that. */
+    private static String cut(String value, int most) {
+        String line = value.replaceAll("\\s+", " ");
+        return line.length() <= most ? line : line.substring(0, most - 3) + "...";
+    }
+
+    private static void measures(Comparison comparison, List<String> lines, int width) {
         List<List<String>> rows =
                 comparison.lines().stream().map(CompareText::row).toList();
-        lines.addAll(TextTable.lines(
-                List.of("measure", "first", "second", "difference", "interval", ""), rows, Integer.MAX_VALUE));
+        lines.addAll(TextTable.lines(List.of("measure", "first", "second", "difference", "interval", ""), rows, width));
         lines.add("");
         for (Line each : comparison.lines()) {
             if (each.note() != null) {

@@ -15,7 +15,8 @@ import steelyard.drills.read.DrillLibrary;
         description = {
             "Print a script that completes commands and options in bash and zsh.",
             "For this shell: source <(harness/steelyard completion)"
-        })
+        },
+        optionListHeading = "%nOptions:%n")
 final class CompletionCommand implements Callable<Integer> {
     private static final List<String> TAKE_A_DRILL = List.of("rehearse", "forecast", "tune", "check");
     private static final String FILES = "positionals=$( compgen -f -- \"${curr_word}\" ) # files";

@@ -55,8 +55,8 @@ final class Forecasting {
             Interrupts interrupts = Interrupts.listen();
             String title = series.drill().name() + ", " + Wording.count(series.plays(), "play", "plays") + " of "
                     + Wording.duration(series.drill().lastsNanos()) + " in virtual time";
-            Progress progress = Progress.open(title, "plays", series.plays(), plain, out);
-            interrupts.atSecond(progress::close);
+            Progress progress = Progress.open(title, "plays", series.plays(), plain, err);
+            interrupts.atSecond(progress::close, folder.path(), err);
             Forecast forecast;
             try {
                 forecast = record(folder, progress, interrupts);

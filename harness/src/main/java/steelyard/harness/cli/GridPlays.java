@@ -49,9 +49,9 @@ final class GridPlays {
         try (Tuning tuning = new Tuning(request, threads)) {
             RunFolder folder = RunFolder.create(path);
             Interrupts interrupts = Interrupts.listen();
-            Progress progress = Progress.open(title(), "plays", request.allPlays(), plain, out);
+            Progress progress = Progress.open(title(), "plays", request.allPlays(), plain, err);
             interrupts.atFirst(tuning::cancel);
-            interrupts.atSecond(progress::close);
+            interrupts.atSecond(progress::close, folder.path(), err);
             Tuned tuned = tuned(tuning, progress);
             if (tuned.results().isEmpty()) {
                 out.println();

@@ -1,5 +1,7 @@
 package steelyard.harness.cli;
 
+import java.io.PrintWriter;
+import java.nio.file.Path;
 import java.util.concurrent.atomic.AtomicInteger;
 import org.jline.utils.Signals;
 
@@ -47,9 +49,13 @@ final class Interrupts {
         }
     }
 
-    /** Has that done before the process is stopped by a second signal. */
-    void atSecond(Runnable what) {
-        second = what;
+    /** Has a view closed before the process is stopped by a second signal, and says where what was written stands. */
+    void atSecond(Runnable close, Path folder, PrintWriter err) {
+        second = () -> {
+            close.run();
+            err.println("steelyard: stopped; what was written stands in " + folder);
+            err.flush();
+        };
     }
 
     boolean came() {

@@ -81,7 +81,7 @@ final class Rehearsal {
      * @throws CommandFailure when it cannot be played here
      */
     int play() throws CommandFailure {
-        interrupts.atSecond(view::close);
+        interrupts.atSecond(view::close, folder.path(), err);
         CannotPlay broken = onStage();
         Verdict verdict = recorder.finish(judge.verdict());
         boolean reported = report();
@@ -119,8 +119,8 @@ final class Rehearsal {
                         "steelyard: this system has no loopback network but 127.0.0.1: all clients connect from there");
             }
             ControlAddress control = stage.openControl(cues);
-            out.println("metrics %s (bearer token %s)".formatted(control.url(), control.token()));
-            out.println("control %s/state, %s/cues".formatted(control.base(), control.base()));
+            out.println("control %s with /metrics, /state and /cues (bearer token %s)"
+                    .formatted(control.base(), control.token()));
         } catch (CannotPlay cannot) {
             discard();
             throw CommandFailure.cannot(line(String.valueOf(cannot.getMessage())), cannot);

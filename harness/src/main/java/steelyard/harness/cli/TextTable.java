@@ -2,6 +2,7 @@ package steelyard.harness.cli;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.regex.Pattern;
 
 /**
  * Rows under a head: the first column and the one without a head, which is the outcome, to the left, the others to the
@@ -9,6 +10,8 @@ import java.util.List;
  */
 final class TextTable {
     private static final String GAP = "  ";
+    /** Says nothing by itself where its head does not stand above it. */
+    private static final Pattern NUMBER = Pattern.compile("\\d+");
 
     private TextTable() {}
 
@@ -41,8 +44,9 @@ final class TextTable {
         int widest = head.stream().skip(1).mapToInt(String::length).max().orElse(0);
         List<String> lines = new ArrayList<>();
         for (List<String> row : rows) {
-            String outcome = head.indexOf("") < 0 ? "" : row.get(head.indexOf("")) + ": ";
-            lines.addAll(VerdictText.wrapped("", outcome + row.get(0), width));
+            String outcome = head.indexOf("") < 0 ? "" : row.get(head.indexOf(""));
+            String name = NUMBER.matcher(row.get(0)).matches() ? head.get(0) + " " + row.get(0) : row.get(0);
+            lines.addAll(VerdictText.wrapped("", outcome.isEmpty() ? name : outcome + ": " + name, width));
             for (int column = 1; column < head.size(); column++) {
                 if (!head.get(column).isEmpty() && !row.get(column).isEmpty()) {
                     lines.add(GAP + VerdictText.pad(head.get(column), widest, false) + GAP + row.get(column));

@@ -10,7 +10,7 @@ import steelyard.harness.tune.Result.Axis;
 import steelyard.harness.tune.TuneWords;
 import steelyard.harness.tune.Tuning.Tuned;
 
-/** A grid as a person reads it: what one would take and why, then every cell. */
+/** A grid as a person reads it: every cell, then what one would take and why, so that this stays on the screen. */
 final class TuneText {
     private TuneText() {}
 
@@ -22,13 +22,6 @@ final class TuneText {
             lines.add("Interrupted; this is of the first " + tuned.results().size() + " of " + cells + " cells.");
         }
         Choice choice = tuned.choice();
-        String take =
-                choice.taken().map(each -> "Take " + each.cell().words() + ". ").orElse("");
-        lines.addAll(VerdictText.wrapped("", take + choice.reason(), width));
-        if (!choice.note().isEmpty()) {
-            lines.addAll(VerdictText.wrapped("", choice.note(), width));
-        }
-        lines.add("");
         lines.addAll(table(tuned, choice, width));
         lines.add("");
         Result any = tuned.results().get(0);
@@ -42,6 +35,13 @@ final class TuneText {
                         + "what chance explains is told by 95 % intervals of paired differences. Bands are "
                         + Spread.METHOD + ".",
                 width));
+        lines.add("");
+        String take =
+                choice.taken().map(each -> "Take " + each.cell().words() + ". ").orElse("");
+        lines.addAll(VerdictText.wrapped("", take + choice.reason(), width));
+        if (!choice.note().isEmpty()) {
+            lines.addAll(VerdictText.wrapped("", choice.note(), width));
+        }
         return lines;
     }
 

@@ -7,7 +7,7 @@ import picocli.CommandLine.Model.CommandSpec;
 import picocli.CommandLine.Spec;
 
 /** {@code version}. */
-@Command(name = "version", description = "Show the version.")
+@Command(name = "version", description = "Show the version.", optionListHeading = "%nOptions:%n")
 final class VersionCommand implements Callable<Integer> {
     @Mixin
     private HelpOption help = new HelpOption();

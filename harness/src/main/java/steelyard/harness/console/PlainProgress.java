@@ -9,20 +9,20 @@ final class PlainProgress implements Progress {
     private final String title;
     private final String noun;
     private final long total;
-    private final PrintWriter out;
+    private final PrintWriter err;
     private long shown;
 
-    PlainProgress(String title, String noun, long total, PrintWriter out) {
+    PlainProgress(String title, String noun, long total, PrintWriter err) {
         this.title = title;
         this.noun = noun;
         this.total = total;
-        this.out = out;
+        this.err = err;
     }
 
     @Override
     public void begin() {
-        out.println(title);
-        out.flush();
+        err.println(title);
+        err.flush();
     }
 
     @Override
@@ -30,8 +30,8 @@ final class PlainProgress implements Progress {
         long part = done * PARTS / total;
         if (part > shown) {
             shown = part;
-            out.println(Figures.count(done) + " of " + Figures.count(total) + " " + noun);
-            out.flush();
+            err.println(Figures.count(done) + " of " + Figures.count(total) + " " + noun);
+            err.flush();
         }
     }
 
@@ -42,6 +42,6 @@ final class PlainProgress implements Progress {
 
     @Override
     public void close() {
-        out.flush();
+        err.flush();
     }
 }

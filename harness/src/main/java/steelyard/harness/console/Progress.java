@@ -12,12 +12,12 @@ public interface Progress extends AutoCloseable {
      * @param noun what is counted, for more than one: {@code plays}
      * @param total how many there will be, at least 1
      * @param plain asks for plain lines on a terminal too
-     * @param out where plain lines go
+     * @param err where plain lines go
      */
-    static Progress open(String title, String noun, long total, boolean plain, PrintWriter out) {
+    static Progress open(String title, String noun, long total, boolean plain, PrintWriter err) {
         Terminal terminal = plain ? null : Terminals.redrawing();
         return terminal == null
-                ? new PlainProgress(title, noun, total, out)
+                ? new PlainProgress(title, noun, total, err)
                 : new ProgressBar(title, noun, total, terminal);
     }
 

@@ -8,11 +8,20 @@ import org.jline.utils.InfoCmp.Capability;
 import org.jspecify.annotations.Nullable;
 
 /** The terminal behind standard output. */
-final class Terminals {
+public final class Terminals {
     private static final int LEAST_WIDTH = 20;
     private static final int LEAST_HEIGHT = 6;
 
     private Terminals() {}
+
+    /** Columns of the terminal, or what is given where there is none. */
+    public static int width(int otherwise) {
+        try (Terminal terminal = redrawing()) {
+            return terminal == null ? otherwise : terminal.getSize().getColumns();
+        } catch (IOException broken) {
+            return otherwise;
+        }
+    }
 
     /** A terminal on which lines can be drawn again, or null where there is none; the caller closes it. */
     static @Nullable Terminal redrawing() {

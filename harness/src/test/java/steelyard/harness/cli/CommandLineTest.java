@@ -183,6 +183,22 @@ class CommandLineTest {
     }
 
     @Test
+    void helpOfCompare_always_namesAMeasureOnceAndTwoRuns() {
+        run("help", "compare");
+        assertThat(out.toString().replaceAll("\\s+", " "))
+                .contains("[--only=MEASURE[,MEASURE...]]... ")
+                .contains(" RUN RUN ")
+                .containsOnlyOnce("a folder that holds run folders of one drill");
+    }
+
+    @ParameterizedTest
+    @ValueSource(strings = {"rehearse", "forecast", "tune", "compare", "check", "drills", "completion", "version"})
+    void help_ofACommand_hasOptionsUnderTheirHead(String command) {
+        assertThat(run("help", command)).isZero();
+        assertThat(out.toString()).containsPattern("\nOptions:\n");
+    }
+
+    @Test
     void help_always_listsEveryExitStatus() {
         run("help");
         assertThat(out.toString())

@@ -23,5 +23,9 @@ class TextTableTest {
     void table_thatIsTooWide_isStackedBehindItsOutcomes() {
         assertThat(TextTable.lines(HEAD, ROWS, 24))
                 .containsExactly("met: failed, whole play", "  median  0.2 %", "not met: cut", "  median  12");
+        assertThat(TextTable.lines(HEAD, List.of(List.of("retry-load, whole play", "1", "")), 24))
+                .containsExactly("retry-load, whole play", "  median  1");
+        assertThat(TextTable.lines(List.of("cell", "median", ""), List.of(List.of("7", "0.2 %", "taken")), 16))
+                .containsExactly("taken: cell 7", "  median  0.2 %");
     }
 }
