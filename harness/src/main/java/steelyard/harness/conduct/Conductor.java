@@ -2,6 +2,7 @@ package steelyard.harness.conduct;
 
 import java.util.Comparator;
 import java.util.List;
+import java.util.Optional;
 import java.util.PriorityQueue;
 import java.util.Queue;
 import steelyard.backends.behave.Chance;
@@ -61,6 +62,14 @@ public final class Conductor implements Agenda {
     public void byHand(Cue cue) {
         actions.check(cue);
         byHand.add(cue);
+    }
+
+    /**
+     * Why a cue sent now would change nothing, in words: {@code gannet was not killed}. Empty where it would, or where
+     * that is not known, such as while another one waits for the next poll. Any thread.
+     */
+    public Optional<String> idle(Cue cue) {
+        return byHand.isEmpty() ? actions.idle(cue) : Optional.empty();
     }
 
     @Override

@@ -1,5 +1,7 @@
 package steelyard.harness.conduct;
 
+import java.util.Optional;
+import java.util.stream.Collectors;
 import java.util.stream.IntStream;
 import steelyard.backends.behave.Change;
 import steelyard.drills.model.Cue;
@@ -20,6 +22,7 @@ final class CueActions {
     private final Retuned retuned;
     private final Terms faults;
     private final Terms surges;
+    private final Absent absent;
 
     CueActions(Drill drill, ArrivalPlan arrivals) {
         this.cast = new Cast(drill);
@@ -28,6 +31,7 @@ final class CueActions {
         this.retuned = new Retuned(drill);
         this.faults = new Terms(cast.backends().size());
         this.surges = new Terms(poolOfTraffic.length);
+        this.absent = new Absent(cast.backends().size());
     }
 
     /**
@@ -55,6 +59,25 @@ final class CueActions {
             case RETUNE -> retune(cue, hands);
             case SURGE -> surge(cue, number, atNanos);
         }
+        backends(cue).forEach(each -> absent.carriedOut(cue.kind(), each));
+    }
+
+    /** Why a cue would change nothing, in words; empty for one that would, or of which that is not known. Any thread. */
+    Optional<String> idle(Cue cue) {
+        boolean revive = cue.kind() == Cue.Kind.REVIVE;
+        if (!revive && cue.kind() != Cue.Kind.ADMIT) {
+            return Optional.empty();
+        }
+        int[] named = cast.numbers(cue.target());
+        if (IntStream.of(named).anyMatch(each -> revive ? absent.killed(each) : absent.out(each))) {
+            return Optional.empty();
+        }
+        String names = IntStream.of(named)
+                .mapToObj(each -> cast.backends().get(each).name())
+                .collect(Collectors.joining(", "));
+        boolean one = named.length == 1;
+        return Optional.of(
+                names + (revive ? (one ? " was" : " were") + " not killed" : (one ? " is" : " are") + " not out"));
     }
 
     /** Whether anything that a cue set still stands, so that there is something to end. */
@@ -91,6 +114,9 @@ final class CueActions {
         Change end = Changes.end(cue.kind());
         for (int backend : left(cue, number)) {
             faults.ended(cue.kind(), backend);
+            if (cue.kind() == Cue.Kind.KILL) {
+                absent.carriedOut(Cue.Kind.REVIVE, backend);
+            }
             hands.change(backend, end);
         }
     }

@@ -2,6 +2,7 @@ package steelyard.harness.stage.live;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Optional;
 import steelyard.balancer.live.control.CueTaker;
 import steelyard.drills.model.Cue;
 import steelyard.drills.model.Drill;
@@ -35,13 +36,15 @@ public final class CuesByHand implements CueTaker {
         if (cue.atNanos() != 0) {
             return Reply.refused("cue: a cue sent by hand is carried out at once; leave out at");
         }
+        Optional<String> idle;
         try {
+            idle = conductor.idle(cue);
             conductor.byHand(cue);
         } catch (IllegalArgumentException cannot) {
             return Reply.refused("cue: " + cannot.getMessage() + "; send another one");
         }
         sent.add(cue);
-        return Reply.taken(cue.text());
+        return Reply.taken(idle.map(why -> "nothing changes: " + why).orElse(cue.text()));
     }
 
     /** The drill as if it had the cues that were sent, so that every name is there once. */

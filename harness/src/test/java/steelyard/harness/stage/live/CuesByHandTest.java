@@ -91,6 +91,30 @@ class CuesByHandTest {
     }
 
     @Test
+    void take_aCueThatChangesNothing_saysSo() {
+        assertThat(cues.take("revive: gannet").line()).isEqualTo("nothing changes: gannet was not killed");
+        conductor.poll(SECOND, hands, 100);
+        assertThat(cues.take("admit: [fulmar, gannet]"))
+                .isEqualTo(CueTaker.Reply.taken("nothing changes: fulmar, gannet are not out"));
+        conductor.poll(2 * SECOND, hands, 100);
+        assertThat(cues.take("withdraw: fulmar").line()).isEqualTo("withdraw fulmar");
+        // Not yet carried out, so what would change is not known.
+        assertThat(cues.take("admit: fulmar").line()).isEqualTo("admit fulmar");
+        conductor.poll(3 * SECOND, hands, 100);
+        assertThat(cues.take("admit: fulmar").line()).isEqualTo("nothing changes: fulmar is not out");
+        conductor.poll(6 * SECOND, hands, 100); // the drill kills gannet at 5 s
+        assertThat(cues.take("revive: {pool: seats}").line()).isEqualTo("revive pool seats");
+    }
+
+    @Test
+    void take_aReviveAfterTheEndOfAKill_changesNothing() {
+        assertThat(cues.take("{kill: fulmar, for: 1s}").line()).isEqualTo("kill fulmar");
+        conductor.poll(SECOND, hands, 100);
+        conductor.poll(2 * SECOND, hands, 100);
+        assertThat(cues.take("revive: fulmar").line()).isEqualTo("nothing changes: fulmar was not killed");
+    }
+
+    @Test
     void take_theSameCueTwice_hasANameEachTime() {
         assertThat(cues.take("admit: fulmar").kind()).isEqualTo(CueTaker.Kind.TAKEN);
         assertThat(cues.take("admit: fulmar").kind()).isEqualTo(CueTaker.Kind.TAKEN);
