@@ -75,7 +75,11 @@ final class LivePlay implements AutoCloseable {
     }
 
     static LivePlay onLoops(int loops, InetSocketAddress... addresses) throws CannotStart {
-        return new LivePlay(settings(loops, UnaryOperator.identity(), addresses), List.of(addresses)).begun();
+        return onLoops(loops, UnaryOperator.identity(), addresses);
+    }
+
+    static LivePlay onLoops(int loops, UnaryOperator<Pool> with, InetSocketAddress... addresses) throws CannotStart {
+        return new LivePlay(settings(loops, with, addresses), List.of(addresses)).begun();
     }
 
     /** A balancer whose only backend is itself. */

@@ -4,7 +4,12 @@ import static org.assertj.core.api.Assertions.assertThat;
 import static org.awaitility.Awaitility.await;
 
 import java.io.IOException;
+import java.util.ArrayList;
+import java.util.Collections;
+import java.util.List;
+import java.util.Random;
 import java.util.concurrent.CountDownLatch;
+import java.util.concurrent.TimeUnit;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.extension.ExtendWith;
 import steelyard.balancer.core.decide.Outcome;
@@ -120,6 +125,54 @@ class WaitingTest {
             play.settle();
             assertThat(play.decisions.outcomes()).containsOnly(Outcome.ANSWERED);
         }
+    }
+
+    /** Who leaves just as it is given a place has to hand it back: a crowd on three loops that seldom stays. */
+    @Test
+    void clients_thatLeaveAtAnyMoment_handTheirPlacesBack() throws Exception {
+        try (FakeBackend backend = FakeBackend.answering(ANSWER);
+                LivePlay play = LivePlay.onLoops(3, pool -> oneAtATime(pool, 100, 0.02), backend.address())) {
+            crowd(play, REQUEST);
+            assertThat(play.decisions.waited()).isPositive();
+            assertThat(play.ask(REQUEST)).endsWith("tern");
+        }
+    }
+
+    @Test
+    void connections_thatLeaveAtAnyMoment_handTheirPlacesBack() throws Exception {
+        try (FakeBackend backend = FakeBackend.playing(wire -> wire.send("got " + wire.readToEnd()));
+                LivePlay play = LivePlay.onLoops(3, pool -> oneAtATime(pool.passing(), 100, 0.02), backend.address())) {
+            crowd(play, "one");
+            assertThat(play.decisions.waited()).isPositive();
+            try (Wire last = play.client()) {
+                last.send("last");
+                last.finish();
+                assertThat(last.readToEnd()).isEqualTo("got last");
+            }
+        }
+    }
+
+    /** Sixty times ten clients, who leave after up to 3 ms, in order or with a reset. Returns when nothing is in flight. */
+    private static void crowd(LivePlay play, String says) throws Exception {
+        Random seeded = new Random(7);
+        for (int round = 0; round < 60; round++) {
+            List<Wire> clients = new ArrayList<>();
+            for (int i = 0; i < 10; i++) {
+                Wire client = play.client();
+                clients.add(client);
+                client.send(says);
+            }
+            Collections.shuffle(clients, seeded);
+            for (Wire client : clients) {
+                TimeUnit.MICROSECONDS.sleep(seeded.nextInt(300));
+                if (seeded.nextBoolean()) {
+                    client.reset();
+                } else {
+                    client.close();
+                }
+            }
+        }
+        play.settle();
     }
 
     @Test
