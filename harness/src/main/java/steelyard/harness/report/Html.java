@@ -1,9 +1,12 @@
 package steelyard.harness.report;
 
 import java.util.List;
+import java.util.regex.Pattern;
 
 /** Builds tables and keeps text from being read as markup. */
 final class Html {
+    private static final Pattern OPTION = Pattern.compile("(?<!\\S)--[a-z-]+");
+
     private final StringBuilder out = new StringBuilder();
 
     /** Text made safe between tags and inside quoted attributes. */
@@ -13,6 +16,11 @@ final class Html {
                 .replace(">", "&gt;")
                 .replace("\"", "&quot;")
                 .replace("'", "&#39;");
+    }
+
+    /** The same of sentences, in which no line breaks behind the hyphens of an option such as {@code --vary}. */
+    static String prose(String raw) {
+        return OPTION.matcher(text(raw)).replaceAll("<span class=\"whole\">$0</span>");
     }
 
     /** Adds markup as it is. */

@@ -13,7 +13,7 @@ final class Page {
     static String of(RunFiles run) throws IOException {
         Map<String, String> slots = new HashMap<>();
         slots.put("title", Html.text(run.run().drill()));
-        slots.put("about", Html.text(run.run().about()));
+        slots.put("about", Html.prose(run.run().about()));
         slots.put("styles", Assets.styles());
         slots.put("scripts", Assets.scripts());
         slots.put("data", ChartData.json(run));

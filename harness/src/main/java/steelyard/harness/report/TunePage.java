@@ -46,7 +46,7 @@ public final class TunePage {
         TunePage page = new TunePage(tuned);
         Map<String, String> values = new HashMap<>();
         values.put("title", Html.text(drill.name()));
-        values.put("about", Html.text(drill.about()));
+        values.put("about", Html.prose(drill.about()));
         values.put("styles", Assets.own("report.css") + Assets.own("tune.css"));
         values.put("kicker", Html.text(page.kicker(version)));
         values.put("verdict", page.verdict());
