@@ -22,15 +22,7 @@ final class Problems {
 
     void add(Place place, String message, String remedy) {
         refuse();
-        keep(Problem.Severity.PROBLEM, file, place, message, remedy);
-    }
-
-    /** Problems of another file, which the text names; they follow those of the text itself. */
-    Elsewhere in(String otherFile) {
-        return (place, message, remedy) -> {
-            refuse();
-            keep(Problem.Severity.PROBLEM, otherFile, place, message, remedy);
-        };
+        keep(Problem.Severity.PROBLEM, place, message, remedy);
     }
 
     private void refuse() {
@@ -43,13 +35,13 @@ final class Problems {
 
     void notice(Place place, String message, String remedy) {
         if (!refused) {
-            keep(Problem.Severity.NOTICE, file, place, message, remedy);
+            keep(Problem.Severity.NOTICE, place, message, remedy);
         }
     }
 
-    private void keep(Problem.Severity severity, String where, Place place, String message, String remedy) {
+    private void keep(Problem.Severity severity, Place place, String message, String remedy) {
         if (found.size() < MOST) {
-            found.add(new Problem(severity, where, place.line(), place.column(), message, remedy));
+            found.add(new Problem(severity, file, place.line(), place.column(), message, remedy));
         }
     }
 
@@ -63,11 +55,6 @@ final class Problems {
         return refusedNames.stream().anyMatch(name -> text.equals(name) || text.startsWith(name + " "));
     }
 
-    /** Takes problems of another file. */
-    interface Elsewhere {
-        void add(Place place, String message, String remedy);
-    }
-
     /** Whether the text cannot become a value. */
     boolean any() {
         return refused;
@@ -76,10 +63,7 @@ final class Problems {
     /** The problems in the order of the file; the notices only where there is no problem. */
     List<Problem> inOrder() {
         List<Problem> sorted = new ArrayList<>(found);
-        sorted.sort(Comparator.comparing((Problem problem) -> !problem.file().equals(file))
-                .thenComparing(Problem::file)
-                .thenComparingInt(Problem::line)
-                .thenComparingInt(Problem::column));
+        sorted.sort(Comparator.comparingInt(Problem::line).thenComparingInt(Problem::column));
         return sorted;
     }
 }

@@ -80,7 +80,8 @@ record Quantity<T>(
                 : quoted(text) + " for '" + key + "' is not " + noun;
     }
 
-    private String remedy(String text) {
+    /** What to do about a text that has not this form: add a unit, or write it another way. */
+    String remedy(String text) {
         if (!units.isEmpty() && Numbers.isNumber(text)) {
             List<String> forms = units.stream().map(unit -> text + unit).toList();
             return "write " + Sentence.or(forms);

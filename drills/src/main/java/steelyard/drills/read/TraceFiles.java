@@ -61,7 +61,7 @@ final class TraceFiles {
                         "name a file of durations, beginning at the folder of the drill");
                 return null;
             }
-            return new TraceText(problems.in(path.toString()), column).read(text(path), fields);
+            return new TraceText(file, column).read(text(path), fields);
         } catch (TooLarge e) {
             problems.add(place, "the trace holds more than " + MOST_BYTES / 1_000_000 + " MB", "shorten it");
         } catch (InvalidPathException e) {

@@ -11,12 +11,13 @@ final class TraceText {
     /** More lines of problems than that help nobody. */
     private static final int MOST_PROBLEMS = 10;
 
-    private final Problems.Elsewhere problems;
+    private final String file;
     private final @Nullable String column;
     private int found;
 
-    TraceText(Problems.Elsewhere problems, @Nullable String column) {
-        this.problems = problems;
+    /** With the name of the file as the drill writes it, and the column that it asks for, or null for the first one. */
+    TraceText(String file, @Nullable String column) {
+        this.file = file;
         this.column = column;
     }
 
@@ -50,7 +51,7 @@ final class TraceText {
         int count = 0;
         for (int line = from; line < lines.length && found < MOST_PROBLEMS; line++) {
             if (!lines[line].isBlank()) {
-                nanos[count] = time(lines[line], line + 1, place);
+                nanos[count] = time(lines[line], line + 1, place, asked);
                 count++;
             }
         }
@@ -62,28 +63,32 @@ final class TraceText {
         return found > 0 ? null : Trace.Nanos.of(Arrays.copyOf(nanos, count));
     }
 
-    private long time(String line, int number, int place) {
+    private long time(String line, int number, int place, Fields asked) {
         List<String> cells = cells(line);
         String cell = place < cells.size() ? cells.get(place) : "";
-        Place at = new Place(number, column(line, place));
         Long nanos = cell.isEmpty() ? null : Durations.nanos(cell);
         if (nanos != null && nanos > 0 && nanos <= Durations.DAY) {
             return nanos;
         }
         found++;
+        String quoted = Quantity.quoted(cell);
         if (cell.isEmpty()) {
-            problems.add(at, "the line has no time", "write one, such as 12ms, or drop the line");
-        } else if (nanos == null && Numbers.isNumber(cell)) {
-            problems.add(
-                    at,
-                    Quantity.quoted(cell) + " has no unit",
-                    "write " + cell + "ms, " + cell + "s or " + cell + "us");
-        } else if (nanos == null) {
-            problems.add(at, Quantity.quoted(cell) + " is not a duration", "write it like 15s, 250ms or 1.5s");
+            refuse(asked, number, "there is no time", "write one, such as 12ms, or drop the line");
+        } else if (nanos != null) {
+            refuse(asked, number, quoted + " is not above zero, up to a day", "drop the line");
         } else {
-            problems.add(at, Quantity.quoted(cell) + " is not above zero, up to a day", "drop the line");
+            String wrong = Numbers.isNumber(cell) ? " has no unit" : " is not a duration";
+            refuse(asked, number, quoted + wrong, Durations.POSITIVE.remedy(cell));
         }
         return 0;
+    }
+
+    private void refuse(Fields asked, int line, String message, String remedy) {
+        asked.problems()
+                .add(
+                        asked.valuePlace("trace"),
+                        "'trace' cannot be taken: " + file + ", line " + line + ": " + message,
+                        remedy);
     }
 
     /** A head is a word: it does not begin like a number. */
@@ -99,14 +104,5 @@ final class TraceText {
             cells.add(quoted ? bare.substring(1, bare.length() - 1) : bare);
         }
         return cells;
-    }
-
-    /** The column of the text, from 1, at which a cell begins. */
-    private static int column(String line, int place) {
-        int at = 0;
-        for (int i = 0; i < place && line.indexOf(',', at) >= 0; i++) {
-            at = line.indexOf(',', at) + 1;
-        }
-        return at + 1;
     }
 }

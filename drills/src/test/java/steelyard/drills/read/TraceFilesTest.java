@@ -87,21 +87,24 @@ class TraceFilesTest {
     }
 
     @Test
-    void read_ofBadLines_saysEachWithItsPlaceInTheTrace() throws IOException {
+    void read_ofBadLines_saysEachWithThePlaceInTheDrillAndItsLine() throws IOException {
         Files.writeString(trace, "ferry,took\nnorth,12\nsouth,soon\neast\nwest,0s\nnorth,-5ms\n");
+        String there = "d:7:42: 'trace' cannot be taken: times.csv, line ";
         assertThat(shown(", column: took"))
                 .containsExactly(
-                        trace + ":2:7: '12' has no unit; write 12ms, 12s or 12us",
-                        trace + ":3:7: 'soon' is not a duration; write it like 15s, 250ms or 1.5s",
-                        trace + ":4:1: the line has no time; write one, such as 12ms, or drop the line",
-                        trace + ":5:6: '0s' is not above zero, up to a day; drop the line",
-                        trace + ":6:7: '-5ms' is not a duration; write it like 15s, 250ms or 1.5s");
+                        there + "2: '12' has no unit; write 12ms, 12s or 12m",
+                        there + "3: 'soon' is not a duration; write it like 15s, 250ms, 1.5s or 1m30s",
+                        there + "4: there is no time; write one, such as 12ms, or drop the line",
+                        there + "5: '0s' is not above zero, up to a day; drop the line",
+                        there + "6: '-5ms' is not a duration; write it like 15s, 250ms, 1.5s or 1m30s");
     }
 
     @Test
     void read_ofABareNumberInTheFirstLine_isNoHead() throws IOException {
         Files.writeString(trace, "12\n");
-        assertThat(shown("")).containsExactly(trace + ":1:1: '12' has no unit; write 12ms, 12s or 12us");
+        assertThat(shown(""))
+                .containsExactly("d:7:42: 'trace' cannot be taken: times.csv, line 1: '12' has no unit; write 12ms, 12s"
+                        + " or 12m");
     }
 
     @Test
