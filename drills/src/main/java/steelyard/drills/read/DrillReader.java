@@ -104,6 +104,7 @@ public final class DrillReader {
         List<Cue> cues =
                 schedule.schedule(cueNodes.stream().map(cueReader::read).toList());
         new CueNotices(problems, lasts).check(schedule.placed());
+        stageReader.unusedWeights().check(cues);
         ExpectationResolver resolver = new ExpectationResolver(problems, roster, schedule, cues, traffic, lasts);
         List<Expectation> expectations = resolver.resolve(expectations(fields, problems));
         noticeIdlePools(fields, problems, stage, traffic);

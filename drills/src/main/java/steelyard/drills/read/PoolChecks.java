@@ -33,19 +33,12 @@ final class PoolChecks {
         this.ofPool = ofPool;
     }
 
-    void weights(Picking picking) {
+    void weights(String name, Picking picking, UnusedWeights unused) {
         Place written = ofPool.firstWeight();
         Pool.Method method = picking.method();
         if (!method.weighs()) {
             if (written != null && ofPool.weightsDiffer()) {
-                problems.notice(
-                        written,
-                        "under " + method.word() + " weights play no part",
-                        "write method: "
-                                + (method == Pool.Method.RANDOM
-                                        ? Pool.Method.WEIGHTED_RANDOM.word()
-                                        : Pool.Method.WEIGHTED_ROUND_ROBIN.word())
-                                + " to use them");
+                unused.found(name, method, written);
             }
         } else if (written != null && ofPool.noneWeighs()) {
             problems.notice(

@@ -23,15 +23,20 @@ final class PoolReader {
     private final HealthReader healths;
     private final GuardsReader guards;
     private final FrontReader fronts;
+    private final UnusedWeights unused;
 
-    /** With the folder that names of files begin at, or null to leave them as they are. */
-    PoolReader(Problems problems, BackendsReader backends, @Nullable Path folder) {
+    /**
+     * With what takes weights that play no part, and the folder that names of files begin at, or null to leave them as
+     * they are.
+     */
+    PoolReader(Problems problems, BackendsReader backends, UnusedWeights unused, @Nullable Path folder) {
         this.problems = problems;
         this.backends = backends;
         this.pickings = new PickingReader(problems);
         this.healths = new HealthReader(problems);
         this.guards = new GuardsReader(problems);
         this.fronts = new FrontReader(problems, folder);
+        this.unused = unused;
     }
 
     /** The pool, or null when it has no backend or its parts do not go together. */
@@ -49,7 +54,7 @@ final class PoolReader {
         Wire wire = fronts.read(fields, entry.key());
         BackendsReader.OfPool ofPool = backends.read(fields, entry.key());
         PoolChecks checks = new PoolChecks(problems, fields, ofPool);
-        checks.weights(picking);
+        checks.weights(entry.key(), picking, unused);
         checks.hash(picking);
         checks.probes(health.probe());
         checks.bench(health.bench());

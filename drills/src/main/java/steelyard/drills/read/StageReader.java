@@ -16,10 +16,12 @@ final class StageReader {
     private final Problems problems;
     private final @Nullable Path folder;
     private final List<String> poolNames = new ArrayList<>();
+    private final UnusedWeights unused;
 
     StageReader(Problems problems, @Nullable Path folder) {
         this.problems = problems;
         this.folder = folder;
+        this.unused = new UnusedWeights(problems);
     }
 
     /** The stage; null when it has no pool. */
@@ -32,7 +34,7 @@ final class StageReader {
         Fields fields = drill.map("stage", Keys.STAGE);
         HostsReader hosts = new HostsReader(fields);
         PoolReader reader = new PoolReader(
-                problems, new BackendsReader(problems, hosts, new ServesReader(problems, folder)), folder);
+                problems, new BackendsReader(problems, hosts, new ServesReader(problems, folder)), unused, folder);
         List<Pool> pools = new ArrayList<>();
         List<Node.Entry> entries = fields.named("pools", "pool");
         for (Node.Entry entry : entries) {
@@ -59,6 +61,11 @@ final class StageReader {
     /** The names of all pools in the file, of those too that have no backend. */
     List<String> poolNames() {
         return poolNames;
+    }
+
+    /** Weights of pools that play no part, unless a cue brings them into play. */
+    UnusedWeights unusedWeights() {
+        return unused;
     }
 
     private void checkHostWeights(HostsReader hosts, List<Pool> pools) {
