@@ -62,6 +62,14 @@ final class Durations {
         return (c >= '0' && c <= '9') || c == '.';
     }
 
+    /** In the largest unit that holds it in whole numbers, up to seconds: {@code 5500ms}; for messages. */
+    static String exact(long nanos) {
+        if (nanos % SECOND == 0) {
+            return nanos / SECOND + "s";
+        }
+        return nanos % MILLISECOND == 0 ? nanos / MILLISECOND + "ms" : nanos / 1_000 + "us";
+    }
+
     /** As a drill would write it: {@code 1.5s}, {@code 250ms}; for messages. */
     static String text(long nanos) {
         long size = Math.abs(nanos);

@@ -1,5 +1,6 @@
 package steelyard.drills.read;
 
+import java.util.regex.Pattern;
 import org.jspecify.annotations.Nullable;
 
 /**
@@ -9,6 +10,9 @@ import org.jspecify.annotations.Nullable;
  * @param offsetNanos from there on, perhaps negative
  */
 record Instant(Place place, @Nullable String base, long offsetNanos) {
+
+    /** Just before each sign. */
+    private static final Pattern SIGNED = Pattern.compile("(?=[+-])");
 
     private static final Quantity<String> TEXT = Names.some("an instant", "15s, or the name of a cue and perhaps + 2s");
 
@@ -31,10 +35,45 @@ record Instant(Place place, @Nullable String base, long offsetNanos) {
                     : new Instant(text.place(), written, 0);
         }
         String base = written.substring(0, sign).strip();
+        String once = inOne(written);
+        if (once != null) {
+            problems.add(
+                    text.place(),
+                    "an instant takes one duration, and " + Quantity.quoted(written) + " for '" + key + "' has more",
+                    "write " + once);
+            return null;
+        }
         Placed<String> rest =
                 new Placed<>(text.place(), written.substring(sign + 1).strip());
         int direction = written.charAt(sign) == '-' ? -1 : 1;
         return at(text, base.isEmpty() ? null : base, direction, Durations.DURATION.parse(rest, key, problems));
+    }
+
+    /** The same with one duration, of a text with several; null for any other text. */
+    private static @Nullable String inOne(String written) {
+        String[] parts = SIGNED.split(written);
+        String first = parts[0].strip();
+        boolean named = !looksLikeNumber(first);
+        Long sum = sum(parts, named ? 1 : 0);
+        if (parts.length < (named ? 3 : 2) || sum == null) {
+            return null;
+        }
+        String amount = Durations.exact(Math.abs(sum));
+        return named ? first + (sum < 0 ? " - " : " + ") + amount : sum < 0 ? null : amount;
+    }
+
+    /** Of durations, each but the very first part with its sign; null when one is none. */
+    private static @Nullable Long sum(String[] parts, int from) {
+        long sum = 0;
+        for (int part = from; part < parts.length; part++) {
+            String text = parts[part].strip();
+            Long nanos = Durations.nanos(part == 0 ? text : text.substring(1).strip());
+            if (nanos == null) {
+                return null;
+            }
+            sum += text.startsWith("-") ? -nanos : nanos;
+        }
+        return sum;
     }
 
     private static @Nullable Instant at(

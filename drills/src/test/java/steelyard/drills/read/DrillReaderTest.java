@@ -14,6 +14,8 @@ import java.util.stream.Collectors;
 import java.util.stream.IntStream;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
+import org.junit.jupiter.params.ParameterizedTest;
+import org.junit.jupiter.params.provider.CsvSource;
 import steelyard.drills.model.Affinity;
 import steelyard.drills.model.Backend;
 import steelyard.drills.model.Bench;
@@ -378,6 +380,31 @@ class DrillReaderTest {
         Path pages = Files.createDirectory(folder.resolve("pages"));
         Drill drill = DrillReader.read(file).value().orElseThrow();
         assertThat(drill.stage().backends().get(0).serves().answers()).isEqualTo(pages.toString());
+    }
+
+    @ParameterizedTest
+    @CsvSource({
+        "patch + 5s + 500ms, patch + 5500ms",
+        "patch + 5s - 7s, patch - 2s",
+        "patch + 1ms + 5us, patch + 1005us",
+        "5s + 500ms, 5500ms"
+    })
+    void read_ofAnInstantWithSeveralDurations_saysItInOne(String written, String instead) {
+        String text = LEAST + "cues: [{at: 500ms, kill: fulmar, as: patch}, {at: " + written + ", revive: fulmar}]\n"
+                + "expect: [{measure: failed, at-most: 1%}]\n";
+        assertThat(shown(text))
+                .singleElement()
+                .asString()
+                .endsWith("an instant takes one duration, and '" + written + "' for 'at' has more; write " + instead);
+    }
+
+    @Test
+    void read_ofWeightsThatACueBringsIntoPlay_givesNoNotice() {
+        String text = LEAST.replace("fulmar: ,", "fulmar: {weight: 2},")
+                + "cues: [{at: 500ms, retune: {pool: seats}, method: %s}]\n"
+                + "expect: [{measure: failed, at-most: 1%%}]\n";
+        assertThat(shown(text.formatted("weighted-round-robin"))).isEmpty();
+        assertThat(shown(text.formatted("random"))).singleElement().asString().contains("weights play no part");
     }
 
     @Test
