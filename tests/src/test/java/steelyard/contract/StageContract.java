@@ -179,6 +179,29 @@ public abstract class StageContract {
     }
 
     @Test
+    void slow_setTwice_isTheLaterOneAlone_alsoAfterTheEndOfTheFirst() throws CannotPlay {
+        Heard heard = play(drill(
+                roundRobin("fixed: 20ms"),
+                "rate: 40/s",
+                "2s",
+                "  - {at: 300ms, slow: fulmar, factor: 30, for: 1s}\n  - {at: 600ms, slow: fulmar, factor: 10}"));
+        assertThat(heard.cues)
+                .extracting(Heard.Applied::by)
+                .containsExactly(PlayListener.By.DRILL, PlayListener.By.DRILL);
+        List<Long> onFulmar = heard.picks.stream()
+                .filter(each -> each.backend() == 0)
+                .map(Heard.Pick::request)
+                .toList();
+        // 20 ms times 10: neither 20 ms, as after an end, nor 6 s, as of both.
+        assertThat(heard.dueBetween(1_400, 2_000).stream()
+                        .filter(each -> onFulmar.contains(each.request()))
+                        .mapToLong(each -> each.atNanos() - each.dueNanos())
+                        .min()
+                        .orElseThrow())
+                .isBetween(200 * MILLI, 200 * MILLI + SLACK);
+    }
+
+    @Test
     void surge_raisesTheRateWhileItLasts() throws CannotPlay {
         Heard heard = play(drill(
                 roundRobin("fixed: 1ms"),
