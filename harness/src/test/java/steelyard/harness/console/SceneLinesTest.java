@@ -131,6 +131,21 @@ class SceneLinesTest {
     }
 
     @Test
+    void inForce_ofTwoOfOneKind_isTheLaterOne() {
+        List<Cue> cues = Boards.drill(
+                        "Twice",
+                        List.of("fulmar", "gannet"),
+                        "{at: 15s, slow: fulmar, factor: 3, for: 20s}",
+                        "{at: 15s, slow: gannet, factor: 3, for: 20s}",
+                        "{at: 20s, slow: fulmar, factor: 8}",
+                        "{at: 25s, load: gannet, gauge: cpu, to: 90%}",
+                        "{at: 26s, load: gannet, gauge: cpu, to: 80%}")
+                .cues();
+        assertThat(InForce.at(19 * Boards.SECOND, cues)).containsExactly(cues.get(0), cues.get(1));
+        assertThat(InForce.at(40 * Boards.SECOND, cues)).containsExactly(cues.get(2), cues.get(4));
+    }
+
+    @Test
     void red_always_marksFailuresAlone() {
         List<AttributedString> without = lines(three, Map.of(), 79, 23, Colours.SOME);
         assertThat(without).noneMatch(line -> ansi(line).contains(RED));
