@@ -1,37 +1,40 @@
 package steelyard.harness.conduct;
 
-import java.util.concurrent.atomic.AtomicIntegerArray;
+import java.util.BitSet;
 import steelyard.drills.model.Cue;
 
-/** Which backends cues have killed, and which they have taken out. Told by one thread; any may ask. */
+/**
+ * Which backends cues have killed, and which they have taken out. Told by one thread; any may ask: a set is never
+ * changed once it can be seen.
+ */
 final class Absent {
-    private final AtomicIntegerArray killed;
-    private final AtomicIntegerArray out;
-
-    /** @param backends how many there are; all are there at first */
-    Absent(int backends) {
-        killed = new AtomicIntegerArray(backends);
-        out = new AtomicIntegerArray(backends);
-    }
+    private volatile BitSet killed = new BitSet();
+    private volatile BitSet out = new BitSet();
 
     void carriedOut(Cue.Kind kind, int backend) {
         switch (kind) {
-            case KILL -> killed.set(backend, 1);
-            case REVIVE -> killed.set(backend, 0);
-            case DRAIN, WITHDRAW -> out.set(backend, 1);
-            case ADMIT -> out.set(backend, 0);
+            case KILL -> killed = with(killed, backend, true);
+            case REVIVE -> killed = with(killed, backend, false);
+            case DRAIN, WITHDRAW -> out = with(out, backend, true);
+            case ADMIT -> out = with(out, backend, false);
             case SLOW, FAIL, HANG, REFUSE, FAIL_PROBE, FLAP_PROBE, LOAD, FILL, HEAL, REWEIGH, RETUNE, SURGE -> {
                 // Nobody comes or goes.
             }
         }
     }
 
+    private static BitSet with(BitSet before, int backend, boolean in) {
+        BitSet after = (BitSet) before.clone();
+        after.set(backend, in);
+        return after;
+    }
+
     boolean killed(int backend) {
-        return killed.get(backend) != 0;
+        return killed.get(backend);
     }
 
     /** Drained or withdrawn, and not admitted since. */
     boolean out(int backend) {
-        return out.get(backend) != 0;
+        return out.get(backend);
     }
 }

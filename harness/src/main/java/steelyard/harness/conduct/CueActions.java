@@ -31,7 +31,7 @@ final class CueActions {
         this.retuned = new Retuned(drill);
         this.faults = new Terms(cast.backends().size());
         this.surges = new Terms(poolOfTraffic.length);
-        this.absent = new Absent(cast.backends().size());
+        this.absent = new Absent();
     }
 
     /**
