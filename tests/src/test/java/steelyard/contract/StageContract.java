@@ -90,7 +90,7 @@ public abstract class StageContract {
                 "rate: 100/s",
                 "2s",
                 "  - {at: 500ms, kill: fulmar}\n  - {at: 1500ms, revive: fulmar}"));
-        assertThat(heard.count(null)).isEqualTo(200);
+        assertThat(heard.ends).hasSize(200).allMatch(each -> each.cause() == null);
         long lost = heard.overs.stream()
                 .filter(each -> each.outcome() == Outcome.REFUSED || each.outcome() == Outcome.RESET)
                 .count();
