@@ -14,7 +14,7 @@ import steelyard.harness.stage.live.LiveStage;
  */
 public final class Soak {
     private static final int REQUESTS = 3_000_000;
-    private static final int PER_SECOND = 5_500;
+    private static final int PER_SECOND = 4_000;
     private static final int LONGEST_SECONDS = 14 * 60;
 
     private int requests = REQUESTS;
