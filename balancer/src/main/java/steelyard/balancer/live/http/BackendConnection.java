@@ -75,9 +75,6 @@ final class BackendConnection {
     void opening(ChannelFuture connecting) {
         channel = connecting.channel();
         deadline = new Deadline(channel.eventLoop(), this::timePassed);
-        if (exchange != null) {
-            exchange.request().opening(this);
-        }
         Ends.whenUsable(connecting, this::opened);
     }
 

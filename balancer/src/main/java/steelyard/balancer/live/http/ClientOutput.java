@@ -34,6 +34,11 @@ final class ClientOutput {
         encoder.answersHead(HttpMethod.HEAD.equals(request.method()));
     }
 
+    /** Has that done on the loop of the client, in a task of its own. */
+    void later(Runnable what) {
+        channel.eventLoop().execute(what);
+    }
+
     boolean writable() {
         return channel.isWritable();
     }

@@ -139,6 +139,11 @@ final class Exchange implements WaitingRoom.Waiter {
 
     // ---- from the client
 
+    /** Has that done on its loop, in a task of its own. */
+    void later(Runnable what) {
+        client.output().later(what);
+    }
+
     RequestPath request() {
         return request;
     }

@@ -59,13 +59,28 @@ final class LoopConnections {
         return connection;
     }
 
-    /** Starts a new connection, which tells the exchange when it stands or does not come to stand. */
+    /**
+     * Starts a new connection, which tells the exchange when it stands or does not come to stand.
+     *
+     * <p>Its socket is made in a task of its own. A retry connects just after a dead connection was closed, and the system
+     * would give the new socket the number of the old one; what the loop had already been told of that number would then
+     * be taken for news of the new one, and end it before it stands.
+     */
     void connect(int backend, Exchange exchange) {
         Lane lane = lanes.get(backend);
         BackendConnection connection = new BackendConnection(this, backend, lane.timeouts, lane.tls, exchange);
         lane.all.add(connection);
-        connection.opening(
-                lane.bootstrap.clone().handler(connection.initializer()).connect());
+        exchange.request().opening(connection);
+        exchange.later(() -> open(lane, connection));
+    }
+
+    private void open(Lane lane, BackendConnection connection) {
+        if (connection.served() == null) {
+            closed(connection); // given up in the meantime
+        } else {
+            connection.opening(
+                    lane.bootstrap.clone().handler(connection.initializer()).connect());
+        }
     }
 
     void idle(BackendConnection connection) {
