@@ -95,7 +95,7 @@ public abstract class StageContract {
                 .filter(each -> each.outcome() == Outcome.REFUSED || each.outcome() == Outcome.RESET)
                 .count();
         // Of the 100 requests while it was dead every other one met it; stalls blur both ends.
-        assertThat(lost).isBetween(20L, 70L);
+        assertThat(lost).isBetween(5L, 70L);
         assertThat(heard.picks.stream().filter(each -> each.attempt() == 2)).hasSize((int) lost);
         assertThat(heard.picks.stream().filter(each -> each.attempt() == 2)).allMatch(each -> each.backend() == 1);
     }
