@@ -224,6 +224,7 @@ class TcpFrontTest {
         try (FakeBackend backend = FakeBackend.playing(wire -> {
                     wire.send(sent);
                     allOut.set(true);
+                    wire.readToEnd(); // stays open until the client has read all
                 });
                 LivePlay play = LivePlay.of(Pool::passing, backend.address());
                 Wire client = play.client()) {
