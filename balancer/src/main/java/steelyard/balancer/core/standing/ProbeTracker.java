@@ -32,10 +32,7 @@ public final class ProbeTracker {
     private final LongToDoubleFunction draw;
     private ProbeSettings settings;
     private boolean up;
-    private boolean running;
-    private long number = -1;
-    private long startedNanos;
-    private long nextNanos;
+    private final Rounds rounds;
     private int missesInARow;
     private int passesInARow;
 
@@ -48,7 +45,7 @@ public final class ProbeTracker {
         this.draw = draw;
         this.settings = settings;
         this.up = up;
-        nextNanos = firstStartNanos;
+        rounds = new Rounds(firstStartNanos);
     }
 
     public boolean up() {
@@ -57,12 +54,12 @@ public final class ProbeTracker {
 
     /** The number of the probe that runs or ran last, from 0; -1 before the first. */
     public long number() {
-        return number;
+        return rounds.number();
     }
 
     /** When {@link #poll} has something to do next. */
     public long deadlineNanos() {
-        return running ? startedNanos + settings.withinNanos() : nextNanos;
+        return rounds.deadlineNanos(settings.withinNanos());
     }
 
     /** Does one thing that is due; call again until it says {@link Step#NOTHING}. */
@@ -70,14 +67,12 @@ public final class ProbeTracker {
         if (nowNanos - deadlineNanos() < 0) {
             return Step.NOTHING;
         }
-        if (running) {
+        if (rounds.running()) {
             count(false);
             end(nowNanos);
             return Step.DROP;
         }
-        running = true;
-        number++;
-        startedNanos = nowNanos;
+        rounds.start(nowNanos);
         return Step.START;
     }
 
@@ -88,7 +83,7 @@ public final class ProbeTracker {
      * @return whether it counted
      */
     public boolean answered(long probe, boolean good, long nowNanos) {
-        if (!running || probe != number) {
+        if (!rounds.runs(probe)) {
             return false;
         }
         count(good && passesAt(nowNanos));
@@ -98,20 +93,19 @@ public final class ProbeTracker {
 
     /** Whether an answer to the running probe would come early enough. */
     public boolean passesAt(long nowNanos) {
-        return nowNanos - (startedNanos + settings.withinNanos()) < 0;
+        return rounds.early(settings.withinNanos(), nowNanos);
     }
 
     /** Takes new settings; the runs so far and a probe under way go on under them. */
     public void retune(ProbeSettings newSettings, long nowNanos) {
-        if (!running && number >= 0) {
-            nextNanos = later(startedNanos + periodNanos(newSettings), nowNanos);
+        if (rounds.betweenTwo()) { // no draw for a probe that has not been
+            rounds.respace(periodNanos(newSettings), nowNanos);
         }
         settings = newSettings;
     }
 
     private void end(long nowNanos) {
-        running = false;
-        nextNanos = later(startedNanos + periodNanos(settings), nowNanos);
+        rounds.end(periodNanos(settings), nowNanos);
     }
 
     private void count(boolean pass) {
@@ -130,11 +124,7 @@ public final class ProbeTracker {
         if (of.jitter() == 0) {
             return of.everyNanos();
         }
-        double off = of.jitter() * (2 * draw.applyAsDouble(number) - 1);
+        double off = of.jitter() * (2 * draw.applyAsDouble(rounds.number()) - 1);
         return Math.max(1, Math.round(of.everyNanos() * (1 + off)));
-    }
-
-    private static long later(long a, long b) {
-        return a - b >= 0 ? a : b;
     }
 }

@@ -1,6 +1,7 @@
 package steelyard.balancer.core.weigh;
 
 import org.jspecify.annotations.Nullable;
+import steelyard.balancer.core.standing.Rounds;
 import steelyard.balancer.settings.LoadSettings;
 
 /**
@@ -30,10 +31,7 @@ public final class LoadReader {
     }
 
     private final LoadSettings settings;
-    private boolean running;
-    private long number = -1;
-    private long startedNanos;
-    private long nextNanos;
+    private final Rounds rounds;
     private boolean fresh;
     private long readNanos;
     private int headroomMilli = Headroom.FULL;
@@ -41,12 +39,12 @@ public final class LoadReader {
     /** @param firstStartNanos when the first reading starts */
     public LoadReader(LoadSettings settings, long firstStartNanos) {
         this.settings = settings;
-        nextNanos = firstStartNanos;
+        rounds = new Rounds(firstStartNanos);
     }
 
     /** The number of the reading that runs or ran last, from 0; -1 before the first. */
     public long number() {
-        return number;
+        return rounds.number();
     }
 
     /** Whether a reading counts now. */
@@ -61,7 +59,7 @@ public final class LoadReader {
 
     /** When {@link #poll} has something to do next. */
     public long deadlineNanos() {
-        long next = running ? startedNanos + settings.withinNanos() : nextNanos;
+        long next = rounds.deadlineNanos(settings.withinNanos());
         return fresh && staleNanos() - next < 0 ? staleNanos() : next;
     }
 
@@ -75,13 +73,11 @@ public final class LoadReader {
             headroomMilli = Headroom.FULL;
             return Step.STALE;
         }
-        if (running) {
+        if (rounds.running()) {
             end(nowNanos);
             return Step.DROP;
         }
-        running = true;
-        number++;
-        startedNanos = nowNanos;
+        rounds.start(nowNanos);
         return Step.START;
     }
 
@@ -92,10 +88,10 @@ public final class LoadReader {
      * @return whether it counted
      */
     public boolean read(long reading, double @Nullable [] gauges, long nowNanos) {
-        if (!running || reading != number) {
+        if (!rounds.runs(reading)) {
             return false;
         }
-        boolean early = nowNanos - (startedNanos + settings.withinNanos()) < 0;
+        boolean early = rounds.early(settings.withinNanos(), nowNanos);
         end(nowNanos);
         if (!early || gauges == null || !complete(gauges)) {
             return false;
@@ -124,8 +120,6 @@ public final class LoadReader {
     }
 
     private void end(long nowNanos) {
-        running = false;
-        long next = startedNanos + settings.everyNanos();
-        nextNanos = next - nowNanos >= 0 ? next : nowNanos;
+        rounds.end(settings.everyNanos(), nowNanos);
     }
 }
